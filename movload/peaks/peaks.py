@@ -1,0 +1,230 @@
+"""The peaks of every row, and on request the placement that gives each.
+
+Values come from the batch; which position gave a value is found again only for the part that is asked about, so that
+screening many vehicles never pays for placements nobody reads.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import cached_property
+from typing import TYPE_CHECKING, Final
+
+import numpy as np
+
+from movload.errors import InputError, UnknownNameError
+from movload.peaks.candidates import LOST, Candidates, candidates_of
+from movload.peaks.placement import Placement, edge, panel_loads
+from movload.statics.part import Effect, Response, row_of
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from movload.arrays import Floats, Ints
+    from movload.traffic.crossing import Train
+
+_TIE: Final = 1e-12  # of the row's largest value: positions whose effects differ by less are equally bad
+_SAME_PLACE: Final = 9  # decimals of a metre to which positions count as equal when ties are broken
+
+
+@dataclass(frozen=True, slots=True)
+class Peak:
+    """An extreme of one effect over all positions.
+
+    Attributes
+    ----------
+    value
+        The effect [N, m], share and impact included; 0 with the vehicle off the bridge.
+    position
+        x of the front axle [m]; nan when the vehicle is off.
+    heading
+        +1 moving toward +x (the other axles stand at x - distance), -1 the other way; 0 when off.
+    spacings
+        The axle distances it was found with (A - 1) [m].
+    axle, station
+        The axle (0 = front) that stands on a station, and that station's number; -1 when off.
+    case
+        Title of the case that governs.
+    placement
+        The loads as they stand.
+    """
+
+    value: float
+    position: float
+    heading: int
+    spacings: tuple[float, ...]
+    axle: int
+    station: int
+    case: str
+    placement: Placement
+
+
+@dataclass(frozen=True, slots=True)
+class RowPeaks:
+    """Highest and lowest peak of one row."""
+
+    effect: Effect
+    highest: Peak
+    lowest: Peak
+
+
+@dataclass(frozen=True, eq=False)
+class PartPeaks:
+    """The peaks of one part under the trains of one crossing.
+
+    Attributes
+    ----------
+    response
+        How the part answers.
+    trains
+        The trains swept; their envelope gives the peaks.
+    highest, lowest
+        (R,) with impact, both including 0.
+    impact
+        (R, 2) dynamic allowance on the highest and the lowest.
+    """
+
+    response: Response
+    trains: tuple[Train, ...]
+    highest: Floats
+    lowest: Floats
+    impact: Floats
+
+    @cached_property
+    def _found(self) -> tuple[Ints, Ints]:
+        """Train and candidate of every row's highest and lowest (2, R) each."""
+        searched = [_best_of(self.response, candidates_of(self.response.stations, [train])) for train in self.trains]
+        sign = np.array([1.0, -1.0])[:, None]
+        values = np.stack([values for values, _ in searched]) * sign
+        floor = values.max(axis=0) - _TIE * np.abs(values).max(axis=(0, 1))
+        train = np.argmax(values >= floor, axis=0)
+        where = np.stack([where for _, where in searched])
+        return train, np.take_along_axis(where, train[None], axis=0)[0]
+
+    def peak(self, row: int, side: int) -> Peak:
+        """Return one row's highest (side 0) or lowest (side 1) peak."""
+        value = float((self.highest, self.lowest)[side][row])
+        if value == 0.0:
+            return Peak(0.0, float("nan"), 0, (), -1, -1, "", Placement.off())
+        train_number, candidate = (int(found[side, row]) for found in self._found)
+        train = self.trains[train_number]
+        candidates = candidates_of(self.response.stations, [train])
+        run, stop = divmod(candidate, candidates.stops)
+        x, _ = candidates.axles_at(run, run + 1)
+        heading, axle = divmod(run, train.vehicle.loads.size)
+        impact = np.full(train.shares.shape, self.impact[row, side] if train.dynamic else 0.0)
+        placement = Placement(x[0, stop], train.vehicle.loads, train.shares, impact)
+        count = self.response.stations.size
+        return Peak(
+            value,
+            _front(self.response.stations, candidates, placement.x, (train.headings[heading], axle, stop)),
+            train.headings[heading],
+            tuple(map(float, np.diff(train.vehicle.distances))),
+            axle,
+            stop if stop < count else (0, count - 1)[stop - count],
+            train.case,
+            placement,
+        )
+
+
+def _best_of(response: Response, candidates: Candidates) -> tuple[Floats, Ints]:
+    """Return static highest and lowest (2, R) of one train and the candidate that gives each.
+
+    Of equally bad positions the smallest counts, heading +1 before -1, then the axle nearest the front.
+    """
+    x, felt = candidates.axles_at(0, candidates.per_train // candidates.stops)
+    values = response.under(panel_loads(candidates.stations, x, felt).T)
+    heading, axle, _ = candidates.described()
+    front = np.round(x[..., 0].reshape(-1), _SAME_PLACE)
+    order = np.lexsort((axle, -heading, front))
+    values = values[:, order]
+    slack = _TIE * np.abs(values).max(axis=1, keepdims=True)
+    highest, lowest = values.max(axis=1, keepdims=True), values.min(axis=1, keepdims=True)
+    first = np.stack((np.argmax(values >= highest - slack, axis=1), np.argmax(values <= lowest + slack, axis=1)))
+    return np.stack((highest[:, 0], lowest[:, 0])), order[first]
+
+
+def _front(stations: Floats, candidates: Candidates, x: Floats, standing: tuple[int, int, int]) -> float:
+    """Return the front axle's x, so that the standing axle's, found from it again, is on the same side of an end.
+
+    Subtracting a distance again may round an axle that stands on an end station to just outside it.
+    """
+    heading, axle, stop = standing
+    front = float(x[0])
+    behind = heading * float(candidates.distances[0, axle])
+    if stop >= stations.size:
+        outward = -1.0 if stop == stations.size else 1.0
+        return front + outward * LOST * edge(stations)
+    if stop not in {0, stations.size - 1}:
+        return front
+    inward = np.inf if stop == 0 else -np.inf
+    while not stations[0] <= front - behind <= stations[-1]:
+        front = float(np.nextafter(front, inward))
+    return front
+
+
+@dataclass(frozen=True, eq=False)
+class Peaks:
+    """The peaks of every row under one vehicle or crossing.
+
+    Attributes
+    ----------
+    title
+        What crossed.
+    effects
+        The rows (R).
+    highest, lowest
+        (R,) [N, m], both including 0: the vehicle can be off the bridge.
+    parts
+        The same part by part, from which a row's placement is found.
+    """
+
+    title: str
+    effects: tuple[Effect, ...]
+    highest: Floats
+    lowest: Floats
+    parts: tuple[PartPeaks, ...]
+
+    def __getitem__(self, key: str | tuple[str, str]) -> RowPeaks:
+        """Return one row's peaks by its name (a member's joints in either order) or by (part, name)."""
+        return self.row(row_of(self.effects, key))
+
+    def row(self, number: int) -> RowPeaks:
+        """Return the peaks of row ``number``."""
+        return RowPeaks(self.effects[number], self.peak(number, 0), self.peak(number, 1))
+
+    def peak(self, number: int, side: int) -> Peak:
+        """Return the highest (side 0) or lowest (side 1) peak of row ``number``."""
+        inside = number
+        for part in self.parts:
+            if inside < part.highest.size:
+                return part.peak(inside, side)
+            inside -= part.highest.size
+        raise UnknownNameError(f"row {number} is beyond the {len(self.effects)} there are", place="peaks")
+
+
+def effects_at(response: Response, train: Train, position: float, heading: int) -> Floats:
+    """Return every row's static effect (R,) with the front axle of a train at ``position`` [m].
+
+    Raises
+    ------
+    InputError
+        The heading is neither +1 nor -1, or the position is not a finite number.
+    """
+    if heading not in {1, -1} or not np.isfinite(position):
+        raise InputError(f"heading is +1 or -1 and a position finite, got {heading} and {position} m", place="position")
+    x = position - heading * train.vehicle.distances
+    loads = panel_loads(response.stations, x[None, :], train.vehicle.loads * train.shares)
+    values: Floats = response.under(loads.T)[:, 0]
+    return values
+
+
+def stacked(title: str, parts: Sequence[PartPeaks]) -> Peaks:
+    """Return the peaks of all parts as one, rows in the order of the parts."""
+    return Peaks(
+        title,
+        tuple(effect for part in parts for effect in part.response.effects),
+        np.concatenate([part.highest for part in parts]),
+        np.concatenate([part.lowest for part in parts]),
+        tuple(parts),
+    )

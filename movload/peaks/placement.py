@@ -1,0 +1,111 @@
+"""The loads as they stand: axle by axle, so that anyone can add the effect up again."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING, Final
+
+import numpy as np
+
+from movload.arrays import Floats, Ints, frozen_floats
+
+if TYPE_CHECKING:
+    from movload.traffic.vehicle import Strip
+
+SNAP: Final = 1e-13  # of the largest station: an axle no further outside an end station stands on it
+_LONGEST_GRID: Final = 4096
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Placement:
+    """One vehicle standing still on the bridge, as one part feels it.
+
+    Attributes
+    ----------
+    x
+        Where each axle stands (A,) [m], front axle first; an axle outside the stations is off the bridge.
+    load
+        Whole-axle loads (A,) [N].
+    share
+        Share of each axle that reaches the part (A,) [-].
+    impact
+        Dynamic allowance of each axle (A,) [-]: its effect counts 1 + impact times.
+    strips
+        Uniform loads as they stand.
+    """
+
+    x: Floats
+    load: Floats
+    share: Floats
+    impact: Floats
+    strips: tuple[Strip, ...] = field(default=(), kw_only=True)
+
+    def __post_init__(self) -> None:
+        """Copy read-only."""
+        for name in ("x", "load", "share", "impact"):
+            object.__setattr__(self, name, frozen_floats(getattr(self, name)))
+
+    @classmethod
+    def off(cls) -> Placement:
+        """Return the empty placement: the vehicle is off the bridge."""
+        nothing = np.zeros(0)
+        return cls(nothing, nothing, nothing, nothing)
+
+    def panel_loads(self, stations: Floats) -> Floats:
+        """Return the downward loads (B,) [N] that reach the stations, impact included."""
+        felt = self.load * self.share * (1.0 + self.impact)
+        loads: Floats = panel_loads(stations, self.x[None, :], felt)[0]
+        return loads
+
+
+def edge(stations: Floats) -> float:
+    """Return how far outside an end station an axle still stands on it [m]: the round-off of summed spacings."""
+    return SNAP * float(np.abs(stations).max())
+
+
+def panel_loads(stations: Floats, x: Floats, felt: Floats) -> Floats:
+    """Return panel-point loads (K, B) [N] of axles standing at x (..., A) [m], K positions in all.
+
+    A load between two stations reaches both as a simple beam's reactions; one outside the stations reaches none.
+
+    Parameters
+    ----------
+    felt
+        Load [N] of each axle; its shape spreads over that of x.
+    """
+    panels = np.diff(stations)
+    panel = panels_at(stations, panels, x)
+    margin = edge(stations)
+    felt = felt * ((x >= stations[0] - margin) & (x <= stations[-1] + margin))
+    onward = (x - stations[panel]) / panels[panel]
+    onward *= felt
+    felt -= onward
+    positions = x.size // x.shape[-1]
+    panel += (stations.size * np.arange(positions)).reshape(*x.shape[:-1], 1)
+    panel = panel.reshape(-1)
+    size = positions * stations.size
+    loads: Floats = np.bincount(panel, felt.reshape(-1), size).astype(np.float64, copy=False)
+    loads[1:] += np.bincount(panel, onward.reshape(-1), size)[:-1]
+    return loads.reshape(positions, stations.size)
+
+
+def panels_at(stations: Floats, panels: Floats, x: Floats) -> Ints:
+    """Return the panel that holds each x, the outermost for an x outside: the number of its left station.
+
+    A grid no coarser than the shortest panel names the panel to within one, which is several times faster than a
+    search by halving; very unequal panels, whose grid would be long, are searched.
+    """
+    cells = int(np.ceil((stations[-1] - stations[0]) / panels.min()))
+    if cells > _LONGEST_GRID:
+        found = np.searchsorted(stations, x, side="right") - 1
+        return np.clip(found, 0, panels.size - 1)
+    per_cell = cells / (stations[-1] - stations[0])
+    cell_starts = stations[0] + np.arange(cells) / per_cell
+    grid = np.minimum(np.searchsorted(stations, cell_starts, side="right") - 1, panels.size - 1)
+    cell = (x - stations[0]) * per_cell
+    np.minimum(cell, cells - 1, out=cell)
+    np.maximum(cell, 0, out=cell)
+    panel = grid[cell.astype(np.intp)]
+    panel += x >= stations[1:][panel]
+    inside: Ints = np.minimum(panel, panels.size - 1, out=panel)
+    return inside

@@ -1,0 +1,83 @@
+"""What flows out of statics: an effect, how it answers loads at its stations, and the part that holds both.
+
+Everything to the right of this file sees only these three, whatever the part is.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING, Literal, NamedTuple, Protocol, TypeAlias
+
+from movload.errors import UnknownNameError, nearest_name
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from movload.arrays import Floats
+    from movload.bridge.across import Across
+
+Kind: TypeAlias = Literal["axial", "reaction", "moment", "shear", "down"]
+
+
+class Effect(NamedTuple):
+    """One row: what is felt, where, and in which unit.
+
+    A named tuple and not a dataclass: a truss has hundreds and they are made on every solve.
+    """
+
+    part: str
+    name: str
+    kind: Kind
+    unit: str
+
+    @property
+    def key(self) -> tuple[str, str]:
+        """Part and name: unique in a bridge."""
+        return (self.part, self.name)
+
+
+class Response(Protocol):
+    """How effects answer loads standing on stations.
+
+    A linear response multiplies; another (members that only pull) may solve. Nobody downstream asks which.
+    """
+
+    @property
+    def effects(self) -> tuple[Effect, ...]:
+        """The rows (R)."""
+        ...
+
+    @property
+    def stations(self) -> Floats:
+        """Their stations (B,) [m], increasing."""
+        ...
+
+    def under(self, loads: Floats) -> Floats:
+        """Return live effects (R, K) under downward panel-point loads (B, K) [N]."""
+        ...
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Part:
+    """Something that is rated: a truss, later a stringer span or a floorbeam section."""
+
+    title: str
+    response: Response
+    across: Across
+
+
+def row_of(effects: Sequence[Effect], key: str | tuple[str, str]) -> int:
+    """Return the row of an effect by its name, or by (part, name); a member's joints in either order.
+
+    Raises
+    ------
+    UnknownNameError
+        No such row; the nearest name is given.
+    """
+    part, name = ("", key) if isinstance(key, str) else key
+    start, dash, end = name.partition("-")
+    for wanted in (name, f"{end}-{start}") if dash else (name,):
+        for row, effect in enumerate(effects):
+            if effect.name == wanted and part in {"", effect.part}:
+                return row
+    raise UnknownNameError(f'row "{name}" is not known', nearest=nearest_name(name, (e.name for e in effects)))

@@ -1,0 +1,103 @@
+"""What a vehicle file means: a loading is the envelope over its cases (laden or empty, truck or tandem with lane)."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING, Final, Literal
+
+from movload.errors import InputError, UnknownNameError, nearest_name
+
+if TYPE_CHECKING:
+    from movload.traffic.vehicle import Vehicle
+
+KINDS: Final = ("routine", "legal", "design", "emergency", "permit", "farm", "forest", "trail", "crowd", "rail")
+"""What a loading is in the eyes of a rule: load factors depend on it."""
+
+
+@dataclass(frozen=True, slots=True)
+class Fill:
+    """Load that fills the bridge rather than moves: uniform [N/m] or a knife edge [N].
+
+    ``where`` says how it is put: wherever it is adverse, outside the vehicle only, or at the stated ``x`` [m].
+    """
+
+    load: float
+    shape: Literal["uniform", "knife edge"]
+    where: Literal["adverse", "outside", "at"]
+    x: tuple[float, float] | None = None
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Case:
+    """One state of a loading: what moves, what fills, and by how much both count.
+
+    Parameters
+    ----------
+    title
+        "laden", "tandem + lane"; the loading's own title when there is one case only.
+    moving
+        The vehicle; None when only fills act.
+    fills
+        Loads that fill the bridge.
+    factor
+        Multiplier on the whole case [-], above 0.
+    lanes
+        How many stand abreast; 0 leaves it to the crossing.
+    """
+
+    title: str
+    moving: Vehicle | None
+    fills: tuple[Fill, ...] = ()
+    factor: float = 1.0
+    lanes: int = field(default=0, kw_only=True)
+
+    def __post_init__(self) -> None:
+        """Refuse a case that loads nothing."""
+        if not (math.isfinite(self.factor) and self.factor > 0):
+            raise InputError(f"a factor must be above 0, got {self.factor}", place=f"case {self.title}")
+        if self.moving is None and not self.fills:
+            raise InputError("a case needs a vehicle or a load that fills", place=f"case {self.title}")
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Loading:
+    """What crosses: the peak is the envelope over its cases.
+
+    Parameters
+    ----------
+    title
+        What it is called.
+    kind
+        One of KINDS.
+    cases
+        At least one.
+    source
+        Where its numbers come from, e.g. "AASHTO ..., from memory", or "invented"; "" when its file does not say.
+    """
+
+    title: str
+    kind: str
+    cases: tuple[Case, ...]
+    source: str = field(default="", kw_only=True)
+
+    def __post_init__(self) -> None:
+        """Check kind and cases."""
+        if self.kind not in KINDS:
+            raise UnknownNameError(
+                f'kind "{self.kind}" is not one of {", ".join(KINDS)}',
+                place="kind",
+                nearest=nearest_name(self.kind, KINDS),
+            )
+        if not self.cases:
+            raise InputError("a loading needs at least one case", place=self.title)
+
+    @classmethod
+    def of(cls, vehicle: Vehicle, kind: str = "routine", *, source: str = "") -> Loading:
+        """Return the loading that is one vehicle in one state."""
+        return cls(vehicle.title, kind, (Case(vehicle.title, vehicle),), source=source)
+
+    @property
+    def gross(self) -> float:
+        """Greatest weight that moves, over the cases [N]."""
+        return max((case.factor * case.moving.gross for case in self.cases if case.moving), default=0.0)

@@ -1,0 +1,147 @@
+"""What moves as one: axles front to back, the gaps between them, and the load that travels with them."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING, TypeAlias
+
+import numpy as np
+
+from movload.arrays import Floats, frozen_floats, held
+from movload.errors import InputError
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+Spacing: TypeAlias = "float | tuple[float, float]"
+
+
+@dataclass(frozen=True, slots=True)
+class Strip:
+    """A uniform load of finite length that moves with the vehicle (a crawler track, a car of a train).
+
+    ``start`` is the distance of its front end behind the front axle [m], ``length`` [m], ``load`` [N/m].
+    """
+
+    start: float
+    length: float
+    load: float
+
+
+@dataclass(frozen=True, slots=True)
+class Tail:
+    """A uniform load that follows the vehicle and never ends: ``start`` behind the front axle [m], ``load`` [N/m]."""
+
+    start: float
+    load: float
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Vehicle:
+    """One vehicle.
+
+    Parameters
+    ----------
+    title
+        What it is called.
+    loads
+        Whole-axle loads (A,) [N], front to back, 0 or more and not all 0.
+    spacings
+        Distances between axles (A - 1) [m], 0 or more, each a number or a (least, greatest) pair.
+    gauges
+        Wheel gauge of each axle (A,) [m]; empty when not stated.
+    left_shares
+        Part of each axle that its left wheels carry (A,) [-]; empty for halves.
+    strips, tail
+        Uniform loads that move with it.
+    headings
+        Directions in which it may cross: +1 toward +x, -1 the other way.
+    """
+
+    title: str
+    loads: Floats
+    spacings: Sequence[Spacing]
+    gauges: tuple[float, ...] = field(default=(), kw_only=True)
+    left_shares: tuple[float, ...] = field(default=(), kw_only=True)
+    strips: tuple[Strip, ...] = field(default=(), kw_only=True)
+    tail: Tail | None = field(default=None, kw_only=True)
+    headings: tuple[int, ...] = field(default=(1, -1), kw_only=True)
+    _distances: Floats = field(init=False, repr=False)
+
+    def __post_init__(self) -> None:
+        """Copy and check axle by axle."""
+        object.__setattr__(self, "loads", frozen_floats(np.atleast_1d(np.asarray(self.loads, dtype=np.float64))))
+        object.__setattr__(self, "spacings", tuple(_spacing(gap) for gap in self.spacings))
+        object.__setattr__(self, "headings", tuple(self.headings))
+        _check_loads(self.loads)
+        _check_spacings(self.spacings, self.loads.size)
+        fixed = [] if self.has_ranges else self.spacings
+        object.__setattr__(self, "_distances", held(np.cumsum([0.0, *fixed])))
+        if not self.headings or not set(self.headings) <= {1, -1}:
+            raise InputError(f"headings are +1, -1 or both, got {self.headings}", place="headings")
+        for word, values in (("gauges", self.gauges), ("left_shares", self.left_shares)):
+            if values and len(values) != self.loads.size:
+                raise InputError(f"one for each of {self.loads.size} axles, got {len(values)}", place=word)
+
+    @property
+    def gross(self) -> float:
+        """Sum of the axle loads [N]."""
+        return float(self.loads.sum())
+
+    @property
+    def has_ranges(self) -> bool:
+        """Whether any spacing may vary."""
+        return any(isinstance(gap, tuple) for gap in self.spacings)
+
+    @property
+    def distances(self) -> Floats:
+        """Distance of each axle behind the front one (A,) [m].
+
+        Raises
+        ------
+        InputError
+            A spacing is a range, so there is no one distance.
+        """
+        for number, gap in enumerate(self.spacings):
+            if isinstance(gap, tuple):
+                raise InputError(
+                    f"a spacing between {gap[0]:g} and {gap[1]:g} m is a range; one distance is needed here",
+                    place=f"{self.title}: spacings[{number}]",
+                )
+        return self._distances
+
+
+def _spacing(gap: Spacing | Sequence[float]) -> Spacing:
+    """Return a spacing as a float, or a pair as a tuple; a pair of equals is one number."""
+    if isinstance(gap, (int, float, np.number)):
+        return float(gap)
+    if len(gap) != 2:
+        raise InputError(f"a spacing is one number or a (least, greatest) pair, got {gap!r}", place="spacings")
+    least, greatest = float(gap[0]), float(gap[1])
+    return least if least == greatest else (least, greatest)
+
+
+def _check_loads(loads: Floats) -> None:
+    """Refuse axle loads that are no weights."""
+    if loads.ndim != 1 or not loads.size:
+        raise InputError("a vehicle needs at least one axle, got none", place="axles")
+    for number, load in enumerate(loads):
+        if not (math.isfinite(load) and load >= 0):
+            raise InputError(
+                f"a load must be a finite number, 0 or more, got {load:g} N", place=f"axles[{number}].load"
+            )
+    if not loads.any():
+        raise InputError("all axle loads are 0 N; at least one must be above 0", place="axles")
+
+
+def _check_spacings(spacings: Sequence[Spacing], axles: int) -> None:
+    """Refuse gaps that are negative, reversed, or too few or many."""
+    if len(spacings) != axles - 1:
+        raise InputError(f"{axles} axles need {axles - 1} spacings, got {len(spacings)}", place="spacings")
+    for number, gap in enumerate(spacings):
+        least, greatest = gap if isinstance(gap, tuple) else (gap, gap)
+        if not (math.isfinite(least) and math.isfinite(greatest) and least >= 0):
+            raise InputError(f"a spacing must be a finite number, 0 or more, got {gap} m", place=f"spacings[{number}]")
+        if least > greatest:
+            raise InputError(f"a range runs from least to greatest, got {gap} m", place=f"spacings[{number}]")
