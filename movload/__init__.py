@@ -1,4 +1,4 @@
-"""Influence lines and moving loads on truss bridges: may this vehicle cross that bridge?
+"""Influence lines and moving loads on truss bridges, to say whether this vehicle may cross that bridge.
 
 A bridge file becomes a truss, the truss is factored once, a unit load walks its loaded chord, the axle train is swept
 over the lines, and the exact worst positions meet strengths and become ratings. The names below load what they need

@@ -195,10 +195,15 @@ class Peaks:
 
     def peak(self, number: int, side: int) -> Peak:
         """Return the highest (side 0) or lowest (side 1) peak of row ``number``."""
+        part, inside = self.part_of(number)
+        return part.peak(inside, side)
+
+    def part_of(self, number: int) -> tuple[PartPeaks, int]:
+        """Return the part that row ``number`` belongs to, and its row there."""
         inside = number
         for part in self.parts:
             if inside < part.highest.size:
-                return part.peak(inside, side)
+                return part, inside
             inside -= part.highest.size
         raise UnknownNameError(f"row {number} is beyond the {len(self.effects)} there are", place="peaks")
 

@@ -1,0 +1,73 @@
+"""``movload start``: a commented bridge file from a form, panel lengths and depths."""
+
+from __future__ import annotations
+
+from pathlib import Path
+from typing import Annotated
+
+import typer
+
+from movload.cli.options import Force
+
+NewFile = Annotated[Path, typer.Argument(metavar="FILE", help="The bridge file to write (.toml).", show_default=False)]
+Form = Annotated[
+    str,
+    typer.Option("--form", prompt="Form", help="pratt, howe, warren, warren with verticals, k or baltimore."),
+]
+Panels = Annotated[
+    str,
+    typer.Option("--panels", prompt="Panel lengths from the left", help='"4.2 4.35 4.2" or "6x3.5".'),
+]
+Depths = Annotated[
+    str,
+    typer.Option(
+        "--depths",
+        prompt="Depths at the panel points (0 = tapers to a point)",
+        help='"0 2.1 2.6 2.1 0"; 0 at a pointed end.',
+    ),
+]
+Chord = Annotated[
+    str, typer.Option("--deck", prompt="Deck (through, pony, deck)", help="Which chord carries the deck.")
+]
+Middle = Annotated[
+    str | None, typer.Option("--middle", help="Middle diagonal of an odd number of panels: falling, rising, crossed.")
+]
+Length = Annotated[str, typer.Option("--length-unit", help="Unit of bare lengths: m or ft.")]
+Forces = Annotated[
+    str | None, typer.Option("--force-unit", help="Unit of loads: kN beside m, kip beside ft when left out.")
+]
+Title = Annotated[str, typer.Option("--title", help="The bridge's name.")]
+
+
+def start(
+    file: NewFile,
+    *,
+    form: Form,
+    panels: Panels,
+    depths: Depths,
+    deck: Chord,
+    middle: Middle = None,
+    length: Length = "m",
+    loads: Forces = None,
+    title: Title = "A bridge",
+    force: Force = False,
+) -> None:
+    """Write a commented bridge file; what is still to be measured or decided stands in it as "?"."""
+    from movload.bridge.layout import Layout
+    from movload.errors import InputError
+    from movload.files.read import bridge_from
+    from movload.files.start import lengths_from, starter_text
+    from movload.files.write import check_writable, write_files
+    from movload.units import UnitSystem
+
+    if file.suffix.lower() != ".toml":
+        raise InputError(f'a bridge file ends in .toml, got "{file.suffix}"', place=str(file))
+    check_writable([file], force=force)
+    feet = length in {"ft", "in"}
+    units = UnitSystem(length, loads or ("kip" if feet else "kN"), "in" if feet else "mm")
+    lengths, heights = lengths_from(panels, units, "--panels"), lengths_from(depths, units, "--depths")
+    layout = Layout(form, lengths, heights, deck=deck, middle=middle)
+    text = starter_text(title, layout, units)
+    bridge_from(text, str(file))  # what was written must read back
+    write_files({file: text.encode()}, force=force)
+    typer.echo(f"wrote {file}; see it with: movload draw {file} --plot {file.with_suffix('.png').name}")

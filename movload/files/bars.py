@@ -1,0 +1,106 @@
+"""Member groups to members: a group named after a role takes that role's bars, a group with bars takes those."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from movload.bridge.truss import Member
+from movload.errors import InputError, MovloadError, UnknownNameError, nearest_name
+from movload.files.toml import written_key
+
+if TYPE_CHECKING:
+    from collections.abc import Iterator, Mapping
+
+    from movload.bridge.layout import LaidOut
+    from movload.files.schema.bridge import BridgeFile, MemberGroup
+
+
+def members_of(table: BridgeFile, laid_out: LaidOut, joints: Mapping[str, tuple[float, float]]) -> dict[str, Member]:
+    """Return every member by name, the layout's first and in its order.
+
+    Raises
+    ------
+    InputError
+        A bar given twice, a group that takes no bar, a bar that no group takes.
+    UnknownNameError
+        A joint or a role that is not there.
+    """
+    groups = _group_of_each(table, laid_out)
+    roles = {f"{bar.start}-{bar.end}": bar.role for bar in laid_out.bars}
+    members: dict[str, Member] = {}
+    for name in (*roles, *(name for name in groups if name not in roles)):
+        if name not in groups:
+            raise InputError(
+                f'no group takes bar "{name}"; add [members.{written_key(roles[name])}] or bars = ["{name}"]',
+                place="members",
+            )
+        title, place = groups[name]
+        members[name] = _member(name, table.members[title], joints, place, roles.get(name, title))
+    return members
+
+
+def permits_of(table: BridgeFile, laid_out: LaidOut) -> dict[str, tuple[float | None, float | None]]:
+    """Return typed permitted forces (tension, compression) [N] by member."""
+    permits: dict[str, tuple[float | None, float | None]] = {}
+    for name, (title, _) in _group_of_each(table, laid_out).items():
+        typed = table.members[title].permits
+        if typed is not None:
+            permits[name] = (typed.tension, typed.compression)
+    return permits
+
+
+def _group_of_each(table: BridgeFile, laid_out: LaidOut) -> dict[str, tuple[str, str]]:
+    """Return for each bar the title of its group and the place that says so; bars by name win over roles."""
+    of_role: dict[str, tuple[str, str]] = {}
+    by_name: dict[str, tuple[str, str]] = {}
+    names = {frozenset((bar.start, bar.end)): f"{bar.start}-{bar.end}" for bar in laid_out.bars}
+    for title, group in table.members.items():
+        place = f"members.{written_key(title)}"
+        if group.bars is None:
+            for name in _bars_of_role(title, laid_out, place):
+                of_role[name] = (title, place)
+            continue
+        if not group.bars:
+            raise InputError("the list of bars is empty", place=f"{place}.bars")
+        for number, bar in enumerate(group.bars):
+            here = f"{place}.bars[{number}]"
+            start, end = _joints_of(bar, here)
+            name = names.setdefault(frozenset((start, end)), bar)
+            if name in by_name:
+                raise InputError(f'bar "{bar}" is given twice (also at {by_name[name][1]})', place=here)
+            by_name[name] = (title, here)
+    return of_role | by_name
+
+
+def _bars_of_role(title: str, laid_out: LaidOut, place: str) -> Iterator[str]:
+    """Return the layout's bars with the role that a group is named after."""
+    roles = {bar.role for bar in laid_out.bars}
+    if not roles:
+        raise InputError('without a [layout] a group needs its bars: bars = ["L0-U1", ...]', place=place)
+    if title not in roles:
+        raise UnknownNameError(
+            f"a group without bars carries the name of a role of the layout ({', '.join(sorted(roles))})",
+            place=place,
+            nearest=nearest_name(title, roles),
+        )
+    return (f"{bar.start}-{bar.end}" for bar in laid_out.bars if bar.role == title)
+
+
+def _joints_of(bar: str, place: str) -> tuple[str, str]:
+    """Return the two joints that a bar's name joins."""
+    start, dash, end = (part.strip() for part in bar.partition("-"))
+    if not (dash and start and end) or "-" in end:
+        raise InputError(f'a bar is written as its two joints, "U1-L2", got "{bar}"', place=place)
+    return start, end
+
+
+def _member(name: str, group: MemberGroup, joints: Mapping[str, tuple[float, float]], place: str, role: str) -> Member:
+    """Return one member of a group."""
+    start, end = _joints_of(name, place)
+    for joint in (start, end):
+        if joint not in joints:
+            raise UnknownNameError(f'joint "{joint}" is not defined', place=place, nearest=nearest_name(joint, joints))
+    try:
+        return Member(start, end, group.area, group.modulus, density=group.density, role=role)
+    except MovloadError as error:
+        raise error.at(place) from None

@@ -1,0 +1,99 @@
+"""The schemas that are published: of the two files, and of the ratings document that ``--json`` prints."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from pydantic import BaseModel, ConfigDict, Field
+
+from movload.files.schema.bridge import BridgeFile
+from movload.files.schema.vehicle import VehicleFile
+
+
+class Document(BaseModel):
+    """Part of a result document; fields are only ever added within one format number."""
+
+    model_config = ConfigDict(extra="forbid")
+
+
+class PlacementDocument(Document):
+    """The axles as they stand, front axle first; SI."""
+
+    x: list[float]
+    load: list[float] = Field(description="whole axle [N]")
+    share: list[float] = Field(description="part of a whole axle that reaches the part")
+    impact: list[float] = Field(description="dynamic allowance of each axle; its effect counts 1 + impact times")
+
+
+class RatingDocument(Document):
+    """One rated row under one crossing."""
+
+    crossing: str
+    level: str
+    part: str
+    row: str
+    sense: str = Field(description="tension or compression")
+    factor: float | None = Field(description="RF; null when there is strength to spare and no live effect")
+    strength: float = Field(description="magnitude [N]")
+    permanent: float = Field(description="permanent effect [N], tension positive")
+    live: float = Field(description="live effect with share and impact [N], tension positive")
+    impact: float
+    safe_weight: float | None = Field(description="factor x the vehicle's weight [N]; null with factor")
+    position: float | None = Field(description="x of the front axle [m]; null when the vehicle is off the bridge")
+    heading: int = Field(description="+1 toward +x, -1 the other way, 0 off the bridge")
+    axle: int | None = Field(description="the axle, counted from 1 at the front, that stands on a station")
+    station: int | None = Field(description="that station's number, counted from 0")
+    permanent_use: float | None = Field(description="part of the strength that permanent load alone uses")
+    placement: PlacementDocument | None
+
+
+class CrossingDocument(Document):
+    """Who crosses and how."""
+
+    title: str
+    kind: str
+    weight: float = Field(description="[N]")
+    place: str
+    source: str
+
+
+class CoverageDocument(Document):
+    """What the answer covers, by member names."""
+
+    full: list[str] = Field(description="rated in every sense they feel")
+    partly: list[str]
+    none: list[str]
+    not_rated: list[str]
+
+
+class NoteDocument(Document):
+    """What a reader must know."""
+
+    code: str
+    subject: str
+    text: str
+    source: str
+
+
+class RatingsDocument(Document):
+    """The document movload.ratings/1: SI, unrounded; rows worst first by crossing."""
+
+    format: str
+    title: str
+    method: str
+    statement: str
+    units: dict[str, str]
+    crossings: list[CrossingDocument]
+    coverage: CoverageDocument
+    notes: list[NoteDocument]
+    cautions: list[str]
+    sources: list[str]
+    rows: list[RatingDocument]
+
+
+_MODELS: dict[str, type[BaseModel]] = {"bridge": BridgeFile, "vehicle": VehicleFile, "ratings": RatingsDocument}
+
+
+def schema_of(subject: str) -> dict[str, Any]:
+    """Return the JSON Schema of "bridge", "vehicle" or "ratings"."""
+    return {"$schema": "https://json-schema.org/draft/2020-12/schema", **_MODELS[subject].model_json_schema()}

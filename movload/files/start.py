@@ -1,0 +1,124 @@
+"""A new bridge file, commented, from a form, panel lengths and depths: the first thing a newcomer writes."""
+
+from __future__ import annotations
+
+import re
+from typing import TYPE_CHECKING, Final
+
+from movload.arrays import Floats, frozen_floats
+from movload.bridge.layout import lay_out
+from movload.errors import InputError, MovloadError
+from movload.units import to_si
+
+if TYPE_CHECKING:
+    from movload.bridge.layout import Layout
+    from movload.units import UnitSystem
+
+_MOST_REPEATS: Final = 1000
+_STAND_IN: Final = {"mm": ("2000", "200", "7850"), "in": ("3.0", "29000", "490")}
+
+
+def lengths_from(text: str, units: UnitSystem, place: str) -> Floats:
+    """Return typed lengths [m]: ``4.2 4.35 4.2``, ``6x3.5``, or with commas when units have spaces.
+
+    Raises
+    ------
+    InputError
+        Nothing typed, or something that is not a length.
+    """
+    words = [word.strip() for word in (text.split(",") if "," in text else text.split())]
+    lengths: list[float] = []
+    for number, word in enumerate(words):
+        here = f"{place}[{number}]"
+        repeat = re.fullmatch(r"(\d+)\s*[x*×]\s*(.+)", word)
+        count, one = (int(repeat[1]), repeat[2]) if repeat else (1, word)
+        if count > _MOST_REPEATS:
+            raise InputError(f"at most {_MOST_REPEATS} repeats, got {count}", place=here)
+        lengths += [_length(one, units, here)] * count
+    if not lengths:
+        raise InputError("no length is typed", place=place)
+    return frozen_floats(lengths)
+
+
+def _length(word: str, units: UnitSystem, place: str) -> float:
+    """Return one length [m]; a bare number is in the file's units."""
+    try:
+        return float(word) * units.factor("length")
+    except ValueError:
+        pass
+    try:
+        return to_si(word, "length")
+    except MovloadError as error:
+        raise error.at(place) from None
+
+
+def starter_text(title: str, layout: Layout, units: UnitSystem) -> str:
+    """Return the text of a bridge file for a layout.
+
+    What nobody can know yet (strengths, densities, weights, shares) stands as "?": `movload rate` refuses until each
+    is filled. Areas are stand-ins: the forces of a determinate truss do not depend on them.
+    """
+    laid_out = lay_out(layout)
+    area, modulus, density = _STAND_IN["in" if units.section == "in" else "mm"]
+    first, last = laid_out.panel_points[0], laid_out.panel_points[-1]
+    roles = dict.fromkeys(bar.role for bar in laid_out.bars)
+    groups = "\n".join(_group(role, area, modulus) for role in roles)
+    middle = f"middle = {_quoted(layout.middle)}\n" if layout.middle else ""
+    return f"""# {_comment(title)}: begun with "movload start". Fill every "?"; "movload rate" asks until none is left.
+title = {_quoted(title)}
+
+[units]                     # of bare numbers; a string carries its own: "12'-6 1/2\\"", "18 kip", "9.5 t"
+length = {_quoted(units.length)}
+force = {_quoted(units.force)}
+section = {_quoted(units.section)}              # areas in {units.symbol("area")}, moduli in {units.symbol("stress")}
+
+[layout]                    # L0, L1 ... lower joints, U0, U1 ... upper ones, counted along +x
+form = {_quoted(layout.form)}
+deck = {_quoted(layout.deck)}
+panels = {_numbers(layout.panels, units)}   # measured, one by one: never assume them equal
+depths = {_numbers(layout.depths, units)}
+{middle}
+[supports]                  # "pinned", or {{ slides = 0 }}: degrees of its bed from +x
+{first} = "pinned"
+{last} = {{ slides = 0 }}
+
+# One group for the bars of each role; bars = ["U1-L2"] in a group of its own gives single bars their own values.
+# area: a stand-in, put the measured one. density: {density} {units.symbol("density")} is common for steel.
+# permits: the axial force each bar may carry, margin included, in {units.symbol("force")}.
+{groups}
+[deck]
+truss_share = "?"           # share of a whole axle that reaches one truss: 0.5 on the centre line, more beside a kerb
+
+[permanent]
+deck = "?"                  # deck, floor and surfacing of the whole bridge, {units.symbol("line load")}
+truss_share = "?"           # 0.5 when it lies symmetrically
+
+[rating]
+impact = "?"                # dynamic allowance, e.g. 0.30
+"""
+
+
+def _group(role: str, area: str, modulus: str) -> str:
+    """Return one member group with its placeholders."""
+    return (
+        f'[members.{_quoted(role)}]\narea = {area}\nmodulus = {modulus}\ndensity = "?"\n'
+        'permits = { tension = "?", compression = "?" }\n'
+    )
+
+
+def _numbers(values: Floats, units: UnitSystem) -> str:
+    """Return lengths as a TOML list in the file's units."""
+    return "[" + ", ".join(f"{units.shown(float(value), 'length'):.10g}" for value in values) + "]"
+
+
+def _quoted(text: str) -> str:
+    """Return text as a TOML string."""
+    escaped = text.replace("\\", "\\\\").replace('"', '\\"')
+    return (
+        '"' + "".join(f"\\u{ord(sign):04x}" if ord(sign) < 32 or ord(sign) == 127 else sign for sign in escaped) + '"'
+    )
+
+
+def _comment(text: str) -> str:
+    """Return text as one line of a comment."""
+    return "".join(" " if ord(sign) < 32 or ord(sign) == 127 else sign for sign in text)

@@ -1,0 +1,144 @@
+"""A bridge solved once for a method: parts with their lines, permanent effects and strengths. No vehicle in it."""
+
+from __future__ import annotations
+
+import itertools
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING
+
+import numpy as np
+
+from movload.arrays import Floats, held
+from movload.bridge.across import Across
+from movload.errors import MissingDataError, Note
+from movload.rating.factor_sets import PERMITTED, FactorSet
+from movload.statics.influence import lines_of
+from movload.statics.part import Effect, Part
+from movload.statics.permanent import PERMANENT_CLASSES, permanent_effects
+from movload.statics.stiffness import factored
+from movload.strength.typed import permitted_strengths
+
+if TYPE_CHECKING:
+    from movload.bridge.bridge import Bridge, PermanentLoads
+    from movload.units import UnitSystem
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class SolvedBridge:
+    """Everything about a bridge that no vehicle changes.
+
+    Attributes
+    ----------
+    title
+        The bridge's own.
+    parts
+        What is rated, each with its response and its across line; rows are counted part after part.
+    permanent
+        Permanent effects (classes, R) [N, m], tension positive.
+    strength
+        Strengths (levels, R, 2), tension then compression; nan where none is known.
+    notes
+        What a reader must know.
+    sources
+        Where the data came from.
+    classes
+        Names of the permanent classes.
+    method
+        The factor set.
+    impact
+        (R, 2) dynamic allowance [-].
+    units
+        Units to show results in.
+    """
+
+    title: str
+    parts: tuple[Part, ...]
+    permanent: Floats
+    strength: Floats
+    notes: tuple[Note, ...] = ()
+    sources: tuple[str, ...] = ()
+    classes: tuple[str, ...] = field(kw_only=True)
+    method: FactorSet = field(kw_only=True)
+    impact: Floats = field(kw_only=True)
+    units: UnitSystem = field(kw_only=True)
+
+    @property
+    def effects(self) -> tuple[Effect, ...]:
+        """All rows, part after part."""
+        return tuple(itertools.chain.from_iterable(part.response.effects for part in self.parts))
+
+
+def solve(bridge: Bridge, method: FactorSet = PERMITTED) -> SolvedBridge:
+    """Return a bridge solved for a method.
+
+    Raises
+    ------
+    MissingDataError
+        Something that a rating needs has not been typed; every place is named.
+    UnstableError
+        The truss is a mechanism.
+    """
+    permanent_loads, share, impact = _required(bridge)
+    solver = factored(bridge.truss)
+    lines = lines_of(solver, bridge.deck.panel_points)
+    strength = permitted_strengths(lines.effects, bridge.permits)
+    return SolvedBridge(
+        bridge.title,
+        (Part("truss", lines, Across.typed(share)),),
+        permanent_effects(solver, bridge.deck.panel_points, permanent_loads),
+        held(np.repeat(strength[None], len(method.levels), axis=0)),
+        _notes(bridge),
+        bridge.sources,
+        classes=PERMANENT_CLASSES,
+        method=method,
+        impact=held(np.full(strength.shape, impact)),
+        units=bridge.units,
+    )
+
+
+def _required(bridge: Bridge) -> tuple[PermanentLoads, float, float]:
+    """Return permanent loads, axle share and impact, or raise with everything that is still to be typed."""
+    needed = [f'{place} (still holds "?")' for place in bridge.missing]
+    asked = {
+        "deck.truss_share (share of a whole axle that reaches one truss)": bridge.deck.truss_share,
+        "permanent.deck and permanent.truss_share (weight per length of the whole deck, 0 if none)":
+            bridge.permanent,
+        "rating.impact (dynamic allowance, e.g. 0.30; 0 only if a rule allows it)": bridge.impact,
+    }  # fmt: skip
+    keys = [place.split(" ", 1)[0] for place in bridge.missing]
+    needed += [
+        words for words, value in asked.items()
+        if value is None and not any(key.startswith(words.split(".", 1)[0]) for key in keys)
+    ]  # fmt: skip
+    weightless = [member.name for member in bridge.truss.members if member.density is None]
+    if weightless and not any(key.endswith("density") for key in keys):
+        needed.append(
+            f"density of {', '.join(weightless[:3])}{' ...' if len(weightless) > 3 else ''} (0 if in deck weight)"
+        )
+    if not bridge.permits and not any("permits" in key for key in keys):
+        needed.append("permits of at least one member group: { tension = ..., compression = ... }")
+    permanent, share, impact = bridge.permanent, bridge.deck.truss_share, bridge.impact
+    if needed or permanent is None or share is None or impact is None:
+        raise MissingDataError("a rating needs data that is not there yet: " + "; ".join(needed), place=bridge.title)
+    return permanent, share, impact
+
+
+def _notes(bridge: Bridge) -> tuple[Note, ...]:
+    """Return what a reader of any rating of this bridge must know."""
+    truss = bridge.truss
+    notes = [Note("shares-typed", "truss", _SHARES.format(deck=bridge.deck, permanent=bridge.permanent))]
+    if truss.redundancy > 0:
+        notes.append(
+            Note(
+                "redundant", "truss",
+                f"{truss.redundancy} member(s) or reaction(s) beyond what equilibrium can find: forces depend on the "
+                "areas and on a fit without initial stress.",
+            )
+        )  # fmt: skip
+    return tuple(notes)
+
+
+_SHARES = (
+    "One truss is rated with typed shares: {deck.truss_share:g} of a whole axle and {permanent.truss_share:g} of the "
+    "deck's weight reach it, wherever the vehicle keeps across the deck."
+)

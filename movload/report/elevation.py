@@ -1,0 +1,166 @@
+"""The truss to scale: bars by what they carry, joints with their names."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+from typing import TYPE_CHECKING, Final
+
+import numpy as np
+
+from movload.report.ink import ACCENT, FIRM, INK, PAPER, POINT, THIN
+from movload.report.labels import Lettering, Spot
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from movload.arrays import Floats
+    from movload.bridge.truss import Truss
+    from movload.report.sheet import Place, Strip
+
+PIN: Final = 0.9  # mm, radius of a joint
+_TRIM: Final = 1.15  # mm, how far a bar stops short of its joint
+_IDLE: Final = 0.005  # of the largest force: a bar that carries less is drawn dotted
+_LEAST_OPEN: Final = 0.95  # mm, a double line must stay open on a copy
+_LEAST_SOLID: Final = 0.4  # mm
+_ALONG: Final = (0.5, 0.42, 0.58, 0.35, 0.65, 0.28, 0.72, 0.22, 0.78)
+_ASIDE: Final = 0.7  # mm between a bar and the ink beside it
+
+
+@dataclass(frozen=True, slots=True)
+class Look:
+    """How a bar is drawn: ``style`` plain, open (tension), solid (compression) or dotted; ``weight`` [mm] overall."""
+
+    style: str
+    weight: float
+    colour: str = INK
+
+
+PLAIN_BAR: Final = Look("plain", FIRM)
+
+
+def looks(forces: Floats, heaviest: float, accented: int = -1) -> list[Look]:
+    """Return how each bar is drawn when it carries ``forces`` (M,) [N, + tension].
+
+    Parameters
+    ----------
+    heaviest
+        Weight of the bar with the largest force [mm].
+    accented
+        Row of the governing bar; -1 when no bar governs.
+    """
+    largest = float(np.abs(forces).max(initial=0.0))
+    return [
+        _look(float(force) / largest if largest else 0.0, heaviest, ACCENT if row == accented else INK)
+        for row, force in enumerate(forces)
+    ]
+
+
+def _look(portion: float, heaviest: float, colour: str) -> Look:
+    """Return how a bar is drawn that carries ``portion`` (-1 ... 1) of the largest force."""
+    if abs(portion) < _IDLE:
+        return Look("dotted", THIN, colour)
+    style, least = ("open", _LEAST_OPEN) if portion > 0 else ("solid", _LEAST_SOLID)
+    return Look(style, least + (heaviest - least) * abs(portion), colour)
+
+
+def heaviest_bar(depth: float) -> float:
+    """Return the weight of the most loaded bar [mm] on a truss drawn ``depth`` [mm] deep."""
+    return min(max(0.06 * depth, 1.3), 2.6)
+
+
+def draw_bars(strip: Strip, truss: Truss, bars: Sequence[Look]) -> None:
+    """Draw every bar, short of its joints, the heaviest first so that a light one is never hidden."""
+    for row in sorted(range(len(bars)), key=lambda row: -bars[row].weight):
+        start, end = (strip.mm(*truss.coordinates[joint]) for joint in truss.ends[row])
+        share = min(_TRIM / math.dist(start, end), 0.4)
+        line = truss.coordinates[truss.ends[row]]
+        x, y = (line[0] + np.array([[share], [1 - share]]) * (line[1] - line[0])).T
+        _draw_bar(strip, (x, y), bars[row], truss.members[row].name)
+        strip.sheet.board.keep_clear([start, end], bars[row].weight / 2)
+
+
+def _draw_bar(strip: Strip, line: tuple[Floats, Floats], look: Look, name: str) -> None:
+    """Draw one bar; tension is a heavy stroke with a bare one in it."""
+    dots = {"linestyle": (0, (1.0, 2.2)), "dash_capstyle": "butt"} if look.style == "dotted" else {}
+    strip.plot(*line, look.weight, look.colour, label=f"bar {name}", **dots)
+    if look.style == "open":
+        strip.plot(*line, look.weight - 2 * THIN, PAPER, label=f"bar {name} open")
+
+
+def draw_joints(strip: Strip, truss: Truss, solid: frozenset[str] = frozenset()) -> None:
+    """Draw every joint as a pin; those in ``solid`` filled."""
+    for name, (x, y) in truss.joints.items():
+        middle = strip.mm(x, y)
+        strip.sheet.disc(middle, PIN, INK if name in solid else PAPER, label=f"joint {name}", linewidth=THIN / POINT)
+        strip.sheet.board.keep_clear([middle], PIN)
+
+
+def name_joints(strip: Strip, truss: Truss, *, besides: frozenset[str] = frozenset()) -> int:
+    """Write the joints' names, but for those that stand already; return how many found no room."""
+    left_out = 0
+    for name in truss.joints:
+        if name not in besides:
+            lettering = strip.sheet.lettering(name)
+            left_out += not strip.sheet.write(lettering, name_spots(strip, truss, name, lettering))
+    return left_out
+
+
+def name_spots(strip: Strip, truss: Truss, name: str, lettering: Lettering) -> list[Spot]:
+    """Return where a joint's name may stand: around it, the widest gap between its bars first."""
+    x, y = strip.mm(*truss.joints[name])
+    bars = _bar_directions(truss, name)
+    turns = [math.radians(15 * step) for step in range(24)]
+
+    def crowding(turn: float) -> float:
+        gap = min((abs(math.remainder(turn - bar, math.tau)) for bar in bars), default=math.pi)
+        upright = abs(math.remainder(2 * turn - math.pi, math.tau)) / 12  # straight above or below reads best
+        return -min(gap, math.radians(80)) + upright
+
+    spots = []
+    for away in (0.9, 1.7, 2.6, 3.6):
+        for turn in sorted(turns, key=crowding):
+            spots.append(_beside((x, y), turn, PIN + away, lettering))
+    return spots
+
+
+def _beside(point: Place, turn: float, away: float, lettering: Lettering) -> Spot:
+    """Return the spot of a level text whose ink is ``away`` [mm] from a point in direction ``turn``."""
+    cosine, sine = math.cos(turn), math.sin(turn)
+    return Spot(
+        point[0] + cosine * (away + lettering.width / 2), point[1] + sine * (away + lettering.ink_height / 2)
+    )
+
+
+def _bar_directions(truss: Truss, name: str) -> list[float]:
+    """Return the direction [radians] of each bar that leaves a joint."""
+    joint = truss.joint_index[name]
+    directions = []
+    for (start, end), (along, up) in zip(truss.ends, truss.spans, strict=True):
+        if joint in {start, end}:
+            sign = 1 if joint == start else -1
+            directions.append(math.atan2(sign * up, sign * along))
+    return directions
+
+
+def bar_spots(strip: Strip, truss: Truss, row: int, lettering: Lettering, weight: float) -> list[Spot]:
+    """Return where a bar's label may stand: along it on either side, outside the truss first, from its middle on."""
+    start, end = (np.array(strip.mm(*truss.coordinates[joint])) for joint in truss.ends[row])
+    if (end - start)[0] < 0 or (abs((end - start)[0]) < 1e-9 and (end - start)[1] < 0):
+        start, end = end, start
+    turn = math.atan2(*(end - start)[::-1])
+    across = np.array([-math.sin(turn), math.cos(turn)])
+    away = weight / 2 + _ASIDE + lettering.ink_height / 2
+    middle_y = strip.mm(0.0, float(np.ptp(truss.coordinates[:, 1]) / 2 + truss.coordinates[:, 1].min()))[1]
+    first = 1 if abs(math.degrees(turn)) > 20 or (start + end)[1] / 2 > middle_y else -1
+    return [
+        Spot(*(start + share * (end - start) + side * away * across), math.degrees(turn))
+        for share in _ALONG
+        for side in (first, -first)
+    ]
+
+
+def accent_joint(strip: Strip, truss: Truss, name: str) -> None:
+    """Ring a joint in the accent: the support or panel point whose row is shown."""
+    strip.sheet.disc(strip.mm(*truss.joints[name]), 2 * PIN, "none", ACCENT, linewidth=FIRM / POINT)
+

@@ -1,0 +1,11 @@
+"""The figures a person asks for: the truss as it stands, influence lines beneath it, and a peak with its vehicle."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from movload.report.frame import SUFFIXES, figure_bytes
+from movload.report.influence_sheet import influence_figure
+from movload.report.standing import elevation_figure
+
+__all__ = ["SUFFIXES", "elevation_figure", "figure_bytes", "influence_figure"]

@@ -1,0 +1,100 @@
+"""What frames every figure: its heading with a rule under it, its caption, and the figure turned into bytes."""
+
+from __future__ import annotations
+
+import io
+from typing import TYPE_CHECKING, Final
+
+import matplotlib as mpl
+
+from movload.errors import InputError
+from movload.report.dimensions import row_height
+from movload.report.ink import ATTEMPTS, BOLD, EDGE, FINE, GREY, INK, STYLE
+from movload.report.labels import Lettering, Spot, wrapped
+
+if TYPE_CHECKING:
+    from collections.abc import Callable
+
+    from matplotlib.figure import Figure
+
+    from movload.report.sheet import Sheet
+
+SUFFIXES: Final = (".png", ".svg", ".pdf")
+TITLE: Final = 13.0  # pt
+HEADING: Final = 11.0  # mm from the sheet's upper edge to the rule under its title
+MARGIN: Final = EDGE + 2.0  # mm, where words start
+
+_NO_DATE: Final[dict[str, dict[str, None]]] = {
+    ".png": {"Software": None},
+    ".svg": {"Date": None, "Creator": None},
+    ".pdf": {"CreationDate": None, "Creator": None, "Producer": None},
+}
+
+
+def figure_bytes(figure: Figure, suffix: str) -> bytes:
+    """Return a figure as the content of a file; the same figure always gives the same bytes.
+
+    Parameters
+    ----------
+    suffix
+        One of SUFFIXES.
+
+    Raises
+    ------
+    InputError
+        Another suffix.
+    """
+    if suffix not in SUFFIXES:
+        raise InputError(f'a figure is written as {", ".join(SUFFIXES)}, got "{suffix}"', place="figure")
+    held = io.BytesIO()
+    with mpl.rc_context(dict(STYLE)):
+        figure.savefig(held, format=suffix[1:], dpi=figure.dpi, metadata=_NO_DATE[suffix])
+    return held.getvalue()
+
+
+def fitted(draw: Callable[[float, float], tuple[Sheet, int]]) -> Figure:
+    """Return the first attempt that leaves no label out; else the one that leaves out the fewest.
+
+    Parameters
+    ----------
+    draw
+        Makes the figure on a sheet of a width [mm] in a letter size [pt] and says how many labels found no room.
+    """
+    with mpl.rc_context(dict(STYLE)):
+        best, fewest = draw(*ATTEMPTS[0])
+        for width, size in ATTEMPTS[1:]:
+            if not fewest:
+                break
+            sheet, left_out = draw(width, size)
+            if left_out < fewest:
+                best, fewest = sheet, left_out
+    return best.figure
+
+
+def draw_heading(sheet: Sheet, title: str, remark: str) -> None:
+    """Write the title, a remark at the right, and the rule under both."""
+    level = sheet.height - HEADING + 4.0
+    right = sheet.width - MARGIN
+    words = Lettering(remark, sheet.size)
+    sheet.write_at(words, Spot(right - words.width / 2, level), GREY)
+    size = TITLE
+    while Lettering(title, size, bold=True).width > right - words.width - MARGIN - 6.0 and size > sheet.size:
+        size -= 0.5
+    sheet.write_from(Lettering(title, size, bold=True), MARGIN, level)
+    rule = sheet.height - HEADING
+    sheet.stroke([(MARGIN, rule), (right, rule)], BOLD)
+
+
+def caption_height(caption: str, width: float, size: float) -> float:
+    """Return the height a caption needs on a sheet of ``width`` [mm], its rule and the margin under it included."""
+    return len(wrapped(caption, size, width - 2 * MARGIN)) * row_height(size) + EDGE + 3.0
+
+
+def draw_caption(sheet: Sheet, caption: str) -> None:
+    """Write the caption at the foot of the sheet under a thin rule."""
+    lines = wrapped(caption, sheet.size, sheet.width - 2 * MARGIN)
+    top = caption_height(caption, sheet.width, sheet.size)
+    sheet.stroke([(MARGIN, top), (sheet.width - MARGIN, top)], FINE)
+    for number, line in enumerate(lines):
+        level = top - 1.5 - (number + 0.5) * row_height(sheet.size)
+        sheet.write_from(Lettering(line, sheet.size), MARGIN, level, INK)

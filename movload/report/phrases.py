@@ -1,0 +1,126 @@
+"""How numbers and results are said in tables: letters beside signs, ratings and weights rounded down, cautions."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING, Final
+
+from movload.units import unit_factor
+
+if TYPE_CHECKING:
+    from movload.peaks.peaks import Peak
+    from movload.rating.ratings import Coverage, Rating
+    from movload.statics.part import Effect
+    from movload.units import Quantity, UnitSystem
+
+ARROWS: Final = {1: "→", -1: "←", 0: ""}
+_NEVER_ABOVE: Final = 100.0  # ratings beyond this say no more than that the row does not matter
+_HAIR: Final = 1e-9  # of the value: what round-off put just below a digit still counts as reaching it
+
+CAUTIONS: Final = (
+    "An analysis aid until a qualified engineer adopts it; local codes and licensed practice decide.",
+    (
+        "Not checked: floor, deck, connections, pins, bearings, foundations, fatigue, hidden section loss, bending of "
+        "members, sideways buckling of a pony truss's top chord, 3-D action."
+    ),
+    (
+        "Holds for the geometry, condition and axle weights in the files only; axle weights must be weighed, not read "
+        "from a brochure. Stop using the bridge at any sign of distress."
+    ),
+)
+
+
+def quantity_of(effect: Effect) -> Quantity:
+    """Return the quantity an effect is shown as: a force, or a deflection in section units."""
+    return "section" if effect.kind == "down" else "force"
+
+
+def effect_text(effect: Effect, value: float, units: UnitSystem) -> str:
+    """Return an effect as text, a member force with its letter: ``212.4 T``, ``-88.1 C``."""
+    decimals = 2 if effect.kind == "down" else 1
+    text = f"{units.shown(value, quantity_of(effect)):.{decimals}f}"
+    if float(text) == 0:
+        return "0"
+    if effect.kind != "axial":
+        return text
+    return f"{text} {'T' if value > 0 else 'C'}"
+
+
+def rounded_down(value: float, decimals: int) -> float:
+    """Return a value cut to decimals, never up: 0.996 gives 0.99."""
+    scale: float = 10.0**decimals
+    return math.floor(value * scale * (1.0 + _HAIR)) / scale
+
+
+def factor_text(factor: float) -> str:
+    """Return a rating factor to two decimals, rounded down; below 1 it never reads 1.00."""
+    if math.isnan(factor):
+        return "not rated"
+    if math.isinf(factor):
+        return "no live effect"
+    if factor >= _NEVER_ABOVE:
+        return f"over {_NEVER_ABOVE:.0f}"
+    down = rounded_down(factor, 2)
+    return f"{min(down, 0.99) if factor < 1 else down:.2f}"
+
+
+def weight_text(weight: float, units: UnitSystem) -> str:
+    """Return a weight [N] in tonnes and short tons, each rounded down from the unrounded value.
+
+    The system of the file comes first.
+    """
+    if not math.isfinite(weight):
+        return "-"
+    order = ("short ton", "t") if units.length in {"ft", "in"} else ("t", "short ton")
+    first, second = (
+        f"{rounded_down(weight / unit_factor(unit, 'force'), 1):.1f} {'short tons' if unit == 'short ton' else unit}"
+        for unit in order
+    )
+    return f"{first} ({second})"
+
+
+def use_text(rating: Rating) -> str:
+    """Return how much of the strength permanent load alone uses, in words; "" unless it uses all of it."""
+    if rating.factor > 0:
+        return ""
+    use = rating.permanent_use
+    if math.isinf(use):
+        return "permanent load alone; no strength"
+    return f"permanent load alone uses {math.floor(use * 100)} %"
+
+
+def place_text(peak: Peak, units: UnitSystem) -> str:
+    """Return where a peak's vehicle stands: front axle's place and heading."""
+    if peak.heading == 0:
+        return "off the bridge"
+    return f"{units.shown(peak.position, 'length'):.2f} {units.symbol('length')} {ARROWS[peak.heading]}"
+
+
+def standing_text(peak: Peak, stations: tuple[str, ...]) -> str:
+    """Return which axle stands on which panel point; "" when the vehicle is off."""
+    return f"axle {peak.axle + 1} on {stations[peak.station]}" if peak.heading else ""
+
+
+def coverage_text(coverage: Coverage) -> str:
+    """Return what an answer covers, in one sentence."""
+    total = len(coverage.full) + len(coverage.partly) + len(coverage.none)
+    text = f"{len(coverage.full)} of {total} members rated in every sense they feel"
+    if coverage.partly:
+        text += f"; {len(coverage.partly)} in one sense only ({_some(coverage.partly)})"
+    if coverage.none:
+        text += f"; {len(coverage.none)} not rated ({_some(coverage.none)})"
+    return f"{text}; {', '.join(coverage.not_rated)} not rated."
+
+
+def verdict_text(factor: float, coverage: Coverage) -> str:
+    """Return adequate, adequate only if, or not adequate, for the parts rated; the unrounded value decides."""
+    if factor < 1.0:
+        return "not adequate"
+    if coverage.complete:
+        return "adequate, for the members rated"
+    return f"adequate only if the {len(coverage.partly) + len(coverage.none)} members not fully rated are"
+
+
+def _some(names: tuple[str, ...]) -> str:
+    """Return the first few names."""
+    return ", ".join(names[:6]) + (" ..." if len(names) > 6 else "")

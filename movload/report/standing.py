@@ -1,0 +1,122 @@
+"""The truss as it stands: joints, bars, bearings, panel points and every length."""
+
+from __future__ import annotations
+
+from itertools import pairwise
+from typing import TYPE_CHECKING, Final
+
+import numpy as np
+
+from movload.report.deck_line import DeckLine, draw_abutments
+from movload.report.bearings import REACH, draw_bearings
+from movload.report.dimensions import dimension_string, row_height, row_of_words, row_title, upright_dimension
+from movload.report.elevation import PLAIN_BAR, bar_spots, draw_bars, draw_joints, name_joints
+from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
+from movload.report.ink import FAINT, FIRM, HAIR, INK, THIN
+from movload.report.labels import Spot
+from movload.report.sheet import Sheet, Window
+from movload.report.words import lengths, origin
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from matplotlib.figure import Figure
+
+    from movload.bridge.deck import PanelPoint
+    from movload.arrays import Floats
+    from movload.bridge.truss import Truss
+    from movload.report.sheet import Strip
+    from movload.units import UnitSystem
+
+_TALLEST: Final = 130.0  # mm of paper for the truss's own height
+_ABOVE: Final = 9.0  # mm over the truss for names
+_BELOW: Final = REACH + 7.0  # mm under it for bearings and names
+_SAME_X: Final = 1e-6  # m; joints closer in x stand over one another
+
+
+def elevation_figure(truss: Truss, panel_points: Sequence[PanelPoint], units: UnitSystem, *, title: str) -> Figure:
+    """Return the drawing of a truss as it stands.
+
+    Parameters
+    ----------
+    truss
+        Drawn to scale, +x to the right.
+    panel_points
+        Joints of the loaded chord in order; the first or last may be an abutment's x [m].
+    units
+        Lengths are written in its length unit.
+    title
+        Written over the drawing.
+
+    Returns
+    -------
+    Figure
+        As wide as its labels need, 300 to 420 mm.
+
+    Raises
+    ------
+    InputError, UnknownNameError
+        Panel points that are not joints, or not in order.
+    """
+    deck = DeckLine.of(truss, panel_points)
+    return fitted(lambda width, size: _drawn(truss, deck, units, title=title, paper=(width, size)))
+
+
+def _drawn(
+    truss: Truss, deck: DeckLine, units: UnitSystem, *, title: str, paper: tuple[float, float]
+) -> tuple[Sheet, int]:
+    """Draw one attempt; return the sheet and how many labels found no room on it."""
+    width, size = paper
+    row = row_height(size)
+    first, last, low, high = deck.extent(truss)
+    window = Window.fitting(first, last, width, steepest=_TALLEST / (high - low))
+    caption = f"To scale; lengths in {units.length}. {origin(truss, units)}. Filled joint: panel point, where the deck loads the truss."
+    foot = caption_height(caption, width, size)
+    strings = 2 * (row + 3.0) + 2 * row
+    zero = foot + strings + _BELOW - low * window.scale
+    sheet = Sheet(width, zero + high * window.scale + _ABOVE + HEADING, size)
+    draw_heading(sheet, title, "elevation")
+    draw_caption(sheet, caption)
+    strip = sheet.strip(window, zero, window.scale)
+    left_out = _draw_truss(strip, truss, deck)
+    left_out += _draw_strings(strip, truss, deck, units, foot)
+    return sheet, left_out
+
+
+def _draw_truss(strip: Strip, truss: Truss, deck: DeckLine) -> int:
+    """Draw bars, bearings, joints and abutments; return how many names found no room."""
+    draw_bearings(strip, truss)
+    draw_bars(strip, truss, [PLAIN_BAR] * len(truss.members))
+    draw_joints(strip, truss, deck.joints)
+    draw_abutments(strip, deck)
+    return name_joints(strip, truss) + _name_bars(strip, truss)
+
+
+def _name_bars(strip: Strip, truss: Truss) -> int:
+    """Write the names of bars that are not simply called by their joints; return how many found no room."""
+    left_out = 0
+    for row, member in enumerate(truss.members):
+        if member.name not in {f"{member.start}-{member.end}", f"{member.end}-{member.start}"}:
+            lettering = strip.sheet.lettering(member.name)
+            left_out += not strip.sheet.write(lettering, bar_spots(strip, truss, row, lettering, FIRM))
+    return left_out
+
+
+def _draw_strings(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem, foot: float) -> int:
+    """Draw panel lengths, the overall length, the rows of x and depth and the greatest depth."""
+    sheet, window, row = strip.sheet, strip.window, row_height(strip.sheet.size)
+    upper = foot + 2 * row + 2.0 + row + 3.0
+    places = [window.mm(x) for x in deck.stations]
+    left_out = dimension_string(sheet, upper, places, lengths(np.diff(deck.stations), units))
+    ends = (float(truss.coordinates[:, 0].min()), float(truss.coordinates[:, 0].max()))
+    overall = lengths([ends[1] - ends[0]], units)
+    left_out += dimension_string(sheet, upper - row - 3.0, [window.mm(x) for x in ends], overall)
+    for place, height in zip(places, deck.heights, strict=True):
+        sheet.stroke([(place, strip.mm(0, height)[1]), (place, foot + 2 * row + 1)], HAIR, FAINT, zorder=-5)
+    sheet.write_from(sheet.lettering("x"), 8.0, foot + 1.5 * row + 1)
+    left_out += row_of_words(sheet, foot + 1.5 * row + 1, places, lengths(deck.stations, units))
+    columns = deck.depths(truss)
+    sheet.write_from(sheet.lettering("depth"), 8.0, foot + 0.5 * row + 1)
+    texts = lengths([depth for _, depth in columns], units)
+    left_out += row_of_words(sheet, foot + 0.5 * row + 1, [window.mm(x) for x, _ in columns], texts)
+    return left_out

@@ -1,0 +1,105 @@
+"""Numbers and names as they are written in figures: a few digits, the letter T or C, a proper minus.
+
+Everything comes in SI and leaves in the units of a `UnitSystem`.
+"""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING, Final
+
+if TYPE_CHECKING:
+    from collections.abc import Iterable
+
+    from movload.bridge.truss import Truss
+    from movload.statics.influence import InfluenceLine
+    from movload.statics.part import Effect
+    from movload.units import UnitSystem
+
+_SMALL_UNITS: Final = {"mm": 0, "cm": 1, "in": 1}
+_AS_ONE: Final = 1e-9  # m; x closer than this to a joint's is the joint's
+
+
+def signed(number: float, decimals: int) -> str:
+    """Return a number with its sign written out: +0.585, −0.601."""
+    text = f"{abs(number):.{decimals}f}"
+    return text if not float(text) else ("−" if number < 0 else "+") + text
+
+
+def plain(number: float, decimals: int) -> str:
+    """Return a number with a minus only when it needs one."""
+    return signed(number, decimals).removeprefix("+")
+
+
+def figures(largest: float, wanted: int = 3) -> int:
+    """Return how many decimals give the largest number of a kind ``wanted`` figures, 0 ... 6."""
+    if not (math.isfinite(largest) and largest > 0):
+        return 0
+    return min(max(wanted - 1 - math.floor(math.log10(largest)), 0), 6)
+
+
+def lengths(metres: Iterable[float], units: UnitSystem) -> list[str]:
+    """Return lengths in one number of decimals: 2 (0 for mm, 1 for cm and in), more when a typed digit needs it."""
+    shown = [units.shown(length, "length") for length in metres]
+    least = _SMALL_UNITS.get(units.length, 2)
+    decimals = next((d for d in range(least, 3) if all(abs(round(x, d) - x) < 1e-6 for x in shown)), max(least, 3))
+    return [plain(x, decimals if least else 0) for x in shown]
+
+
+def letter(force: float) -> str:
+    """Return T for tension, C for compression, nothing for no force."""
+    return "T" if force > 0 else "C" if force < 0 else ""
+
+
+def bar_force(force: float, units: UnitSystem, decimals: int) -> str:
+    """Return a bar's force as it is written along it: 212 T, 88 C, 0."""
+    text = f"{abs(units.shown(force, 'force')):.{decimals}f}"
+    return f"{text} {letter(force)}" if float(text) else "0"
+
+
+def effect_value(effect: Effect, value: float, units: UnitSystem) -> str:
+    """Return an effect's value with sign, unit and letter: −88.0 kN C, +12.4 mm down."""
+    quantity, unit, word = ("section", units.section, "down") if effect.unit == "m" else ("force", units.force, "")
+    shown = units.shown(value, "section" if quantity == "section" else "force")
+    text = signed(shown, min(figures(abs(shown), 4), 3))
+    if effect.kind == "axial":
+        word = letter(value)
+        text = text.removeprefix("+")
+    return f"{text} {unit} {word}".rstrip()
+
+
+def ordinate_factor(effect: Effect, units: UnitSystem) -> float:
+    """Return by what an ordinate per newton is multiplied to be shown: force per force, or e.g. mm per kN."""
+    return units.factor("force") / units.factor("section") if effect.unit == "m" else 1.0
+
+
+def ordinate_decimals(line: InfluenceLine, units: UnitSystem) -> int:
+    """Return how many decimals a line's ordinates are written with."""
+    largest = float(abs(line.ordinates).max(initial=0.0)) * ordinate_factor(line.effect, units)
+    return max(3, figures(largest)) if line.effect.unit != "m" else figures(largest)
+
+
+def ordinate_unit(effect: Effect, units: UnitSystem) -> str:
+    """Return the unit of an ordinate: kN/kN, or mm/kN for a deflection."""
+    return f"{units.section if effect.unit == 'm' else units.force}/{units.force}"
+
+
+def sides(effect: Effect) -> tuple[str, str]:
+    """Return what stands above and below an influence line's axis."""
+    if effect.kind == "axial":
+        return "+T", "C"
+    if effect.kind == "down":
+        return "+down", "up"
+    positive = {"x": ("+to right", "to left"), "y": ("+up", "down"), "along": ("+along bed", "back")}
+    return positive.get(effect.name.rpartition(" ")[2], ("+off bed", "pull"))
+
+
+def origin(truss: Truss, units: UnitSystem) -> str:
+    """Say where x = 0 is, and that left is the start of x."""
+    at_zero = [name for name, (x, _) in truss.joints.items() if abs(x) < _AS_ONE]
+    if at_zero:
+        where = f"x = 0 at {' and '.join(at_zero)}"
+    else:
+        name, (x, _) = min(truss.joints.items(), key=lambda item: item[1][0])
+        where = f"{name} stands at x = {lengths([x], units)[0]} {units.length}"
+    return f"{where}; left = start of x"

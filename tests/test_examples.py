@@ -1,0 +1,189 @@
+"""The example bridges: each is read, solved and crossed, and one number of each is found again by hand.
+
+All bridges here are invented. The hand sums use statics alone (a section cut and a moment centre, or a joint; for the
+one redundant truss virtual work), carry five or six digits, and take nothing from movload.
+"""
+
+from __future__ import annotations
+
+import re
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+import pytest
+from numpy.testing import assert_allclose
+
+import movload
+from movload.statics.part import row_of
+from movload.statics.permanent import PERMANENT_CLASSES
+
+if TYPE_CHECKING:
+    from movload.peaks.peaks import Peak
+
+FOLDER = Path(__file__).resolve().parents[1] / "examples"
+KILONEWTON = 1e3
+KIP = 4448.2216152605  # N, exact (NIST SP 811, B.8, from memory)
+INCH = 0.0254  # m, exact
+HAND = 2e-5  # relative: what five or six digits carried through a sum of a few terms leave
+
+# What each file's opening comment says: who may cross, and what decides it.
+SAID = [
+    ("kettle_ford", "tractor_slurry_tanker", "L3-L4", "tension", False),
+    ("kettle_ford", "combine", "L3-U4", "compression", True),
+    ("fern_gully", "snow_groomer", "U3-U4", "compression", True),
+    ("fern_gully", "en_footbridge_service_vehicle", "U3-U4", "compression", False),
+    ("hollis_mill", "type_3", "U3-L4", "compression", False),
+    ("stag_ledge", "log_truck", "L2-L3", "tension", True),
+    ("tanner_gorge", "fire_engine", "M5-L5", "tension", True),
+    ("tanner_gorge", "ev3", "M5-L5", "tension", False),
+    ("withy_island", "h5", "U4-L4", "compression", True),
+    ("withy_island", "en_footbridge_service_vehicle", "U4-L4", "compression", True),
+]
+
+
+def path_of(name: str) -> Path:
+    """Return an example's file."""
+    return FOLDER / f"{name}.toml"
+
+
+def live(name: str, vehicle: str, row: str, side: str) -> Peak:
+    """Return a row's peak under whole axles on one truss, without impact."""
+    bridge = movload.read_bridge(path_of(name))
+    lines = movload.influence_lines(bridge.truss, bridge.deck.panel_points)
+    peaks = movload.sweep(lines, movload.read_vehicle(vehicle))[row]
+    return {"highest": peaks.highest, "lowest": peaks.lowest}[side]
+
+
+def test_every_example_is_checked_here() -> None:
+    assert {path.stem for path in FOLDER.glob("*.toml")} == {name for name, *_ in SAID}
+
+
+@pytest.mark.parametrize("name", sorted({name for name, *_ in SAID}))
+def test_an_example_opens_by_saying_that_it_is_invented(name: str) -> None:
+    text = path_of(name).read_text(encoding="utf-8")
+    opening = text.partition("title =")[0]
+    assert all(line.startswith("#") for line in opening.splitlines())
+    words = " ".join(opening.replace("#", " ").split())
+    assert "the Alder valley are invented" in words
+    commands = re.findall(r"movload rate examples/(\w+)\.toml (\w+)", words)
+    assert commands == [(said, vehicle) for said, vehicle, *_ in SAID if said == name]
+
+
+@pytest.mark.parametrize(("name", "vehicle", "row", "sense", "enough"), SAID)
+def test_an_example_rates_as_its_opening_says(name: str, vehicle: str, row: str, sense: str, enough: bool) -> None:
+    ratings = movload.rate(movload.read_bridge(path_of(name)), [movload.read_vehicle(vehicle)])
+    governing = ratings.governing(0)
+    assert (governing.effect.name, governing.sense) == (row, sense)
+    assert (governing.factor >= 1) == enough
+
+
+@pytest.mark.parametrize("name", sorted({name for name, *_ in SAID}))
+def test_every_bar_of_an_example_is_rated(name: str) -> None:
+    assert not movload.rate(movload.read_bridge(path_of(name)), [movload.read_vehicle("h5")]).coverage.none
+
+
+def test_kettle_ford_bottom_chord_by_a_section_cut() -> None:
+    """Bar L3-L4 under the slurry tanker, panel 4 cut, moments about U4 (17.14, 2.55).
+
+    Span 25.69, left of U4 17.14, right 8.55 m. Moment line there: 17.14 x 8.55 / 25.69 = 5.70444 m at U4, falling by
+    8.55/25.69 = 0.332814 a metre to the left and by 17.14/25.69 = 0.667186 to the right. The tanker heads left with its
+    first 85 kN axle on U4: the other 85 kN at 18.94, 62 kN at 12.94, 28 kN at 10.14.
+    M = 85 x 5.70444 + 85 x 0.667186 x 6.75 + 62 x 0.332814 x 12.94 + 28 x 0.332814 x 10.14 = 1229.18 kNm
+    (the second 85 kN axle on U4: 1226.4; the first one, heading right: 1127.7).
+    Arm of the sagging bar: 2.55 x 4.31 / sqrt(4.31^2 + 0.025^2) = 2.549957 m. Force 1229.18 / 2.549957 = 482.04 kN.
+    """
+    peak = live("kettle_ford", "tractor_slurry_tanker", "L3-L4", "highest")
+    assert_allclose(peak.value / KILONEWTON, 482.04, rtol=HAND)
+    assert_allclose(peak.position, 10.14, rtol=1e-12)
+    assert peak.heading == -1
+
+
+def test_fern_gully_top_chord_by_a_section_cut() -> None:
+    """Bar U3-U4 under the groomer, panel 4 cut, moments about L3 (7.83, 0).
+
+    Span 18.27, left 7.83, right 10.44 m: 7.83 x 10.44 / 18.27 = 4.47429 m at L3, falling by 10.44/18.27 = 4/7 a metre
+    to the left and 3/7 to the right. The groomer heads right with its 26 kN axle on L3: 28 kN 1.2 m to the left, 22 kN
+    1.2 m and 18 kN 2.4 m to the right.
+    M = 94 x 4.47429 - 28 x 1.2 x 4/7 - (22 x 1.2 + 18 x 2.4) x 3/7 = 420.583 - 19.200 - 29.829 = 371.554 kNm
+    (heading left: 366.4). U3 (6.525, 1.35), U4 (9.165, 1.36): the bar passes 1.35 + 0.01 x 1.305 / 2.64 = 1.354943 m
+    over L3, x 2.64 / sqrt(2.64^2 + 0.01^2) = 1.354933 m of arm. Force -371.554 / 1.354933 = -274.223 kN.
+    """
+    peak = live("fern_gully", "snow_groomer", "U3-U4", "lowest")
+    assert_allclose(peak.value / KILONEWTON, -274.223, rtol=HAND)
+    assert_allclose(peak.position, 7.83 + 2.4, rtol=1e-12)
+    assert peak.heading == 1
+
+
+def test_hollis_mill_middle_eyebar_is_pushed() -> None:
+    """Bar U3-L4 under a Type 3 on the left half: panel 4 cut, the right part held in balance. Inches.
+
+    L3 at 575.75, L4 at 768.75, L8 at 1535.25; U3 264.5, U4 264.25 high. The chord U3-U4 falls 0.25 in 193 and meets the
+    bottom chord at O, x = 575.75 + 264.5 x 193 / 0.25 = 204769.75. The bar's arm about O is
+    (204769.75 - 768.75) x 264.5 / sqrt(193^2 + 264.5^2) = 164794.2; R8's is 204769.75 - 1535.25 = 203234.5.
+    The truck heads left, its last axle on L3: 17 kip at 575.75, 17 at 527.75, 16 at 347.75:
+    R8 = (9787.75 + 8971.75 + 5564.00) / 1535.25 = 24323.5 / 1535.25 = 15.84335 kip (heading right: 14.23)
+    Force = -15.84335 x 203234.5 / 164794.2 = -19.5390 kip, compression.
+    """
+    peak = live("hollis_mill", "type_3", "U3-L4", "lowest")
+    assert_allclose(peak.value / KIP, -19.5390, rtol=HAND)
+    assert_allclose(peak.position, 347.75 * INCH, rtol=1e-12)
+    assert peak.heading == -1
+
+
+def test_stag_ledge_reaction_leans_with_its_bed() -> None:
+    """Reaction at L6 (30.16, 0.34), bed 12 degrees, under the log truck: moments of the whole truss about L0 (0, 0).
+
+    The reaction acts along (-sin 12, cos 12): its arm is 30.16 x 0.978148 + 0.34 x 0.207912 = 29.5716 m. A load on the
+    deck at x gives x / 29.5716, up to U5 at 25.18; beyond, the end stringer takes it to the abutment. The truck heads
+    left with its last axle on U5: 8.3 t at 25.18, 8.3 at 23.88, 8.7 at 15.98, 8.7 at 14.61, 5.5 at 9.96:
+    208.994 + 198.204 + 139.026 + 127.107 + 54.780 = 728.111 t m, / 29.5716 = 24.6220 t, x 9.80665 = 241.459 kN
+    (last axle but one on U5: 24.28 t; heading right: 23.6 t at most). Along x it pushes the truss to the left with
+    241.459 x 0.207912 = 50.2022 kN, which the pinned bearing L0 must return.
+    """
+    peak = live("stag_ledge", "log_truck", "L6 normal", "highest")
+    assert_allclose(peak.value / KILONEWTON, 241.459, rtol=HAND)
+    assert_allclose(peak.position, 9.96, rtol=1e-12)
+    assert peak.heading == -1
+    assert_allclose(live("stag_ledge", "log_truck", "L0 x", "highest").value / KILONEWTON, 50.2022, rtol=HAND)
+
+
+def test_tanner_gorge_rusted_hanger_from_load_to_rating() -> None:
+    """Hanger M5-L5 under the EV3: joint L5 of a level chord. Panels beside it 13.00 and 13.04 ft.
+
+    Live: one 31 kip axle on L5, the other 4 ft off on the longer side, the steering axle beyond the next floorbeam:
+    31 x (1 + 1 - 4 / 13.04) = 52.4908 kip. One truss, with impact: x 0.56 x 1.20 = 35.2738 kip.
+    Permanent: deck 1.9 x 0.5 x 13.02 = 12.3690; bottom chord 24/144 ft2 x 490 lb/ft3 x 13.02 ft = 1.0633; half the
+    hanger 5/144 x 490 x 14.0215/2 = 0.1193 (M5 on the diagonal from 28.00 ft: 28 x 13.04 / 26.04); sum 13.5516 kip.
+    RF = (45 - 13.5516) / 35.2738 = 0.89155.
+    """
+    assert_allclose(live("tanner_gorge", "ev3", "M5-L5", "highest").value / KIP, 52.4908, rtol=HAND)
+    ratings = movload.rate(movload.read_bridge(path_of("tanner_gorge")), [movload.read_vehicle("ev3")])
+    hanger = ratings.governing(0)
+    assert_allclose(hanger.permanent / KIP, 13.5516, rtol=HAND)
+    assert_allclose(hanger.live / KIP, 35.2738, rtol=HAND)
+    assert_allclose(hanger.factor, 0.89155, rtol=HAND)
+
+
+def test_withy_island_sunken_pier_by_virtual_work() -> None:
+    """What the pier's 12 mm take from its reaction: without the pier, a unit load down at L2 gives each bar n.
+
+    f = sum of n^2 l / (A E), the sinking of L2 a unit load, E = 21000 kN/cm2; L2 halves the span. With z = 1.55 m:
+    bottom chord n = M / z under U1 to U4: 0.95806, 2.89032, 2.88065, 0.94516 on 5.93, 6.05, 6.11, 5.87 m:
+    sum n^2 l = 111.930, / 18.7 cm2 = 5.98556
+    top chord n = -M / z over L1, L2, L3: 1.91290, 3.86452, 1.89355 on 5.99, 6.07, 6.00 m: 134.084, / 22.7 = 5.90679
+    diagonals n = 0.5 l / z, half panels 2.97, 2.96, 3.03, 3.02, 3.05, 3.06, 2.94, 2.93 m: 31.9437, / 10.4 = 3.07151
+    f = 14.96386 / 21000 = 7.12565e-4 m/kN. The reaction loses 0.012 / f = 16.8406 kN, and the bar U2-U3 over the pier
+    gains -3.86452 x 16.8406 = -65.0809 kN.
+    """
+    solved = movload.solve(movload.read_bridge(path_of("withy_island")))
+    sunk = solved.permanent[PERMANENT_CLASSES.index("settlement")] / KILONEWTON
+    assert_allclose(sunk[row_of(solved.effects, "L2 normal")], -16.8406, rtol=HAND)
+    assert_allclose(sunk[row_of(solved.effects, "U2-U3")], -65.0809, rtol=HAND)
+
+
+def test_withy_island_top_chord_is_pushed_only_by_the_sunken_pier() -> None:
+    """As its opening comment says: pulled but for the settlement, compressed with it, and no vehicle makes it worse."""
+    solved = movload.solve(movload.read_bridge(path_of("withy_island")))
+    components, settlement = solved.permanent[:, row_of(solved.effects, "U2-U3")]
+    assert components > 0 > components + settlement
+    assert live("withy_island", "h5", "U2-U3", "lowest").value == 0
