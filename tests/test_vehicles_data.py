@@ -137,7 +137,7 @@ def test_a_weighbridge_in_tonnes_becomes_newtons() -> None:
 
 
 def king_post(left: float, span: float) -> Truss:
-    """Return a truss with one post of 1 m at ``left`` [m]: its bottom chord carries the beam's moment there over 1 m."""
+    """Return a truss with a post of 1 m at ``left`` [m]: its bottom chord carries the beam's moment there over 1 m."""
     bars = [("L0", "L1"), ("L1", "L2"), ("L0", "U1"), ("U1", "L2"), ("U1", "L1")]
     joints = {"L0": (0.0, 0.0), "L1": (left, 0.0), "L2": (span, 0.0), "U1": (left, 1.0)}
     return Truss(joints, [Member(*bar, 1e-2, 2e11) for bar in bars], [Support("L0"), Support("L2", 0)])

@@ -25,78 +25,67 @@ LOST: Final = 10.0  # edges outside an end station is where an axle is put that 
 
 @dataclass(frozen=True, slots=True, eq=False)
 class Candidates:
-    """The candidate positions of trains with one number of axles and one set of headings.
+    """The candidate positions of V trains, as runs: one axle of one train in one heading making all its stops.
 
-    They are counted train by train, then heading, then axle, then stop. A stop is a station, or an end station just
-    lost: stops 0 ... B-1 are the stations, B is just outside the first and B + 1 just outside the last.
+    Runs are counted train by train, then heading, then axle. A stop is a station, or an end station just lost: stops
+    0 ... B-1 are the stations, B is just outside the first and B + 1 just outside the last.
 
     Attributes
     ----------
     stations
         (B,) [m].
     distances
-        (V, A) distance of each axle behind the front one [m].
+        (V, A) distance of each axle behind the front one [m]; shorter trains are padded.
     felt
-        (V, A) load of each axle as the part feels it [N], impact left out.
-    headings
-        (H,) +1 or -1.
+        (V, A) load of each axle as the part feels it [N], impact left out; 0 where padded.
+    axles
+        (V,) how many axles each train has.
+    train, heading, axle
+        (N,) whose run it is, in which heading (+1 or -1), and which axle makes the stops.
     """
 
     stations: Floats
     distances: Floats
     felt: Floats
-    headings: Ints
+    axles: Ints
+    train: Ints
+    heading: Ints
+    axle: Ints
 
     @property
     def stops(self) -> int:
-        """How many stops an axle makes: the stations and the two just outside."""
+        """How many stops a run makes: the stations and the two just outside."""
         return int(self.stations.size) + 2
 
-    @property
-    def per_train(self) -> int:
-        """How many candidates one train has."""
-        return int(self.headings.size * self.distances.shape[1]) * self.stops
-
-    def axles_at(self, first: int, last: int) -> tuple[Floats, Floats]:
-        """Return where axles stand (runs, stops, A) [m] and what they weigh (runs, 1, A) [N], runs first ... last - 1.
-
-        A run is one axle of one train in one heading making all its stops.
+    def standing(self, first: int, last: int) -> tuple[Floats, Floats]:
+        """Return where axles stand (N, stops, A) [m] and what they weigh (N, 1, A) [N] in runs first ... last - 1.
 
         x = stop + heading (distance of the standing axle - distance of each axle).
         """
-        runs = np.arange(first, last)
-        axles = self.distances.shape[1]
-        train, heading = runs // (axles * self.headings.size), runs // axles % self.headings.size
-        behind = self.distances[train]
-        ahead = self.headings[heading, None] * (behind[np.arange(runs.size), runs % axles, None] - behind)
+        train, axle = self.train[first:last], self.axle[first:last]
+        width = self.axles[train].max()
+        behind = self.distances[train, :width]
+        ahead = self.heading[first:last, None] * (self.distances[train, axle][:, None] - behind)
         stations = self.stations
         stops = np.concatenate((stations, stations[[0, -1]]))
         x = stops[None, :, None] + ahead[:, None, :]
         margin = edge(stations)
         x[:, -2][np.abs(x[:, -2] - stations[0]) <= margin] = stations[0] - LOST * margin
         x[:, -1][np.abs(x[:, -1] - stations[-1]) <= margin] = stations[-1] + LOST * margin
-        return x, self.felt[train, None, :]
-
-    def described(self) -> tuple[Ints, Ints, Ints]:
-        """Return heading, standing axle and stop of each candidate of one train, (per_train,) each."""
-        shape = (self.headings.size, self.distances.shape[1], self.stops)
-        heading, axle, stop = np.unravel_index(np.arange(self.per_train), shape)
-        return self.headings[heading], np.asarray(axle), np.asarray(stop)
+        return x, self.felt[train, None, :width]
 
 
 def candidates_of(stations: Floats, trains: Sequence[Train]) -> Candidates:
-    """Return the candidates of trains that have the same number of axles and the same headings."""
+    """Return the candidates of trains; those with as many axles should stand together (padding costs)."""
+    counts = [train.vehicle.loads.size for train in trains]
+    distances, felt = np.zeros((2, len(trains), max(counts)))
+    runs: list[tuple[int, int, int]] = []
+    for number, (train, count) in enumerate(zip(trains, counts, strict=True)):
+        distances[number, :count] = train.vehicle.distances
+        distances[number, count:] = distances[number, count - 1]
+        felt[number, :count] = train.vehicle.loads * train.shares
+        runs += [(number, heading, axle) for heading in train.headings for axle in range(count)]
+    train_of, heading_of, axle_of = np.array(runs, dtype=np.intp).T
     return Candidates(
-        stations,
-        np.array([train.vehicle.distances for train in trains]),
-        np.array([train.vehicle.loads for train in trains]) * np.array([train.shares for train in trains]),
-        np.array(trains[0].headings, dtype=np.intp),
+        stations, distances, felt, np.array(counts, dtype=np.intp), train_of, heading_of, np.ascontiguousarray(axle_of)
     )
-
-
-def alike(trains: Sequence[Train]) -> list[list[int]]:
-    """Return the numbers of trains grouped by axle count and headings, so that each group is swept in one batch."""
-    groups: dict[tuple[int, tuple[int, ...]], list[int]] = {}
-    for number, train in enumerate(trains):
-        groups.setdefault((train.vehicle.loads.size, train.headings), []).append(number)
-    return list(groups.values())

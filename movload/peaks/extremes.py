@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
-from movload.peaks.candidates import Candidates, alike, candidates_of
+from movload.peaks.candidates import Candidates, candidates_of
 from movload.peaks.placement import panel_loads
 
 if TYPE_CHECKING:
@@ -28,34 +28,30 @@ def static_extremes(response: Response, trains: Sequence[Train]) -> tuple[Floats
     response
         How R rows answer loads on B stations.
     trains
-        V trains; those of one axle count are swept together.
+        V trains, all swept in one batch.
     """
-    rows = len(response.effects)
-    highest, lowest = np.empty((len(trains), rows)), np.empty((len(trains), rows))
-    for group in alike(trains):
-        candidates = candidates_of(response.stations, [trains[number] for number in group])
-        highest[group], lowest[group] = _group_extremes(response, candidates)
-    noise = _NOISE * np.maximum(highest, -lowest)
+    by_axles = sorted(range(len(trains)), key=lambda number: trains[number].vehicle.loads.size)
+    candidates = candidates_of(response.stations, [trains[number] for number in by_axles])
+    by_run = _extremes_by_run(response, candidates)
+    starts = np.searchsorted(candidates.train, np.arange(len(trains)))
+    highest, lowest = np.empty((2, len(trains), len(response.effects)))
+    highest[by_axles] = np.maximum.reduceat(by_run[0], starts, axis=0)
+    lowest[by_axles] = np.minimum.reduceat(by_run[1], starts, axis=0)
+    noise = _NOISE * np.maximum(np.abs(highest), np.abs(lowest))
     highest[highest <= noise] = 0.0
     lowest[lowest >= -noise] = 0.0
     return highest, lowest
 
 
-def _group_extremes(response: Response, candidates: Candidates) -> tuple[Floats, Floats]:
-    """Return highest and lowest (V, R) of one group, run by run in pieces that stay in cache."""
-    trains, axles = candidates.distances.shape
-    runs = trains * candidates.headings.size * axles
-    widest = max(len(response.effects), response.stations.size)
-    step = max(1, _IN_CACHE // (candidates.stops * widest))
-    highest, lowest = np.empty((runs, len(response.effects))), np.empty((runs, len(response.effects)))
+def _extremes_by_run(response: Response, candidates: Candidates) -> Floats:
+    """Return each run's highest and lowest (2, N, R), in pieces that stay in cache."""
+    rows, runs = len(response.effects), candidates.train.size
+    step = max(1, _IN_CACHE // (candidates.stops * max(rows, candidates.stations.size)))
+    extremes = np.empty((2, runs, rows))
     for first in range(0, runs, step):
         last = min(first + step, runs)
-        loads = panel_loads(candidates.stations, *candidates.axles_at(first, last))
-        values = response.under(loads.T).T.reshape(last - first, candidates.stops, -1)
-        values.max(axis=1, out=highest[first:last])
-        values.min(axis=1, out=lowest[first:last])
-    by_train = (trains, runs // trains, -1)
-    return (
-        np.maximum(highest.reshape(by_train).max(axis=1), 0.0),
-        np.minimum(lowest.reshape(by_train).min(axis=1), 0.0),
-    )
+        loads = panel_loads(candidates.stations, *candidates.standing(first, last))
+        values = response.under(loads.T).T.reshape(last - first, candidates.stops, rows)
+        values.max(axis=1, out=extremes[0, first:last])
+        values.min(axis=1, out=extremes[1, first:last])
+    return extremes

@@ -110,15 +110,15 @@ class PartPeaks:
         train = self.trains[train_number]
         candidates = candidates_of(self.response.stations, [train])
         run, stop = divmod(candidate, candidates.stops)
-        x, _ = candidates.axles_at(run, run + 1)
-        heading, axle = divmod(run, train.vehicle.loads.size)
+        x, _ = candidates.standing(run, run + 1)
+        heading, axle = int(candidates.heading[run]), int(candidates.axle[run])
         impact = np.full(train.shares.shape, self.impact[row, side] if train.dynamic else 0.0)
         placement = Placement(x[0, stop], train.vehicle.loads, train.shares, impact)
         count = self.response.stations.size
         return Peak(
             value,
-            _front(self.response.stations, candidates, placement.x, (train.headings[heading], axle, stop)),
-            train.headings[heading],
+            _front(self.response.stations, candidates, placement.x, (heading, axle, stop)),
+            heading,
             tuple(map(float, np.diff(train.vehicle.distances))),
             axle,
             stop if stop < count else (0, count - 1)[stop - count],
@@ -132,9 +132,9 @@ def _best_of(response: Response, candidates: Candidates) -> tuple[Floats, Ints]:
 
     Of equally bad positions the smallest counts, heading +1 before -1, then the axle nearest the front.
     """
-    x, felt = candidates.axles_at(0, candidates.per_train // candidates.stops)
+    x, felt = candidates.standing(0, candidates.train.size)
     values = response.under(panel_loads(candidates.stations, x, felt).T)
-    heading, axle, _ = candidates.described()
+    heading, axle = np.repeat(candidates.heading, candidates.stops), np.repeat(candidates.axle, candidates.stops)
     front = np.round(x[..., 0].reshape(-1), _SAME_PLACE)
     order = np.lexsort((axle, -heading, front))
     values = values[:, order]

@@ -21,6 +21,7 @@ if TYPE_CHECKING:
 PIN: Final = 0.9  # mm, radius of a joint
 _TRIM: Final = 1.15  # mm, how far a bar stops short of its joint
 _IDLE: Final = 0.005  # of the largest force: a bar that carries less is drawn dotted
+DOTS: Final = (0, (1.0, 2.2))  # strokes and gaps of a dotted bar, in its weight
 _LEAST_OPEN: Final = 0.95  # mm, a double line must stay open on a copy
 _LEAST_SOLID: Final = 0.4  # mm
 _ALONG: Final = (0.5, 0.42, 0.58, 0.35, 0.65, 0.28, 0.72, 0.22, 0.78)
@@ -82,7 +83,7 @@ def draw_bars(strip: Strip, truss: Truss, bars: Sequence[Look]) -> None:
 
 def _draw_bar(strip: Strip, line: tuple[Floats, Floats], look: Look, name: str) -> None:
     """Draw one bar; tension is a heavy stroke with a bare one in it."""
-    dots = {"linestyle": (0, (1.0, 2.2)), "dash_capstyle": "butt"} if look.style == "dotted" else {}
+    dots = {"linestyle": DOTS, "dash_capstyle": "butt"} if look.style == "dotted" else {}
     strip.plot(*line, look.weight, look.colour, label=f"bar {name}", **dots)
     if look.style == "open":
         strip.plot(*line, look.weight - 2 * THIN, PAPER, label=f"bar {name} open")

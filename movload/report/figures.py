@@ -6,6 +6,7 @@ from typing import TYPE_CHECKING
 
 from movload.report.frame import SUFFIXES, figure_bytes
 from movload.report.influence_sheet import influence_figure
+from movload.report.peak_sheet import peak_figure
 from movload.report.standing import elevation_figure
 
-__all__ = ["SUFFIXES", "elevation_figure", "figure_bytes", "influence_figure"]
+__all__ = ["SUFFIXES", "elevation_figure", "figure_bytes", "influence_figure", "peak_figure"]

@@ -9,7 +9,7 @@ import matplotlib as mpl
 
 from movload.errors import InputError
 from movload.report.dimensions import row_height
-from movload.report.ink import ATTEMPTS, BOLD, EDGE, FINE, GREY, INK, STYLE
+from movload.report.ink import ATTEMPTS, BOLD, EDGE, FINE, GREY, INK, MARGIN, STYLE
 from movload.report.labels import Lettering, Spot, wrapped
 
 if TYPE_CHECKING:
@@ -22,7 +22,6 @@ if TYPE_CHECKING:
 SUFFIXES: Final = (".png", ".svg", ".pdf")
 TITLE: Final = 13.0  # pt
 HEADING: Final = 11.0  # mm from the sheet's upper edge to the rule under its title
-MARGIN: Final = EDGE + 2.0  # mm, where words start
 
 _NO_DATE: Final[dict[str, dict[str, None]]] = {
     ".png": {"Software": None},
@@ -76,7 +75,8 @@ def draw_heading(sheet: Sheet, title: str, remark: str) -> None:
     level = sheet.height - HEADING + 4.0
     right = sheet.width - MARGIN
     words = Lettering(remark, sheet.size)
-    sheet.write_at(words, Spot(right - words.width / 2, level), GREY)
+    if remark:
+        sheet.write_at(words, Spot(right - words.width / 2, level), GREY)
     size = TITLE
     while Lettering(title, size, bold=True).width > right - words.width - MARGIN - 6.0 and size > sheet.size:
         size -= 0.5

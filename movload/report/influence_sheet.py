@@ -21,8 +21,8 @@ from movload.report.elevation import (
     name_spots,
 )
 from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
-from movload.report.ink import ACCENT, BOLD, FAINT, HAIR
-from movload.report.line_strip import Band, draw_line, write_kinks, write_zeros
+from movload.report.ink import ACCENT, BOLD, FAINT, HAIR, MARGIN
+from movload.report.line_strip import Band, draw_line, name_line, write_kinks, write_zeros
 from movload.report.sheet import Sheet, Window
 from movload.report.words import lengths, origin
 
@@ -41,7 +41,7 @@ _TALLEST: Final = 60.0  # mm of paper for the truss's own height
 _ABOVE: Final = 10.0  # mm over the truss for names
 _BELOW: Final = REACH + 5.0  # mm under it for bearings and names
 _MOST: Final = 6  # lines on one sheet
-_HEIGHTS: Final = (46.0, 40.0, 34.0, 30.0, 28.0, 26.0)  # mm for each line when there are 1 ... 6
+_HEIGHTS: Final = (50.0, 44.0, 38.0, 34.0, 32.0, 31.0)  # mm for each line when there are 1 ... 6
 
 
 def influence_figure(
@@ -94,9 +94,12 @@ def _drawn(
     draw_heading(sheet, title, "influence lines")
     draw_caption(sheet, caption)
     left_out = _draw_truss(sheet.strip(window, zero, window.scale), truss, deck, [line.effect for line in lines])
-    for number, line in enumerate(lines):
-        strip = Band(foot + (len(lines) - 1 - number) * height, height).strip(sheet, window, line)
-        draw_line(strip, line, units)
+    bottoms = [foot + (len(lines) - 1 - number) * height for number in range(len(lines))]
+    strips = [Band(bottom, height).strip(sheet, window, line) for bottom, line in zip(bottoms, lines, strict=True)]
+    for strip, line in zip(strips, lines, strict=True):  # all lines first: no figure may stand on another row's line
+        draw_line(strip, line)
+        name_line(strip, line, units, truss)
+    for strip, line in zip(strips, lines, strict=True):
         left_out += write_kinks(strip, line, units, taken=np.zeros(0)) + write_zeros(strip, line, units)
     left_out += draw_stations(sheet, window, deck, units, (foot, zero))
     return sheet, left_out
@@ -109,7 +112,7 @@ def draw_stations(sheet: Sheet, window: Window, deck: DeckLine, units: UnitSyste
     places = [window.mm(x) for x in deck.stations]
     for place, height in zip(places, deck.heights, strict=True):
         sheet.stroke([(place, foot - 0.5), (place, zero + height * window.scale)], HAIR, FAINT, zorder=-5)
-    sheet.write_from(sheet.lettering(f"x, {units.length}"), 8.0, foot - 1.5 * row - 0.5)
+    sheet.write_from(sheet.lettering(f"x, {units.length}"), MARGIN, foot - 1.5 * row - 0.5)
     left_out = row_of_words(sheet, foot - 0.5 * row - 0.5, places, deck.names)
     return left_out + row_of_words(sheet, foot - 1.5 * row - 0.5, places, lengths(deck.stations, units))
 

@@ -33,6 +33,7 @@ FONT: Final = "DejaVu Sans"  # comes with matplotlib, so a figure is the same ev
 LEFT: Final = 30.0  # margins beside the truss: row names and signs stand in the left one
 RIGHT: Final = 20.0
 EDGE: Final = 6.0  # nothing is drawn nearer to the sheet's edge
+MARGIN: Final = 8.0  # where words start
 
 # Rules when labels crowd, in this order: widen the sheet to its limit, then smaller letters down to the least size that
 # a copy keeps readable, then leave out the least important labels. Width [mm] and letter size [pt] of each attempt.

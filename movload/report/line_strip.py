@@ -10,12 +10,13 @@ from matplotlib.collections import LineCollection
 from matplotlib.patches import Polygon
 
 from movload.report.dimensions import row_height
-from movload.report.ink import FINE, FIRM, GREY, HAIR, INK, PALE, PAPER, POINT
+from movload.report.ink import FINE, FIRM, GREY, HAIR, MARGIN, PALE, PAPER, POINT
 from movload.report.labels import Lettering, Spot
 from movload.report.words import lengths, ordinate_decimals, ordinate_factor, ordinate_unit, sides, signed
 
 if TYPE_CHECKING:
     from movload.arrays import Floats, Ints
+    from movload.bridge.truss import Truss
     from movload.report.sheet import Place, Sheet, Strip, Window
     from movload.statics.influence import InfluenceLine
     from movload.units import UnitSystem
@@ -39,12 +40,11 @@ class Band:
         high = max(float(line.ordinates.max()), 0.0)
         low = min(float(line.ordinates.min()), 0.0)
         room = row_height(sheet.size) + 1.0
-        above, below = (room if high else 2.0), (room if low else 2.0)
-        scale = (self.height - above - below) / ((high - low) or 1.0)
-        return sheet.strip(window, self.bottom + below - low * scale, scale)
+        scale = (self.height - 2 * room) / ((high - low) or 1.0)
+        return sheet.strip(window, self.bottom + room - low * scale, scale)
 
 
-def draw_line(strip: Strip, line: InfluenceLine, units: UnitSystem) -> None:
+def draw_line(strip: Strip, line: InfluenceLine) -> None:
     """Draw axis, areas, the line itself and the marks on its zeros inside panels."""
     sheet, name = strip.sheet, line.effect.name
     x, y = with_zeros(line.stations, line.ordinates)
@@ -59,7 +59,6 @@ def draw_line(strip: Strip, line: InfluenceLine, units: UnitSystem) -> None:
         sheet.board.keep_clear([foot, points[end]], FIRM / 2)
     sheet.board.keep_clear(points, FIRM / 2)
     sheet.board.keep_clear(axis)
-    _name_line(strip, line, units)
 
 
 def _draw_areas(strip: Strip, x: Floats, y: Floats, name: str) -> None:
@@ -132,7 +131,7 @@ def write_zeros(strip: Strip, line: InfluenceLine, units: UnitSystem) -> int:
         place = (strip.window.mm(float(zero)), strip.zero)
         strip.sheet.disc(place, _RING, PAPER, label=f"zero of {line.effect.name}")
         strip.sheet.board.keep_clear([place], _RING)
-        lettering = strip.sheet.lettering(f"x = {lengths([float(zero)], units)[0]}")
+        lettering = strip.sheet.lettering(f"x = {lengths([float(zero)], units, rounded=True)[0]}")
         left_out += not strip.sheet.write(lettering, around(place, lettering, upward=False), GREY)
     return left_out
 
@@ -161,11 +160,11 @@ def around(point: Place, lettering: Lettering, *, upward: bool) -> list[Spot]:
     return spots
 
 
-def _name_line(strip: Strip, line: InfluenceLine, units: UnitSystem) -> None:
-    """Write the row's name and unit at the side, and which way it counts."""
-    sheet, row = strip.sheet, row_height(strip.sheet.size)
-    sheet.write_from(sheet.lettering(line.effect.name, bold=True), 8.0, strip.zero)
-    above, below = sides(line.effect)
-    sheet.write_from(sheet.lettering(above), 8.0, strip.zero + 1.2 * row, INK)
-    sheet.write_from(sheet.lettering(below), 8.0, strip.zero - 1.2 * row, INK)
-    sheet.write_from(sheet.lettering(ordinate_unit(line.effect, units)), 8.0, strip.zero + 2.3 * row, GREY)
+def name_line(strip: Strip, line: InfluenceLine, units: UnitSystem, truss: Truss) -> None:
+    """Write the row's name and unit at the left end of its axis, and which way it counts at the right end."""
+    sheet, rise = strip.sheet, 0.55 * row_height(strip.sheet.size)
+    sheet.write_from(sheet.lettering(line.effect.name, bold=True), MARGIN, strip.zero + rise)
+    sheet.write_from(sheet.lettering(ordinate_unit(line.effect, units)), MARGIN, strip.zero - rise, GREY)
+    right = strip.window.right + 3.5
+    for side, word in zip((1, -1), sides(line.effect, truss), strict=True):
+        sheet.write_from(sheet.lettering(word), right, strip.zero + side * rise)

@@ -12,7 +12,7 @@ from movload.report.bearings import REACH, draw_bearings
 from movload.report.dimensions import dimension_string, row_height, row_of_words, row_title, upright_dimension
 from movload.report.elevation import PLAIN_BAR, bar_spots, draw_bars, draw_joints, name_joints
 from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
-from movload.report.ink import FAINT, FIRM, HAIR, INK, THIN
+from movload.report.ink import FAINT, FIRM, HAIR, MARGIN
 from movload.report.labels import Spot
 from movload.report.sheet import Sheet, Window
 from movload.report.words import lengths, origin
@@ -113,10 +113,10 @@ def _draw_strings(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem,
     left_out += dimension_string(sheet, upper - row - 3.0, [window.mm(x) for x in ends], overall)
     for place, height in zip(places, deck.heights, strict=True):
         sheet.stroke([(place, strip.mm(0, height)[1]), (place, foot + 2 * row + 1)], HAIR, FAINT, zorder=-5)
-    sheet.write_from(sheet.lettering("x"), 8.0, foot + 1.5 * row + 1)
+    sheet.write_from(sheet.lettering(f"x, {units.length}"), MARGIN, foot + 1.5 * row + 1)
     left_out += row_of_words(sheet, foot + 1.5 * row + 1, places, lengths(deck.stations, units))
     columns = deck.depths(truss)
-    sheet.write_from(sheet.lettering("depth"), 8.0, foot + 0.5 * row + 1)
+    sheet.write_from(sheet.lettering(f"depth, {units.length}"), MARGIN, foot + 0.5 * row + 1)
     texts = lengths([depth for _, depth in columns], units)
     left_out += row_of_words(sheet, foot + 0.5 * row + 1, [window.mm(x) for x, _ in columns], texts)
     return left_out

@@ -16,7 +16,8 @@ if TYPE_CHECKING:
     from movload.statics.part import Effect
     from movload.units import UnitSystem
 
-_SMALL_UNITS: Final = {"mm": 0, "cm": 1, "in": 1}
+_LEAST_DECIMALS: Final = {"mm": 0, "cm": 1, "in": 1, "km": 5}
+_TYPED: Final = 1e-6  # of the unit shown: a length differs from its rounded self by no more than summing adds
 _AS_ONE: Final = 1e-9  # m; x closer than this to a joint's is the joint's
 
 
@@ -38,12 +39,15 @@ def figures(largest: float, wanted: int = 3) -> int:
     return min(max(wanted - 1 - math.floor(math.log10(largest)), 0), 6)
 
 
-def lengths(metres: Iterable[float], units: UnitSystem) -> list[str]:
-    """Return lengths in one number of decimals: 2 (0 for mm, 1 for cm and in), more when a typed digit needs it."""
+def lengths(metres: Iterable[float], units: UnitSystem, *, rounded: bool = False) -> list[str]:
+    """Return lengths in one number of decimals: 2 (0 for mm, 1 for cm and in), one more when a typed digit needs it.
+
+    ``rounded`` keeps the least number of decimals, for a length that was computed.
+    """
     shown = [units.shown(length, "length") for length in metres]
-    least = _SMALL_UNITS.get(units.length, 2)
-    decimals = next((d for d in range(least, 3) if all(abs(round(x, d) - x) < 1e-6 for x in shown)), max(least, 3))
-    return [plain(x, decimals if least else 0) for x in shown]
+    least = _LEAST_DECIMALS.get(units.length, 2)
+    exact = rounded or all(abs(round(x, least) - x) < _TYPED for x in shown)
+    return [plain(x, least if exact else least + 1) for x in shown]
 
 
 def letter(force: float) -> str:
@@ -84,14 +88,20 @@ def ordinate_unit(effect: Effect, units: UnitSystem) -> str:
     return f"{units.section if effect.unit == 'm' else units.force}/{units.force}"
 
 
-def sides(effect: Effect) -> tuple[str, str]:
-    """Return what stands above and below an influence line's axis."""
+def sides(effect: Effect, truss: Truss) -> tuple[str, str]:
+    """Return what stands above and below an influence line's axis.
+
+    A bearing pushes its joint along its bed's normal; on a level bed that is up.
+    """
     if effect.kind == "axial":
         return "+T", "C"
     if effect.kind == "down":
         return "+down", "up"
-    positive = {"x": ("+to right", "to left"), "y": ("+up", "down"), "along": ("+along bed", "back")}
-    return positive.get(effect.name.rpartition(" ")[2], ("+off bed", "pull"))
+    joint, _, axis = effect.name.rpartition(" ")
+    if axis == "normal" and any(s.joint == joint and s.bed_angle == 0 for s in truss.supports):
+        axis = "y"
+    words = {"x": ("+right", "left"), "y": ("+up", "down"), "along": ("+along", "back")}
+    return words.get(axis, ("+push", "pull"))
 
 
 def origin(truss: Truss, units: UnitSystem) -> str:

@@ -25,6 +25,7 @@ if TYPE_CHECKING:
     from movload.statics.stiffness import FactoredTruss
 
 PERMANENT_CLASSES: Final = ("components", "settlement")
+_NOISE: Final = 1e-12  # of the largest of its kind
 
 
 def permanent_effects(solver: FactoredTruss, panel_points: Sequence[PanelPoint], loads: PermanentLoads) -> Floats:
@@ -46,7 +47,21 @@ def permanent_effects(solver: FactoredTruss, panel_points: Sequence[PanelPoint],
     columns[rows.joint_dofs[:, 1], 0] = -down * rows.axes[:, 0]
     components = effects_under(solver, joints, columns)
     settled = effects_under(solver, joints, np.zeros_like(columns), rows.misfit)
-    return held(np.stack((components[:, 0], settled[:, 0])))
+    classes = np.concatenate((components, settled), axis=1)
+    _write_noise_as_zero(classes, int(on_joint.sum()))
+    return held(classes.T.copy())
+
+
+def _write_noise_as_zero(classes: Floats, downs: int) -> None:
+    """Set round-off to exactly zero, in place: a bar that permanent load does not reach must not seem to feel it.
+
+    Forces are compared with the largest force of any class and the deflections, which come last, with the largest
+    deflection: a settlement that strains nothing leaves only round-off in its own column.
+    """
+    forces, deflections = classes[: len(classes) - downs], classes[len(classes) - downs :]
+    for of_kind in (forces, deflections):
+        size = np.abs(of_kind)
+        of_kind[size <= _NOISE * size.max(initial=0.0)] = 0.0
 
 
 def deck_lengths(stations: Floats) -> Floats:

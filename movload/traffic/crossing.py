@@ -3,13 +3,16 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, field
+from typing import TYPE_CHECKING
 
 import numpy as np
 
 from movload.arrays import Floats, held
-from movload.bridge.across import Across
-from movload.traffic.loading import Fill, Loading
 from movload.traffic.vehicle import Vehicle
+
+if TYPE_CHECKING:
+    from movload.bridge.across import Across
+    from movload.traffic.loading import Fill, Loading
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -78,20 +81,23 @@ def trains_on(across: Across, crossing: Crossing) -> tuple[Train, ...]:
     across
         The part's share of a wheel by its place across.
     """
-    share = float(across.at(crossing.z))
-    return tuple(
-        Train(
-            case.title,
-            case.moving,
-            held(np.full(case.moving.loads.size, share * case.factor)),
-            headings=case.moving.headings,
-        )
-        for case in crossing.loading.cases
-        if case.moving is not None
-    )
+    return _trains(crossing.loading, float(across.at(crossing.z)))
 
 
 def whole_trains(subject: Vehicle | Loading) -> tuple[Train, ...]:
     """Return the trains of whole axles on one line: no share but the case's own factor."""
-    loading = Loading.of(subject) if isinstance(subject, Vehicle) else subject
-    return trains_on(Across.typed(1.0), Crossing(loading))
+    if isinstance(subject, Vehicle):
+        return (_train(subject.title, subject, 1.0),)
+    return _trains(subject, 1.0)
+
+
+def _trains(loading: Loading, share: float) -> tuple[Train, ...]:
+    """Return one train for each case that moves."""
+    return tuple(
+        _train(case.title, case.moving, share * case.factor) for case in loading.cases if case.moving is not None
+    )
+
+
+def _train(case: str, vehicle: Vehicle, share: float) -> Train:
+    """Return a train whose axles all have one share."""
+    return Train(case, vehicle, held(np.full(vehicle.loads.size, share)), headings=vehicle.headings)
