@@ -96,9 +96,7 @@ def bearings(draw: st.DrawFn, points: Sequence[str], kinds: Sequence[str]) -> li
 
 
 @st.composite
-def laid(
-    draw: st.DrawFn, *, kinds: Sequence[str] = EVERY, crossed: bool = True, plain_deck: bool = False
-) -> Laid:
+def laid(draw: st.DrawFn, *, kinds: Sequence[str] = EVERY, crossed: bool = True, plain_deck: bool = False) -> Laid:
     """Draw a truss and its loaded chord; ``plain_deck`` loads every bottom joint and no abutment."""
     joints, bars = draw(skeletons(crossed=crossed))
     bottom = tuple(name for name in joints if name.startswith("L"))

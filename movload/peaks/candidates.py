@@ -57,6 +57,11 @@ class Candidates:
         """How many stops a run makes: the stations and the two just outside."""
         return int(self.stations.size) + 2
 
+    def fronts(self) -> Floats:
+        """Return where the front axle stands at each stop of each run (N, stops) [m]; just outside is the end."""
+        stops = np.concatenate((self.stations, self.stations[[0, -1]]))
+        return stops + (self.heading * self.distances[self.train, self.axle])[:, None]
+
     def standing(self, first: int, last: int) -> tuple[Floats, Floats]:
         """Return where axles stand (N, stops, A) [m] and what they weigh (N, 1, A) [N] in runs first ... last - 1.
 

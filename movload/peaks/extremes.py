@@ -46,7 +46,7 @@ def static_extremes(response: Response, trains: Sequence[Train]) -> tuple[Floats
 def _extremes_by_run(response: Response, candidates: Candidates) -> Floats:
     """Return each run's highest and lowest (2, N, R), in pieces that stay in cache."""
     rows, runs = len(response.effects), candidates.train.size
-    step = max(1, _IN_CACHE // (candidates.stops * max(rows, candidates.stations.size)))
+    step = runs_at_a_time(response, candidates)
     extremes = np.empty((2, runs, rows))
     for first in range(0, runs, step):
         last = min(first + step, runs)
@@ -55,3 +55,9 @@ def _extremes_by_run(response: Response, candidates: Candidates) -> Floats:
         values.max(axis=1, out=extremes[0, first:last])
         values.min(axis=1, out=extremes[1, first:last])
     return extremes
+
+
+def runs_at_a_time(response: Response, candidates: Candidates) -> int:
+    """Return how many runs make a piece that stays in cache."""
+    widest = max(len(response.effects), candidates.stations.size)
+    return max(1, _IN_CACHE // (candidates.stops * widest))

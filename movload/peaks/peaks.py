@@ -8,12 +8,13 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import cached_property
-from typing import TYPE_CHECKING, Final
+from typing import TYPE_CHECKING
 
 import numpy as np
 
 from movload.errors import InputError, UnknownNameError
 from movload.peaks.candidates import LOST, Candidates, candidates_of
+from movload.peaks.governing import governing_candidates
 from movload.peaks.placement import Placement, edge, panel_loads
 from movload.statics.part import Effect, Response, row_of
 
@@ -22,9 +23,6 @@ if TYPE_CHECKING:
 
     from movload.arrays import Floats, Ints
     from movload.traffic.crossing import Train
-
-_TIE: Final = 1e-12  # of the row's largest value: positions whose effects differ by less are equally bad
-_SAME_PLACE: Final = 9  # decimals of a metre to which positions count as equal when ties are broken
 
 
 @dataclass(frozen=True, slots=True)
@@ -91,22 +89,16 @@ class PartPeaks:
     impact: Floats
 
     @cached_property
-    def _found(self) -> tuple[Ints, Ints]:
+    def _governing(self) -> tuple[Ints, Ints]:
         """Train and candidate of every row's highest and lowest (2, R) each."""
-        searched = [_best_of(self.response, candidates_of(self.response.stations, [train])) for train in self.trains]
-        sign = np.array([1.0, -1.0])[:, None]
-        values = np.stack([values for values, _ in searched]) * sign
-        floor = values.max(axis=0) - _TIE * np.abs(values).max(axis=(0, 1))
-        train = np.argmax(values >= floor, axis=0)
-        where = np.stack([where for _, where in searched])
-        return train, np.take_along_axis(where, train[None], axis=0)[0]
+        return governing_candidates(self.response, self.trains)
 
     def peak(self, row: int, side: int) -> Peak:
         """Return one row's highest (side 0) or lowest (side 1) peak."""
         value = float((self.highest, self.lowest)[side][row])
         if value == 0.0:
             return Peak(0.0, float("nan"), 0, (), -1, -1, "", Placement.off())
-        train_number, candidate = (int(found[side, row]) for found in self._found)
+        train_number, candidate = (int(found[side, row]) for found in self._governing)
         train = self.trains[train_number]
         candidates = candidates_of(self.response.stations, [train])
         run, stop = divmod(candidate, candidates.stops)
@@ -125,23 +117,6 @@ class PartPeaks:
             train.case,
             placement,
         )
-
-
-def _best_of(response: Response, candidates: Candidates) -> tuple[Floats, Ints]:
-    """Return static highest and lowest (2, R) of one train and the candidate that gives each.
-
-    Of equally bad positions the smallest counts, heading +1 before -1, then the axle nearest the front.
-    """
-    x, felt = candidates.standing(0, candidates.train.size)
-    values = response.under(panel_loads(candidates.stations, x, felt).T)
-    heading, axle = np.repeat(candidates.heading, candidates.stops), np.repeat(candidates.axle, candidates.stops)
-    front = np.round(x[..., 0].reshape(-1), _SAME_PLACE)
-    order = np.lexsort((axle, -heading, front))
-    values = values[:, order]
-    slack = _TIE * np.abs(values).max(axis=1, keepdims=True)
-    highest, lowest = values.max(axis=1, keepdims=True), values.min(axis=1, keepdims=True)
-    first = np.stack((np.argmax(values >= highest - slack, axis=1), np.argmax(values <= lowest + slack, axis=1)))
-    return np.stack((highest[:, 0], lowest[:, 0])), order[first]
 
 
 def _front(stations: Floats, candidates: Candidates, x: Floats, standing: tuple[int, int, int]) -> float:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cached_property
 from typing import TYPE_CHECKING
 
 import numpy as np
@@ -19,7 +20,7 @@ if TYPE_CHECKING:
     from movload.traffic.crossing import Crossing
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class Rating:
     """One row under one crossing at one level.
 
@@ -59,9 +60,9 @@ class Rating:
     row: int
     side: int
 
-    @property
+    @cached_property
     def peak(self) -> Peak:
-        """Return the live peak with its placement."""
+        """The live peak with its placement."""
         return self.peaks.peak(self.row, self.side)
 
     @property

@@ -22,6 +22,7 @@ PIN: Final = 0.9  # mm, radius of a joint
 _TRIM: Final = 1.15  # mm, how far a bar stops short of its joint
 _IDLE: Final = 0.005  # of the largest force: a bar that carries less is drawn dotted
 DOTS: Final = (0, (1.0, 2.2))  # strokes and gaps of a dotted bar, in its weight
+ACCENT_STROKE: Final = 0.45  # mm, each of the two strokes of a governing bar in tension: heavier than any other's
 _LEAST_OPEN: Final = 0.95  # mm, a double line must stay open on a copy
 _LEAST_SOLID: Final = 0.4  # mm
 _ALONG: Final = (0.5, 0.42, 0.58, 0.35, 0.65, 0.28, 0.72, 0.22, 0.78)
@@ -62,6 +63,7 @@ def _look(portion: float, heaviest: float, colour: str) -> Look:
     if abs(portion) < _IDLE:
         return Look("dotted", THIN, colour)
     style, least = ("open", _LEAST_OPEN) if portion > 0 else ("solid", _LEAST_SOLID)
+    least *= 1.0 if colour == INK else 1.5
     return Look(style, least + (heaviest - least) * abs(portion), colour)
 
 
@@ -86,7 +88,8 @@ def _draw_bar(strip: Strip, line: tuple[Floats, Floats], look: Look, name: str) 
     dots = {"linestyle": DOTS, "dash_capstyle": "butt"} if look.style == "dotted" else {}
     strip.plot(*line, look.weight, look.colour, label=f"bar {name}", **dots)
     if look.style == "open":
-        strip.plot(*line, look.weight - 2 * THIN, PAPER, label=f"bar {name} open")
+        stroke = THIN if look.colour == INK else ACCENT_STROKE
+        strip.plot(*line, look.weight - 2 * stroke, PAPER, label=f"bar {name} open")
 
 
 def draw_joints(strip: Strip, truss: Truss, solid: frozenset[str] = frozenset()) -> None:

@@ -105,7 +105,18 @@ def measured(text: str, size: float, bold: bool = False) -> tuple[float, float]:
 
 
 def wrapped(text: str, size: float, width: float) -> list[str]:
-    """Return the text in lines no wider than ``width`` [mm], broken between words."""
+    """Return the text in as few lines as fit ``width`` [mm], broken between words and about equally long."""
+    lines = _filled(text, size, width)
+    for part in range(49, 24, -1):
+        tighter = _filled(text, size, width * part / 50)
+        if len(tighter) > len(lines):
+            break
+        lines = tighter
+    return lines
+
+
+def _filled(text: str, size: float, width: float) -> list[str]:
+    """Return the text in lines filled as far as they go."""
     lines: list[str] = []
     for word in text.split():
         longer = f"{lines[-1]} {word}" if lines else word

@@ -38,6 +38,7 @@ _ABOVE: Final = 11.0  # mm over the truss for names
 _BELOW: Final = REACH + 5.0  # mm under it for bearings and names
 _LINE: Final = 52.0  # mm for the influence line
 _ANSWER: Final = 10.0  # mm for the governing value under the heading
+_DOT: Final = 0.65  # mm, radius of the mark on an ordinate under an axle
 _ANSWER_SIZE: Final = 13.0  # pt
 _KEY: Final = (
     ("open", "T tension"), ("solid", "C compression"), ("dotted", "under 0.5 % of the largest"),
@@ -83,9 +84,9 @@ class Subject:
         if self.is_off:
             return "no position of this vehicle gives any"
         front = lengths([self.peak.position], self.units, rounded=True)[0]
-        toward = "heading right →" if self.peak.heading > 0 else "← heading left"
+        toward = "heading right →" if self.peak.heading > 0 else "heading left ←"
         station = self.deck.names[self.peak.station] or "the abutment"
-        return f"front axle at x = {front} {self.units.length}, {toward}; axle {self.peak.axle + 1} stands on {station}"
+        return f"front axle at x = {front} {self.units.length}, {toward}, axle {self.peak.axle + 1} on {station}"
 
     def told(self) -> str:
         """Return the caption: what the forces are, then the caller's own words, then x."""
@@ -155,7 +156,9 @@ def peak_figure(  # noqa: PLR0913 - the caller's own words and forces are keywor
 
 
 def _vehicle_forces(truss: Truss, lines: InfluenceLines, peak: Peak) -> Floats:
-    """Return every member's force (M,) [N] under the peak's own placement."""
+    """Return every member's force (M,) [N] under the peak's own placement; nothing when the vehicle is off."""
+    if not peak.placement.x.size:
+        return np.zeros(len(truss.members))
     under = lines.under(peak.placement.panel_loads(lines.stations)[:, None])[:, 0]
     by_name = {e.name: float(value) for e, value in zip(lines.effects, under, strict=True) if e.kind == "axial"}
     return np.array([by_name[member.name] for member in truss.members])
@@ -239,8 +242,9 @@ def _draw_stems(band: Strip, deck: Strip, subject: Subject, train: Train) -> int
     for x, ordinate in zip(on, ordinates, strict=True):
         band.plot([x, x], [0.0, ordinate], FIRM, label="stem", zorder=2.5)
         foot, tip = band.mm(float(x), 0.0), band.mm(float(x), float(ordinate))
-        sheet.disc(tip, 0.65, INK)
+        sheet.disc(tip, _DOT, INK)
         sheet.board.keep_clear([foot, tip], FIRM / 2)
+        sheet.board.keep_clear([tip], _DOT)
         sheet.stroke([deck.mm(float(x), 0.0), max(foot, tip, key=lambda end: end[1])], FINE, GREY, zorder=-4,
                      linestyle=(0, (4, 2)))  # fmt: skip
     left_out = 0

@@ -75,6 +75,13 @@ def scales(lines: InfluenceLines, vehicles: Sequence[Vehicle]) -> Floats:
     return np.outer([vehicle.loads.sum() for vehicle in vehicles], np.abs(lines.ordinates).max(axis=1))
 
 
+def sizes(lines: InfluenceLines) -> Floats:
+    """Return (R,) the largest ordinate of each row's kind, force or deflection: what a row that is 0 is measured by."""
+    down = np.array([effect.kind == "down" for effect in lines.effects])
+    largest = np.abs(lines.ordinates).max(axis=1)
+    return np.where(down, largest[down].max(initial=0.0), largest[~down].max(initial=0.0))
+
+
 def _effects(lines: InfluenceLines, vehicle: Vehicle, x: Floats) -> Floats:
     total = np.zeros(len(lines.ordinates))
     for place, load in zip(x, vehicle.loads, strict=True):

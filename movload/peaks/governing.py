@@ -1,0 +1,57 @@
+"""Which train and which position gave each row's extremes, found again from the values."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING, Final
+
+import numpy as np
+
+from movload.peaks.candidates import Candidates, candidates_of
+from movload.peaks.extremes import runs_at_a_time, static_extremes
+from movload.peaks.placement import panel_loads
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from movload.arrays import Floats, Ints
+    from movload.statics.part import Response
+    from movload.traffic.crossing import Train
+
+_TIE: Final = 1e-12  # of the row's largest value: positions whose effects differ by less are equally bad
+_SAME_PLACE: Final = 9  # decimals of a metre to which positions count as equal when ties are broken
+
+
+def governing_candidates(response: Response, trains: Sequence[Train]) -> tuple[Ints, Ints]:
+    """Return the train and its candidate that give every row's highest and lowest, (2, R) each.
+
+    Of equally bad trains the first counts; of equally bad positions the smallest, heading +1 before -1, then the axle
+    nearest the front.
+    """
+    highest, lowest = static_extremes(response, trains)
+    adverse = np.stack((highest, -lowest))
+    worst = adverse.max(axis=1)
+    floor = worst - _TIE * worst.max(axis=0)
+    train = np.argmax(adverse >= floor[:, None], axis=1)
+    where = np.zeros_like(train)
+    for number in np.unique(train):
+        candidates = candidates_of(response.stations, [trains[number]])
+        where = np.where(train == number, _first_reaching(response, candidates, floor), where)
+    return train, where
+
+
+def _first_reaching(response: Response, candidates: Candidates, floor: Floats) -> Ints:
+    """Return the first candidate (2, R), in the order of ties, whose effect reaches ``floor`` (2, R) in each sense."""
+    heading, axle = (np.repeat(one, candidates.stops) for one in (candidates.heading, candidates.axle))
+    order = np.lexsort((axle, -heading, np.round(candidates.fronts().reshape(-1), _SAME_PLACE)))
+    rank = np.empty_like(order)
+    rank[order] = np.arange(order.size)
+    first = np.full(floor.shape, order.size - 1)
+    step = runs_at_a_time(response, candidates)
+    for run in range(0, candidates.train.size, step):
+        last = min(run + step, candidates.train.size)
+        values = response.under(panel_loads(candidates.stations, *candidates.standing(run, last)).T)
+        ranks = rank[run * candidates.stops : last * candidates.stops]
+        for side, adverse in enumerate((values, -values)):
+            reached = np.where(adverse >= floor[side][:, None], ranks, order.size - 1).min(axis=1)
+            np.minimum(first[side], reached, out=first[side])
+    return np.asarray(order[first])
