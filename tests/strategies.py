@@ -17,11 +17,11 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 from hypothesis import assume
 from hypothesis import strategies as st
+from oracles.lagrange import holds_of
+from oracles.trusses import pratt, truss_of, warren
 
 from movload.bridge.truss import Support, Truss
 from movload.traffic.vehicle import Vehicle
-from oracles.lagrange import holds_of
-from oracles.trusses import pratt, truss_of, warren
 
 if TYPE_CHECKING:
     from collections.abc import Sequence

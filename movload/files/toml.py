@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 import tomllib
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Final
 
 from movload.errors import InputError, UnknownNameError, nearest_name
 
@@ -13,7 +13,14 @@ if TYPE_CHECKING:
     from pathlib import Path
 
 Data = dict[str, object]
-_PLACEHOLDER = "?"
+PLACEHOLDER: Final = "?"
+# What only a rating needs may wait for its value. A "?" elsewhere would change a truss or a line without a word.
+_MAY_WAIT: Final = re.compile(
+    r"members\..+\.(density|permits|permits\.(tension|compression))"
+    r"|deck\.truss_share|permanent|permanent\.(deck|truss_share)|rating|rating\.impact"
+)
+_DEEPEST: Final = 20  # tables within tables; a bridge file has four
+_LONGEST: Final = 60  # signs of a line or a value that an error shows
 
 
 def read_text(path: Path) -> str:
@@ -22,10 +29,14 @@ def read_text(path: Path) -> str:
     Raises
     ------
     InputError
-        Missing, a folder, unreadable, binary or empty.
+        Missing, a folder, a device or a pipe, unreadable, binary or empty.
     """
     try:
+        if path.exists() and not (path.is_file() or path.is_dir()):
+            raise InputError("is a device or a pipe; an ordinary file is asked for", place=str(path))
         text = path.read_bytes().decode("utf-8-sig")
+    except InputError:
+        raise
     except FileNotFoundError:
         raise UnknownNameError("no such file", place=str(path), nearest=_nearest_file(path)) from None
     except IsADirectoryError:
@@ -46,32 +57,57 @@ def parsed(text: str, place: str) -> Data:
     Raises
     ------
     InputError
-        Not TOML; the line is named.
+        Not TOML; the line is named and shown.
     """
     try:
         return tomllib.loads(text)
     except tomllib.TOMLDecodeError as error:
-        raise InputError(f"is not TOML: {error}", place=place) from None
+        raise InputError(f"is not TOML: {_with_line(str(error), text)}", place=place) from None
     except RecursionError:
         raise InputError("is not TOML that can be read: tables or lists are nested too deeply", place=place) from None
     except ValueError as error:
         raise InputError(f"holds a value that cannot be read: {error}", place=place) from None
 
 
-def without_placeholders(data: Mapping[str, object], place: str = "") -> tuple[Data, tuple[str, ...]]:
-    """Return the data without keys that still hold "?", and the places of those keys."""
+def _with_line(complaint: str, text: str) -> str:
+    """Return the parser's complaint with the line that it names, cut when long."""
+    lines = text.split("\n")
+    complaint = complaint.replace("at end of document", f"at line {len(lines)}, the end of the file")
+    named = re.search(r"at line (\d+)", complaint)
+    number = int(named[1]) if named else 0
+    return f"{complaint}: {short(lines[number - 1].strip())}" if 1 <= number <= len(lines) else complaint
+
+
+def without_placeholders(
+    data: Mapping[str, object], place: str = "", *, depth: int = 0
+) -> tuple[Data, tuple[str, ...]]:
+    """Return the data without keys that may wait and still hold "?", and the places of those keys.
+
+    Raises
+    ------
+    InputError
+        Tables within tables without end.
+    """
+    if depth > _DEEPEST:
+        raise InputError("tables are nested too deeply", place=short(place))
     kept: Data = {}
     missing: list[str] = []
     for key, value in data.items():
         here = f"{place}.{written_key(key)}" if place else written_key(key)
-        if value == _PLACEHOLDER:
+        if value == PLACEHOLDER and _MAY_WAIT.fullmatch(here):
             missing.append(here)
         elif isinstance(value, dict):
-            kept[key], deeper = without_placeholders(value, here)
+            kept[key], deeper = without_placeholders(value, here, depth=depth + 1)
             missing += deeper
         else:
             kept[key] = value
     return kept, tuple(missing)
+
+
+def short(value: object) -> str:
+    """Return a value as text, cut when long."""
+    text = str(value)
+    return text if len(text) <= _LONGEST else text[: _LONGEST - 3] + "..."
 
 
 def written_key(key: str) -> str:

@@ -80,8 +80,14 @@ class Candidates:
         return x, self.felt[train, None, :width]
 
 
-def candidates_of(stations: Floats, trains: Sequence[Train]) -> Candidates:
-    """Return the candidates of trains; those with as many axles should stand together (padding costs)."""
+def candidates_of(stations: Floats, trains: Sequence[Train], headings: tuple[int, ...] | None = None) -> Candidates:
+    """Return the candidates of trains; those with as many axles should stand together (padding costs).
+
+    Parameters
+    ----------
+    headings
+        The headings to try; each train's own when left out.
+    """
     counts = [train.vehicle.loads.size for train in trains]
     distances, felt = np.zeros((2, len(trains), max(counts)))
     runs: list[tuple[int, int, int]] = []
@@ -89,7 +95,7 @@ def candidates_of(stations: Floats, trains: Sequence[Train]) -> Candidates:
         distances[number, :count] = train.vehicle.distances
         distances[number, count:] = distances[number, count - 1]
         felt[number, :count] = train.vehicle.loads * train.shares
-        runs += [(number, heading, axle) for heading in train.headings for axle in range(count)]
+        runs += [(number, heading, axle) for heading in headings or train.headings for axle in range(count)]
     train_of, heading_of, axle_of = np.array(runs, dtype=np.intp).T
     return Candidates(
         stations, distances, felt, np.array(counts, dtype=np.intp), train_of, heading_of, np.ascontiguousarray(axle_of)

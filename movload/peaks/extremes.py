@@ -6,8 +6,10 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
+from movload.arrays import keep_memory_warm
 from movload.peaks.candidates import Candidates, candidates_of
 from movload.peaks.placement import panel_loads
+from movload.statics.condensed import spread
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -30,16 +32,29 @@ def static_extremes(response: Response, trains: Sequence[Train]) -> tuple[Floats
     trains
         V trains, all swept in one batch.
     """
+    keep_memory_warm()
+    condensed = response.condensed
+    one_heading = condensed.symmetric and all(len(train.headings) == 2 for train in trains)
+    highest, lowest = _batch(condensed.response, trains, (1,) if one_heading else None)
+    if one_heading:
+        other = spread(highest, lowest, condensed.mirror, condensed.mirror_scale)
+        highest, lowest = np.maximum(highest, other[0]), np.minimum(lowest, other[1])
+    highest, lowest = spread(highest, lowest, condensed.row, condensed.scale)
+    noise = _NOISE * np.maximum(np.abs(highest), np.abs(lowest))
+    highest[highest <= noise] = 0.0
+    lowest[lowest >= -noise] = 0.0
+    return highest, lowest
+
+
+def _batch(response: Response, trains: Sequence[Train], headings: tuple[int, ...] | None) -> tuple[Floats, Floats]:
+    """Return every row's extremes under each train (V, R), in the trains' own headings or in those given."""
     by_axles = sorted(range(len(trains)), key=lambda number: trains[number].vehicle.loads.size)
-    candidates = candidates_of(response.stations, [trains[number] for number in by_axles])
+    candidates = candidates_of(response.stations, [trains[number] for number in by_axles], headings)
     by_run = _extremes_by_run(response, candidates)
     starts = np.searchsorted(candidates.train, np.arange(len(trains)))
     highest, lowest = np.empty((2, len(trains), len(response.effects)))
     highest[by_axles] = np.maximum.reduceat(by_run[0], starts, axis=0)
     lowest[by_axles] = np.minimum.reduceat(by_run[1], starts, axis=0)
-    noise = _NOISE * np.maximum(np.abs(highest), np.abs(lowest))
-    highest[highest <= noise] = 0.0
-    lowest[lowest >= -noise] = 0.0
     return highest, lowest
 
 

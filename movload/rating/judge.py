@@ -11,7 +11,7 @@ from movload.errors import InputError, Note
 from movload.peaks.peaks import PartPeaks, Peaks, stacked
 from movload.peaks.sweep import part_peaks
 from movload.rating.factor_sets import PERMITTED, FactorSet
-from movload.rating.kernel import SIGNS, rating_factors, spare_strength
+from movload.rating.kernel import SIGNS, rating_factors
 from movload.rating.ratings import Ratings
 from movload.rating.solved import SolvedBridge, solve
 from movload.traffic.crossing import Crossing, trains_on
@@ -81,17 +81,15 @@ def _peaks(solved: SolvedBridge, crossings: Sequence[Crossing]) -> tuple[Peaks, 
 def _factors(solved: SolvedBridge, live: Floats) -> Floats:
     """Return RF (S, C, R, 2) under live effects (C, R, 2) given as magnitudes."""
     permanent = solved.permanent.sum(axis=0)
-    factors = [
-        [rating_factors(spare_strength(strength, permanent, level), one, level) for one in live]
-        for level, strength in zip(solved.method.levels, solved.strength, strict=True)
-    ]
-    return held(np.array(factors))
+    by_level = zip(solved.method.levels, solved.strength, strict=True)
+    return held(np.array([rating_factors(strength, permanent, live, level) for level, strength in by_level]))
 
 
 def _notes(loadings: Iterable[Loading]) -> list[Note]:
-    """Return where each vehicle's numbers come from when that is less than a page read."""
-    return [
+    """Return where each vehicle's numbers come from when that is less than a page read, once for each."""
+    notes = (
         Note("vehicle-source", loading.title, f"axles and spacings: {loading.source}", loading.source)
         for loading in loadings
         if "memory" in loading.source or "invented" in loading.source
-    ]
+    )
+    return list(dict.fromkeys(notes))

@@ -18,28 +18,27 @@ if TYPE_CHECKING:
 SIGNS: Final = np.array([1.0, -1.0])  # tension, compression
 
 
-def spare_strength(strength: Floats, permanent: Floats, level: Level) -> Floats:
-    """Return R - s a D (R, 2) [N]: what permanent load leaves; 0 or less when it alone uses all."""
-    spare: Floats = strength - SIGNS * level.permanent * permanent[:, None]
-    return spare
-
-
-def rating_factors(spare: Floats, live: Floats, level: Level) -> Floats:
-    """Return RF (R, 2).
+def rating_factors(strength: Floats, permanent: Floats, live: Floats, level: Level) -> Floats:
+    """Return RF, shape of ``live``.
 
     0 where permanent load alone uses all strength, even where the live effect is zero; infinite where there is
-    strength to spare and no live effect; nan where no strength is known.
+    strength to spare and no live effect; nan where no strength is known. A sense that neither permanent nor live load
+    brings about needs no strength, so there a strength of 0 is enough.
 
     Parameters
     ----------
-    spare
-        R - s a D (R, 2) [N].
+    strength
+        R (R, 2) [N], magnitudes, tension then compression.
+    permanent
+        D (R,) [N], tension positive.
     live
-        L (R, 2) [N], magnitudes with impact.
+        L (..., R, 2) [N], magnitudes with impact; leading axes are crossings.
     """
-    factors = np.full(spare.shape, np.inf)
+    pushed = SIGNS * level.permanent * permanent[:, None]
+    spare = strength - pushed
     felt = live > 0
-    factors[felt] = spare[felt] / (level.live * live[felt])
-    factors[spare <= 0] = 0.0
-    factors[np.isnan(spare)] = np.nan
+    factors = np.full(live.shape, np.inf)
+    np.divide(spare, level.live * live, out=factors, where=felt)
+    factors[(spare <= 0) & (felt | (pushed > 0))] = 0.0
+    factors[..., np.isnan(spare)] = np.nan
     return held(factors)

@@ -4,10 +4,11 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import cached_property
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
+from movload.errors import MissingDataError
 from movload.rating.kernel import SIGNS
 from movload.strength.typed import SENSES
 
@@ -18,6 +19,8 @@ if TYPE_CHECKING:
     from movload.rating.solved import SolvedBridge
     from movload.statics.part import Effect
     from movload.traffic.crossing import Crossing
+
+_DIGITS: Final = 10  # to which ratings are compared: bars alike but for round-off keep the order of their rows
 
 
 @dataclass(frozen=True, eq=False)
@@ -42,6 +45,8 @@ class Rating:
         I [-].
     safe_weight
         RF x the vehicle's weight [N]: what this vehicle could weigh, its axles in the same proportions.
+    permanent_factor, live_factor
+        The level's margins on D and on L [-].
     peaks, row, side
         Where the placement is found.
     """
@@ -56,6 +61,8 @@ class Rating:
     live: float
     impact: float
     safe_weight: float
+    permanent_factor: float
+    live_factor: float
     peaks: Peaks
     row: int
     side: int
@@ -67,8 +74,11 @@ class Rating:
 
     @property
     def permanent_use(self) -> float:
-        """Part of the strength that permanent load alone uses [-]; 0 when it relieves."""
-        pushed = self.permanent if self.side == 0 else -self.permanent
+        """Part of the strength that permanent load alone uses, the level's margin on it included [-].
+
+        0 when permanent load relieves; infinite when it acts and there is no strength at all.
+        """
+        pushed = float(SIGNS[self.side]) * self.permanent_factor * self.permanent
         if pushed <= 0:
             return 0.0
         return pushed / self.strength if self.strength > 0 else float("inf")
@@ -128,6 +138,7 @@ class Ratings:
     def rating(self, crossing: int, row: int, side: int, *, level: int = 0) -> Rating:
         """Return one rating."""
         peaks, solved, loading = self.peaks[crossing], self.solved, self.crossings[crossing].loading
+        margins = solved.method.levels[level]
         factor = float(self.factor[level, crossing, row, side])
         return Rating(
             effect=peaks.effects[row],
@@ -140,6 +151,8 @@ class Ratings:
             live=float((peaks.highest, peaks.lowest)[side][row]),
             impact=float(self.impact[crossing, row, side]),
             safe_weight=factor * loading.gross,
+            permanent_factor=margins.permanent,
+            live_factor=margins.live,
             peaks=peaks,
             row=row,
             side=side,
@@ -150,17 +163,26 @@ class Ratings:
 
         A row whose strength permanent load alone uses comes before all others, the most overused first.
         """
-        rated = np.argwhere(~np.isnan(self.factor[level, crossing]))
-        ratings = [self.rating(crossing, int(row), int(side), level=level) for row, side in rated]
-        return sorted(ratings, key=lambda one: (one.factor, -one.permanent_use))
+        return sorted(self._among(crossing, np.inf, level), key=_order)
 
     def governing(self, crossing: int, *, level: int = 0) -> Rating:
-        """Return the worst row of a crossing."""
+        """Return the worst row of a crossing, the first of `rows`.
+
+        Raises
+        ------
+        MissingDataError
+            No row has a strength.
+        """
         factors = self.factor[level, crossing]
-        least = np.nanmin(factors)
-        among = np.argwhere(factors == least)
-        ratings = [self.rating(crossing, int(row), int(side), level=level) for row, side in among]
-        return max(ratings, key=lambda one: one.permanent_use) if least == 0 else ratings[0]
+        if np.isnan(factors).all():
+            raise MissingDataError("no row has a strength, so nothing can be rated", place=self.solved.title)
+        as_bad = np.nanmin(factors) * (1.0 + 10.0 ** (1 - _DIGITS))
+        return min(self._among(crossing, as_bad, level), key=_order)
+
+    def _among(self, crossing: int, greatest: float, level: int) -> list[Rating]:
+        """Return the rated rows of a crossing with factors up to ``greatest``, tension before compression."""
+        found = np.argwhere(self.factor[level, crossing] <= greatest)
+        return [self.rating(crossing, int(row), int(side), level=level) for row, side in found]
 
     @property
     def coverage(self) -> Coverage:
@@ -178,12 +200,17 @@ class Ratings:
 
     @property
     def worst(self) -> Rating:
-        """Return the worst row of the worst crossing."""
-        governing = [self.governing(number) for number in range(len(self.crossings))]
-        return min(governing, key=lambda one: (one.factor, -one.permanent_use))
+        """Return the worst row of the worst crossing; of equally bad crossings the first."""
+        return min((self.governing(number) for number in range(len(self.crossings))), key=_order)
 
     @property
     def passes(self) -> bool:
         """Whether every unrounded rating is 1 or more and every member rated in every sense it feels."""
         rated = self.factor[~np.isnan(self.factor)]
         return bool((rated >= 1.0).all()) and self.coverage.complete
+
+
+def _order(rating: Rating) -> tuple[bool, float, float]:
+    """Return what ratings are sorted by: those below 1 first, then the worst, then the most used by permanent load."""
+    factor, use = (float(f"{value:.{_DIGITS}g}") for value in (rating.factor, rating.permanent_use))
+    return (rating.factor >= 1.0, factor, -use)

@@ -105,22 +105,32 @@ def _required(bridge: Bridge) -> tuple[PermanentLoads, float, float]:
             bridge.permanent,
         "rating.impact (dynamic allowance, e.g. 0.30; 0 only if a rule allows it)": bridge.impact,
     }  # fmt: skip
-    keys = [place.split(" ", 1)[0] for place in bridge.missing]
     needed += [
         words for words, value in asked.items()
-        if value is None and not any(key.startswith(words.split(".", 1)[0]) for key in keys)
+        if value is None and not any(place in words.split() for place in bridge.missing)
     ]  # fmt: skip
-    weightless = [member.name for member in bridge.truss.members if member.density is None]
-    if weightless and not any(key.endswith("density") for key in keys):
-        needed.append(
-            f"density of {', '.join(weightless[:3])}{' ...' if len(weightless) > 3 else ''} (0 if in deck weight)"
-        )
-    if not bridge.permits and not any("permits" in key for key in keys):
-        needed.append("permits of at least one member group: { tension = ..., compression = ... }")
+    needed += _members_needed(bridge)
     permanent, share, impact = bridge.permanent, bridge.deck.truss_share, bridge.impact
     if needed or permanent is None or share is None or impact is None:
         raise MissingDataError("a rating needs data that is not there yet: " + "; ".join(needed), place=bridge.title)
     return permanent, share, impact
+
+
+def _members_needed(bridge: Bridge) -> list[str]:
+    """Return what no member group says and no "?" already asks for: densities, and any permitted force at all."""
+    asked = [place.replace('"', "") for place in bridge.missing if place.startswith("members.")]
+    needed = []
+    weightless = [
+        member.name for member in bridge.truss.members
+        if member.density is None and f"members.{member.role}.density" not in asked
+    ]  # fmt: skip
+    if weightless:
+        some = ", ".join(weightless[:3]) + (" ..." if len(weightless) > 3 else "")
+        needed.append(f"density of {some} (0 if in deck weight)")
+    typed = any(force is not None for one in bridge.permits.values() for force in (one.tension, one.compression))
+    if not typed and not any(".permits" in place for place in asked):
+        needed.append("permits of at least one member group: { tension = ..., compression = ... }")
+    return needed
 
 
 def _notes(bridge: Bridge) -> tuple[Note, ...]:

@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 import math
+from dataclasses import dataclass
 from typing import TYPE_CHECKING, Final
 
-from movload.report.elevation import PIN
-from movload.report.ink import HAIR, INK, PAPER, POINT, THIN
-from movload.report.labels import Lettering, Spot
+from movload.report.elevation import PIN, bar_directions
+from movload.report.ink import HAIR, PAPER, POINT, THIN
+from movload.report.labels import Spot
+from movload.report.words import plain
 
 if TYPE_CHECKING:
     from movload.bridge.truss import Support, Truss
@@ -17,60 +19,77 @@ _TALL: Final = 4.2  # mm from the pin's middle to the bed
 _HALF: Final = 2.5  # mm, half the foot of a triangle
 _BED: Final = 4.2  # mm, half the length of a bed
 _HATCH: Final = 1.4  # mm, depth of the ground's hatching
+_STROKES: Final = 7  # of that hatching
+_STEEP: Final = 0.7  # sine of a bed's angle from which the side it is drawn on may be chosen
 
 REACH: Final = _TALL + _HATCH + 0.6  # mm a bearing takes below its joint
 
 
+def over(truss: Truss) -> float:
+    """Return the room [mm] that bearings standing over their joints take above the truss."""
+    return 1.6 * REACH if any(math.cos(_turn(truss, support)) < -0.1 for support in truss.supports) else 0.0
+
+
 def draw_bearings(strip: Strip, truss: Truss) -> None:
-    """Draw the bearing under each supported joint; an inclined bed has its angle written beside it."""
+    """Draw the bearing of each supported joint."""
     for support in truss.supports:
-        draw_bearing(strip, truss, support)
+        joint = strip.mm(*truss.joints[support.joint])
+        _draw_bearing(strip.sheet, support, _Stand(joint, _turn(truss, support)))
 
 
-def draw_bearing(strip: Strip, truss: Truss, support: Support, colour: str = INK) -> None:
-    """Draw one bearing."""
-    sheet, joint = strip.sheet, strip.mm(*truss.joints[support.joint])
+def name_beds(strip: Strip, truss: Truss) -> None:
+    """Write the angle of each bed that is not level beside it; to be done when all that it must avoid is drawn."""
+    for support in truss.supports:
+        if support.slides is None or support.slides % 360 == 0:
+            continue
+        stand = _Stand(strip.mm(*truss.joints[support.joint]), _turn(truss, support))
+        lettering = strip.sheet.lettering(f"{plain(support.slides, 0 if support.slides % 1 == 0 else 1)}°")
+        half = lettering.width / 2
+        places = ((0, -1), (0.7, -1), (-0.7, -1), (1, -0.3), (-1, -0.3), (1, 0.5), (-1, 0.5), (0, -2))
+        spots = [
+            Spot(*stand.off(along * (_BED + 1 + half), -_TALL + up * (_HATCH + 1.2 + half))) for along, up in places
+        ]
+        strip.sheet.write(lettering, spots)
+
+
+@dataclass(frozen=True, slots=True)
+class _Stand:
+    """A bearing's joint [mm] and the turn of its symbol [radians]."""
+
+    joint: Place
+    turn: float
+
+    def off(self, along: float, up: float) -> Place:
+        """Return the point that lies ``along`` the bed and ``up`` its normal from the joint [mm]."""
+        cosine, sine = math.cos(self.turn), math.sin(self.turn)
+        return self.joint[0] + along * cosine - up * sine, self.joint[1] + along * sine + up * cosine
+
+
+def _turn(truss: Truss, support: Support) -> float:
+    """Return the symbol's turn [radians]: the bed's angle, or its back where a steep bed would stand in the truss."""
+    angle = support.bed_angle
+    if abs(math.sin(angle)) < _STEEP:
+        return angle
+    bars = bar_directions(truss, support.joint)
+    front, back = (
+        min(abs(math.remainder(angle + side - bar, math.tau)) for bar in bars) for side in (-math.pi / 2, math.pi / 2)
+    )
+    return angle + math.pi if back > front else angle
+
+
+def _draw_bearing(sheet: Sheet, support: Support, stand: _Stand) -> None:
+    """Draw a triangle or a roller, and the bed under it."""
+    style = {"linewidth": THIN / POINT, "zorder": 1.5}
     if support.slides is None:
-        corners = [_off(support, joint, *at) for at in ((0, -PIN * 0.6), (-_HALF, -_TALL), (_HALF, -_TALL))]
-        sheet.shape(corners, PAPER, colour, linewidth=THIN / POINT, zorder=1.5, label=f"pinned {support.joint}")
+        corners = [stand.off(*at) for at in ((0, -PIN * 0.6), (-_HALF, -_TALL), (_HALF, -_TALL))]
+        sheet.shape(corners, PAPER, label=f"pinned {support.joint}", **style)
     else:
         radius = (_TALL - PIN) / 2
-        middle = _off(support, joint, 0, -PIN - radius)
-        sheet.disc(middle, radius, PAPER, colour, linewidth=THIN / POINT, zorder=1.5, label=f"roller {support.joint}")
-    _draw_bed(sheet, support, joint, colour)
-    _name_angle(sheet, support, joint)
-
-
-def _off(support: Support, joint: Place, along: float, up: float) -> Place:
-    """Return the point that lies ``along`` the bed and ``up`` its normal from a joint [mm]."""
-    cosine, sine = math.cos(support.bed_angle), math.sin(support.bed_angle)
-    return joint[0] + along * cosine - up * sine, joint[1] + along * sine + up * cosine
-
-
-def _draw_bed(sheet: Sheet, support: Support, joint: Place, colour: str) -> None:
-    """Draw the bed's line with short strokes of ground beneath it."""
-    left, right = (_off(support, joint, side * _BED, -_TALL) for side in (-1, 1))
-    sheet.stroke([left, right], THIN, colour, label=f"bed {support.joint}")
-    strokes = 7
-    for number in range(strokes):
-        start = -_BED + (number + 0.6) * 2 * _BED / strokes
-        ends = [
-            _off(support, joint, start, -_TALL),
-            _off(support, joint, start - _HATCH * 0.8, -_TALL - _HATCH),
-        ]
-        sheet.stroke(ends, HAIR, colour)
-    sheet.board.keep_clear([joint, _off(support, joint, 0, -_TALL)], _HALF)
+        sheet.disc(stand.off(0, -PIN - radius), radius, PAPER, label=f"roller {support.joint}", **style)
+    left, right = stand.off(-_BED, -_TALL), stand.off(_BED, -_TALL)
+    sheet.stroke([left, right], THIN, label=f"bed {support.joint}")
+    for number in range(_STROKES):
+        start = -_BED + (number + 0.6) * 2 * _BED / _STROKES
+        sheet.stroke([stand.off(start, -_TALL), stand.off(start - _HATCH * 0.8, -_TALL - _HATCH)], HAIR)
+    sheet.board.keep_clear([stand.joint, stand.off(0, -_TALL)], _HALF)
     sheet.board.keep_clear([left, right], _HATCH)
-
-
-def _name_angle(sheet: Sheet, support: Support, joint: Place) -> None:
-    """Write the angle of a bed that is not level, beside the bed."""
-    if support.slides is None or support.slides % 360 == 0:
-        return
-    lettering = Lettering(f"{support.slides:g}°", sheet.size)
-    spots = []
-    for along, up in ((0, -1.0), (1, -0.4), (-1, -0.4), (1, 0.2), (-1, 0.2)):
-        reach = (along * (_BED + 1 + lettering.width / 2), -_TALL + up * (_HATCH + 2 + lettering.width / 2))
-        spots.append(Spot(*_off(support, joint, *reach)))
-    sheet.write(lettering, spots)
-

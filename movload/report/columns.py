@@ -7,7 +7,7 @@ import io
 import json
 import math
 from dataclasses import dataclass, field
-from typing import TYPE_CHECKING, Any, Final, Generic, TypeVar
+from typing import TYPE_CHECKING, Any, Generic, TypeVar
 
 if TYPE_CHECKING:
     from collections.abc import Callable, Sequence
@@ -15,9 +15,6 @@ if TYPE_CHECKING:
     from movload.units import Quantity, UnitSystem
 
 Row = TypeVar("Row")
-SI_NAMES: Final = {
-    "force": "N", "length": "m", "section": "m", "fraction": "1", "deflection": "m", "ordinate": "1 or m/N",
-}  # fmt: skip
 
 
 @dataclass(frozen=True, slots=True)
@@ -50,8 +47,11 @@ class Column(Generic[Row]):
         return self.quantity(row) if callable(self.quantity) else self.quantity
 
     def shown(self, row: Row, units: UnitSystem) -> str:
-        """Return a row's value as a table says it."""
-        return self.text(row, units) if self.text else str(self.get(row))
+        """Return a row's value as a table says it; "" for nothing."""
+        if self.text:
+            return self.text(row, units)
+        value = self.get(row)
+        return "" if value is None else str(value)
 
     def number(self, row: Row, units: UnitSystem) -> object:
         """Return a row's value in the file's units, unrounded; "" for nothing."""

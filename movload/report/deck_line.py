@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
+from itertools import combinations
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
@@ -18,9 +20,11 @@ if TYPE_CHECKING:
     from movload.arrays import Floats
     from movload.bridge.deck import PanelPoint
     from movload.bridge.truss import Truss
-    from movload.report.sheet import Strip
+    from movload.report.sheet import Place, Strip
 
 _SAME_PLACE: Final = 1e-6  # m
+_STRAIGHT: Final = 1e-6  # radians; bars that differ less are one line
+_STEEP: Final = 0.5  # radians; a chord is flatter, an end post steeper
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -85,10 +89,23 @@ class DeckLine:
             share = (x - start[over, 0]) / (end[over, 0] - start[over, 0])
             crossing = start[over, 1] + share * (end[over, 1] - start[over, 1]) - loaded
             depth = float(y) - loaded
+            if _in_a_post(truss, (float(x), float(y))):
+                continue
             beyond = crossing * np.sign(depth) > abs(depth) + _SAME_PLACE
             if abs(depth) > _SAME_PLACE and not beyond.any():
                 columns[round(float(x), 6)] = max(abs(depth), columns.get(round(float(x), 6), 0.0))
         return list(columns.items())
+
+
+def _in_a_post(truss: Truss, point: Place) -> bool:
+    """Say whether a joint only divides a steep straight bar, such as a subdivided end post: that is no chord."""
+    joint = int(np.argmin(np.hypot(*(truss.coordinates - point).T)))
+    turns = []
+    for (start, end), (along, up) in zip(truss.ends, truss.spans, strict=True):
+        if joint in {start, end} and abs(along) > _SAME_PLACE:
+            turns.append(math.atan(up / along))
+    straight = any(abs(first - second) < _STRAIGHT for first, second in combinations(turns, 2))
+    return straight and max(map(abs, turns)) > _STEEP
 
 
 def draw_abutments(strip: Strip, deck: DeckLine) -> None:

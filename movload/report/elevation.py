@@ -113,7 +113,7 @@ def name_joints(strip: Strip, truss: Truss, *, besides: frozenset[str] = frozens
 def name_spots(strip: Strip, truss: Truss, name: str, lettering: Lettering) -> list[Spot]:
     """Return where a joint's name may stand: around it, the widest gap between its bars first."""
     x, y = strip.mm(*truss.joints[name])
-    bars = _bar_directions(truss, name)
+    bars = bar_directions(truss, name)
     turns = [math.radians(15 * step) for step in range(24)]
 
     def crowding(turn: float) -> float:
@@ -136,7 +136,7 @@ def _beside(point: Place, turn: float, away: float, lettering: Lettering) -> Spo
     )
 
 
-def _bar_directions(truss: Truss, name: str) -> list[float]:
+def bar_directions(truss: Truss, name: str) -> list[float]:
     """Return the direction [radians] of each bar that leaves a joint."""
     joint = truss.joint_index[name]
     directions = []
@@ -154,7 +154,7 @@ def bar_spots(strip: Strip, truss: Truss, row: int, lettering: Lettering, weight
         start, end = end, start
     turn = math.atan2(*(end - start)[::-1])
     across = np.array([-math.sin(turn), math.cos(turn)])
-    away = weight / 2 + _ASIDE + lettering.ink_height / 2
+    away = weight / 2 + _ASIDE + lettering.pad / 2 + lettering.ink_height / 2
     middle_y = strip.mm(0.0, float(np.ptp(truss.coordinates[:, 1]) / 2 + truss.coordinates[:, 1].min()))[1]
     first = 1 if abs(math.degrees(turn)) > 20 or (start + end)[1] / 2 > middle_y else -1
     return [

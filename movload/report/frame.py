@@ -83,6 +83,7 @@ def draw_heading(sheet: Sheet, title: str, remark: str) -> None:
     sheet.write_from(Lettering(title, size, bold=True), MARGIN, level)
     rule = sheet.height - HEADING
     sheet.stroke([(MARGIN, rule), (right, rule)], BOLD)
+    sheet.board.keep_clear([(MARGIN, rule), (right, rule)], BOLD / 2)
 
 
 def caption_height(caption: str, width: float, size: float) -> float:
@@ -95,6 +96,7 @@ def draw_caption(sheet: Sheet, caption: str) -> None:
     lines = wrapped(caption, sheet.size, sheet.width - 2 * MARGIN)
     top = caption_height(caption, sheet.width, sheet.size)
     sheet.stroke([(MARGIN, top), (sheet.width - MARGIN, top)], FINE)
+    sheet.board.keep_clear([(MARGIN, top), (sheet.width - MARGIN, top)])
     for number, line in enumerate(lines):
         level = top - 1.5 - (number + 0.5) * row_height(sheet.size)
         sheet.write_from(Lettering(line, sheet.size), MARGIN, level, INK)

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 
 from movload.errors import InputError
-from movload.report.bearings import REACH, draw_bearings
+from movload.report.bearings import REACH, draw_bearings, name_beds, over
 from movload.report.deck_line import DeckLine, draw_abutments
 from movload.report.dimensions import row_height, row_of_words
 from movload.report.elevation import (
@@ -21,7 +21,7 @@ from movload.report.elevation import (
     name_spots,
 )
 from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
-from movload.report.ink import ACCENT, BOLD, FAINT, HAIR, MARGIN
+from movload.report.ink import ACCENT, BOLD, FAINT, HAIR
 from movload.report.line_strip import Band, draw_line, name_line, write_kinks, write_zeros
 from movload.report.sheet import Sheet, Window
 from movload.report.words import lengths, origin
@@ -90,7 +90,7 @@ def _drawn(
     foot = caption_height(caption, width, size) + 2 * row + 2.0
     height = _HEIGHTS[len(lines) - 1]
     zero = foot + len(lines) * height + _BELOW - low * window.scale
-    sheet = Sheet(width, zero + high * window.scale + _ABOVE + HEADING, size)
+    sheet = Sheet(width, zero + high * window.scale + _ABOVE + over(truss) + HEADING, size)
     draw_heading(sheet, title, "influence lines")
     draw_caption(sheet, caption)
     left_out = _draw_truss(sheet.strip(window, zero, window.scale), truss, deck, [line.effect for line in lines])
@@ -112,8 +112,8 @@ def draw_stations(sheet: Sheet, window: Window, deck: DeckLine, units: UnitSyste
     places = [window.mm(x) for x in deck.stations]
     for place, height in zip(places, deck.heights, strict=True):
         sheet.stroke([(place, foot - 0.5), (place, zero + height * window.scale)], HAIR, FAINT, zorder=-5)
-    sheet.write_from(sheet.lettering(f"x, {units.length}"), MARGIN, foot - 1.5 * row - 0.5)
-    left_out = row_of_words(sheet, foot - 0.5 * row - 0.5, places, deck.names)
+    sheet.write_from(sheet.lettering(f"x, {units.length}"), window.side, foot - 1.5 * row - 0.5)
+    left_out = row_of_words(sheet, foot - 0.5 * row - 0.5, places, [name or "abut." for name in deck.names])
     return left_out + row_of_words(sheet, foot - 1.5 * row - 0.5, places, lengths(deck.stations, units))
 
 
@@ -125,6 +125,7 @@ def _draw_truss(strip: Strip, truss: Truss, deck: DeckLine, effects: Sequence[Ef
     draw_bars(strip, truss, [accented if member.name in asked else PLAIN_BAR for member in truss.members])
     draw_joints(strip, truss, deck.joints)
     draw_abutments(strip, deck)
+    name_beds(strip, truss)
     left_out = 0
     for row, member in enumerate(truss.members):
         if member.name in asked:

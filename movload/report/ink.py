@@ -14,7 +14,8 @@ if TYPE_CHECKING:
 
 INK: Final = "#111111"
 GREY: Final = "#555555"  # words of second rank; still black enough for a copy
-FAINT: Final = "#a8a8a8"  # projection lines, wheels off the bridge
+PASSIVE: Final = "#8a8a8a"  # wheels off the bridge
+FAINT: Final = "#a8a8a8"  # projection lines
 PALE: Final = "#dddddd"  # the fill of a positive area
 PAPER: Final = "#ffffff"
 ACCENT: Final = "#b8340c"
@@ -31,7 +32,7 @@ BOLD: Final = 0.8
 FONT: Final = "DejaVu Sans"  # comes with matplotlib, so a figure is the same everywhere
 
 LEFT: Final = 30.0  # margins beside the truss: row names and signs stand in the left one
-RIGHT: Final = 20.0
+RIGHT: Final = 24.0
 EDGE: Final = 6.0  # nothing is drawn nearer to the sheet's edge
 MARGIN: Final = 8.0  # where words start
 

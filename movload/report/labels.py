@@ -105,9 +105,9 @@ def measured(text: str, size: float, bold: bool = False) -> tuple[float, float]:
 
 
 def wrapped(text: str, size: float, width: float) -> list[str]:
-    """Return the text in as few lines as fit ``width`` [mm], broken between words and about equally long."""
+    """Return the text in as few lines as fit ``width`` [mm], broken between words, the last not left with a word."""
     lines = _filled(text, size, width)
-    for part in range(49, 24, -1):
+    for part in range(49, 37, -1):
         tighter = _filled(text, size, width * part / 50)
         if len(tighter) > len(lines):
             break

@@ -10,7 +10,7 @@ from matplotlib.collections import LineCollection
 from matplotlib.patches import Polygon
 
 from movload.report.dimensions import row_height
-from movload.report.ink import FINE, FIRM, GREY, HAIR, MARGIN, PALE, PAPER, POINT
+from movload.report.ink import FINE, FIRM, GREY, HAIR, PALE, PAPER, POINT
 from movload.report.labels import Lettering, Spot
 from movload.report.words import lengths, ordinate_decimals, ordinate_factor, ordinate_unit, sides, signed
 
@@ -116,6 +116,10 @@ def kinks(line: InfluenceLine) -> Ints:
 def write_kinks(strip: Strip, line: InfluenceLine, units: UnitSystem, *, taken: Floats) -> int:
     """Write the ordinate at each kink not already ``taken`` [m]; return how many found no room."""
     left_out = 0
+    if not line.ordinates.any():
+        lettering = strip.sheet.lettering("zero everywhere")
+        middle = (strip.window.left + strip.window.right) / 2
+        left_out += not strip.sheet.write(lettering, around((middle, strip.zero), lettering, upward=True), GREY)
     for station in kinks(line):
         x, y = float(line.stations[station]), float(line.ordinates[station])
         if not np.isclose(taken, x, rtol=0.0, atol=1e-6).any():
@@ -163,8 +167,8 @@ def around(point: Place, lettering: Lettering, *, upward: bool) -> list[Spot]:
 def name_line(strip: Strip, line: InfluenceLine, units: UnitSystem, truss: Truss) -> None:
     """Write the row's name and unit at the left end of its axis, and which way it counts at the right end."""
     sheet, rise = strip.sheet, 0.55 * row_height(strip.sheet.size)
-    sheet.write_from(sheet.lettering(line.effect.name, bold=True), MARGIN, strip.zero + rise)
-    sheet.write_from(sheet.lettering(ordinate_unit(line.effect, units)), MARGIN, strip.zero - rise, GREY)
+    sheet.write_from(sheet.lettering(line.effect.name, bold=True), strip.window.side, strip.zero + rise)
+    sheet.write_from(sheet.lettering(ordinate_unit(line.effect, units)), strip.window.side, strip.zero - rise, GREY)
     right = strip.window.right + 3.5
     for side, word in zip((1, -1), sides(line.effect, truss), strict=True):
         sheet.write_from(sheet.lettering(word), right, strip.zero + side * rise)

@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 
 from movload.errors import InputError
-from movload.report.bearings import REACH, draw_bearings
+from movload.report.bearings import REACH, draw_bearings, name_beds, over
 from movload.report.deck_line import DeckLine, draw_abutments
 from movload.report.dimensions import row_height
 from movload.report.elevation import (
@@ -57,6 +57,7 @@ class Subject:
     units: UnitSystem
     title: str
     caption: str
+    alone: bool
 
     @property
     def is_off(self) -> bool:
@@ -91,7 +92,8 @@ class Subject:
     def told(self) -> str:
         """Return the caption: what the forces are, then the caller's own words, then x."""
         unit = self.units.force
-        bars = "" if not self.forces.any() else f"Bars: force in {unit}, T tension, C compression{self._taken()}. "
+        alone = " from the vehicle alone, standing as drawn" if self.alone else ""
+        bars = "" if not self.forces.any() else f"Bars: force in {unit}{alone}{self._taken()}. "
         words = f"{self.caption.rstrip('.')}. " if self.caption else ""
         line = f"Influence line: {self.line.effect.name} per unit load standing at x"
         under = "" if self.is_off else ", with its ordinates under the axles"
@@ -151,7 +153,7 @@ def peak_figure(  # noqa: PLR0913 - the caller's own words and forces are keywor
             place="forces",
         )
     deck = DeckLine.under(truss, lines.stations)
-    subject = Subject(truss, deck, lines[key], peak, shown, units, title, caption)
+    subject = Subject(truss, deck, lines[key], peak, shown, units, title, caption, forces is None)
     return fitted(lambda width, size: _drawn(subject, width, size))
 
 
@@ -184,10 +186,10 @@ def _drawn(subject: Subject, width: float, size: float) -> tuple[Sheet, int]:
     window = Window.fitting(first, last, width, steepest=_TALLEST / (high - low))
     plan = TrainPlan.of(train, window, subject.units, size)
     foot = caption_height(subject.told(), width, size)
-    line = foot + 3 * row + 3.0
+    line = foot + (3 if subject.forces.any() else 2) * row + 3.0
     level = line + _LINE + plan.below
     zero = level + (0.0 if subject.is_off else plan.above) + _BELOW - low * window.scale
-    places = Places(foot, line, level, zero, zero + high * window.scale + _ABOVE)
+    places = Places(foot, line, level, zero, zero + high * window.scale + _ABOVE + over(truss))
     sheet = Sheet(width, places.top + _ANSWER + HEADING, size)
     draw_heading(sheet, subject.title, "")
     draw_caption(sheet, subject.told())
@@ -229,7 +231,8 @@ def _draw_deck(strip: Strip, subject: Subject) -> None:
     first, last = (strip.mm(float(subject.deck.stations[end]), 0.0) for end in (0, -1))
     strip.sheet.stroke([first, last], BOLD, label="deck")
     for end, side in ((first, -1), (last, 1)):
-        strip.sheet.stroke([end, (end[0] + side * 14.0, end[1])], HAIR, GREY, label="road")
+        reach = min(end[0] - 14.0, strip.window.left - 4.0) if side < 0 else max(end[0] + 14.0, strip.window.right + 4.0)
+        strip.sheet.stroke([end, (reach, end[1])], HAIR, GREY, label="road")
         strip.sheet.stroke([(end[0], end[1] - 2.0), end], BOLD)
     strip.sheet.board.keep_clear([first, last], BOLD / 2)
 
@@ -265,6 +268,7 @@ def _draw_truss(strip: Strip, subject: Subject) -> tuple[int, list[float]]:
     draw_bars(strip, truss, bars)
     draw_joints(strip, truss, subject.deck.joints)
     draw_abutments(strip, subject.deck)
+    name_beds(strip, truss)
     unmarked = 0 if _mark_subject(strip, subject, bars) else 1
     unnamed = name_joints(strip, truss, besides=frozenset([subject.joint]))
     return unmarked + unnamed, _write_forces(strip, subject, bars)
@@ -280,9 +284,11 @@ def _mark_subject(strip: Strip, subject: Subject, bars: list[Look]) -> bool:
         return sheet.write(lettering, name_spots(strip, truss, name, lettering), ACCENT)
     force = bar_force(float(subject.forces[row]), subject.units, _decimals(subject))
     texts = [f"{name}  {force}", force, name] if subject.forces.any() else [name]
+    length = float(truss.lengths[row]) * strip.scale
     for text in texts:
         lettering = sheet.lettering(text, bold=True, pad=0.7)
-        if sheet.write(lettering, bar_spots(strip, truss, row, lettering, bars[row].weight), ACCENT):
+        fits = text != texts[0] or lettering.width < 0.9 * length  # a longer frame would name its neighbours too
+        if fits and sheet.write(lettering, bar_spots(strip, truss, row, lettering, bars[row].weight), ACCENT):
             return True
     return False
 

@@ -15,6 +15,8 @@ if TYPE_CHECKING:
 
 ARROWS: Final = {1: "→", -1: "←", 0: ""}
 _NEVER_ABOVE: Final = 100.0  # ratings beyond this say no more than that the row does not matter
+_DECIMALS: Final[dict[Quantity, tuple[int, float]]] = {"force": (1, 1e4), "section": (2, 0.0254), "length": (2, 1.0)}
+"""Decimals that say enough in units up to this many N or m; coarser units (MN, m for sections) get more."""
 _HAIR: Final = 1e-9  # of the value: what round-off put just below a digit still counts as reaching it
 
 CAUTIONS: Final = (
@@ -37,13 +39,27 @@ def quantity_of(effect: Effect) -> Quantity:
 
 def effect_text(effect: Effect, value: float, units: UnitSystem) -> str:
     """Return an effect as text, a member force with its letter: ``212.4 T``, ``-88.1 C``."""
-    decimals = 2 if effect.kind == "down" else 1
-    text = f"{units.shown(value, quantity_of(effect)):.{decimals}f}"
+    text = number_text(value, quantity_of(effect), units)
     if float(text) == 0:
         return "0"
     if effect.kind != "axial":
         return text
     return f"{text} {'T' if value > 0 else 'C'}"
+
+
+def number_text(value: float, quantity: Quantity, units: UnitSystem, *, more: int = 0, sign: str = "-") -> str:
+    """Return an SI value as a number in the file's units, ``more`` decimals than usual; zero never has a sign.
+
+    ``sign`` is Python's: "+" writes it for positive numbers too.
+    """
+    decimals, finest = _DECIMALS[quantity]
+    decimals += more + max(0, math.floor(math.log10(units.factor(quantity) / finest)))
+    return unsigned_zero(f"{units.shown(value, quantity):{sign}.{decimals}f}")
+
+
+def unsigned_zero(text: str) -> str:
+    """Return a number's text without its sign where every digit shown is 0."""
+    return text if float(text) else text.lstrip("+-")
 
 
 def rounded_down(value: float, decimals: int) -> float:
@@ -86,14 +102,14 @@ def use_text(rating: Rating) -> str:
     use = rating.permanent_use
     if math.isinf(use):
         return "permanent load alone; no strength"
-    return f"permanent load alone uses {math.floor(use * 100)} %"
+    return f"permanent load alone uses {rounded_down(use * 100, 0):.0f} %" if use > 0 else "no strength"
 
 
 def place_text(peak: Peak, units: UnitSystem) -> str:
     """Return where a peak's vehicle stands: front axle's place and heading."""
     if peak.heading == 0:
         return "off the bridge"
-    return f"{units.shown(peak.position, 'length'):.2f} {units.symbol('length')} {ARROWS[peak.heading]}"
+    return f"{number_text(peak.position, 'length', units)} {units.symbol('length')} {ARROWS[peak.heading]}"
 
 
 def standing_text(peak: Peak, stations: tuple[str, ...]) -> str:
@@ -118,7 +134,9 @@ def verdict_text(factor: float, coverage: Coverage) -> str:
         return "not adequate"
     if coverage.complete:
         return "adequate, for the members rated"
-    return f"adequate only if the {len(coverage.partly) + len(coverage.none)} members not fully rated are"
+    count = len(coverage.partly) + len(coverage.none)
+    which = f"{count} members not fully rated are" if count > 1 else "one member not fully rated is"
+    return f"adequate only if the {which}"
 
 
 def _some(names: tuple[str, ...]) -> str:

@@ -10,8 +10,10 @@ from movload.report.phrases import (
     coverage_text,
     effect_text,
     factor_text,
+    number_text,
     place_text,
     standing_text,
+    unsigned_zero,
     use_text,
     verdict_text,
     weight_text,
@@ -40,7 +42,7 @@ COLUMNS: Final[list[Column[Rating]]] = [
     Column("factor", "RF", lambda row: row.factor, right=True, text=lambda row, _: factor_text(row.factor)),
     Column(
         "strength", "strength", lambda row: row.strength, "force", right=True,
-        text=lambda row, units: f"{units.shown(row.strength, 'force'):.1f} {row.sense[0].upper()}",
+        text=lambda row, units: f"{number_text(row.strength, 'force', units)} {row.sense[0].upper()}",
     ),
     Column(
         "permanent", "permanent", lambda row: row.permanent, "force", right=True,
@@ -75,11 +77,10 @@ def summary(ratings: Ratings) -> RenderableType:
     units, lines = ratings.solved.units, []
     for number, crossing in enumerate(ratings.crossings):
         worst = ratings.governing(number)
-        gross = units.shown(crossing.loading.gross, "force")
         lines.append(
             [
                 crossing.title,
-                f"{gross:.1f} {units.symbol('force')}",
+                f"{number_text(crossing.loading.gross, 'force', units)} {units.symbol('force')}",
                 factor_text(worst.factor),
                 verdict_text(worst.factor, ratings.coverage),
                 f"{worst.effect.name} {worst.sense}",
@@ -103,30 +104,33 @@ def sum_table(
     force, length = units.symbol("force"), units.symbol("length")
     lines = [
         [
-            str(term.axle), f"{units.shown(term.x, 'length'):.3f}", f"{units.shown(term.load, 'force'):.2f}",
-            f"{term.share:.4f}", f"{1 + term.impact:.3f}", f"{term.ordinate:+.5f}",
-            f"{units.shown(term.effect, 'force'):+.2f}",
+            str(term.axle),
+            number_text(term.x, "length", units, more=1), number_text(term.load, "force", units, more=1),
+            f"{term.share:.4f}", f"{1 + term.impact:.3f}", unsigned_zero(f"{term.ordinate:+.5f}"),
+            number_text(term.effect, "force", units, more=1, sign="+"),
         ]
         for term in terms
     ]  # fmt: skip
-    lines.append(["", "", "", "", "", "sum", f"{units.shown(rating.live, 'force'):+.2f}"])
+    lines.append(["", "", "", "", "", "sum", number_text(rating.live, "force", units, more=1, sign="+")])
     heads = ["axle", f"x [{length}]", f"load [{force}]", "x share", "x (1 + I)", "x ordinate", f"= [{force}]"]
     peak = rating.peak
-    where = f"{standing_text(peak, stations)}, {place_text(peak, units)}"
+    where = ", ".join(filter(None, (standing_text(peak, stations), place_text(peak, units))))
     title = f"{rating.effect.name} {rating.sense} under {rating.crossing}: {where}"
     return [title, "", grid(heads, lines, right=[True] * 7), "", _equation(rating, units)]
 
 
 def _equation(rating: Rating, units: UnitSystem) -> str:
-    """Return RF = (R - D) / L with its numbers."""
-    strength, permanent, live = (
-        units.shown(value, "force") for value in (rating.strength, rating.permanent, abs(rating.live))
-    )
+    """Return RF = (R - a D) / (b L) with its numbers, margins a and b only where they are not 1."""
+    strength, live = (number_text(value, "force", units, more=1) for value in (rating.strength, abs(rating.live)))
+    permanent = number_text(rating.permanent, "force", units, more=1, sign="+")
     sign = "-" if rating.side == 0 else "+"
-    force = units.symbol("force")
+    on_permanent, on_live = (
+        "" if margin == 1 else f"{margin:g} x " for margin in (rating.permanent_factor, rating.live_factor)
+    )
+    why = use_text(rating)
     return (
-        f"RF = (strength {strength:.2f} {sign} permanent ({permanent:+.2f})) / live {live:.2f} {force}"
-        f" = {factor_text(rating.factor)}"
+        f"RF = (strength {strength} {sign} {on_permanent}permanent ({permanent})) / {on_live}live {live} "
+        f"{units.symbol('force')} = {factor_text(rating.factor)}{f': {why}' if why else ''}"
     )
 
 
@@ -167,7 +171,8 @@ def ratings_json(ratings: Ratings, rows: Sequence[Rating]) -> str:
                 for crossing in ratings.crossings
             ],
             "coverage": {
-                "full": coverage.full, "partly": coverage.partly, "none": coverage.none, "not_rated": coverage.not_rated,
+                "full": coverage.full, "partly": coverage.partly, "none": coverage.none,
+                "not_rated": coverage.not_rated,
             },
             "notes": [
                 {"code": note.code, "subject": note.subject, "text": note.text, "source": note.source}

@@ -16,7 +16,7 @@ from matplotlib.lines import Line2D
 from matplotlib.patches import Circle, Polygon
 from matplotlib.transforms import Affine2D
 
-from movload.report.ink import DPI, FINE, HAIR, INK, LEFT, PAPER, POINT, RIGHT, THIN
+from movload.report.ink import DPI, FINE, HAIR, INK, LEFT, MARGIN, PAPER, POINT, RIGHT, THIN
 from movload.report.labels import Board, Lettering, Spot, font
 
 if TYPE_CHECKING:
@@ -48,6 +48,11 @@ class Window:
         room = width - LEFT - RIGHT
         scale = min(room / (last - first), steepest)
         return cls(first, last, LEFT + (room - scale * (last - first)) / 2, scale)
+
+    @property
+    def side(self) -> float:
+        """Where the names of rows start [mm]."""
+        return self.left - LEFT + MARGIN
 
     @property
     def right(self) -> float:

@@ -8,11 +8,11 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 
 from movload.report.deck_line import DeckLine, draw_abutments
-from movload.report.bearings import REACH, draw_bearings
+from movload.report.bearings import REACH, draw_bearings, name_beds, over
 from movload.report.dimensions import dimension_string, row_height, row_of_words, row_title, upright_dimension
 from movload.report.elevation import PLAIN_BAR, bar_spots, draw_bars, draw_joints, name_joints
 from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
-from movload.report.ink import FAINT, FIRM, HAIR, MARGIN
+from movload.report.ink import FAINT, FIRM, HAIR
 from movload.report.labels import Spot
 from movload.report.sheet import Sheet, Window
 from movload.report.words import lengths, origin
@@ -74,7 +74,7 @@ def _drawn(
     foot = caption_height(caption, width, size)
     strings = 2 * (row + 3.0) + 2 * row
     zero = foot + strings + _BELOW - low * window.scale
-    sheet = Sheet(width, zero + high * window.scale + _ABOVE + HEADING, size)
+    sheet = Sheet(width, zero + high * window.scale + _ABOVE + over(truss) + HEADING, size)
     draw_heading(sheet, title, "elevation")
     draw_caption(sheet, caption)
     strip = sheet.strip(window, zero, window.scale)
@@ -89,6 +89,7 @@ def _draw_truss(strip: Strip, truss: Truss, deck: DeckLine) -> int:
     draw_bars(strip, truss, [PLAIN_BAR] * len(truss.members))
     draw_joints(strip, truss, deck.joints)
     draw_abutments(strip, deck)
+    name_beds(strip, truss)
     return name_joints(strip, truss) + _name_bars(strip, truss)
 
 
@@ -113,10 +114,10 @@ def _draw_strings(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem,
     left_out += dimension_string(sheet, upper - row - 3.0, [window.mm(x) for x in ends], overall)
     for place, height in zip(places, deck.heights, strict=True):
         sheet.stroke([(place, strip.mm(0, height)[1]), (place, foot + 2 * row + 1)], HAIR, FAINT, zorder=-5)
-    sheet.write_from(sheet.lettering(f"x, {units.length}"), MARGIN, foot + 1.5 * row + 1)
+    sheet.write_from(sheet.lettering(f"x, {units.length}"), window.side, foot + 1.5 * row + 1)
     left_out += row_of_words(sheet, foot + 1.5 * row + 1, places, lengths(deck.stations, units))
     columns = deck.depths(truss)
-    sheet.write_from(sheet.lettering(f"depth, {units.length}"), MARGIN, foot + 0.5 * row + 1)
+    sheet.write_from(sheet.lettering(f"depth, {units.length}"), window.side, foot + 0.5 * row + 1)
     texts = lengths([depth for _, depth in columns], units)
     left_out += row_of_words(sheet, foot + 0.5 * row + 1, [window.mm(x) for x, _ in columns], texts)
     return left_out

@@ -49,7 +49,7 @@ def _extreme(name: str, title: str) -> list[Column[Swept]]:
         ),
         Column(
             f"{name}_position", "front axle", lambda row: peak(row).position, "length",
-            text=lambda row, units: place_text(peak(row), units).replace("front axle at ", ""), right=True,
+            text=lambda row, units: place_text(peak(row), units), right=True,
         ),
         Column(f"{name}_heading", "", lambda row: peak(row).heading),
         Column(

@@ -10,7 +10,7 @@ from matplotlib.patches import Circle
 
 from movload.peaks.placement import edge
 from movload.report.dimensions import dimension_string, row_height
-from movload.report.ink import BOLD, EDGE, FAINT, FIRM, GREY, HAIR, INK, PAPER, POINT, THIN
+from movload.report.ink import BOLD, EDGE, FIRM, GREY, HAIR, INK, PAPER, PASSIVE, POINT, THIN
 from movload.report.labels import Lettering, Spot
 from movload.report.words import figures, lengths, plain
 
@@ -19,10 +19,10 @@ if TYPE_CHECKING:
 
     from movload.arrays import Floats
     from movload.peaks.peaks import Peak
-    from movload.report.sheet import Sheet, Strip, Window
+    from movload.report.sheet import Place, Strip, Window
     from movload.units import UnitSystem
 
-_ROOM: Final = 0.2  # of the bridge's length: how far beyond its ends wheels are drawn
+_ROOM: Final = 0.25  # of the bridge's length: how far beyond its ends wheels are drawn
 _ARROW: Final = 4.5  # mm, least length of a load arrow
 _HEAD: Final = 1.7  # mm, length of an arrow head
 _NOSE: Final = 8.0  # mm, length of the arrow that shows the heading
@@ -44,6 +44,8 @@ class Train:
         +1 or -1.
     title
         What crosses.
+    room
+        How far beyond the bridge's ends anything is drawn [m].
     """
 
     x: Floats
@@ -52,6 +54,7 @@ class Train:
     shown: Floats
     heading: int
     title: str
+    room: float
 
     @classmethod
     def of(cls, peak: Peak, stations: Floats) -> Train:
@@ -60,12 +63,25 @@ class Train:
         on = (x >= stations[0] - margin) & (x <= stations[-1] + margin)
         room = _ROOM * (stations[-1] - stations[0])
         shown = (x >= stations[0] - room) & (x <= stations[-1] + room)
-        return cls(x, peak.placement.load, on, shown, peak.heading, peak.case)
+        return cls(x, peak.placement.load, on, shown, peak.heading, peak.case, float(room))
 
     def extent(self, first: float, last: float) -> tuple[float, float]:
         """Return the x of the bridge's ends, widened so that the drawn axles fit [m]."""
         drawn = self.x[self.shown]
-        return float(min(first, drawn.min(initial=first))), float(max(last, drawn.max(initial=last)))
+        reach = self.room if self.is_cut(-1) else 0.0, self.room if self.is_cut(1) else 0.0
+        return (
+            float(min(first - reach[0], drawn.min(initial=first))),
+            float(max(last + reach[1], drawn.max(initial=last))),
+        )
+
+    def is_cut(self, side: int) -> bool:
+        """Say whether axles stand too far out on the left (-1) or the right (1) to be drawn."""
+        return self.beyond(side) > 0
+
+    def beyond(self, side: int) -> int:
+        """Return how many axles on the left (-1) or the right (1) are not drawn."""
+        drawn = self.x[self.shown]
+        return int((~self.shown & (side * self.x > side * drawn.mean())).sum()) if drawn.size else 0
 
     def load_texts(self, units: UnitSystem) -> list[str]:
         """Return the axle loads in the units shown, all with as many decimals as the finest needs, at most 2."""
@@ -172,7 +188,7 @@ def _draw_axle(strip: Strip, plan: TrainPlan, number: int) -> bool:
     """Draw a wheel and the arrow of its load, grey when off the bridge; say whether the load could be written."""
     train, radius, sheet = plan.train, plan.radius, strip.sheet
     x, on = float(train.x[number]), bool(train.on[number])
-    face, edge_colour, ink = (INK, INK, INK) if on else (PAPER, FAINT, GREY)
+    face, edge_colour, ink = (INK, INK, INK) if on else (PAPER, PASSIVE, GREY)
     wheel = Circle((x, radius / strip.scale), radius / strip.scale, facecolor=face, edgecolor=edge_colour)
     wheel.set(linewidth=FIRM / POINT, label=f"wheel {number}", clip_on=False, zorder=3)
     strip.axes.add_patch(wheel)
@@ -192,34 +208,33 @@ def _draw_axle(strip: Strip, plan: TrainPlan, number: int) -> bool:
 
 def _draw_frame(strip: Strip, plan: TrainPlan) -> None:
     """Draw the frame that joins the wheels and the arrow that shows the heading; axles not drawn leave it cut."""
-    train, sheet = plan.train, strip.sheet
+    train, sheet, window = plan.train, strip.sheet, strip.window
     level = strip.zero + 2 * plan.radius + BOLD / 2
     drawn = train.x[train.shown]
-    ends = sorted((strip.window.mm(float(drawn.min())), strip.window.mm(float(drawn.max()))))
-    ends = [ends[0] - plan.radius, ends[1] + plan.radius]
-    sheet.stroke([(ends[0], level), (ends[1], level)], BOLD, label="frame")
-    front, rear = (ends[1], ends[0]) if train.heading > 0 else (ends[0], ends[1])
-    cut = {1: int((~train.shown & (train.x > drawn.max())).sum()), -1: int((~train.shown & (train.x < drawn.min())).sum())}
-    if not cut[train.heading]:
-        tip = front + train.heading * _NOSE
-        sheet.stroke([(front, level), (tip - train.heading * 2, level)], FIRM, label="heading")
-        back = tip - train.heading * 2.6
+    left = window.left if train.is_cut(-1) else window.mm(float(drawn.min())) - plan.radius
+    right = window.right if train.is_cut(1) else window.mm(float(drawn.max())) + plan.radius
+    sheet.stroke([(left, level), (right, level)], BOLD, label="frame")
+    front = right if train.heading > 0 else left
+    for side, end in ((-1, left), (1, right)):
+        if train.is_cut(side):
+            _draw_cut(strip, plan, (end, level), side)
+    if not train.is_cut(train.heading):
+        tip, back = front + train.heading * _NOSE, front + train.heading * (_NOSE - 2.6)
+        sheet.stroke([(front, level), (back, level)], FIRM, label="heading")
         sheet.shape([(tip, level), (back, level + 1.1), (back, level - 1.1)], INK, label="heading arrow")
-    for side, count in cut.items():
-        if count:
-            end = front if side == train.heading else rear
-            _draw_cut(sheet, (end, level), side, count)
 
 
-def _draw_cut(sheet: Sheet, end: tuple[float, float], side: int, count: int) -> None:
-    """Show that a train goes on beyond what is drawn."""
-    for shift in (0.0, 0.9):
+def _draw_cut(strip: Strip, plan: TrainPlan, end: Place, side: int) -> None:
+    """Show that a train goes on beyond what is drawn, and how many axles stand there."""
+    sheet, ahead = strip.sheet, side == plan.train.heading
+    for shift in (0.4, 1.3):
         x = end[0] + side * shift
-        sheet.stroke([(x - 0.6, end[1] - 1.3), (x + 0.6, end[1] + 1.3)], THIN, GREY)
-    lettering = sheet.lettering(f"{count} more")
-    middle = end[0] + side * (2.5 + lettering.width / 2)
-    middle = min(max(middle, EDGE + lettering.width / 2), sheet.width - EDGE - lettering.width / 2)
-    sheet.write(lettering, [Spot(middle, end[1]), Spot(middle, end[1] - 4.0), Spot(middle, end[1] + 4.0)], GREY)
+        sheet.stroke([(x - 0.6, end[1] - 1.3), (x + 0.6, end[1] + 1.3)], THIN)
+    words = f"{plan.train.beyond(side)} more"
+    arrow = {1: f"{words} →", -1: f"← {words}"}[side] if ahead else words
+    lettering = sheet.lettering(arrow)
+    middle = end[0] + side * (2.8 + lettering.width / 2)
+    sheet.write(lettering, [Spot(middle, end[1]), Spot(middle, end[1] + 4.0), Spot(middle, end[1] + 8.0)], GREY)
 
 
 def _draw_spacings(strip: Strip, plan: TrainPlan, units: UnitSystem) -> int:

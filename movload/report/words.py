@@ -62,14 +62,14 @@ def bar_force(force: float, units: UnitSystem, decimals: int) -> str:
 
 
 def effect_value(effect: Effect, value: float, units: UnitSystem) -> str:
-    """Return an effect's value with sign, unit and letter: −88.0 kN C, +12.4 mm down."""
-    quantity, unit, word = ("section", units.section, "down") if effect.unit == "m" else ("force", units.force, "")
-    shown = units.shown(value, "section" if quantity == "section" else "force")
-    text = signed(shown, min(figures(abs(shown), 4), 3))
-    if effect.kind == "axial":
-        word = letter(value)
-        text = text.removeprefix("+")
-    return f"{text} {unit} {word}".rstrip()
+    """Return an effect's value with sign, unit and letter: −88.0 kN C, 12.4 mm."""
+    shown, unit = (
+        (units.shown(value, "section"), units.section)
+        if effect.unit == "m"
+        else (units.shown(value, "force"), units.force)
+    )
+    text = plain(shown, min(figures(abs(shown), 4), 3))
+    return f"{text} {unit} {letter(value) if effect.kind == 'axial' else ''}".rstrip()
 
 
 def ordinate_factor(effect: Effect, units: UnitSystem) -> float:

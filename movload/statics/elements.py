@@ -192,12 +192,15 @@ def _member_coefficients(truss: Truss, axes: Floats) -> Floats:
 
     With t the member's direction and a an end's bed angle: cos(t - a) along, sin(t - a) normal; minus at the start.
     """
-    cos_t, sin_t = (truss.spans / truss.lengths[:, None]).T
-    rows = np.empty((len(truss.members), 4))
-    for end, sign in ((0, -1.0), (1, 1.0)):
-        cos_a, sin_a = axes[truss.ends[:, end]].T
-        rows[:, 2 * end] = sign * (cos_t * cos_a + sin_t * sin_a)
-        rows[:, 2 * end + 1] = sign * (sin_t * cos_a - cos_t * sin_a)
+    toward = truss.spans / truss.lengths[:, None]
+    rows = np.concatenate((-toward, toward), axis=1)
+    turned = axes[:, 1] != 0.0
+    for end in (0, 2):
+        at = np.flatnonzero(turned[truss.ends[:, end // 2]]) if turned.any() else ()
+        for row in at:
+            cos_a, sin_a = axes[truss.ends[row, end // 2]]
+            cos_t, sin_t = rows[row, end : end + 2]
+            rows[row, end : end + 2] = (cos_t * cos_a + sin_t * sin_a, sin_t * cos_a - cos_t * sin_a)
     return rows
 
 

@@ -6,14 +6,16 @@ Every line is straight between panel points, because the deck brings its load to
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cached_property
 from itertools import repeat
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
-from movload.arrays import Floats, Ints, held
+from movload.arrays import Floats, Ints, held, keep_memory_warm
 from movload.bridge.deck import stations_of
 from movload.errors import InputError
+from movload.statics.condensed import Condensed, distinct_rows, mirrored_rows
 from movload.statics.part import Effect, row_of
 from movload.statics.stiffness import FactoredTruss, factored
 
@@ -25,6 +27,7 @@ if TYPE_CHECKING:
 
 _COLUMNS: Final = 32  # unit loads solved at a time: keeps the working memory well below the answer's
 _NOISE: Final = 2e-13  # of the row's largest: round-off, written as zero so that no peak is made of it
+_MOST_CONDENSED: Final = 1 << 21  # ordinates: comparing rows holds a few copies of them
 _IDLE: Final = 1e-11  # of the largest of its kind: a row that carries nothing (a zero-force bar)
 
 
@@ -41,7 +44,7 @@ class InfluenceLine:
         return np.asarray(np.interp(x, self.stations, self.ordinates, left=0.0, right=0.0))
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class InfluenceLines:
     """How every effect of a part answers a unit load on each station; a linear ``Response``.
 
@@ -74,6 +77,17 @@ class InfluenceLines:
         row = row_of(self.effects, key)
         return InfluenceLine(self.effects[row], self.stations, self.ordinates[row])
 
+    @cached_property
+    def condensed(self) -> Condensed:
+        """The distinct rows, and whether one heading answers for both; a very long bridge is left as it is."""
+        if self.ordinates.size > _MOST_CONDENSED:
+            rows, nothing = np.arange(len(self.effects)), np.zeros(0)
+            return Condensed(self, rows, np.ones(rows.size), nothing.astype(np.intp), nothing)
+        chosen, row, scale = distinct_rows(self.ordinates)
+        ordinates = held(self.ordinates[chosen])
+        distinct = InfluenceLines(tuple(self.effects[one] for one in chosen), self.stations, ordinates)
+        return Condensed(distinct, row, scale, *mirrored_rows(self.stations, ordinates))
+
     def under(self, loads: Floats) -> Floats:
         """Return effects (R, K) under downward loads (B, K) [N] on the stations."""
         by_position: Floats = loads.T @ self.ordinates.T  # positions first in memory: extremes over them are then fast
@@ -105,6 +119,7 @@ def influence_lines(truss: Truss, panel_points: Sequence[PanelPoint], *, part: s
     UnstableError
         The truss is a mechanism.
     """
+    keep_memory_warm()
     return lines_of(factored(truss), panel_points, part=part)
 
 

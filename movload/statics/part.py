@@ -15,6 +15,7 @@ if TYPE_CHECKING:
 
     from movload.arrays import Floats
     from movload.bridge.across import Across
+    from movload.statics.condensed import Condensed
 
 Kind: TypeAlias = Literal["axial", "reaction", "moment", "shear", "down"]
 
@@ -50,6 +51,11 @@ class Response(Protocol):
     @property
     def stations(self) -> Floats:
         """Their stations (B,) [m], increasing."""
+        ...
+
+    @property
+    def condensed(self) -> Condensed:
+        """The fewest rows that must be swept, and how all rows follow from them; the response itself if none follow."""
         ...
 
     def under(self, loads: Floats) -> Floats:

@@ -15,10 +15,11 @@ if TYPE_CHECKING:
 @pytest.fixture(autouse=True)
 def _said_aloud(request: pytest.FixtureRequest, capsys: pytest.CaptureFixture[str]) -> Iterator[None]:
     """Say the ratios of a test when it has ended, passed or failed."""
-    yield
     if "benchmark" not in request.fixturenames:
+        yield
         return
     benchmark: BenchmarkFixture = request.getfixturevalue("benchmark")
+    yield
     writer = request.config.get_terminal_writer()
     with capsys.disabled():
         for told in benchmark.extra_info.values():

@@ -49,6 +49,11 @@ class Course:
     each: int = 10
     warmed: bool = True
 
+    @property
+    def turns(self) -> int:
+        """Most turns of ours, the warming ones included."""
+        return self.rounds * (self.each + self.warmed)
+
 
 @dataclass(frozen=True, slots=True)
 class Ratio:
@@ -103,7 +108,8 @@ def raced(
 ) -> Race[Ours, Theirs]:
     """Run every side by turns (see the module's text); once each when benchmarks are disabled."""
     _require_a_fair_start(benchmark)
-    turn, seconds, answers = count(), {name: [] for name in theirs}, {}  # type: ignore[var-annotated]  # filled below
+    turn, answers = count(), dict[str, Theirs]()
+    seconds: dict[str, list[float]] = {name: [] for name in theirs}
 
     def others_first() -> None:
         if next(turn) % course.each:
@@ -115,10 +121,11 @@ def raced(
         if course.warmed and benchmark.enabled:
             ours()
 
-    mine = benchmark.pedantic(ours, setup=others_first, rounds=course.rounds * course.each)
-    if not benchmark.enabled:
+    race_on: Callable[..., Ours] = benchmark.pedantic
+    mine = race_on(ours, setup=others_first, rounds=course.rounds * course.each)
+    if benchmark.stats is None:  # disabled
         return Race(mine, answers, {})
-    data = benchmark.stats.stats.data
+    data: list[float] = benchmark.stats.stats.data
     by_round = tuple(median(data[first : first + course.each]) for first in range(0, len(data), course.each))
     ratios = {name: Ratio(name, tuple(took), by_round, median(data)) for name, took in seconds.items()}
     benchmark.extra_info.update({name: str(ratio) for name, ratio in ratios.items()})

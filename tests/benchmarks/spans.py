@@ -5,9 +5,9 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 import numpy as np
+from oracles.trusses import bottom, pratt, simple_span, truss_of
 
 from movload.bridge.truss import Truss
-from oracles.trusses import bottom, pratt, simple_span, truss_of
 
 DEPTH = 6.4  # m
 

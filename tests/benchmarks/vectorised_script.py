@@ -5,10 +5,9 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 import numpy as np
+from benchmarks.plain_scripts import free_displacements
 from scipy.sparse import coo_matrix
 from scipy.sparse.linalg import spsolve
-
-from benchmarks.plain_scripts import free_displacements
 
 if TYPE_CHECKING:
     from collections.abc import Sequence

@@ -8,12 +8,12 @@ import numpy as np
 from hypothesis import given
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
-
-from movload import Support, Truss, TrussState, influence_lines, state_under
 from oracles.lagrange import equilibrium, holds_of
 from oracles.stepping import sizes
 from oracles.trusses import with_areas
 from strategies import Laid, determinate, joint_loads, laid
+
+from movload import Support, Truss, TrussState, influence_lines, state_under
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray

@@ -6,12 +6,12 @@ import numpy as np
 from hypothesis import given, settings
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
-
-import oracles.lagrange as lagrange
-from movload import Support, Truss, influence_lines, state_under
+from oracles import lagrange
 from oracles.symbolic import rows_under
 from oracles.trusses import STEEL, truss_of, warren
 from strategies import Laid, joint_loads, laid
+
+from movload import Support, Truss, influence_lines, state_under
 
 # The dense oracle solves with a condition number up to about 1e7 on these trusses, so 1e-16 x 1e7 at worst; the
 # greatest difference met over 1,500 random trusses was 5e-13 of the largest ordinate.

@@ -2,17 +2,17 @@
 
 from __future__ import annotations
 
-from random import Random
+from random import Random  # noqa: TC003 - hypothesis reads the annotation when the test runs
 
 import numpy as np
 from hypothesis import given
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
-
-from movload import Member, Support, Truss, Vehicle, influence_lines, state_under, sweep
 from oracles.stepping import scales, sizes
 from oracles.trusses import mirrored, scaled
 from strategies import Laid, laid, vehicles
+
+from movload import Member, Support, Truss, Vehicle, influence_lines, state_under, sweep
 
 ROUND_OFF = 1e-11  # of the row's largest: two solves of differently rounded numbers, 1e-14 to 1e-13 each
 

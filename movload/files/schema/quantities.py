@@ -6,44 +6,85 @@ A bare number is in the file's own units, which travel in the validation context
 from __future__ import annotations
 
 import math
-from typing import Annotated, Any
+import unicodedata
+from typing import Annotated, Any, Final
 
-from pydantic import BaseModel, BeforeValidator, ConfigDict, Field, ValidationInfo, WithJsonSchema, model_validator
+from pydantic import (
+    AfterValidator,
+    BaseModel,
+    BeforeValidator,
+    ConfigDict,
+    Field,
+    ValidationInfo,
+    WithJsonSchema,
+    model_validator,
+)
 
 from movload.errors import InputError, UnknownNameError, nearest_name
+from movload.files.toml import PLACEHOLDER, short
 from movload.units import SI_UNITS, Quantity, UnitSystem, to_si
+
+LARGEST: Final = 1e18  # SI; beyond anything that stands, and a product of a few is still a number
 
 
 def _reader(quantity: Quantity) -> BeforeValidator:
     """Return the validator that turns a number or a string into SI."""
 
     def read(value: object, info: ValidationInfo) -> float:
-        units: UnitSystem = (info.context or {}).get("units", SI_UNITS)
-        return _number(value, quantity, units)
+        return number(value, quantity, units_in(info))
 
     return BeforeValidator(read)
 
 
-def _number(value: object, quantity: Quantity, units: UnitSystem) -> float:
-    """Return a typed value in SI."""
+def units_in(info: ValidationInfo) -> UnitSystem:
+    """Return the file's units that travel with a validation."""
+    units: UnitSystem = (info.context or {}).get("units", SI_UNITS)
+    return units
+
+
+def number(value: object, quantity: Quantity, units: UnitSystem) -> float:
+    """Return a typed value in SI.
+
+    Raises
+    ------
+    InputError
+        No number, not finite, or beyond LARGEST.
+    """
     if isinstance(value, str):
-        return to_si(value, quantity)
-    if isinstance(value, bool) or not isinstance(value, (int, float)):
-        kind = type(value).__name__
-        raise InputError(f"a number or a string with a unit is asked for, got {kind} {short(value)}")
+        said, si = f'"{short(value)}"', _with_unit(value, quantity)
+    elif isinstance(value, bool) or not isinstance(value, (int, float)):
+        raise InputError(f"a number or a string with a unit is asked for, got {kind_of(value)} {short(value)}")
+    else:
+        said, si = f"{short(value)} {units.symbol(quantity)}".rstrip(), _as_float(value) * units.factor(quantity)
+    if not math.isfinite(si):
+        raise InputError(f"a finite number is asked for, got {said}")
+    if abs(si) > LARGEST:
+        raise InputError(f"the number is too large, got {said}")
+    return si
+
+
+def _with_unit(text: str, quantity: Quantity) -> float:
+    """Return a quantity written with its unit in SI; a fraction of endless digits is no quantity."""
     try:
-        number = float(value) * units.factor(quantity)
+        return to_si(text, quantity)
+    except InputError:
+        raise
+    except (OverflowError, ValueError):
+        raise InputError(f'the number is too large, got "{short(text)}"') from None
+
+
+def _as_float(value: float) -> float:
+    """Return a whole number of any length as a float."""
+    try:
+        return float(value)
     except OverflowError:
-        raise InputError("the number is too large") from None
-    if not math.isfinite(number):
-        raise InputError(f"a finite number is asked for, got {value} {units.symbol(quantity)}".rstrip())
-    return number
+        raise InputError(f"the number is too large, got {value:.3g}" if isinstance(value, float) else _too_long(value)) from None
 
 
-def short(value: object) -> str:
-    """Return a value as text, cut when long."""
-    text = str(value)
-    return text if len(text) <= 40 else text[:37] + "..."
+def kind_of(value: object) -> str:
+    """Return what TOML calls a value's kind."""
+    kinds = {bool: "true or false", str: "text", int: "the number", float: "the number", list: "the list", dict: "the table"}
+    return kinds.get(type(value), f"the {type(value).__name__}")
 
 
 def _typed(quantity: Quantity, words: str) -> Any:  # the second argument list of Annotated
