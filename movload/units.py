@@ -210,6 +210,7 @@ class UnitSystem:
                 unit_factor(getattr(self, name), quantity)  # type: ignore[arg-type]  # the three are quantities
             except InputError as error:
                 raise error.at(f"units.{name}") from None
+            object.__setattr__(self, name, _spelled(getattr(self, name)))
 
     def symbol(self, quantity: Quantity) -> str:
         """Return the unit's symbol for a quantity, e.g. ``"kN/m"``."""

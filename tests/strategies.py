@@ -37,7 +37,7 @@ heights = st.floats(1.9, 6.1)  # m
 areas = st.lists(st.floats(1e-3, 2e-2), min_size=1, max_size=4)  # m2, bar after bar, repeated
 bed_angles = st.floats(-65.0, 65.0)  # degrees
 axle_loads = st.floats(0.0, 160e3)  # N
-gaps = st.one_of(st.floats(0.3, 9.7), st.just(0.0))  # m; 0: axles that coincide
+gaps = st.floats(0.3, 9.7) | st.just(0.0)  # m; 0: axles that coincide
 directions = st.sampled_from([(1, -1), (1, -1), (1,), (-1,)])
 
 
@@ -49,14 +49,28 @@ class Laid:
     panel_points: tuple[str | float, ...]
 
 
+def alike_from_both_ends(values: list[float]) -> list[float]:
+    """Return values whose second half mirrors the first."""
+    return [min(pair) for pair in zip(values, values[::-1], strict=True)]
+
+
 @st.composite
 def skeletons(draw: st.DrawFn, *, crossed: bool) -> tuple[Joints, Bars]:
-    """Draw joints and bars: Pratt or Parker of 2-7 panels or Warren of 1-6; perhaps second diagonals if ``crossed``."""
+    """Draw joints and bars: Pratt or Parker of 2-7 panels or Warren of 1-6; perhaps second diagonals if ``crossed``.
+
+    Half of them are symmetrical: a method may take a short cut there.
+    """
     lengths = draw(st.lists(panel_lengths, min_size=2, max_size=7))
     depths = draw(st.lists(heights, min_size=len(lengths) - 1, max_size=len(lengths) - 1))
-    if draw(st.booleans()):
-        return warren(lengths[1:], depths)
+    form, symmetrical = draw(st.sampled_from([pratt, warren])), draw(st.booleans())
+    lengths = lengths[1:] if form is warren else lengths
+    if symmetrical:
+        lengths, depths = alike_from_both_ends(lengths), alike_from_both_ends(depths)
+    if form is warren:
+        return warren(lengths, depths)
     inner = range(1, len(lengths) - 1)
+    if symmetrical and crossed:
+        return pratt(lengths, depths, crossed=inner if draw(st.booleans()) else ())
     return pratt(lengths, depths, crossed=sorted(draw(st.sets(st.sampled_from(inner)))) if crossed and inner else ())
 
 
@@ -77,9 +91,9 @@ def bearings(draw: st.DrawFn, points: Sequence[str], kinds: Sequence[str]) -> li
     """Draw bearings of one of ``kinds`` under two or three of the joints, either end pinned, ends overhanging."""
     last = len(points) - 1
     left = draw(st.integers(0, max(0, last // 2 - 1)))
-    right = draw(st.integers(min(left + 1 + last // 3, last), last))
+    right = draw(st.just(last - left) | st.integers(min(left + 1 + last // 3, last), last))
     pinned, sliding = draw(st.permutations([points[left], points[right]]))
-    bed = draw(st.one_of(st.just(0.0), bed_angles))
+    bed = draw(st.just(0.0) | bed_angles)
     others = [point for point in points if point not in {pinned, sliding}]
     kind = draw(st.sampled_from(kinds))
     if kind == "three beds" and others:

@@ -5,9 +5,9 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass, field
 from types import MappingProxyType
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Final
 
-from movload.bridge.deck import Deck, stations_of
+from movload.bridge.deck import MOST_SHARE, Deck, stations_of
 from movload.errors import InputError
 from movload.units import UnitSystem
 
@@ -15,6 +15,9 @@ if TYPE_CHECKING:
     from collections.abc import Mapping
 
     from movload.bridge.truss import Truss
+
+
+_MOST_IMPACT: Final = 2.0  # no rule asks for as much; 30 for 30 % is caught
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,7 +47,7 @@ class PermanentLoads:
     deck
         Weight of deck, floor and surfacing of the whole bridge per metre along it [N/m], 0 or more.
     truss_share
-        Share [-] of that weight that reaches the rated truss (0.5 when everything lies symmetrically).
+        Share [-], 0 to 2, of that weight that reaches the rated truss (0.5 when everything lies symmetrically).
     """
 
     deck: float
@@ -54,8 +57,10 @@ class PermanentLoads:
         """Refuse weights that lift and shares that are no part of a whole."""
         if not (math.isfinite(self.deck) and self.deck >= 0):
             raise InputError(f"must be 0 or more, got {self.deck} N/m", place="permanent.deck")
-        if not (math.isfinite(self.truss_share) and self.truss_share >= 0):
-            raise InputError(f"must be 0 or more, got {self.truss_share}", place="permanent.truss_share")
+        if not 0 <= self.truss_share <= MOST_SHARE:
+            raise InputError(
+                f"must be 0 to {MOST_SHARE:g} (one half is 0.5), got {self.truss_share}", place="permanent.truss_share"
+            )
 
 
 @dataclass(frozen=True, eq=False)
@@ -71,7 +76,7 @@ class Bridge:
     permits
         Permitted forces by member name; a member without an entry is not rated.
     impact
-        Dynamic allowance added to the static live effect [-], 0 or more; None when nobody has typed it.
+        Dynamic allowance added to the static live effect [-], 0 to 2; None when nobody has typed it.
     units
         The units its file is written in and its results are shown in.
     missing
@@ -96,8 +101,10 @@ class Bridge:
         stations_of(self.truss, self.deck.panel_points)
         for name in self.permits:
             self.truss.member(name)
-        if self.impact is not None and not (math.isfinite(self.impact) and self.impact >= 0):
-            raise InputError(f"impact must be 0 or more, got {self.impact}", place="rating.impact")
+        if self.impact is not None and not 0 <= self.impact <= _MOST_IMPACT:
+            raise InputError(
+                f"impact must be 0 to {_MOST_IMPACT:g} (30 % is 0.3), got {self.impact}", place="rating.impact"
+            )
 
     def __reduce__(self) -> tuple[object, ...]:
         """Pickle by parts (a read-only mapping cannot be pickled)."""

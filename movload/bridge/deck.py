@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass, field
-from typing import TYPE_CHECKING, TypeAlias
+from typing import TYPE_CHECKING, Final, TypeAlias
 
 import numpy as np
 
@@ -16,6 +16,7 @@ if TYPE_CHECKING:
 
     from movload.bridge.truss import Truss
 
+MOST_SHARE: Final = 2.0  # a load half a truss spacing outside reaches the nearer truss 1.5 times; 56 for 56 % is caught
 PanelPoint: TypeAlias = "str | float"  # a joint's name, or the x [m] of an abutment that carries an end stringer
 
 
@@ -28,18 +29,19 @@ class Deck:
     panel_points
         Joints of the loaded chord in order along +x; the first or the last may be an abutment's x [m].
     truss_share
-        Share [-] of a whole axle that reaches the rated truss; None when nobody has typed it.
+        Share [-], above 0 and at most 2, of a whole axle that reaches the rated truss; None when nobody has typed it.
     """
 
     panel_points: tuple[PanelPoint, ...]
     truss_share: float | None = field(default=None, kw_only=True)
 
     def __post_init__(self) -> None:
-        """Refuse a share that is not a finite number above zero."""
+        """Refuse a share that no truss can get."""
         share = self.truss_share
-        if share is not None and not (math.isfinite(share) and share > 0):
+        if share is not None and not 0 < share <= MOST_SHARE:
             raise InputError(
-                f"must be above 0 (0.5 is an axle on the centre line), got {share}", place="deck.truss_share"
+                f"must be above 0 and at most {MOST_SHARE:g} (0.5 is an axle on the centre line), got {share}",
+                place="deck.truss_share",
             )
 
 

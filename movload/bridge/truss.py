@@ -20,6 +20,7 @@ from movload.errors import InputError, UnknownNameError, nearest_name
 if TYPE_CHECKING:
     from collections.abc import Mapping, Sequence
 
+_SOFTEST: Final = 1e-11  # of the stiffest member: forces still hold 7 figures here, below they are soon lost
 _SHORTEST: Final = 1e-9  # of the truss's extent: below it two joints are one (round-off of typed coordinates)
 
 
@@ -96,6 +97,8 @@ class Support:
         for word, value in (("slides", self.slides), ("settlement", self.settlement), ("movement", self.movement)):
             if value is not None and not math.isfinite(value):
                 raise InputError(f"{word} must be a finite number, got {value}", place=place)
+        if self.slides is not None and abs(self.slides) > 360.0:
+            raise InputError(f"a bed stands at -360 to 360 degrees, got {self.slides:g} degrees", place=place)
         for word in ("normal_stiffness", "slide_stiffness"):
             stiffness = getattr(self, word)
             if stiffness is not None:
@@ -139,7 +142,8 @@ class Truss:
     Raises
     ------
     InputError
-        Duplicate members, a member of no length, a joint no member reaches, too few supports, a value not finite.
+        Duplicate members, a member of no length, a joint no member reaches, too few supports, a value not finite,
+        stiffnesses too far apart to be added.
     UnknownNameError
         A member or support names a joint that is not there.
     """
@@ -158,6 +162,7 @@ class Truss:
         self._check_joints()
         self._check_members()
         self._check_supports()
+        self._check_stiffness()
 
     def __reduce__(self) -> tuple[object, ...]:
         """Pickle by the three parts (a read-only mapping cannot be pickled)."""
@@ -236,7 +241,7 @@ class Truss:
         if not self.joints:
             raise InputError("a truss needs joints, none given", place="joints")
         for name, point in self.joints.items():
-            if not name or name != name.strip() or "-" in name or " " in name:
+            if not name.isprintable() or "-" in name or name.split() != [name]:
                 raise InputError(
                     f'a joint\'s name may not be empty or hold a space or "-", got "{name}"', place="joints"
                 )
@@ -258,18 +263,20 @@ class Truss:
         reached = {joint for member in self.members for joint in (member.start, member.end)}
         for name in self.joints:
             if name not in reached:
-                raise InputError("no member reaches it", place=f"joint {name}")
+                near = nearest_name(name, reached)
+                raise InputError("no member reaches it", place=f"joint {name}", nearest=near)
 
     def _check_lengths(self) -> None:
         extent = float(np.ptp(self.coordinates, axis=0).max())
         short = np.flatnonzero(self.lengths <= _SHORTEST * extent)
         if short.size:
             member = self.members[short[0]]
-            x, y = self.joints[member.start]
-            raise InputError(
-                f'has no length: joints "{member.start}" and "{member.end}" both stand at ({x:g}, {y:g}) m',
-                place=f"member {member.name}",
-            )
+            (x, y), end = self.joints[member.start], self.joints[member.end]
+            rule = f'has no length: joints "{member.start}" and "{member.end}" both stand at ({x:g}, {y:g}) m'
+            if (f"{x:g}", f"{y:g}") != (f"{end[0]:g}", f"{end[1]:g}"):
+                length = self.lengths[short[0]]
+                rule = f"has no length to speak of, {length:g} m in a truss of {extent:g} m; check the coordinates"
+            raise InputError(rule, place=f"member {member.name}")
 
     def _check_supports(self) -> None:
         seen: set[str] = set()
@@ -285,3 +292,22 @@ class Truss:
                 "(a pinned support holds 2, a sliding one 1)",
                 place="supports",
             )
+
+    def _check_stiffness(self) -> None:
+        """Refuse members and springs so soft beside the stiffest member that sums would lose them."""
+        stiffness = self.axial_stiffness
+        stiffest, softest = int(np.argmax(stiffness)), int(np.argmin(stiffness))
+        springs = [
+            (f"support {support.joint}", word.replace("_", " "), getattr(support, word))
+            for support in self.supports
+            for word in ("normal_stiffness", "slide_stiffness")
+            if getattr(support, word) is not None
+        ]
+        bars = [(f"member {self.members[softest].name}", "E A / length", float(stiffness[softest]))]
+        for place, word, soft in bars + springs:
+            if soft < _SOFTEST * stiffness[stiffest]:
+                raise InputError(
+                    f"{word} is {soft:.3g} N/m, too little beside the {stiffness[stiffest]:.3g} N/m of member "
+                    f"{self.members[stiffest].name}; check areas, moduli and their units",
+                    place=place,
+                )

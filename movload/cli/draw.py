@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from movload.cli.options import BridgePath, CsvFile, Force, Json, PlotFile, check_outputs, deliver
+from movload.cli.options import BridgePath, CsvFile, Force, Json, PlotFile, check_outputs, deliver, naming
 
 if TYPE_CHECKING:
     from collections.abc import Callable
@@ -16,17 +16,18 @@ def draw(
     bridge: BridgePath, *, json: Json = False, csv: CsvFile = None, plot: PlotFile = None, force: Force = False
 ) -> None:
     """Show a bridge's truss: joints, members, bearings and panel points; with --plot its drawing."""
-    check_outputs(csv, plot, force=force)
+    check_outputs(csv, plot, force=force, inputs=[bridge])
     from movload.files.read import read_bridge
     from movload.report.truss_report import truss_csv, truss_json, truss_tables
     from movload.statics.stiffness import factored
 
     stands = read_bridge(bridge)
-    factored(stands.truss)  # a mechanism is said here, before anyone trusts its drawing
+    with naming(bridge):
+        factored(stands.truss)  # a mechanism is said here, before anyone trusts its drawing
     deliver(
         text=lambda: truss_tables(stands),
         json=(lambda: truss_json(stands)) if json else None,
-        files={csv: lambda: truss_csv(stands).encode(), plot: _drawing(stands, plot.suffix if plot else "")},
+        files={csv: lambda: truss_csv(stands).encode(), plot: _drawing(stands, plot.suffix.lower() if plot else "")},
         force=force,
     )
 

@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from movload.cli.options import BridgePath, CsvFile, Force, Json, PlotFile, check_outputs, deliver
+from movload.cli.options import BridgePath, CsvFile, Force, Json, PlotFile, check_outputs, deliver, naming
 from movload.errors import InputError
 
 if TYPE_CHECKING:
@@ -19,7 +19,7 @@ _MOST_DRAWN = 6
 
 RowNames = Annotated[
     list[str] | None,
-    typer.Argument(metavar="[ROW]...", help='Rows, e.g. U1-L2 "L0 y" "L3 down"; all when none is named.'),
+    typer.Argument(metavar="ROW", help='Rows, e.g. U1-L2 "L0 y" "L3 down"; all when none is named.'),
 ]
 
 
@@ -33,7 +33,7 @@ def influence(
     force: Force = False,
 ) -> None:
     """Show influence lines: the effect of a unit load on each panel point."""
-    check_outputs(csv, plot, force=force)
+    check_outputs(csv, plot, force=force, inputs=[bridge])
     if plot is not None and not 1 <= len(rows or ()) <= _MOST_DRAWN:
         raise InputError(f"name 1 to {_MOST_DRAWN} rows to draw, got {len(rows or ())}", place="--plot")
     from movload.files.read import read_bridge
@@ -41,15 +41,16 @@ def influence(
     from movload.statics.influence import influence_lines
 
     stands = read_bridge(bridge)
-    lines = influence_lines(stands.truss, stands.deck.panel_points)
-    asked = [lines[name] for name in rows or [effect.name for effect in lines.effects]]
+    with naming(bridge):
+        lines = influence_lines(stands.truss, stands.deck.panel_points)
+        asked = [lines[name] for name in rows or [effect.name for effect in lines.effects]]
     names = station_names(stands.deck.panel_points)
     deliver(
         text=lambda: lines_tables(stands.title, asked, names, stands.units),
         json=(lambda: lines_json(stands.title, asked, names)) if json else None,
         files={
             csv: lambda: lines_csv(asked, stands.units).encode(),
-            plot: _drawing(stands, lines, rows or [], plot.suffix if plot else ""),
+            plot: _drawing(stands, lines, rows or [], plot.suffix.lower() if plot else ""),
         },
         force=force,
     )

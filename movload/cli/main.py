@@ -7,15 +7,14 @@ member unrated in a sense it feels.
 from __future__ import annotations
 
 import sys
-from typing import TYPE_CHECKING
+from contextlib import suppress
 
 import typer
 
 from movload.cli import draw, influence, rate, schema, start, sweep, vehicles
+from movload.cli.options import one_line
 from movload.errors import MovloadError
-
-if TYPE_CHECKING:
-    import io
+from movload.files.streams import abandoned, readied
 
 app = typer.Typer(
     name="movload",
@@ -45,18 +44,34 @@ def movload(
 
 def run() -> None:
     """Run the program: an error that a person can act on becomes one line on stderr and exit code 1."""
-    for stream in (sys.stdout, sys.stderr):
-        _say_what_it_can(stream)  # type: ignore[arg-type]  # the standard streams are text streams here
+    readied()
+    sys.exit(_ended())
+
+
+def _ended() -> int:
+    """Return the exit code of what was asked for."""
+    code: object = 0
     try:
-        app()
+        try:
+            app(prog_name="movload")
+        except SystemExit as end:
+            code = end.code
+        sys.stdout.flush()
     except MovloadError as error:
-        typer.echo(f"movload: {error}", err=True)
-        sys.exit(1)
+        return _failed(str(error))
     except KeyboardInterrupt:
-        sys.exit(130)
+        return 130
+    except BrokenPipeError:  # the reader has seen enough
+        abandoned(sys.stdout)
+        return 1
+    except OSError as error:  # files/ says what is wrong with files; what is left is the output
+        abandoned(sys.stdout)
+        return _failed(f"standard output: cannot be written: {error.strerror or error}")
+    return code if isinstance(code, int) else 0
 
 
-def _say_what_it_can(stream: io.TextIOWrapper) -> None:
-    """Let a terminal that cannot show a sign show a question mark instead of failing."""
-    if hasattr(stream, "reconfigure"):
-        stream.reconfigure(errors="replace")
+def _failed(message: str) -> int:
+    """Say on one line what is wrong, if anyone listens."""
+    with suppress(OSError):
+        typer.echo(f"movload: {one_line(message)}", err=True)
+    return 1

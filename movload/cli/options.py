@@ -5,15 +5,17 @@ from __future__ import annotations
 import os
 import shutil
 import sys
+from contextlib import contextmanager
+from json import dumps
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from movload.errors import InputError, nearest_name
+from movload.errors import InputError, MovloadError, nearest_name
 
 if TYPE_CHECKING:
-    from collections.abc import Callable, Sequence
+    from collections.abc import Callable, Iterator, Sequence
 
     from rich.console import RenderableType
 
@@ -25,7 +27,7 @@ _PIPED_WIDTH = 132  # columns when the output is no terminal
 BridgePath = Annotated[Path, typer.Argument(metavar="BRIDGE", help="A bridge file (.toml).", show_default=False)]
 VehicleNames = Annotated[
     list[str],
-    typer.Argument(metavar="VEHICLE...", help="Library names or vehicle files (.toml).", show_default=False),
+    typer.Argument(metavar="VEHICLE", help="Library names or vehicle files (.toml).", show_default=False),
 ]
 Json = Annotated[bool, typer.Option("--json", help="Print the result as JSON (SI, unrounded) and nothing else.")]
 CsvFile = Annotated[Path | None, typer.Option("--csv", metavar="FILE", help="Write the table as CSV.")]
@@ -51,8 +53,22 @@ def read_loadings(names: Sequence[str]) -> list[Loading]:
     return loadings
 
 
-def check_outputs(csv: Path | None, plot: Path | None, *, force: bool) -> None:
-    """Refuse outputs that cannot be written, before anything is computed."""
+def one_line(text: str) -> str:
+    """Return text on one line: what would break a line, or a terminal, as its escape."""
+    return "".join(sign if sign.isprintable() else sign.encode("unicode_escape").decode() for sign in text)
+
+
+@contextmanager
+def naming(bridge: Path) -> Iterator[None]:
+    """Put the bridge file's name before what is wrong with the bridge in it."""
+    try:
+        yield
+    except MovloadError as error:
+        raise error.at(str(bridge)) from None
+
+
+def check_outputs(csv: Path | None, plot: Path | None, *, force: bool, inputs: Sequence[Path | str] = ()) -> None:
+    """Refuse outputs that cannot be written, or that would write over an input, before anything is computed."""
     from movload.files.write import check_writable
 
     if plot is not None and plot.suffix.lower() not in SUFFIXES:
@@ -60,7 +76,7 @@ def check_outputs(csv: Path | None, plot: Path | None, *, force: bool) -> None:
         raise InputError(
             f'a picture ends in {", ".join(SUFFIXES)}, got "{plot.suffix}"', place=f"--plot {plot}", nearest=near
         )
-    check_writable([path for path in (csv, plot) if path is not None], force=force)
+    check_writable([path for path in (csv, plot) if path is not None], force=force, inputs=inputs)
 
 
 def deliver(
@@ -83,14 +99,21 @@ def deliver(
     """
     from movload.files.write import write_files
 
+    answer = _in_ascii(json()) if json is not None else _rendered(text())
     contents = {path: make() for path, make in files.items() if path is not None}
     write_files(contents, force=force)
-    if json is not None:
-        sys.stdout.write(json())
-    else:
-        sys.stdout.write(_rendered(text()))
+    sys.stdout.write(answer)
     for path in contents:
-        typer.echo(f"wrote {path}", err=True)
+        typer.echo(f"wrote {one_line(str(path))}", err=True)
+
+
+def _in_ascii(document: str) -> str:
+    """Return JSON text; where the output cannot show one of its signs, those beyond ASCII as JSON escapes them."""
+    try:
+        document.encode(getattr(sys.stdout, "encoding", None) or "utf-8")
+    except UnicodeEncodeError:
+        return "".join(sign if sign.isascii() else dumps(sign)[1:-1] for sign in document)
+    return document
 
 
 def _rendered(parts: Sequence[RenderableType | str]) -> str:

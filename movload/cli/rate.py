@@ -16,6 +16,7 @@ from movload.cli.options import (
     VehicleNames,
     check_outputs,
     deliver,
+    naming,
     read_loadings,
 )
 
@@ -50,22 +51,25 @@ def rate(
     force: Force = False,
 ) -> None:
     """Rate a bridge for vehicles: rating factor, what governs, safe weight, and where the vehicle stands then."""
-    check_outputs(csv, plot, force=force)
+    check_outputs(csv, plot, force=force, inputs=[bridge, *vehicle])
     from movload.files.read import read_bridge
-    from movload.rating.judge import rate as rated
+    from movload.rating.judge import judge
+    from movload.rating.solved import solve
     from movload.report.ratings_report import ratings_csv, ratings_json
 
     stands = read_bridge(bridge)
     if impact is not None:
-        stands = replace(stands, impact=_fraction(impact))
-    ratings = rated(stands, read_loadings(vehicle))
+        stands = _with_impact(stands, impact)
+    with naming(bridge):
+        solved = solve(stands)
+    ratings = judge(solved, read_loadings(vehicle))
     rows = [row for number in range(len(ratings.crossings)) for row in ratings.rows(number)]
     deliver(
         text=lambda: _text(stands, ratings, rows, every=every),
         json=(lambda: ratings_json(ratings, rows)) if json else None,
         files={
             csv: lambda: ratings_csv(rows, stands.units).encode(),
-            plot: _drawing(stands, ratings, plot.suffix if plot else ""),
+            plot: _drawing(stands, ratings, plot.suffix.lower() if plot else ""),
         },
         force=force,
     )
@@ -73,15 +77,15 @@ def rate(
         raise typer.Exit(3)
 
 
-def _fraction(text: str) -> float:
-    """Return a typed fraction."""
+def _with_impact(stands: Bridge, impact: str) -> Bridge:
+    """Return the bridge with a typed dynamic allowance."""
     from movload.errors import InputError
     from movload.units import to_si
 
     try:
-        return to_si(text, "fraction")
+        return replace(stands, impact=to_si(impact, "fraction"))
     except InputError as error:
-        raise error.at("--impact") from None
+        raise InputError(error.rule, place="--impact", nearest=error.nearest) from None
 
 
 def _text(stands: Bridge, ratings: Ratings, rows: list[Rating], *, every: bool) -> list[RenderableType | str]:

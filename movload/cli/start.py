@@ -54,7 +54,7 @@ def start(
 ) -> None:
     """Write a commented bridge file; what is still to be measured or decided stands in it as "?"."""
     from movload.bridge.layout import Layout
-    from movload.errors import InputError
+    from movload.errors import InputError, MovloadError
     from movload.files.read import bridge_from
     from movload.files.start import lengths_from, starter_text
     from movload.files.write import check_writable, write_files
@@ -66,7 +66,10 @@ def start(
     feet = length in {"ft", "in"}
     units = UnitSystem(length, loads or ("kip" if feet else "kN"), "in" if feet else "mm")
     lengths, heights = lengths_from(panels, units, "--panels"), lengths_from(depths, units, "--depths")
-    layout = Layout(form, lengths, heights, deck=deck, middle=middle)
+    try:
+        layout = Layout(form, lengths, heights, deck=deck, middle=middle)
+    except MovloadError as error:  # layout.panels[2] was typed as --panels
+        raise type(error)(error.rule, place=error.place.replace("layout.", "--"), nearest=error.nearest) from None
     text = starter_text(title, layout, units)
     bridge_from(text, str(file))  # what was written must read back
     write_files({file: text.encode()}, force=force)

@@ -15,6 +15,7 @@ from movload.cli.options import (
     VehicleNames,
     check_outputs,
     deliver,
+    naming,
     read_loadings,
 )
 from movload.errors import InputError
@@ -43,7 +44,7 @@ def sweep(
     force: Force = False,
 ) -> None:
     """Find the worst positions: whole axles on one truss, both headings, no share and no impact."""
-    check_outputs(csv, plot, force=force)
+    check_outputs(csv, plot, force=force, inputs=[bridge, *vehicle])
     if plot is not None and not row:
         raise InputError("say which row to draw: --row U1-L2", place="--plot")
     from movload.files.read import read_bridge
@@ -54,8 +55,9 @@ def sweep(
     from movload.statics.part import row_of
 
     stands = read_bridge(bridge)
-    lines = influence_lines(stands.truss, stands.deck.panel_points)
-    wanted = [row_of(lines.effects, name) for name in row] if row else list(range(len(lines.effects)))
+    with naming(bridge):
+        lines = influence_lines(stands.truss, stands.deck.panel_points)
+        wanted = [row_of(lines.effects, name) for name in row] if row else list(range(len(lines.effects)))
     peaks = swept(lines, read_loadings(vehicle))
     rows = swept_rows(peaks, station_names(stands.deck.panel_points), wanted)
     deliver(
@@ -63,7 +65,7 @@ def sweep(
         json=(lambda: sweep_json(stands.title, rows)) if json else None,
         files={
             csv: lambda: sweep_csv(rows, stands.units).encode(),
-            plot: _drawing(stands, lines, peaks[0], wanted[0], plot.suffix if plot else ""),
+            plot: _drawing(stands, lines, peaks[0], wanted[0], plot.suffix.lower() if plot else ""),
         },
         force=force,
     )

@@ -8,12 +8,12 @@ import typer
 
 from movload.cli.options import CsvFile, Force, Json, check_outputs, deliver
 
-Name = Annotated[str | None, typer.Argument(metavar="[NAME]", help="A library name or a vehicle file (.toml).")]
+Name = Annotated[str | None, typer.Argument(metavar="NAME", help="A library name or a vehicle file (.toml).")]
 
 
 def vehicles(name: Name = None, *, json: Json = False, csv: CsvFile = None, force: Force = False) -> None:
     """List the vehicles that come with movload, or show one axle by axle."""
-    check_outputs(csv, None, force=force)
+    check_outputs(csv, None, force=force, inputs=[] if name is None else [name])
     from movload.files.library import read_vehicle, vehicle_names
     from movload.report.vehicles_report import list_csv, list_json, list_tables, one_csv, one_tables
 

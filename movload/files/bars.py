@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
+from movload.bridge.bridge import Permitted
 from movload.bridge.truss import Member
 from movload.errors import InputError, MovloadError, UnknownNameError, nearest_name
 from movload.files.toml import written_key
@@ -39,13 +40,23 @@ def members_of(table: BridgeFile, laid_out: LaidOut, joints: Mapping[str, tuple[
     return members
 
 
-def permits_of(table: BridgeFile, laid_out: LaidOut) -> dict[str, tuple[float | None, float | None]]:
-    """Return typed permitted forces (tension, compression) [N] by member."""
-    permits: dict[str, tuple[float | None, float | None]] = {}
+def permits_of(table: BridgeFile, laid_out: LaidOut) -> dict[str, Permitted]:
+    """Return typed permitted forces by member.
+
+    Raises
+    ------
+    InputError
+        A permitted force below 0.
+    """
+    permits: dict[str, Permitted] = {}
     for name, (title, _) in _group_of_each(table, laid_out).items():
         typed = table.members[title].permits
-        if typed is not None:
-            permits[name] = (typed.tension, typed.compression)
+        if typed is None:
+            continue
+        try:
+            permits[name] = Permitted(typed.tension, typed.compression)
+        except MovloadError as error:
+            raise error.at(f"members.{written_key(title)}") from None
     return permits
 
 
@@ -65,11 +76,16 @@ def _group_of_each(table: BridgeFile, laid_out: LaidOut) -> dict[str, tuple[str,
         for number, bar in enumerate(group.bars):
             here = f"{place}.bars[{number}]"
             start, end = _joints_of(bar, here)
-            name = names.setdefault(frozenset((start, end)), bar)
+            name = names.setdefault(frozenset((start, end)), f"{start}-{end}")
             if name in by_name:
                 raise InputError(f'bar "{bar}" is given twice (also at {by_name[name][1]})', place=here)
             by_name[name] = (title, here)
-    return of_role | by_name
+    of_each = of_role | by_name
+    taken = {title for title, _ in of_each.values()}
+    for title in table.members:
+        if title not in taken:
+            raise InputError("takes no bar: other groups name all of its role's", place=f"members.{written_key(title)}")
+    return of_each
 
 
 def _bars_of_role(title: str, laid_out: LaidOut, place: str) -> Iterator[str]:

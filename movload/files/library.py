@@ -6,7 +6,7 @@ from functools import cache
 from pathlib import Path
 from typing import TYPE_CHECKING
 
-from movload.errors import UnknownVehicleError, nearest_name
+from movload.errors import UnknownNameError, UnknownVehicleError, nearest_name
 from movload.files.read import vehicle_from
 from movload.files.toml import read_text
 
@@ -42,8 +42,7 @@ def read_vehicle(vehicle: str | Path) -> Loading:
     """
     text = str(vehicle)
     if isinstance(vehicle, Path) or text.lower().endswith(".toml") or "/" in text or "\\" in text or "\0" in text:
-        path = Path(vehicle)
-        return vehicle_from(read_text(path), str(path))
+        return _from_file(Path(vehicle))
     names = {_folded(name): name for name in vehicle_names()}
     found = names.get(_folded(text))
     if found is None:
@@ -53,6 +52,16 @@ def read_vehicle(vehicle: str | Path) -> Loading:
         )
     path = vehicle_folder() / f"{found}.toml"
     return vehicle_from(read_text(path), f"vehicles/{path.name}")
+
+
+def _from_file(path: Path) -> Loading:
+    """Return the vehicle in a file; a file that is not there may be meant for one of the library."""
+    try:
+        text = read_text(path)
+    except UnknownNameError as error:
+        near = error.nearest or nearest_name(path.stem, vehicle_names())
+        raise UnknownVehicleError(error.rule, place=error.place, nearest=near) from None
+    return vehicle_from(text, str(path))
 
 
 def _folded(name: str) -> str:

@@ -2,16 +2,18 @@
 
 from __future__ import annotations
 
+import re
+from contextlib import contextmanager
 from pathlib import Path
 from typing import TYPE_CHECKING
 
 import numpy as np
 
-from movload.bridge.bridge import Bridge, PermanentLoads, Permitted
+from movload.bridge.bridge import Bridge, PermanentLoads
 from movload.bridge.deck import Deck
 from movload.bridge.layout import LaidOut, Layout, lay_out
 from movload.bridge.truss import Support, Truss
-from movload.errors import InputError, MovloadError
+from movload.errors import InputError, MovloadError, UnknownNameError, nearest_name
 from movload.files.bars import members_of, permits_of
 from movload.files.schema.bridge import BridgeFile, DeckTable, LayoutTable, SupportTable
 from movload.files.schema.checked import checked
@@ -21,6 +23,8 @@ from movload.traffic.loading import Loading
 from movload.traffic.vehicle import Vehicle
 
 if TYPE_CHECKING:
+    from collections.abc import Callable, Iterator
+
     from movload.bridge.deck import PanelPoint
     from movload.units import UnitSystem
 
@@ -39,9 +43,9 @@ def read_bridge(path: str | Path) -> Bridge:
 
 def bridge_from(text: str, place: str) -> Bridge:
     """Return the bridge in a file's text; ``place`` is what errors call the file."""
-    data, missing = without_placeholders(parsed(text, place))
     try:
-        table, units = checked(BridgeFile, data, missing=missing)
+        data, missing = without_placeholders(parsed(text))
+        table, units = checked(BridgeFile, data)
         return _bridge(table, units, missing, place)
     except MovloadError as error:
         raise error.at(place) from None
@@ -55,19 +59,41 @@ def _bridge(table: BridgeFile, units: UnitSystem, missing: tuple[str, ...], sour
     members = members_of(table, laid_out, joints)
     truss = Truss(joints, list(members.values()), supports)
     permanent = table.permanent
-    return Bridge(
-        table.title,
-        truss,
-        Deck(_panel_points(table.deck, laid_out), truss_share=table.deck.truss_share),
-        permanent=None
-        if permanent is None or permanent.deck is None or permanent.truss_share is None
-        else PermanentLoads(permanent.deck, permanent.truss_share),
-        permits={name: Permitted(*forces) for name, forces in permits_of(table, laid_out).items()},
-        impact=table.rating.impact,
-        units=units,
-        missing=missing,
-        sources=(source,),
-    )
+    deck = Deck(_panel_points(table.deck, laid_out), truss_share=table.deck.truss_share)
+    with _placed(lambda place: _deck_place(place, deck, table.deck)):
+        return Bridge(
+            table.title,
+            truss,
+            deck,
+            permanent=None
+            if permanent is None or permanent.deck is None or permanent.truss_share is None
+            else PermanentLoads(permanent.deck, permanent.truss_share),
+            permits=permits_of(table, laid_out),
+            impact=table.rating.impact,
+            units=units,
+            missing=missing,
+            sources=(source,),
+        )
+
+
+@contextmanager
+def _placed(written: Callable[[str], str]) -> Iterator[None]:
+    """Say where in the file it is wrong, when the domain counts otherwise than the file does."""
+    try:
+        yield
+    except MovloadError as error:
+        raise type(error)(error.rule, place=written(error.place), nearest=error.nearest) from None
+
+
+def _deck_place(place: str, deck: Deck, table: DeckTable) -> str:
+    """Return where the file has a panel point: abutments are keys of their own there."""
+    counted = re.fullmatch(r"deck\.panel_points\[(\d+)\]", place)
+    if not counted:
+        return place
+    number = int(counted[1])
+    if not isinstance(deck.panel_points[number], str):
+        return "deck.left_abutment" if number == 0 else "deck.right_abutment"
+    return f"deck.panel_points[{number - (table.left_abutment is not None)}]"
 
 
 def _laid_out(layout: LayoutTable | None) -> LaidOut:
@@ -77,12 +103,16 @@ def _laid_out(layout: LayoutTable | None) -> LaidOut:
     written = lay_out(
         Layout(layout.form, np.array(layout.panels), np.array(layout.depths), deck=layout.deck, middle=layout.middle)
     )
-    bars = {f"{bar.start}-{bar.end}" for bar in written.bars}
+    by_joints = {frozenset((bar.start, bar.end)): bar for bar in written.bars}
     for number, name in enumerate(layout.omit):
-        if name not in bars:
-            raise InputError(f'"{name}" is not a bar of this layout', place=f"layout.omit[{number}]")
-    kept = tuple(bar for bar in written.bars if f"{bar.start}-{bar.end}" not in layout.omit)
-    return LaidOut(written.joints, kept, written.panel_points)
+        if by_joints.pop(frozenset(name.split("-")), None) is None:
+            bars = [f"{bar.start}-{bar.end}" for bar in by_joints.values()]
+            raise UnknownNameError(
+                f'"{name}" is not a bar of this layout, or omitted twice',
+                place=f"layout.omit[{number}]",
+                nearest=nearest_name(name, bars),
+            )
+    return LaidOut(written.joints, tuple(by_joints.values()), written.panel_points)
 
 
 def _support(joint: str, table: SupportTable | str) -> Support:
@@ -111,9 +141,8 @@ def _panel_points(deck: DeckTable, laid_out: LaidOut) -> tuple[PanelPoint, ...]:
 
 def vehicle_from(text: str, place: str) -> Loading:
     """Return the loading in a vehicle file's text; ``place`` is what errors call the file."""
-    data = parsed(text, place)
     try:
-        return _loading(checked(VehicleFile, data)[0])
+        return _loading(checked(VehicleFile, parsed(text))[0])
     except MovloadError as error:
         raise error.at(place) from None
 
@@ -132,11 +161,21 @@ def _loading(table: VehicleFile) -> Loading:
     if gauges and len(gauges) != len(table.axles):
         bare = next(number for number, axle in enumerate(table.axles) if axle.gauge is None)
         raise InputError("some axles have a gauge and this one has none", place=f"axles[{bare}].gauge")
-    vehicle = Vehicle(
-        table.title,
-        np.array([axle.load for axle in table.axles]),
-        [axle.after for axle in table.axles if axle.after is not None],
-        gauges=gauges,
-        headings=tuple({"+x": 1, "-x": -1}[heading] for heading in table.headings),
-    )
+    with _placed(_axle_place):
+        vehicle = Vehicle(
+            table.title,
+            np.array([axle.load for axle in table.axles]),
+            [axle.after for axle in table.axles if axle.after is not None],
+            gauges=gauges,
+            headings=tuple({"+x": 1, "-x": -1}[heading] for heading in table.headings),
+        )
     return Loading.of(vehicle, table.kind, source=table.source or "")
+
+
+def _axle_place(place: str) -> str:
+    """Return where the file has a gap or a gauge: with the axle that follows the gap, or that has the gauge."""
+    counted = re.fullmatch(r"(spacings|gauges)\[(\d+)\]", place)
+    if not counted:
+        return place
+    number = int(counted[2])
+    return f"axles[{number + 1}].after" if counted[1] == "spacings" else f"axles[{number}].gauge"

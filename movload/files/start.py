@@ -8,13 +8,15 @@ from typing import TYPE_CHECKING, Final
 from movload.arrays import Floats, frozen_floats
 from movload.bridge.layout import lay_out
 from movload.errors import InputError, MovloadError
-from movload.units import to_si
+from movload.files.schema.quantities import number
+from movload.files.toml import short
 
 if TYPE_CHECKING:
     from movload.bridge.layout import Layout
     from movload.units import UnitSystem
 
 _MOST_REPEATS: Final = 1000
+_DIGITS: Final = 9  # of a count are read: with more than four it is refused anyway
 _STAND_IN: Final = {"mm": ("2000", "200", "7850"), "in": ("3.0", "29000", "490")}
 
 
@@ -28,12 +30,12 @@ def lengths_from(text: str, units: UnitSystem, place: str) -> Floats:
     """
     words = [word.strip() for word in (text.split(",") if "," in text else text.split())]
     lengths: list[float] = []
-    for number, word in enumerate(words):
-        here = f"{place}[{number}]"
-        repeat = re.fullmatch(r"(\d+)\s*[x*×]\s*(.+)", word)
-        count, one = (int(repeat[1]), repeat[2]) if repeat else (1, word)
-        if count > _MOST_REPEATS:
-            raise InputError(f"at most {_MOST_REPEATS} repeats, got {count}", place=here)
+    for index, word in enumerate(words):
+        here = f"{place}[{index}]"
+        repeat = re.fullmatch(r"([0-9]+)\s*[x*×]\s*(.+)", word)
+        count, one = (int(repeat[1][:_DIGITS]), repeat[2]) if repeat else (1, word)
+        if not 1 <= count <= _MOST_REPEATS:
+            raise InputError(f'1 to {_MOST_REPEATS} repeats may be asked for, got "{short(word)}"', place=here)
         lengths += [_length(one, units, here)] * count
     if not lengths:
         raise InputError("no length is typed", place=place)
@@ -43,11 +45,11 @@ def lengths_from(text: str, units: UnitSystem, place: str) -> Floats:
 def _length(word: str, units: UnitSystem, place: str) -> float:
     """Return one length [m]; a bare number is in the file's units."""
     try:
-        return float(word) * units.factor("length")
+        typed: float | str = float(word)
     except ValueError:
-        pass
+        typed = word
     try:
-        return to_si(word, "length")
+        return number(typed, "length", units)
     except MovloadError as error:
         raise error.at(place) from None
 

@@ -32,8 +32,7 @@ def read_text(path: Path) -> str:
         Missing, a folder, a device or a pipe, unreadable, binary or empty.
     """
     try:
-        if path.exists() and not (path.is_file() or path.is_dir()):
-            raise InputError("is a device or a pipe; an ordinary file is asked for", place=str(path))
+        _require_ordinary(path)
         text = path.read_bytes().decode("utf-8-sig")
     except InputError:
         raise
@@ -51,7 +50,13 @@ def read_text(path: Path) -> str:
     return text
 
 
-def parsed(text: str, place: str) -> Data:
+def _require_ordinary(path: Path) -> None:
+    """Refuse what could keep a reader waiting for ever."""
+    if path.exists() and not (path.is_file() or path.is_dir()):
+        raise InputError("is a device or a pipe; an ordinary file is asked for", place=str(path))
+
+
+def parsed(text: str) -> Data:
     """Return TOML text as plain data.
 
     Raises
@@ -62,11 +67,11 @@ def parsed(text: str, place: str) -> Data:
     try:
         return tomllib.loads(text)
     except tomllib.TOMLDecodeError as error:
-        raise InputError(f"is not TOML: {_with_line(str(error), text)}", place=place) from None
+        raise InputError(f"is not TOML: {_with_line(str(error), text)}") from None
     except RecursionError:
-        raise InputError("is not TOML that can be read: tables or lists are nested too deeply", place=place) from None
+        raise InputError("is not TOML that can be read: tables or lists are nested too deeply") from None
     except ValueError as error:
-        raise InputError(f"holds a value that cannot be read: {error}", place=place) from None
+        raise InputError(f"holds a value that cannot be read: {error}") from None
 
 
 def _with_line(complaint: str, text: str) -> str:

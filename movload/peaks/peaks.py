@@ -12,6 +12,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from movload.arrays import held
 from movload.errors import InputError, UnknownNameError
 from movload.peaks.candidates import LOST, Candidates, candidates_of
 from movload.peaks.governing import governing_candidates
@@ -201,10 +202,13 @@ def effects_at(response: Response, train: Train, position: float, heading: int) 
 
 def stacked(title: str, parts: Sequence[PartPeaks]) -> Peaks:
     """Return the peaks of all parts as one, rows in the order of the parts."""
+    if len(parts) == 1:
+        (part,) = parts
+        return Peaks(title, part.response.effects, part.highest, part.lowest, (part,))
     return Peaks(
         title,
         tuple(effect for part in parts for effect in part.response.effects),
-        np.concatenate([part.highest for part in parts]),
-        np.concatenate([part.lowest for part in parts]),
+        held(np.concatenate([part.highest for part in parts])),
+        held(np.concatenate([part.lowest for part in parts])),
         tuple(parts),
     )

@@ -62,13 +62,13 @@ def part_peaks(response: Response, trains: Sequence[tuple[Train, ...]], impact: 
     dynamic = np.array([train.dynamic for train in flat])[:, None]
     highest *= 1.0 + dynamic * impact[:, 0]
     lowest *= 1.0 + dynamic * impact[:, 1]
-    answers, first = [], 0
-    for one in trains:
-        mine = slice(first, first + len(one))
-        top, bottom = highest[mine].max(axis=0), lowest[mine].min(axis=0)
-        answers.append(PartPeaks(response, one, held(top), held(bottom), impact))
-        first += len(one)
-    return answers
+    counts = [len(one) for one in trains]
+    if max(counts, default=0) > 1:  # the envelope over each crossing's trains
+        starts = np.cumsum([0, *counts[:-1]])
+        highest = np.maximum.reduceat(highest, starts, axis=0)
+        lowest = np.minimum.reduceat(lowest, starts, axis=0)
+    highest, lowest = held(highest), held(lowest)
+    return [PartPeaks(response, one, highest[row], lowest[row], impact) for row, one in enumerate(trains)]
 
 
 def effects_with_front_at(lines: Response, vehicle: Vehicle, position: float, heading: int = 1) -> Floats:

@@ -81,7 +81,8 @@ def solve(bridge: Bridge, method: FactorSet = PERMITTED) -> SolvedBridge:
     permanent_loads, share, impact = _required(bridge)
     solver = factored(bridge.truss)
     lines = lines_of(solver, bridge.deck.panel_points)
-    strength = permitted_strengths(lines.effects, bridge.permits)
+    permits = {bridge.truss.member(name).name: typed for name, typed in bridge.permits.items()}  # a bar's own name
+    strength = permitted_strengths(lines.effects, permits)
     return SolvedBridge(
         bridge.title,
         (Part("truss", lines, Across.typed(share)),),
@@ -103,7 +104,7 @@ def _required(bridge: Bridge) -> tuple[PermanentLoads, float, float]:
         "deck.truss_share (share of a whole axle that reaches one truss)": bridge.deck.truss_share,
         "permanent.deck and permanent.truss_share (weight per length of the whole deck, 0 if none)":
             bridge.permanent,
-        "rating.impact (dynamic allowance, e.g. 0.30; 0 only if a rule allows it)": bridge.impact,
+        "rating.impact (dynamic allowance, e.g. 0.30, and 0 only if a rule allows it)": bridge.impact,
     }  # fmt: skip
     needed += [
         words for words, value in asked.items()

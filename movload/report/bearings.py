@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
-from typing import TYPE_CHECKING, Final
+from typing import TYPE_CHECKING, Any, Final
 
 from movload.report.elevation import PIN, bar_directions
 from movload.report.ink import HAIR, PAPER, POINT, THIN
@@ -20,7 +20,7 @@ _HALF: Final = 2.5  # mm, half the foot of a triangle
 _BED: Final = 4.2  # mm, half the length of a bed
 _HATCH: Final = 1.4  # mm, depth of the ground's hatching
 _STROKES: Final = 7  # of that hatching
-_STEEP: Final = 0.7  # sine of a bed's angle from which the side it is drawn on may be chosen
+_STEEP: Final = 0.8  # sine of a bed's angle from which the side it is drawn on may be chosen
 
 REACH: Final = _TALL + _HATCH + 0.6  # mm a bearing takes below its joint
 
@@ -79,7 +79,7 @@ def _turn(truss: Truss, support: Support) -> float:
 
 def _draw_bearing(sheet: Sheet, support: Support, stand: _Stand) -> None:
     """Draw a triangle or a roller, and the bed under it."""
-    style = {"linewidth": THIN / POINT, "zorder": 1.5}
+    style: dict[str, Any] = {"linewidth": THIN / POINT, "zorder": 1.5}
     if support.slides is None:
         corners = [stand.off(*at) for at in ((0, -PIN * 0.6), (-_HALF, -_TALL), (_HALF, -_TALL))]
         sheet.shape(corners, PAPER, label=f"pinned {support.joint}", **style)
@@ -92,4 +92,5 @@ def _draw_bearing(sheet: Sheet, support: Support, stand: _Stand) -> None:
         start = -_BED + (number + 0.6) * 2 * _BED / _STROKES
         sheet.stroke([stand.off(start, -_TALL), stand.off(start - _HATCH * 0.8, -_TALL - _HATCH)], HAIR)
     sheet.board.keep_clear([stand.joint, stand.off(0, -_TALL)], _HALF)
-    sheet.board.keep_clear([left, right], _HATCH)
+    ground = [stand.off(side * (_BED + 0.6), -_TALL - _HATCH / 2) for side in (-1, 1)]
+    sheet.board.keep_clear(ground, _HATCH / 2)

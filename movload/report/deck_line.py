@@ -21,6 +21,7 @@ if TYPE_CHECKING:
     from movload.bridge.deck import PanelPoint
     from movload.bridge.truss import Truss
     from movload.report.sheet import Place, Strip
+    from movload.statics.part import Response
 
 _SAME_PLACE: Final = 1e-6  # m
 _STRAIGHT: Final = 1e-6  # radians; bars that differ less are one line
@@ -59,13 +60,11 @@ class DeckLine:
         return cls(names, stations, held(heights))
 
     @classmethod
-    def under(cls, truss: Truss, stations: Floats) -> DeckLine:
-        """Return the deck line of a truss that is known by its stations only: the joints named first stand on them."""
-        names = []
-        for x in stations:
-            at = [name for name, point in truss.joints.items() if abs(point[0] - x) <= _SAME_PLACE]
-            names.append(at[0] if at else "")
-        return cls.of(truss, [name or float(x) for name, x in zip(names, stations, strict=True)])
+    def under(cls, truss: Truss, lines: Response) -> DeckLine:
+        """Return the deck line that influence lines were made for: its joints are those that have a row "down"."""
+        loaded = [effect.name.removesuffix(" down") for effect in lines.effects if effect.kind == "down"]
+        by_x = {truss.joints[name][0]: name for name in loaded}
+        return cls.of(truss, [by_x.get(float(x), float(x)) for x in lines.stations])
 
     @property
     def joints(self) -> frozenset[str]:
@@ -78,34 +77,36 @@ class DeckLine:
         first, last = min(first, self.stations[0]), max(last, self.stations[-1])
         return float(first), float(last), float(low), float(max(high, low + 1e-3 * (last - first)))
 
-    def depths(self, truss: Truss) -> list[tuple[float, float]]:
-        """Return x and depth [m] wherever a joint of the chord opposite the loaded one stands, from left to right."""
-        columns = {}
-        start, end = (truss.coordinates[joint] for joint in truss.ends.T)
-        for x, y in truss.coordinates[np.argsort(truss.coordinates[:, 0])]:
-            loaded = float(np.interp(x, self.stations, self.heights))
-            lows, highs = np.minimum(start[:, 0], end[:, 0]), np.maximum(start[:, 0], end[:, 0])
-            over = (lows < x - _SAME_PLACE) & (highs > x + _SAME_PLACE)
-            share = (x - start[over, 0]) / (end[over, 0] - start[over, 0])
-            crossing = start[over, 1] + share * (end[over, 1] - start[over, 1]) - loaded
-            depth = float(y) - loaded
-            if _in_a_post(truss, (float(x), float(y))):
-                continue
-            beyond = crossing * np.sign(depth) > abs(depth) + _SAME_PLACE
-            if abs(depth) > _SAME_PLACE and not beyond.any():
-                columns[round(float(x), 6)] = max(abs(depth), columns.get(round(float(x), 6), 0.0))
-        return list(columns.items())
+    def depths(self, truss: Truss) -> list[tuple[float, float, float]]:
+        """Return x, depth and y [m] of each joint of the chord opposite the loaded one, from left to right."""
+        columns: dict[float, tuple[float, float]] = {}
+        for joint in np.argsort(truss.coordinates[:, 0], kind="stable"):
+            x, y = map(float, truss.coordinates[joint])
+            depth = y - float(np.interp(x, self.stations, self.heights))
+            if abs(depth) > _SAME_PLACE and _is_outermost(truss, (x, y), depth) and not _in_a_post(truss, int(joint)):
+                columns[round(x, 6)] = max((abs(depth), y), columns.get(round(x, 6), (0.0, 0.0)))
+        return [(x, depth, y) for x, (depth, y) in columns.items()]
 
 
-def _in_a_post(truss: Truss, point: Place) -> bool:
+def _is_outermost(truss: Truss, point: Place, depth: float) -> bool:
+    """Say whether no bar passes beyond a joint, seen from the loaded chord."""
+    start, end = (truss.coordinates[joint] for joint in truss.ends.T)
+    left, right = np.minimum(start[:, 0], end[:, 0]), np.maximum(start[:, 0], end[:, 0])
+    over = (left < point[0] - _SAME_PLACE) & (right > point[0] + _SAME_PLACE)
+    share = (point[0] - start[over, 0]) / (end[over, 0] - start[over, 0])
+    crossing = start[over, 1] + share * (end[over, 1] - start[over, 1])
+    return not ((crossing - point[1]) * np.sign(depth) > _SAME_PLACE).any()
+
+
+def _in_a_post(truss: Truss, joint: int) -> bool:
     """Say whether a joint only divides a steep straight bar, such as a subdivided end post: that is no chord."""
-    joint = int(np.argmin(np.hypot(*(truss.coordinates - point).T)))
-    turns = []
-    for (start, end), (along, up) in zip(truss.ends, truss.spans, strict=True):
-        if joint in {start, end} and abs(along) > _SAME_PLACE:
-            turns.append(math.atan(up / along))
-    straight = any(abs(first - second) < _STRAIGHT for first, second in combinations(turns, 2))
-    return straight and max(map(abs, turns)) > _STEEP
+    turns = [
+        math.atan(up / along)
+        for (start, end), (along, up) in zip(truss.ends, truss.spans, strict=True)
+        if joint in {start, end} and abs(along) > _SAME_PLACE
+    ]
+    lines = [first for first, second in combinations(turns, 2) if abs(first - second) < _STRAIGHT]
+    return any(abs(turn) > _STEEP for turn in lines)
 
 
 def draw_abutments(strip: Strip, deck: DeckLine) -> None:

@@ -11,7 +11,7 @@ from movload.report.labels import Spot
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
-    from movload.report.sheet import Sheet
+    from movload.report.sheet import Place, Sheet
 
 _TICK: Final = 1.0  # mm, half the width of a tick
 _ABOVE: Final = 0.75  # mm between a dimension line and the figures on it
@@ -46,30 +46,21 @@ def _write_piece(sheet: Sheet, level: float, *, middle: float, text: str, colour
     return sheet.write(lettering, spots, colour)
 
 
-def upright_dimension(sheet: Sheet, x: float, ends: tuple[float, float], text: str, *, starts: float) -> bool:
-    """Draw an upright dimension at ``x`` between two heights [mm], its extension lines coming from ``starts`` [mm]."""
-    for end in ends:
-        outward = 1.5 if x > starts else -1.5
-        sheet.stroke([(starts, end), (x + outward, end)], HAIR, FAINT, zorder=-5)
+def upright_dimension(sheet: Sheet, x: float, measured: Sequence[Place], text: str) -> bool:
+    """Draw an upright dimension at ``x`` [mm] between two points measured; say whether its length found room."""
+    ends = sorted(y for _, y in measured)
+    for start, end in measured:
+        sheet.stroke([(start, end), (x + 1.5, end)], HAIR, FAINT, zorder=-5)
         sheet.stroke([(x - _TICK, end - _TICK), (x + _TICK, end + _TICK)], THIN)
     sheet.stroke([(x, ends[0] - _TICK), (x, ends[1] + _TICK)], FINE)
     sheet.board.keep_clear([(x, ends[0]), (x, ends[1])])
     lettering = sheet.lettering(text)
     away = _ABOVE + lettering.ink_height / 2
     middle = (ends[0] + ends[1]) / 2
-    level = away + lettering.width / 2
-    return sheet.write(
-        lettering, [Spot(x - away, middle, 90.0), Spot(x + away, middle, 90.0), Spot(x + level, middle)]
-    )
+    return sheet.write(lettering, [Spot(x + side * away, middle, 90.0) for side in (-1, 1)])
 
 
-def row_of_words(sheet: Sheet, level: float, places: Sequence[float], texts: Sequence[str], colour: str = INK) -> int:
+def row_of_words(sheet: Sheet, level: float, places: Sequence[float], texts: Sequence[str]) -> int:
     """Write a text at each place [mm] around height ``level``, ends first; return how many found no room."""
     order = sorted(range(len(places)), key=lambda number: (number not in {0, len(places) - 1}, number))
-    return sum(not sheet.write(sheet.lettering(texts[number]), [Spot(places[number], level)], colour) for number in order)
-
-
-def row_title(sheet: Sheet, level: float, text: str, right: float) -> None:
-    """Write what a row holds, ending at ``right`` [mm]."""
-    lettering = sheet.lettering(text)
-    sheet.write_at(lettering, Spot(right - lettering.width / 2, level), INK)
+    return sum(not sheet.write(sheet.lettering(texts[number]), [Spot(places[number], level)]) for number in order)

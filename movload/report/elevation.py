@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
-from movload.report.ink import ACCENT, FIRM, INK, PAPER, POINT, THIN
+from movload.report.ink import ACCENT, FIRM, FRAME, INK, PAPER, POINT, THIN
 from movload.report.labels import Lettering, Spot
 
 if TYPE_CHECKING:
@@ -26,6 +26,8 @@ ACCENT_STROKE: Final = 0.45  # mm, each of the two strokes of a governing bar in
 _LEAST_OPEN: Final = 0.95  # mm, a double line must stay open on a copy
 _LEAST_SOLID: Final = 0.4  # mm
 _ALONG: Final = (0.5, 0.42, 0.58, 0.35, 0.65, 0.28, 0.72, 0.22, 0.78)
+_AROUND: Final = (0.9, 1.7, 2.6, 3.6, 5.0, 6.4)  # mm between a joint and its name
+_FLAT: Final = 0.35  # radians; a flatter bar is a chord's, whose label stands outside the truss first
 _ASIDE: Final = 0.7  # mm between a bar and the ink beside it
 
 
@@ -121,19 +123,14 @@ def name_spots(strip: Strip, truss: Truss, name: str, lettering: Lettering) -> l
         upright = abs(math.remainder(2 * turn - math.pi, math.tau)) / 12  # straight above or below reads best
         return -min(gap, math.radians(80)) + upright
 
-    spots = []
-    for away in (0.9, 1.7, 2.6, 3.6):
-        for turn in sorted(turns, key=crowding):
-            spots.append(_beside((x, y), turn, PIN + away, lettering))
-    return spots
+    best = sorted(turns, key=crowding)
+    return [_beside((x, y), turn, PIN + away, lettering) for away in _AROUND for turn in best]
 
 
 def _beside(point: Place, turn: float, away: float, lettering: Lettering) -> Spot:
     """Return the spot of a level text whose ink is ``away`` [mm] from a point in direction ``turn``."""
     cosine, sine = math.cos(turn), math.sin(turn)
-    return Spot(
-        point[0] + cosine * (away + lettering.width / 2), point[1] + sine * (away + lettering.ink_height / 2)
-    )
+    return Spot(point[0] + cosine * (away + lettering.width / 2), point[1] + sine * (away + lettering.ink_height / 2))
 
 
 def bar_directions(truss: Truss, name: str) -> list[float]:
@@ -147,24 +144,31 @@ def bar_directions(truss: Truss, name: str) -> list[float]:
     return directions
 
 
-def bar_spots(strip: Strip, truss: Truss, row: int, lettering: Lettering, weight: float) -> list[Spot]:
+def bar_spots(strip: Strip, truss: Truss, row: int, lettering: Lettering, *, weight: float) -> list[Spot]:
     """Return where a bar's label may stand: along it on either side, outside the truss first, from its middle on."""
-    start, end = (np.array(strip.mm(*truss.coordinates[joint])) for joint in truss.ends[row])
-    if (end - start)[0] < 0 or (abs((end - start)[0]) < 1e-9 and (end - start)[1] < 0):
+    start, end = (strip.mm(*truss.coordinates[joint]) for joint in truss.ends[row])
+    if (round(end[0], 6), end[1]) < (round(start[0], 6), start[1]):  # read from the left, an upright one from below
         start, end = end, start
-    turn = math.atan2(*(end - start)[::-1])
-    across = np.array([-math.sin(turn), math.cos(turn)])
+    turn = math.atan2(end[1] - start[1], end[0] - start[0])
     away = weight / 2 + _ASIDE + lettering.pad / 2 + lettering.ink_height / 2
-    middle_y = strip.mm(0.0, float(np.ptp(truss.coordinates[:, 1]) / 2 + truss.coordinates[:, 1].min()))[1]
-    first = 1 if abs(math.degrees(turn)) > 20 or (start + end)[1] / 2 > middle_y else -1
+    low, high = truss.coordinates[:, 1].min(), truss.coordinates[:, 1].max()
+    is_low = (start[1] + end[1]) / 2 < strip.mm(0.0, float(low + high) / 2)[1]
+    outside = -1 if is_low and abs(turn) < _FLAT else 1
     return [
-        Spot(*(start + share * (end - start) + side * away * across), math.degrees(turn))
+        Spot(
+            start[0] + share * (end[0] - start[0]) - side * away * math.sin(turn),
+            start[1] + share * (end[1] - start[1]) + side * away * math.cos(turn),
+            math.degrees(turn),
+        )
         for share in _ALONG
-        for side in (first, -first)
+        for side in (outside, -outside)
     ]
 
 
-def accent_joint(strip: Strip, truss: Truss, name: str) -> None:
-    """Ring a joint in the accent: the support or panel point whose row is shown."""
-    strip.sheet.disc(strip.mm(*truss.joints[name]), 2 * PIN, "none", ACCENT, linewidth=FIRM / POINT)
-
+def mark_joint(strip: Strip, truss: Truss, name: str) -> bool:
+    """Ring a joint in the accent and frame its name: the support or panel point whose row is shown."""
+    middle = strip.mm(*truss.joints[name])
+    strip.sheet.disc(middle, 2 * PIN, "none", ACCENT, linewidth=FIRM / POINT, label=f"mark {name}")
+    strip.sheet.board.keep_clear([middle], 2 * PIN)
+    lettering = strip.sheet.lettering(name, bold=True, pad=FRAME)
+    return strip.sheet.write(lettering, name_spots(strip, truss, name, lettering), ACCENT)

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING
-
 from movload.report.frame import SUFFIXES, figure_bytes
 from movload.report.influence_sheet import influence_figure
 from movload.report.peak_sheet import peak_figure

@@ -10,7 +10,7 @@ import matplotlib as mpl
 from movload.errors import InputError
 from movload.report.dimensions import row_height
 from movload.report.ink import ATTEMPTS, BOLD, EDGE, FINE, GREY, INK, MARGIN, STYLE
-from movload.report.labels import Lettering, Spot, wrapped
+from movload.report.labels import Lettering, Spot, squeezed, wrapped
 
 if TYPE_CHECKING:
     from collections.abc import Callable
@@ -54,19 +54,25 @@ def figure_bytes(figure: Figure, suffix: str) -> bytes:
 def fitted(draw: Callable[[float, float], tuple[Sheet, int]]) -> Figure:
     """Return the first attempt that leaves no label out; else the one that leaves out the fewest.
 
+    Each attempt has more room than the one before, so the first that fits is found by halving.
+
     Parameters
     ----------
     draw
         Makes the figure on a sheet of a width [mm] in a letter size [pt] and says how many labels found no room.
     """
     with mpl.rc_context(dict(STYLE)):
-        best, fewest = draw(*ATTEMPTS[0])
-        for width, size in ATTEMPTS[1:]:
-            if not fewest:
-                break
-            sheet, left_out = draw(width, size)
-            if left_out < fewest:
-                best, fewest = sheet, left_out
+        first, left_out = draw(*ATTEMPTS[0])
+        if not left_out:
+            return first.figure
+        best, fewest = draw(*ATTEMPTS[-1])
+        if fewest:
+            return (best if fewest < left_out else first).figure
+        crowded, fits = 0, len(ATTEMPTS) - 1
+        while fits - crowded > 1:
+            middle = (crowded + fits) // 2
+            sheet, left_out = draw(*ATTEMPTS[middle])
+            crowded, fits, best = (middle, fits, best) if left_out else (crowded, middle, sheet)
     return best.figure
 
 
@@ -77,10 +83,8 @@ def draw_heading(sheet: Sheet, title: str, remark: str) -> None:
     words = Lettering(remark, sheet.size)
     if remark:
         sheet.write_at(words, Spot(right - words.width / 2, level), GREY)
-    size = TITLE
-    while Lettering(title, size, bold=True).width > right - words.width - MARGIN - 6.0 and size > sheet.size:
-        size -= 0.5
-    sheet.write_from(Lettering(title, size, bold=True), MARGIN, level)
+    room = right - MARGIN - (words.width + 6.0 if remark else 0.0)
+    sheet.write_from(squeezed(title, TITLE, room, bold=True), MARGIN, level)
     rule = sheet.height - HEADING
     sheet.stroke([(MARGIN, rule), (right, rule)], BOLD)
     sheet.board.keep_clear([(MARGIN, rule), (right, rule)], BOLD / 2)

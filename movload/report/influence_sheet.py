@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
@@ -13,15 +14,14 @@ from movload.report.dimensions import row_height, row_of_words
 from movload.report.elevation import (
     PLAIN_BAR,
     Look,
-    accent_joint,
     bar_spots,
     draw_bars,
     draw_joints,
+    mark_joint,
     name_joints,
-    name_spots,
 )
 from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
-from movload.report.ink import ACCENT, BOLD, FAINT, HAIR
+from movload.report.ink import ACCENT, BOLD, FAINT, FRAME, HAIR
 from movload.report.line_strip import Band, draw_line, name_line, write_kinks, write_zeros
 from movload.report.sheet import Sheet, Window
 from movload.report.words import lengths, origin
@@ -34,12 +34,12 @@ if TYPE_CHECKING:
     from movload.bridge.truss import Truss
     from movload.report.sheet import Strip
     from movload.statics.influence import InfluenceLine, InfluenceLines
-    from movload.statics.part import Effect
     from movload.units import UnitSystem
 
 _TALLEST: Final = 60.0  # mm of paper for the truss's own height
 _ABOVE: Final = 10.0  # mm over the truss for names
 _BELOW: Final = REACH + 5.0  # mm under it for bearings and names
+_ACCENTED: Final = Look("plain", 2 * BOLD, ACCENT)
 _MOST: Final = 6  # lines on one sheet
 _HEIGHTS: Final = (50.0, 44.0, 38.0, 34.0, 32.0, 31.0)  # mm for each line when there are 1 ... 6
 
@@ -71,41 +71,61 @@ def influence_figure(
     """
     if not 1 <= len(keys) <= _MOST or isinstance(keys, str):
         raise InputError(f"a figure holds 1 to {_MOST} influence lines, got {len(keys)}", place="keys")
-    rows = [lines[key] for key in keys]
-    return fitted(lambda width, size: _drawn(truss, rows, units, title=title, paper=(width, size)))
+    asked = _Asked(truss, DeckLine.under(truss, lines), tuple(lines[key] for key in keys), units, title)
+    return fitted(lambda width, size: _drawn(asked, width, size))
 
 
-def _drawn(
-    truss: Truss, lines: Sequence[InfluenceLine], units: UnitSystem, *, title: str, paper: tuple[float, float]
-) -> tuple[Sheet, int]:
+@dataclass(frozen=True, slots=True, eq=False)
+class _Asked:
+    """What one figure of influence lines shows."""
+
+    truss: Truss
+    deck: DeckLine
+    lines: tuple[InfluenceLine, ...]
+    units: UnitSystem
+    title: str
+
+    def told(self) -> str:
+        """Return the caption."""
+        return (
+            "Each line is the row's value per unit load standing at x, to its own upright scale; "
+            f"lengths in {self.units.length}. {origin(self.truss, self.units)}. "
+            "Ring on an axis: the line changes sign inside a panel."
+        )
+
+
+def _drawn(asked: _Asked, width: float, size: float) -> tuple[Sheet, int]:
     """Draw one attempt; return the sheet and how many labels found no room on it."""
-    width, size = paper
-    row, deck = row_height(size), DeckLine.under(truss, lines[0].stations)
-    first, last, low, high = deck.extent(truss)
+    row, count = row_height(size), len(asked.lines)
+    first, last, low, high = asked.deck.extent(asked.truss)
     window = Window.fitting(first, last, width, steepest=_TALLEST / (high - low))
-    caption = (
-        f"Each line is the row's value per unit load standing at x, to its own upright scale; lengths in {units.length}. "
-        f"{origin(truss, units)}. Ring on an axis: the line changes sign inside a panel."
-    )
-    foot = caption_height(caption, width, size) + 2 * row + 2.0
-    height = _HEIGHTS[len(lines) - 1]
-    zero = foot + len(lines) * height + _BELOW - low * window.scale
-    sheet = Sheet(width, zero + high * window.scale + _ABOVE + over(truss) + HEADING, size)
-    draw_heading(sheet, title, "influence lines")
-    draw_caption(sheet, caption)
-    left_out = _draw_truss(sheet.strip(window, zero, window.scale), truss, deck, [line.effect for line in lines])
-    bottoms = [foot + (len(lines) - 1 - number) * height for number in range(len(lines))]
-    strips = [Band(bottom, height).strip(sheet, window, line) for bottom, line in zip(bottoms, lines, strict=True)]
-    for strip, line in zip(strips, lines, strict=True):  # all lines first: no figure may stand on another row's line
+    foot = caption_height(asked.told(), width, size) + 2 * row + 2.0
+    height = _HEIGHTS[count - 1]
+    zero = foot + count * height + _BELOW - low * window.scale
+    sheet = Sheet(width, zero + high * window.scale + _ABOVE + over(asked.truss) + HEADING, size)
+    draw_heading(sheet, asked.title, "influence lines")
+    draw_caption(sheet, asked.told())
+    left_out = _draw_truss(sheet.strip(window, zero, window.scale), asked)
+    bands = [Band(foot + (count - 1 - number) * height, height) for number in range(count)]
+    left_out += _draw_lines(sheet, window, asked, bands)
+    return sheet, left_out + draw_stations(sheet, window, asked.deck, asked.units, reach=(foot, zero))
+
+
+def _draw_lines(sheet: Sheet, window: Window, asked: _Asked, bands: Sequence[Band]) -> int:
+    """Draw the lines, all of them before any figure, so that none stands on another row's line; count left out."""
+    strips = [band.strip(sheet, window, line) for band, line in zip(bands, asked.lines, strict=True)]
+    for strip, line in zip(strips, asked.lines, strict=True):
         draw_line(strip, line)
-        name_line(strip, line, units, truss)
-    for strip, line in zip(strips, lines, strict=True):
-        left_out += write_kinks(strip, line, units, taken=np.zeros(0)) + write_zeros(strip, line, units)
-    left_out += draw_stations(sheet, window, deck, units, (foot, zero))
-    return sheet, left_out
+        name_line(strip, line, asked.units, asked.truss)
+    return sum(
+        write_kinks(strip, line, asked.units, taken=np.zeros(0)) + write_zeros(strip, line, asked.units)
+        for strip, line in zip(strips, asked.lines, strict=True)
+    )
 
 
-def draw_stations(sheet: Sheet, window: Window, deck: DeckLine, units: UnitSystem, reach: tuple[float, float]) -> int:
+def draw_stations(
+    sheet: Sheet, window: Window, deck: DeckLine, units: UnitSystem, *, reach: tuple[float, float]
+) -> int:
     """Write names and x of the panel points under everything, and project them down; count what found no room."""
     foot, zero = reach
     row = row_height(sheet.size)
@@ -117,24 +137,23 @@ def draw_stations(sheet: Sheet, window: Window, deck: DeckLine, units: UnitSyste
     return left_out + row_of_words(sheet, foot - 1.5 * row - 0.5, places, lengths(deck.stations, units))
 
 
-def _draw_truss(strip: Strip, truss: Truss, deck: DeckLine, effects: Sequence[Effect]) -> int:
-    """Draw the truss with the bars and joints asked about marked and named; return how many names found no room."""
-    asked = {effect.name for effect in effects if effect.kind == "axial"}
-    accented = Look("plain", 2 * BOLD, ACCENT)
+def _draw_truss(strip: Strip, asked: _Asked) -> int:
+    """Draw the truss with the bars and joints asked about marked; return how many names found no room."""
+    truss = asked.truss
+    bars = {line.effect.name for line in asked.lines if line.effect.kind == "axial"}
     draw_bearings(strip, truss)
-    draw_bars(strip, truss, [accented if member.name in asked else PLAIN_BAR for member in truss.members])
-    draw_joints(strip, truss, deck.joints)
-    draw_abutments(strip, deck)
+    draw_bars(strip, truss, [_ACCENTED if member.name in bars else PLAIN_BAR for member in truss.members])
+    draw_joints(strip, truss, asked.deck.joints)
+    draw_abutments(strip, asked.deck)
     name_beds(strip, truss)
-    left_out = 0
-    for row, member in enumerate(truss.members):
-        if member.name in asked:
-            lettering = strip.sheet.lettering(member.name, bold=True, pad=0.7)
-            spots = bar_spots(strip, truss, row, lettering, accented.weight)
-            left_out += not strip.sheet.write(lettering, spots, ACCENT)
-    joints = [effect.name.rpartition(" ")[0] for effect in effects if effect.kind != "axial"]
-    for joint in dict.fromkeys(joints):
-        accent_joint(strip, truss, joint)
-        lettering = strip.sheet.lettering(joint, bold=True, pad=0.7)
-        left_out += not strip.sheet.write(lettering, name_spots(strip, truss, joint, lettering), ACCENT)
+    left_out = sum(not _mark_bar(strip, truss, row) for row, member in enumerate(truss.members) if member.name in bars)
+    others = (line.effect.name for line in asked.lines if line.effect.kind != "axial")
+    joints = dict.fromkeys(name.rpartition(" ")[0] for name in others)
+    left_out += sum(not mark_joint(strip, truss, joint) for joint in joints)
     return left_out + name_joints(strip, truss, besides=frozenset(joints))
+
+
+def _mark_bar(strip: Strip, truss: Truss, row: int) -> bool:
+    """Write a bar's name along it in a frame; say whether there was room."""
+    lettering = strip.sheet.lettering(truss.members[row].name, bold=True, pad=FRAME)
+    return strip.sheet.write(lettering, bar_spots(strip, truss, row, lettering, weight=_ACCENTED.weight), ACCENT)

@@ -29,9 +29,11 @@ THIN: Final = 0.28
 FIRM: Final = 0.5
 BOLD: Final = 0.8
 
+FRAME: Final = 0.7  # mm between a word and the frame around it
+
 FONT: Final = "DejaVu Sans"  # comes with matplotlib, so a figure is the same everywhere
 
-LEFT: Final = 30.0  # margins beside the truss: row names and signs stand in the left one
+LEFT: Final = 33.0  # margins beside the truss: row names and signs stand in the left one
 RIGHT: Final = 24.0
 EDGE: Final = 6.0  # nothing is drawn nearer to the sheet's edge
 MARGIN: Final = 8.0  # where words start
@@ -41,11 +43,10 @@ MARGIN: Final = 8.0  # where words start
 ATTEMPTS: Final = ((300.0, 9.5), (360.0, 9.5), (420.0, 9.5), (420.0, 8.5), (420.0, 7.5), (420.0, 6.5))
 LEAST_SIZE: Final = 6.5
 
-STYLE: Final[Mapping[str, Any]] = MappingProxyType(
+STYLE: Final[Mapping[Any, Any]] = MappingProxyType(
     {
         "font.family": FONT,
         "text.usetex": False,
-        "text.hinting": "no_hinting",
         "path.simplify": False,
         "svg.fonttype": "path",
         "svg.hashsalt": "movload",

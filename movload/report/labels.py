@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import itertools
 import math
+from bisect import bisect_right
 from dataclasses import dataclass, field
 from functools import lru_cache
 from typing import TYPE_CHECKING, Final
@@ -16,13 +17,18 @@ import numpy as np
 from matplotlib.backends.backend_agg import FigureCanvasAgg
 from matplotlib.figure import Figure
 from matplotlib.font_manager import FontProperties
+from matplotlib.text import Text
 
-from movload.report.ink import DPI, EDGE, FONT, POINT
+from movload.report.ink import DPI, EDGE, FONT, LEAST_SIZE, POINT
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
+    from numpy.typing import NDArray
+
     from movload.arrays import Floats
+
+    Truths = NDArray[np.bool_]
 
 _CAPITAL: Final = 0.73  # of the letter size: height of a capital of this font
 _DESCENT: Final = 0.236  # of the letter size: depth of a "p"
@@ -94,14 +100,32 @@ def font(size: float, *, bold: bool = False) -> FontProperties:
     return FontProperties(family=FONT, size=size, weight="bold" if bold else "normal")
 
 
+@lru_cache(maxsize=1)
+def _scratch() -> Figure:
+    """Return a figure that is never shown: texts are measured on it."""
+    figure = Figure(dpi=DPI)
+    FigureCanvasAgg(figure)
+    return figure
+
+
 @lru_cache(maxsize=4096)
 def measured(text: str, size: float, bold: bool = False) -> tuple[float, float]:
     """Return the width and height [mm] of a text's box, level, as the renderer reports them."""
-    figure = Figure(dpi=DPI)
-    canvas = FigureCanvasAgg(figure)
-    drawn = figure.text(0, 0, text, fontproperties=font(size, bold=bold), usetex=False, parse_math=False)
-    extent = drawn.get_window_extent(canvas.get_renderer())
+    drawn = Text(0, 0, text, fontproperties=font(size, bold=bold), usetex=False, parse_math=False)
+    drawn.set_figure(_scratch())
+    extent = drawn.get_window_extent()
     return extent.width / DPI * 25.4, extent.height / DPI * 25.4
+
+
+def squeezed(text: str, size: float, width: float, *, bold: bool = False) -> Lettering:
+    """Return a text no wider than ``width`` [mm]: smaller letters first, down to the least size, then cut short."""
+    while size > LEAST_SIZE and measured(text, size, bold)[0] > width:
+        size = max(size - 0.5, LEAST_SIZE)
+    if measured(text, size, bold)[0] <= width:
+        return Lettering(text, size, bold)
+    shortened = [f"{text[:end].rstrip()} …" for end in range(len(text))]
+    end = bisect_right(shortened, width, key=lambda cut: measured(cut, size, bold)[0])
+    return Lettering(shortened[max(end - 1, 0)], size, bold)
 
 
 def wrapped(text: str, size: float, width: float) -> list[str]:
@@ -149,7 +173,7 @@ class Board:
         free = self._free_of_boxes(lettering, spots) & self._free_of_lines(lettering, spots)
         return [spot for spot, is_free in zip(spots, free, strict=True) if is_free]
 
-    def _free_of_boxes(self, lettering: Lettering, spots: Sequence[Spot]) -> Floats:
+    def _free_of_boxes(self, lettering: Lettering, spots: Sequence[Spot]) -> Truths:
         """Say of each spot whether the box stays on the sheet and off all other boxes."""
         boxes = _boxes(lettering, spots)
         room = np.array(self._room)
@@ -160,9 +184,9 @@ class Board:
         apart = (boxes[:, None, :2] > others[None, :, 2:] + _BETWEEN) | (
             boxes[:, None, 2:] < others[None, :, :2] - _BETWEEN
         )
-        return np.asarray(inside & apart.any(axis=2).all(axis=1))
+        return np.asarray(inside & np.all(np.any(apart, axis=2), axis=1))
 
-    def _free_of_lines(self, lettering: Lettering, spots: Sequence[Spot]) -> Floats:
+    def _free_of_lines(self, lettering: Lettering, spots: Sequence[Spot]) -> Truths:
         """Say of each spot whether the ink stays clear of all lines: each line clipped by the widened ink."""
         if not self._lines:
             return np.ones(len(spots), dtype=bool)

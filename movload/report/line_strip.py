@@ -11,7 +11,7 @@ from matplotlib.patches import Polygon
 
 from movload.report.dimensions import row_height
 from movload.report.ink import FINE, FIRM, GREY, HAIR, PALE, PAPER, POINT
-from movload.report.labels import Lettering, Spot
+from movload.report.labels import Lettering, Spot, squeezed
 from movload.report.words import lengths, ordinate_decimals, ordinate_factor, ordinate_unit, sides, signed
 
 if TYPE_CHECKING:
@@ -49,7 +49,8 @@ def draw_line(strip: Strip, line: InfluenceLine) -> None:
     sheet, name = strip.sheet, line.effect.name
     x, y = with_zeros(line.stations, line.ordinates)
     _draw_areas(strip, x, y, name)
-    axis = [(strip.window.left - 3.0, strip.zero), (strip.window.right + 3.0, strip.zero)]
+    ends = (strip.window.mm(float(line.stations[0])), strip.window.mm(float(line.stations[-1])))
+    axis = [(ends[0] - 3.0, strip.zero), (ends[1] + 3.0, strip.zero)]
     sheet.stroke(axis, FINE, zorder=1.5, label=f"axis of {name}")
     strip.plot(line.stations, line.ordinates, FIRM, label=f"influence line of {name}")
     points = [strip.mm(*point) for point in zip(line.stations, line.ordinates, strict=True)]
@@ -152,12 +153,12 @@ def write_ordinate(
 def around(point: Place, lettering: Lettering, *, upward: bool) -> list[Spot]:
     """Return where a level text may speak of a point: over it (or under it), then aside, then further with a leader."""
     up = 1 if upward else -1
-    spots = []
+    spots: list[Spot] = []
     for away in _AWAY:
         leader = point if away > _NEAR else None
         rise = up * (away + lettering.ink_height / 2)
-        for aside in (0.0, 0.35, -0.35, 0.55, -0.55):
-            spots.append(Spot(point[0] + aside * lettering.width, point[1] + rise, leader=leader))
+        shifts = (aside * lettering.width for aside in (0.0, 0.35, -0.35, 0.55, -0.55))
+        spots += [Spot(point[0] + shift, point[1] + rise, leader=leader) for shift in shifts]
         if leader is None:
             beside = lettering.width / 2 + away
             spots += [Spot(point[0] + side * beside, point[1] + lift) for lift in (0.0, rise / 2) for side in (1, -1)]
@@ -167,7 +168,8 @@ def around(point: Place, lettering: Lettering, *, upward: bool) -> list[Spot]:
 def name_line(strip: Strip, line: InfluenceLine, units: UnitSystem, truss: Truss) -> None:
     """Write the row's name and unit at the left end of its axis, and which way it counts at the right end."""
     sheet, rise = strip.sheet, 0.55 * row_height(strip.sheet.size)
-    sheet.write_from(sheet.lettering(line.effect.name, bold=True), strip.window.side, strip.zero + rise)
+    name = squeezed(line.effect.name, sheet.size, strip.window.left - strip.window.side - 3.5, bold=True)
+    sheet.write_from(name, strip.window.side, strip.zero + rise)
     sheet.write_from(sheet.lettering(ordinate_unit(line.effect, units)), strip.window.side, strip.zero - rise, GREY)
     right = strip.window.right + 3.5
     for side, word in zip((1, -1), sides(line.effect, truss), strict=True):

@@ -27,6 +27,7 @@ if TYPE_CHECKING:
 
     Place = tuple[float, float]
 
+_AT_A_TIME = 8  # spots tried together: most texts find room at one of their first
 _HALO = 0.3  # mm of bare paper around ink, so that a projection line never runs into a figure
 
 
@@ -114,10 +115,12 @@ class Sheet:
 
     def write(self, lettering: Lettering, spots: Sequence[Spot], colour: str = INK) -> bool:
         """Write a text at the first of its spots that is free; say whether there was one."""
-        free = self.board.free(lettering, spots)
-        if free:
-            self.write_at(lettering, free[0], colour)
-        return bool(free)
+        for first in range(0, len(spots), _AT_A_TIME):
+            free = self.board.free(lettering, spots[first : first + _AT_A_TIME])
+            if free:
+                self.write_at(lettering, free[0], colour)
+                return True
+        return False
 
     def write_at(self, lettering: Lettering, spot: Spot, colour: str = INK) -> None:
         """Write a text where it must stand; room around it (``pad``) gets a frame."""

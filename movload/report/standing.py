@@ -2,18 +2,16 @@
 
 from __future__ import annotations
 
-from itertools import pairwise
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
-from movload.report.deck_line import DeckLine, draw_abutments
 from movload.report.bearings import REACH, draw_bearings, name_beds, over
-from movload.report.dimensions import dimension_string, row_height, row_of_words, row_title, upright_dimension
+from movload.report.deck_line import DeckLine, draw_abutments
+from movload.report.dimensions import dimension_string, row_height, row_of_words, upright_dimension
 from movload.report.elevation import PLAIN_BAR, bar_spots, draw_bars, draw_joints, name_joints
 from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
 from movload.report.ink import FAINT, FIRM, HAIR
-from movload.report.labels import Spot
 from movload.report.sheet import Sheet, Window
 from movload.report.words import lengths, origin
 
@@ -23,14 +21,13 @@ if TYPE_CHECKING:
     from matplotlib.figure import Figure
 
     from movload.bridge.deck import PanelPoint
-    from movload.arrays import Floats
     from movload.bridge.truss import Truss
     from movload.report.sheet import Strip
     from movload.units import UnitSystem
 
 _TALLEST: Final = 130.0  # mm of paper for the truss's own height
 _ABOVE: Final = 9.0  # mm over the truss for names
-_BELOW: Final = REACH + 7.0  # mm under it for bearings and names
+_BELOW: Final = REACH + 5.0  # mm under it for bearings and names
 _SAME_X: Final = 1e-6  # m; joints closer in x stand over one another
 
 
@@ -70,7 +67,10 @@ def _drawn(
     row = row_height(size)
     first, last, low, high = deck.extent(truss)
     window = Window.fitting(first, last, width, steepest=_TALLEST / (high - low))
-    caption = f"To scale; lengths in {units.length}. {origin(truss, units)}. Filled joint: panel point, where the deck loads the truss."
+    caption = (
+        f"To scale; lengths in {units.length}. {origin(truss, units)}. "
+        "Filled joint: panel point, where the deck loads the truss."
+    )
     foot = caption_height(caption, width, size)
     strings = 2 * (row + 3.0) + 2 * row
     zero = foot + strings + _BELOW - low * window.scale
@@ -79,7 +79,7 @@ def _drawn(
     draw_caption(sheet, caption)
     strip = sheet.strip(window, zero, window.scale)
     left_out = _draw_truss(strip, truss, deck)
-    left_out += _draw_strings(strip, truss, deck, units, foot)
+    left_out += _draw_strings(strip, truss, deck, units, foot=foot)
     return sheet, left_out
 
 
@@ -99,11 +99,11 @@ def _name_bars(strip: Strip, truss: Truss) -> int:
     for row, member in enumerate(truss.members):
         if member.name not in {f"{member.start}-{member.end}", f"{member.end}-{member.start}"}:
             lettering = strip.sheet.lettering(member.name)
-            left_out += not strip.sheet.write(lettering, bar_spots(strip, truss, row, lettering, FIRM))
+            left_out += not strip.sheet.write(lettering, bar_spots(strip, truss, row, lettering, weight=FIRM))
     return left_out
 
 
-def _draw_strings(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem, foot: float) -> int:
+def _draw_strings(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem, *, foot: float) -> int:
     """Draw panel lengths, the overall length, the rows of x and depth and the greatest depth."""
     sheet, window, row = strip.sheet, strip.window, row_height(strip.sheet.size)
     upper = foot + 2 * row + 2.0 + row + 3.0
@@ -116,8 +116,18 @@ def _draw_strings(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem,
         sheet.stroke([(place, strip.mm(0, height)[1]), (place, foot + 2 * row + 1)], HAIR, FAINT, zorder=-5)
     sheet.write_from(sheet.lettering(f"x, {units.length}"), window.side, foot + 1.5 * row + 1)
     left_out += row_of_words(sheet, foot + 1.5 * row + 1, places, lengths(deck.stations, units))
-    columns = deck.depths(truss)
-    sheet.write_from(sheet.lettering(f"depth, {units.length}"), window.side, foot + 0.5 * row + 1)
-    texts = lengths([depth for _, depth in columns], units)
-    left_out += row_of_words(sheet, foot + 0.5 * row + 1, [window.mm(x) for x, _ in columns], texts)
-    return left_out
+    return left_out + _draw_depths(strip, truss, deck, units, level=foot + 0.5 * row + 1)
+
+
+def _draw_depths(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem, *, level: float) -> int:
+    """Draw the greatest depth as an upright dimension and every depth in a row; return how many found no room."""
+    sheet, window, columns = strip.sheet, strip.window, deck.depths(truss)
+    if not columns:
+        return 0
+    texts = lengths([depth for _, depth, _ in columns], units)
+    deepest = max(range(len(columns)), key=lambda number: columns[number][1])
+    x, _, top = columns[deepest]
+    chord = strip.mm(deck.stations[-1], deck.heights[-1])
+    left_out = int(not upright_dimension(sheet, window.right + 14.0, [strip.mm(x, top), chord], texts[deepest]))
+    sheet.write_from(sheet.lettering(f"depth, {units.length}"), window.side, level)
+    return left_out + row_of_words(sheet, level, [window.mm(x) for x, _, _ in columns], texts)

@@ -78,13 +78,13 @@ def sweep_tables(peaks: Sequence[Peaks], rows: Sequence[Swept], units: UnitSyste
         mine = [row for row in rows if row.vehicle == one.title]
         parts += [f"{one.title}: whole axles on one truss, no share, no impact", "", table_of(shown, mine, units), ""]
     force, deflection = units.symbol("force"), units.symbol("section")
-    parts.append(f"Forces and reactions in {force} (T tension, C compression), deflections (down) in {deflection}.")
+    parts.append(f"Forces and reactions [{force}], T tension, C compression; deflections [{deflection}], + down.")
     return parts
 
 
 def sweep_csv(rows: Sequence[Swept], units: UnitSystem) -> str:
     """Return the rows as CSV; a column ``unit`` says what highest and lowest are in."""
-    unit = Column[Swept]("unit", "unit", lambda row: units.symbol(quantity_of(row.peaks.effect)))
+    unit: Column[Swept] = Column("unit", "unit", lambda row: units.symbol(quantity_of(row.peaks.effect)))
     return csv_text([*COLUMNS[:4], unit, *COLUMNS[4:]], rows, units)
 
 

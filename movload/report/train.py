@@ -1,4 +1,4 @@
-"""The axle train at its place on the deck, to scale: wheels, loads, spacings, heading, name and weight."""
+"""An axle train as it will be drawn: which axles are near enough, how large its wheels, how high its loads stand."""
 
 from __future__ import annotations
 
@@ -6,26 +6,25 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
-from matplotlib.patches import Circle
 
 from movload.peaks.placement import edge
-from movload.report.dimensions import dimension_string, row_height
-from movload.report.ink import BOLD, EDGE, FIRM, GREY, HAIR, INK, PAPER, PASSIVE, POINT, THIN
-from movload.report.labels import Lettering, Spot
-from movload.report.words import figures, lengths, plain
+from movload.report.dimensions import row_height
+from movload.report.ink import BOLD
+from movload.report.labels import Lettering
+from movload.report.words import figures, plain
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
+    from numpy.typing import NDArray
+
     from movload.arrays import Floats
     from movload.peaks.peaks import Peak
-    from movload.report.sheet import Place, Strip, Window
+    from movload.report.sheet import Window
     from movload.units import UnitSystem
 
 _ROOM: Final = 0.25  # of the bridge's length: how far beyond its ends wheels are drawn
-_ARROW: Final = 4.5  # mm, least length of a load arrow
-_HEAD: Final = 1.7  # mm, length of an arrow head
-_NOSE: Final = 8.0  # mm, length of the arrow that shows the heading
+ARROW: Final = 4.5  # mm, least length of a load arrow
 _MOST_LEVELS: Final = 4  # rows in which axle loads may stand over one another
 _BETWEEN: Final = 0.8  # mm between axle loads
 
@@ -50,8 +49,8 @@ class Train:
 
     x: Floats
     loads: Floats
-    on: Floats
-    shown: Floats
+    on: NDArray[np.bool_]
+    shown: NDArray[np.bool_]
     heading: int
     title: str
     room: float
@@ -157,103 +156,14 @@ class TrainPlan:
 
     def level(self, number: int) -> float:
         """Return how far above the deck an axle's load is written [mm]."""
-        return 2 * self.radius + _ARROW + BOLD + (self.levels[number] + 0.5) * self.row * 0.8
+        return 2 * self.radius + ARROW + BOLD + (self.levels[number] + 0.5) * self.row * 0.8
 
     @property
     def above(self) -> float:
         """Room over the deck [mm]."""
-        return 2 * self.radius + _ARROW + BOLD + (max(self.levels, default=0) + 1) * self.row * 0.8 + 1.3 * self.row
+        return 2 * self.radius + ARROW + BOLD + (max(self.levels, default=0) + 1) * self.row * 0.8 + 1.3 * self.row
 
     @property
     def below(self) -> float:
         """Room under the deck, for the spacing string [mm]."""
         return 2 * self.row + 5.0
-
-
-def draw_train(strip: Strip, plan: TrainPlan, units: UnitSystem) -> int:
-    """Draw a train on its deck; return how many of its figures found no room."""
-    train, sheet = plan.train, strip.sheet
-    left_out = 0
-    for number in range(train.x.size):
-        if train.shown[number]:
-            left_out += not _draw_axle(strip, plan, number)
-    _draw_frame(strip, plan)
-    left_out += _draw_spacings(strip, plan, units)
-    _name_train(strip, plan, units)
-    sheet.board.keep_clear([strip.mm(train.x.min(), 0), strip.mm(train.x.max(), 0)], 0.0)
-    return left_out
-
-
-def _draw_axle(strip: Strip, plan: TrainPlan, number: int) -> bool:
-    """Draw a wheel and the arrow of its load, grey when off the bridge; say whether the load could be written."""
-    train, radius, sheet = plan.train, plan.radius, strip.sheet
-    x, on = float(train.x[number]), bool(train.on[number])
-    face, edge_colour, ink = (INK, INK, INK) if on else (PAPER, PASSIVE, GREY)
-    wheel = Circle((x, radius / strip.scale), radius / strip.scale, facecolor=face, edgecolor=edge_colour)
-    wheel.set(linewidth=FIRM / POINT, label=f"wheel {number}", clip_on=False, zorder=3)
-    strip.axes.add_patch(wheel)
-    place, deck = strip.mm(x, 0.0)
-    foot = deck + 2 * radius + BOLD
-    if plan.levels[number] < 0:
-        sheet.stroke([(place, foot + _HEAD), (place, foot + _ARROW)], THIN, edge_colour)
-    else:
-        level = deck + plan.level(number)
-        lettering = sheet.lettering(plan.texts[number])
-        sheet.stroke([(place, foot + _HEAD), (place, level - lettering.ink_height / 2 - 0.5)], THIN, edge_colour)
-        sheet.write_at(lettering, Spot(place, level), ink)
-    head = [(place, foot), (place - 0.6, foot + _HEAD), (place + 0.6, foot + _HEAD)]
-    sheet.shape(head, edge_colour, edge_colour, linewidth=HAIR / POINT)
-    return plan.levels[number] >= 0
-
-
-def _draw_frame(strip: Strip, plan: TrainPlan) -> None:
-    """Draw the frame that joins the wheels and the arrow that shows the heading; axles not drawn leave it cut."""
-    train, sheet, window = plan.train, strip.sheet, strip.window
-    level = strip.zero + 2 * plan.radius + BOLD / 2
-    drawn = train.x[train.shown]
-    left = window.left if train.is_cut(-1) else window.mm(float(drawn.min())) - plan.radius
-    right = window.right if train.is_cut(1) else window.mm(float(drawn.max())) + plan.radius
-    sheet.stroke([(left, level), (right, level)], BOLD, label="frame")
-    front = right if train.heading > 0 else left
-    for side, end in ((-1, left), (1, right)):
-        if train.is_cut(side):
-            _draw_cut(strip, plan, (end, level), side)
-    if not train.is_cut(train.heading):
-        tip, back = front + train.heading * _NOSE, front + train.heading * (_NOSE - 2.6)
-        sheet.stroke([(front, level), (back, level)], FIRM, label="heading")
-        sheet.shape([(tip, level), (back, level + 1.1), (back, level - 1.1)], INK, label="heading arrow")
-
-
-def _draw_cut(strip: Strip, plan: TrainPlan, end: Place, side: int) -> None:
-    """Show that a train goes on beyond what is drawn, and how many axles stand there."""
-    sheet, ahead = strip.sheet, side == plan.train.heading
-    for shift in (0.4, 1.3):
-        x = end[0] + side * shift
-        sheet.stroke([(x - 0.6, end[1] - 1.3), (x + 0.6, end[1] + 1.3)], THIN)
-    words = f"{plan.train.beyond(side)} more"
-    arrow = {1: f"{words} →", -1: f"← {words}"}[side] if ahead else words
-    lettering = sheet.lettering(arrow)
-    middle = end[0] + side * (2.8 + lettering.width / 2)
-    sheet.write(lettering, [Spot(middle, end[1]), Spot(middle, end[1] + 4.0), Spot(middle, end[1] + 8.0)], GREY)
-
-
-def _draw_spacings(strip: Strip, plan: TrainPlan, units: UnitSystem) -> int:
-    """Draw the spacing string under the deck; return how many spacings found no room."""
-    drawn = np.unique(plan.train.x[plan.train.shown])
-    if drawn.size < 2:
-        return 0
-    places = [strip.window.mm(float(x)) for x in drawn]
-    level = strip.zero - plan.row - 2.2
-    return dimension_string(strip.sheet, level, places, lengths(np.diff(drawn), units))
-
-
-def _name_train(strip: Strip, plan: TrainPlan, units: UnitSystem) -> None:
-    """Write what crosses and its whole weight over the train."""
-    train, sheet = plan.train, strip.sheet
-    lettering = sheet.lettering(f"{train.title}, {train.gross(units)}", bold=True)
-    drawn = train.x[train.shown]
-    middle = strip.window.mm(float(drawn.min() + drawn.max()) / 2)
-    half = lettering.width / 2 + EDGE
-    middle = min(max(middle, half), sheet.width - half)
-    sheet.write_at(lettering, Spot(middle, strip.zero + plan.above - plan.row * 0.6), INK)
-

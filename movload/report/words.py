@@ -8,6 +8,8 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING, Final
 
+from movload.report.phrases import quantity_of
+
 if TYPE_CHECKING:
     from collections.abc import Iterable
 
@@ -63,11 +65,8 @@ def bar_force(force: float, units: UnitSystem, decimals: int) -> str:
 
 def effect_value(effect: Effect, value: float, units: UnitSystem) -> str:
     """Return an effect's value with sign, unit and letter: −88.0 kN C, 12.4 mm."""
-    shown, unit = (
-        (units.shown(value, "section"), units.section)
-        if effect.unit == "m"
-        else (units.shown(value, "force"), units.force)
-    )
+    quantity = quantity_of(effect)
+    shown, unit = units.shown(value, quantity), units.symbol(quantity)
     text = plain(shown, min(figures(abs(shown), 4), 3))
     return f"{text} {unit} {letter(value) if effect.kind == 'axial' else ''}".rstrip()
 

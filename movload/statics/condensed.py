@@ -49,47 +49,40 @@ class Condensed:
         return bool(self.mirror.size)
 
 
-def distinct_rows(ordinates: Floats) -> tuple[Ints, Ints, Floats]:
+def distinct_rows(ordinates: Floats) -> tuple[Ints, Floats, Ints, Floats]:
     """Return the rows that differ by more than scale and sign.
 
     Returns
     -------
-    chosen
-        (C,) one row of each kind.
+    chosen, distinct
+        (C,) one row of each kind, and (C, B) its ordinates scaled to a first large one of 1.
     row, scale
-        (R,) so that ordinates[r] = scale[r] * ordinates[chosen[row[r]]].
+        (R,) so that ordinates[r] = scale[r] * distinct[row[r]].
     """
-    unit, size = _unit_rows(ordinates)
+    unit, scale = _unit_rows(ordinates)
     order = np.argsort(unit @ _weights(ordinates.shape[1]), kind="stable")
-    differs = np.abs(np.diff(unit[order], axis=0)).max(axis=1, initial=0.0) > _EQUAL
-    kind = np.concatenate(([0], np.cumsum(differs)))
+    in_order = unit[order]
+    differs = np.ones(order.size, dtype=bool)
+    differs[1:] = np.abs(in_order[1:] - in_order[:-1]).max(axis=1, initial=0.0) > _EQUAL
     row = np.empty_like(order)
-    row[order] = kind
-    chosen = order[np.concatenate(([True], differs))]
-    divisor = np.where(size[chosen] == 0.0, 1.0, size[chosen])
-    return chosen, row, size / divisor[row]
+    row[order] = np.cumsum(differs) - 1
+    return order[differs], in_order[differs], row, scale
 
 
-def mirrored_rows(stations: Floats, ordinates: Floats) -> tuple[Ints, Floats]:
+def mirrored_rows(stations: Floats, distinct: Floats) -> tuple[Ints, Floats]:
     """Return for each of C distinct rows its mirror image among them and the scale; both empty without symmetry."""
     nothing = np.zeros(0, dtype=np.intp), np.zeros(0)
     from_right = (stations[0] + stations[-1]) - stations[::-1]
     if np.abs(from_right - stations).max() > _EQUAL * np.abs(stations).max():
         return nothing
-    unit, size = _unit_rows(ordinates)
-    reversed_unit, reversed_size = _unit_rows(ordinates[:, ::-1])
-    weights = _weights(ordinates.shape[1])
-    key, reversed_key = unit @ weights, reversed_unit @ weights
-    order = np.argsort(key, kind="stable")
-    after = np.clip(np.searchsorted(key[order], reversed_key), 1, max(1, key.size - 1))
-    if key.size == 1:
-        after = np.zeros(1, dtype=np.intp)
-    either = np.stack((order[after - 1], order[after]))
-    nearer = np.abs(key[either[0]] - reversed_key) <= np.abs(key[either[1]] - reversed_key)
-    mirror: Ints = np.where(nearer, either[0], either[1])
-    if np.abs(reversed_unit - unit[mirror]).max() > _EQUAL:
+    weights = _weights(distinct.shape[1])
+    reversed_unit, scale = _unit_rows(distinct[:, ::-1])
+    key, reversed_key = distinct @ weights, reversed_unit @ weights
+    mirror = np.empty(key.size, dtype=np.intp)
+    mirror[np.argsort(reversed_key, kind="stable")] = np.argsort(key, kind="stable")  # a symmetric set sorts alike
+    if np.abs(reversed_unit - distinct[mirror]).max() > _EQUAL:
         return nothing
-    return mirror, reversed_size / np.where(size[mirror] == 0.0, 1.0, size[mirror])
+    return mirror, scale
 
 
 def _unit_rows(ordinates: Floats) -> tuple[Floats, Floats]:

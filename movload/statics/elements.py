@@ -194,7 +194,7 @@ def _member_coefficients(truss: Truss, axes: Floats) -> Floats:
     """
     toward = truss.spans / truss.lengths[:, None]
     rows = np.concatenate((-toward, toward), axis=1)
-    turned = axes[:, 1] != 0.0
+    turned = axes[:, 0] != 1.0
     for end in (0, 2):
         at = np.flatnonzero(turned[truss.ends[:, end // 2]]) if turned.any() else ()
         for row in at:

@@ -83,10 +83,9 @@ class InfluenceLines:
         if self.ordinates.size > _MOST_CONDENSED:
             rows, nothing = np.arange(len(self.effects)), np.zeros(0)
             return Condensed(self, rows, np.ones(rows.size), nothing.astype(np.intp), nothing)
-        chosen, row, scale = distinct_rows(self.ordinates)
-        ordinates = held(self.ordinates[chosen])
-        distinct = InfluenceLines(tuple(self.effects[one] for one in chosen), self.stations, ordinates)
-        return Condensed(distinct, row, scale, *mirrored_rows(self.stations, ordinates))
+        chosen, distinct, row, scale = distinct_rows(self.ordinates)
+        response = InfluenceLines(tuple(self.effects[one] for one in chosen), self.stations, held(distinct))
+        return Condensed(response, row, scale, *mirrored_rows(self.stations, distinct))
 
     def under(self, loads: Floats) -> Floats:
         """Return effects (R, K) under downward loads (B, K) [N] on the stations."""
@@ -143,7 +142,7 @@ def effects_of(truss: Truss, panel_points: Sequence[PanelPoint], part: str) -> t
     down = [f"{point} down" for point in panel_points if isinstance(point, str)]
     kinds = ["axial"] * len(members) + ["reaction"] * len(reactions) + ["down"] * len(down)
     units = ["N"] * (len(members) + len(reactions)) + ["m"] * len(down)
-    return tuple(map(Effect._make, zip(repeat(part), members + reactions + down, kinds, units, strict=False)))
+    return tuple(map(tuple.__new__, repeat(Effect), zip(repeat(part), members + reactions + down, kinds, units)))
 
 
 def effects_under(solver: FactoredTruss, joints: Ints, loads: Floats, misfit: Floats | None = None) -> Floats:

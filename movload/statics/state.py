@@ -37,6 +37,10 @@ class TrussState:
     reactions: Mapping[str, float]
     displacements: Mapping[str, tuple[float, float]]
 
+    def __reduce__(self) -> tuple[object, ...]:
+        """Pickle by parts (a read-only mapping cannot be pickled)."""
+        return (_frozen_state, (dict(self.forces), dict(self.reactions), dict(self.displacements)))
+
 
 def state_under(truss: Truss, joint_loads: Mapping[str, tuple[float, float]], *, settled: bool = True) -> TrussState:
     """Return the state of a truss under forces on its joints.
@@ -61,11 +65,18 @@ def state_under(truss: Truss, joint_loads: Mapping[str, tuple[float, float]], *,
     reactions = solver.rows.reactions(loads, forces)[:, 0]
     names = [name for support in truss.supports for name in support.reaction_names]
     moved = _in_bridge_axes(solver, displacements)
-    return TrussState(
-        MappingProxyType({m.name: float(f) for m, f in zip(truss.members, forces[:, 0], strict=False)}),
-        MappingProxyType(dict(zip(names, map(float, reactions), strict=True))),
-        MappingProxyType({joint: (float(x), float(y)) for joint, (x, y) in zip(truss.joints, moved, strict=True)}),
+    return _frozen_state(
+        {member.name: float(force) for member, force in zip(truss.members, forces[:, 0], strict=False)},
+        dict(zip(names, map(float, reactions), strict=True)),
+        {joint: (float(x), float(y)) for joint, (x, y) in zip(truss.joints, moved, strict=True)},
     )
+
+
+def _frozen_state(
+    forces: dict[str, float], reactions: dict[str, float], displacements: dict[str, tuple[float, float]]
+) -> TrussState:
+    """Return a state whose mappings cannot be changed."""
+    return TrussState(MappingProxyType(forces), MappingProxyType(reactions), MappingProxyType(displacements))
 
 
 def loads_in_joint_axes(solver: FactoredTruss, joint_loads: Mapping[str, tuple[float, float]]) -> Floats:

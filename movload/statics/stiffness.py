@@ -29,7 +29,8 @@ _MECHANISM: Final = 1e-9
 _FIRST, _SECOND = np.tril_indices(
     4
 )  # the ten products of an element's four entries that stand on or below the diagonal
-_SHIFT: Final = 1e-11  # of the diagonal: lets a singular matrix be factored to find what moves
+_UNMENDABLE: Final = 1e-3  # of the loads, unbalanced after the first solve: one refinement squares it to 1e-6
+_SHIFT: Final = 1e-11  # of the largest diagonal: lets a singular matrix be factored to find what moves
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -69,10 +70,19 @@ class FactoredTruss:
         correction[:free] = self.back_substituted(unbalanced)
         displacements += correction
         forces = forces + rows.stiffness[:, None] * rows.stretch(correction)
-        correction[:free] = self.back_substituted(loads[:free] - rows.joint_forces(forces)[:free])
+        rest = loads[:free] - rows.joint_forces(forces)[:free]
+        self._require_balance(unbalanced, rest, correction)
+        correction[:free] = self.back_substituted(rest)
         displacements += correction
         forces += rows.stiffness[:, None] * rows.stretch(correction)
         return displacements, forces
+
+    def _require_balance(self, asked: Floats, rest: Floats, displacements: Floats) -> None:
+        """Raise UnstableError when the first solve leaves so much unbalanced that refinement cannot mend it."""
+        if np.abs(rest).max(initial=0.0) > _UNMENDABLE * np.abs(asked).max(initial=0.0):
+            column = int(np.abs(displacements).max(axis=0).argmax())
+            moves = _what_moves(self.truss, self.rows, displacements[:, column])
+            raise UnstableError(f"is so nearly a mechanism that its forces would be wrong: {moves}", place="truss")
 
     def back_substituted(self, columns: Floats) -> Floats:
         """Return K⁻¹ columns."""
@@ -95,7 +105,7 @@ def factored(truss: Truss) -> FactoredTruss:
     factor, failed = dpbtrf(band, lower=1) if rows.free else (band, 0)
     if failed:
         shifted = band.copy(order="F")
-        shifted[0] += _SHIFT * band[0]
+        shifted[0] += _SHIFT * band[0].max()
         factor, _ = dpbtrf(shifted, lower=1)
     answer = FactoredTruss(truss, rows, np.asarray(factor))
     if rows.free:
@@ -132,7 +142,7 @@ def _require_stable(candidate: FactoredTruss, *, failed: bool) -> None:
         if softness > _SURELY_STIFF and not failed:
             return
     if failed or softness < _MECHANISM:
-        raise UnstableError(_what_moves(candidate.truss, rows, movement), place="truss")
+        raise UnstableError(f"is a mechanism: {_what_moves(candidate.truss, rows, movement)}", place="truss")
 
 
 def _what_moves(truss: Truss, rows: ElementRows, movement: Floats) -> str:
@@ -146,7 +156,7 @@ def _what_moves(truss: Truss, rows: ElementRows, movement: Floats) -> str:
     name = list(truss.joints)[joint]
     others = "no other joint moves" if count == 1 else f"{count - 1} other joint(s) move with it"
     return (
-        f'is a mechanism: joint "{name}" can move {_direction(*moves[joint])} without stretching any member ({others})'
+        f'joint "{name}" can move {_direction(*moves[joint])} without stretching any member ({others})'
         "; add a member or a support that resists it"
     )
 

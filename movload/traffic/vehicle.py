@@ -78,11 +78,14 @@ class Vehicle:
         _check_spacings(self.spacings, self.loads.size)
         fixed = [] if self.has_ranges else self.spacings
         object.__setattr__(self, "_distances", held(np.cumsum([0.0, *fixed])))
-        if not self.headings or not set(self.headings) <= {1, -1}:
+        if sorted(self.headings) not in ([-1], [1], [-1, 1]):
             raise InputError(f"headings are +1, -1 or both, got {self.headings}", place="headings")
         for word, values in (("gauges", self.gauges), ("left_shares", self.left_shares)):
             if values and len(values) != self.loads.size:
                 raise InputError(f"one for each of {self.loads.size} axles, got {len(values)}", place=word)
+        for number, gauge in enumerate(self.gauges):
+            if not (math.isfinite(gauge) and gauge > 0):
+                raise InputError(f"a gauge must be above 0, got {gauge} m", place=f"gauges[{number}]")
 
     @property
     def gross(self) -> float:

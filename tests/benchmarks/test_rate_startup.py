@@ -46,7 +46,7 @@ def test_rate_against_an_empty_command(benchmark: BenchmarkFixture) -> None:
     are whole processes, started by turns.
     """
     ours = partial(_output, "-m", "movload", "rate", "examples/kettle_ford.toml", "tractor_slurry_tanker")
-    course = Course(rounds=15, each=1, warmed=False)
+    course = Course(rounds=11, each=1, warmed=False)
     race = raced(benchmark, ours, {"empty command": partial(_output, "-c", EMPTY_COMMAND)}, course)
     assert "Kettle Ford farm bridge" in race.ours
     assert "2" in race.theirs["empty command"]

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 import pytest
 from benchmarks.plain_scripts import lil, member_lines
-from benchmarks.ratios import Course, raced
+from benchmarks.ratios import IN_PROCESS, Course, raced
 from benchmarks.spans import span_of
 from benchmarks.stepping_scripts import (
     Stepped,
@@ -17,7 +17,7 @@ from benchmarks.stepping_scripts import (
     by_one_product,
     by_product_a_passage,
 )
-from benchmarks.vectorised_script import all_lines
+from benchmarks.vectorised_script import all_lines, free_part
 
 from movload.files.library import read_vehicle, vehicle_names
 from movload.peaks.sweep import sweep
@@ -31,6 +31,8 @@ if TYPE_CHECKING:
     from movload.peaks.peaks import Peaks
     from movload.traffic.loading import Loading
     from movload.traffic.vehicle import Vehicle
+
+pytestmark = IN_PROCESS
 
 PANELS = 20
 ROUND_OFF = 1e-12  # of the largest peak: what an unrefined solve leaves in the steppers' lines, idle bars included
@@ -83,7 +85,7 @@ def test_whole_run_against_interpolation(
         return by_interpolation((x, member_lines(span.truss, span.panel_points, lil)), vehicles, axle_by_axle)
 
     def leanest() -> Stepped:
-        return by_interpolation((x, all_lines(span.truss, span.panel_points)), vehicles, all_axles_at_once)
+        return by_interpolation((x, all_lines(span.truss, span.panel_points, free_part)), vehicles, all_axles_at_once)
 
     race = raced(benchmark, whole_run(loadings, course), {"plain script": plain, "numpy script": leanest}, course)
     for stepped in race.theirs.values():
@@ -100,7 +102,7 @@ def test_whole_run_against_one_product(
     minima; all 101 rows. "a product a passage" is told and not asserted: the same in 40 products, each small enough
     for the cache. Ours: see ``whole_run``.
     """
-    course, span = Course(rounds=15), span_of(PANELS)
+    course, span = Course(rounds=21), span_of(PANELS)
     lines = influence_lines(span.truss, span.panel_points)
     given = lines.stations, lines.ordinates
     theirs: dict[str, Callable[[], Stepped]] = {

@@ -72,14 +72,16 @@ def extremes(lines: InfluenceLines, vehicle: Vehicle) -> tuple[Floats, Floats]:
 
 def scales(lines: InfluenceLines, vehicles: Sequence[Vehicle]) -> Floats:
     """Return (V, R) the most that any stand could give: all axles on each row's largest ordinate."""
-    return np.outer([vehicle.loads.sum() for vehicle in vehicles], np.abs(lines.ordinates).max(axis=1))
+    gross = np.array([[float(vehicle.loads.sum())] for vehicle in vehicles])
+    return np.asarray(gross * np.abs(lines.ordinates).max(axis=1))
 
 
 def sizes(lines: InfluenceLines) -> Floats:
     """Return (R,) the largest ordinate of each row's kind, force or deflection: what a row that is 0 is measured by."""
     down = np.array([effect.kind == "down" for effect in lines.effects])
     largest = np.abs(lines.ordinates).max(axis=1)
-    return np.where(down, largest[down].max(initial=0.0), largest[~down].max(initial=0.0))
+    each: Floats = np.where(down, largest[down].max(initial=0.0), largest[~down].max(initial=0.0))
+    return each
 
 
 def _effects(lines: InfluenceLines, vehicle: Vehicle, x: Floats) -> Floats:

@@ -14,7 +14,7 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
-from sympy.physics.continuum_mechanics.truss import Truss as SympyTruss
+from sympy.physics.continuum_mechanics.truss import Truss as SympyTruss  # type: ignore[import-untyped]  # no types
 
 if TYPE_CHECKING:
     from collections.abc import Mapping

@@ -20,7 +20,7 @@ def loaded(side: float, area: float) -> TrussState:
     """Return the source's truss under its load."""
     joints = {"A": (0.0, 0.0), "B": (0.0, side), "C": (side, side), "D": (side, 0.0)}
     bars = ("AB", "BC", "CD", "DA", "AC", "BD")
-    truss = Truss(joints, [Member(*bar, area, 2e11) for bar in bars], [Support("A"), Support("D", 0)])
+    truss = Truss(joints, [Member(bar[0], bar[1], area, 2e11) for bar in bars], [Support("A"), Support("D", 0)])
     assert truss.redundancy == 1
     return state_under(truss, {"C": (P, 0.0)})
 

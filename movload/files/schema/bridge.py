@@ -8,6 +8,7 @@ from pydantic import Field, model_validator
 
 from movload.errors import InputError
 from movload.files.schema.quantities import (
+    STILL_HELD,
     Area,
     Density,
     Force,
@@ -19,8 +20,9 @@ from movload.files.schema.quantities import (
     Table,
     Text,
     Units,
-    short,
+    shown,
 )
+from movload.files.toml import PLACEHOLDER, written_key
 
 
 class LayoutTable(Table):
@@ -37,7 +39,7 @@ class LayoutTable(Table):
 class SupportTable(Table):
     """A bearing: pinned, or sliding along a bed at an angle."""
 
-    pinned: bool = False
+    pinned: Annotated[bool, Field(strict=True)] = False
     slides: Annotated[float, Field(strict=True)] | None = Field(None, description="bed's angle from +x [degrees]")
     settlement: Length = 0.0
     movement: Length | None = None
@@ -96,9 +98,9 @@ class BridgeFile(Table):
     title: Text
     units: Units
     layout: LayoutTable | None = None
-    joints: dict[str, tuple[Length, Length]] = Field(default_factory=dict)
-    supports: dict[str, SupportTable | Literal["pinned"]]
-    members: dict[str, MemberGroup]
+    joints: dict[Text, tuple[Length, Length]] = Field(default_factory=dict)
+    supports: dict[Text, SupportTable | Literal["pinned"]]
+    members: dict[Text, MemberGroup]
     deck: DeckTable = Field(default_factory=lambda: DeckTable.model_validate({}))
     permanent: PermanentTable | None = None
     rating: RatingTable = Field(default_factory=lambda: RatingTable.model_validate({}))
@@ -110,7 +112,7 @@ class BridgeFile(Table):
         supports = data.get("supports") if isinstance(data, dict) else None
         for joint, support in supports.items() if isinstance(supports, dict) else ():
             if not isinstance(support, dict) and support != "pinned":
-                raise InputError(
-                    f'a support is "pinned" or {{ slides = degrees }}, got {short(support)}', place=f"supports.{joint}"
-                )
+                rule = f'a support is "pinned" or {{ slides = degrees }}, got {shown(support)}'
+                place = f"supports.{written_key(joint)}"
+                raise InputError(STILL_HELD if support == PLACEHOLDER else rule, place=place)
         return data

@@ -25,6 +25,8 @@ from movload.files.toml import PLACEHOLDER, short
 from movload.units import SI_UNITS, Quantity, UnitSystem, to_si
 
 LARGEST: Final = 1e18  # SI; beyond anything that stands, and a product of a few is still a number
+STILL_HELD: Final = 'still holds "?" and is needed here'
+_UNSEEN: Final = {"Cc", "Cs", "Zl", "Zp"}  # control characters, half characters, separators of lines and paragraphs
 
 
 def _reader(quantity: Quantity) -> BeforeValidator:
@@ -48,43 +50,49 @@ def number(value: object, quantity: Quantity, units: UnitSystem) -> float:
     Raises
     ------
     InputError
-        No number, not finite, or beyond LARGEST.
+        No number, nan, or beyond LARGEST.
     """
     if isinstance(value, str):
         said, si = f'"{short(value)}"', _with_unit(value, quantity)
     elif isinstance(value, bool) or not isinstance(value, (int, float)):
-        raise InputError(f"a number or a string with a unit is asked for, got {kind_of(value)} {short(value)}")
+        raise InputError(f"a number or a string with a unit is asked for, got {shown(value)}")
     else:
         said, si = f"{short(value)} {units.symbol(quantity)}".rstrip(), _as_float(value) * units.factor(quantity)
-    if not math.isfinite(si):
-        raise InputError(f"a finite number is asked for, got {said}")
-    if abs(si) > LARGEST:
-        raise InputError(f"the number is too large, got {said}")
+    if math.isnan(si) or abs(si) > LARGEST:
+        raise InputError(f"a finite number within {LARGEST:g} in SI is asked for, got {said}")
     return si
 
 
 def _with_unit(text: str, quantity: Quantity) -> float:
-    """Return a quantity written with its unit in SI; a fraction of endless digits is no quantity."""
+    """Return a quantity written with its unit in SI; infinite for a fraction of digits without end."""
     try:
         return to_si(text, quantity)
     except InputError:
         raise
     except (OverflowError, ValueError):
-        raise InputError(f'the number is too large, got "{short(text)}"') from None
+        return math.inf
 
 
 def _as_float(value: float) -> float:
-    """Return a whole number of any length as a float."""
+    """Return a number as a float; infinite for a whole number that no float can hold."""
     try:
         return float(value)
     except OverflowError:
-        raise InputError(f"the number is too large, got {value:.3g}" if isinstance(value, float) else _too_long(value)) from None
+        return math.inf
 
 
-def kind_of(value: object) -> str:
-    """Return what TOML calls a value's kind."""
-    kinds = {bool: "true or false", str: "text", int: "the number", float: "the number", list: "the list", dict: "the table"}
-    return kinds.get(type(value), f"the {type(value).__name__}")
+def shown(value: object) -> str:
+    """Return a value for an error as TOML would write its kind: text in quotes, true, a list in brackets."""
+    if isinstance(value, str):
+        return f'"{short(value)}"'
+    if isinstance(value, bool):
+        return str(value).lower()
+    return short(value) if isinstance(value, (int, float, list)) else f"the {_kind(value)} {short(value)}"
+
+
+def _kind(value: object) -> str:
+    """Return what TOML calls a value that is neither text nor number nor list."""
+    return "table" if isinstance(value, dict) else type(value).__name__
 
 
 def _typed(quantity: Quantity, words: str) -> Any:  # the second argument list of Annotated
@@ -102,7 +110,20 @@ Density = Annotated[
 ]
 Stiffness = Annotated[float, *_typed("stiffness", "a force per length; bare numbers in units.force per units.section")]
 Fraction = Annotated[float, *_typed("fraction", 'a fraction, 0.3 or "30 %"')]
-Text = Annotated[str, Field(strict=True, min_length=1)]
+
+
+def _one_line(text: str) -> str:
+    """Refuse text that still is to be filled in, shows nothing, or would break a line or a terminal."""
+    if text == PLACEHOLDER:
+        raise InputError(STILL_HELD)
+    if not text.strip():
+        raise InputError(f'may not be empty, got "{text}"')
+    if any(unicodedata.category(sign) in _UNSEEN for sign in text):
+        raise InputError(f'must be one line without control characters, got "{short(text)}"')
+    return text
+
+
+Text = Annotated[str, Field(strict=True, min_length=1), AfterValidator(_one_line)]
 
 
 class Table(BaseModel):
@@ -114,10 +135,11 @@ class Table(BaseModel):
     @classmethod
     def _only_known_keys(cls, data: object) -> object:
         if not isinstance(data, dict):
-            raise InputError(f"a table of keys is asked for, got {type(data).__name__} {short(data)}")
+            raise InputError(f"a table of keys is asked for, got {shown(data)}")
         for key in data:
             if key not in cls.model_fields:
-                raise UnknownNameError(f'key "{key}" is not known', nearest=nearest_name(str(key), cls.model_fields))
+                near = nearest_name(str(key), cls.model_fields)
+                raise UnknownNameError(f'key "{short(key)}" is not known', nearest=near)
         return data
 
 

@@ -2,18 +2,36 @@
 
 from __future__ import annotations
 
-from typing import Literal
+from typing import Annotated, Literal
 
-from pydantic import Field
+from pydantic import BeforeValidator, Field, ValidationInfo, WithJsonSchema
 
-from movload.files.schema.quantities import Force, Length, Table, Text, Units
+from movload.errors import InputError
+from movload.files.schema.quantities import Force, Length, Table, Text, Units, number, shown, units_in
+
+
+def _gap(value: object, info: ValidationInfo) -> float | tuple[float, float]:
+    """Return a distance, or the two of a range [m]."""
+    units = units_in(info)
+    if not isinstance(value, list):
+        return number(value, "length", units)
+    if len(value) != 2:
+        raise InputError(f"a distance is one length or a list of the least and the greatest, got {shown(value)}")
+    return number(value[0], "length", units), number(value[1], "length", units)
+
+
+Gap = Annotated[
+    float | tuple[float, float],
+    BeforeValidator(_gap),
+    WithJsonSchema({"type": ["number", "string", "array"], "description": "a length, or [least, greatest]"}),
+]
 
 
 class AxleTable(Table):
     """One axle, front to back."""
 
     load: Force
-    after: Length | tuple[Length, Length] | None = Field(None, description="distance behind the axle before")
+    after: Gap | None = Field(None, description="distance behind the axle before")
     gauge: Length | None = Field(None, description="distance between its wheels' centres")
 
 
