@@ -35,7 +35,7 @@ EVERY: Final = (*DETERMINATE, "two pins", "third bearing", "springs")
 panel_lengths = st.floats(1.7, 7.3)  # m
 heights = st.floats(1.9, 6.1)  # m
 areas = st.lists(st.floats(1e-3, 2e-2), min_size=1, max_size=4)  # m2, bar after bar, repeated
-bed_angles = st.floats(-65.0, 65.0)  # degrees
+bed_angles = st.floats(-65.0, 65.0) | st.sampled_from([180.0, -180.0, 205.0, 360.0])  # degrees; half turns are beds too
 axle_loads = st.floats(0.0, 160e3)  # N
 gaps = st.floats(0.3, 9.7) | st.just(0.0)  # m; 0: axles that coincide
 directions = st.sampled_from([(1, -1), (1, -1), (1,), (-1,)])

@@ -35,7 +35,7 @@ STEEL = {"area": 1e-3, "modulus": 2e11}
 
 @pytest.fixture
 def truss() -> Truss:
-    """A triangle on a span of 7 m whose right bearing slides on a bed at 30 degrees."""
+    """Return a triangle on a span of 7 m whose right bearing slides on a bed at 30 degrees."""
     joints = {"L0": (0.0, 0.0), "U1": (3.1, 2.3), "L1": (3.1, 0.0), "L2": (7.0, 0.0)}
     names = [("L0", "U1"), ("U1", "L2"), ("L0", "L1"), ("L1", "L2"), ("U1", "L1")]
     members = [Member(start, end, **STEEL) for start, end in names]

@@ -1,15 +1,18 @@
-"""README says what the program does: its worked rating, its picture, its tables of commands and vehicles, its Python."""
+"""README says what the program does: its worked rating, picture, tables of commands and vehicles, and Python."""
 
 from __future__ import annotations
 
 import re
 from pathlib import Path
+from typing import TYPE_CHECKING
 
-import pytest
 from typer.testing import CliRunner
 
 from movload.cli.main import app
 from movload.files.library import vehicle_names
+
+if TYPE_CHECKING:
+    import pytest
 
 ROOT = Path(__file__).resolve().parent.parent
 README = (ROOT / "README.md").read_text(encoding="utf-8")

@@ -119,11 +119,12 @@ def _drawing(stands: Bridge, ratings: Ratings, suffix: str) -> Callable[[], byte
     def make() -> bytes:
         from movload.report.figures import figure_bytes, peak_figure
         from movload.report.phrases import factor_text
+        from movload.statics.influence import influence_lines
 
         worst = ratings.worst
-        part, _ = worst.peaks.part_of(worst.row)
+        lines = influence_lines(stands.truss, stands.deck.panel_points)
         figure = peak_figure(
-            stands.truss, part.response, worst.peak, worst.effect.name, stands.units,
+            stands.truss, lines, worst.peak, worst.effect.name, stands.units,
             title=f"{stands.title}: {worst.crossing}, RF {factor_text(worst.factor)} ({worst.sense})",
             caption="Member forces: live load as it stands, the truss's share and impact included, no permanent load.",
         )  # fmt: skip

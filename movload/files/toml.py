@@ -76,7 +76,7 @@ def parsed(text: str) -> Data:
 
 def _with_line(complaint: str, text: str) -> str:
     """Return the parser's complaint with the line that it names, cut when long."""
-    lines = text.split("\n")
+    lines = text.rstrip().split("\n")
     complaint = complaint.replace("at end of document", f"at line {len(lines)}, the end of the file")
     named = re.search(r"at line (\d+)", complaint)
     number = int(named[1]) if named else 0

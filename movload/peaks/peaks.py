@@ -44,6 +44,8 @@ class Peak:
         The axle (0 = front) that stands on a station, and that station's number; -1 when off.
     case
         Title of the case that governs.
+    lost
+        Whether that axle stands just outside the station: it has just left, or not yet entered.
     placement
         The loads as they stand.
     """
@@ -56,6 +58,7 @@ class Peak:
     station: int
     case: str
     placement: Placement
+    lost: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -117,6 +120,7 @@ class PartPeaks:
             stop if stop < count else (0, count - 1)[stop - count],
             train.case,
             placement,
+            lost=stop >= count,
         )
 
 

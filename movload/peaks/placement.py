@@ -53,6 +53,8 @@ class Placement:
 
     def panel_loads(self, stations: Floats) -> Floats:
         """Return the downward loads (B,) [N] that reach the stations, impact included."""
+        if not self.x.size:
+            return np.zeros(stations.size)
         felt = self.load * self.share * (1.0 + self.impact)
         loads: Floats = panel_loads(stations, self.x[None, :], felt)[0]
         return loads

@@ -113,8 +113,9 @@ def place_text(peak: Peak, units: UnitSystem) -> str:
 
 
 def standing_text(peak: Peak, stations: tuple[str, ...]) -> str:
-    """Return which axle stands on which panel point; "" when the vehicle is off."""
-    return f"axle {peak.axle + 1} on {stations[peak.station]}" if peak.heading else ""
+    """Return which axle stands on which panel point, or has just left it; "" when the vehicle is off."""
+    where = "just off" if peak.lost else "on"
+    return f"axle {peak.axle + 1} {where} {stations[peak.station]}" if peak.heading else ""
 
 
 def coverage_text(coverage: Coverage) -> str:

@@ -29,6 +29,7 @@ _MECHANISM: Final = 1e-9
 _FIRST, _SECOND = np.tril_indices(
     4
 )  # the ten products of an element's four entries that stand on or below the diagonal
+_TINY: Final = 1e-290  # N; a smaller load is none, its products underflow
 _UNMENDABLE: Final = 1e-3  # of the loads, unbalanced after the first solve: one refinement squares it to 1e-6
 _SHIFT: Final = 1e-11  # of the largest diagonal: lets a singular matrix be factored to find what moves
 
@@ -71,15 +72,15 @@ class FactoredTruss:
         displacements += correction
         forces = forces + rows.stiffness[:, None] * rows.stretch(correction)
         rest = loads[:free] - rows.joint_forces(forces)[:free]
-        self._require_balance(unbalanced, rest, correction)
+        self._require_balance(rest, correction, max(np.abs(loads).max(), np.abs(unbalanced).max(initial=_TINY)))
         correction[:free] = self.back_substituted(rest)
         displacements += correction
         forces += rows.stiffness[:, None] * rows.stretch(correction)
         return displacements, forces
 
-    def _require_balance(self, asked: Floats, rest: Floats, displacements: Floats) -> None:
-        """Raise UnstableError when the first solve leaves so much unbalanced that refinement cannot mend it."""
-        if np.abs(rest).max(initial=0.0) > _UNMENDABLE * np.abs(asked).max(initial=0.0):
+    def _require_balance(self, rest: Floats, displacements: Floats, loads: float) -> None:
+        """Raise UnstableError when the first solve leaves more of the loads unbalanced than refinement can mend."""
+        if np.abs(rest).max(initial=0.0) > _UNMENDABLE * loads:
             column = int(np.abs(displacements).max(axis=0).argmax())
             moves = _what_moves(self.truss, self.rows, displacements[:, column])
             raise UnstableError(f"is so nearly a mechanism that its forces would be wrong: {moves}", place="truss")

@@ -8,11 +8,12 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from movload.arrays import Floats, held
+from movload.errors import InputError
 from movload.traffic.vehicle import Vehicle
 
 if TYPE_CHECKING:
     from movload.bridge.across import Across
-    from movload.traffic.loading import Fill, Loading
+    from movload.traffic.loading import Case, Fill, Loading
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -81,6 +82,9 @@ def trains_on(across: Across, crossing: Crossing) -> tuple[Train, ...]:
     across
         The part's share of a wheel by its place across.
     """
+    if crossing.lanes != 1 or crossing.speed is not None:
+        asked = f"{crossing.lanes} lanes" if crossing.lanes != 1 else f"a speed of {crossing.speed:g} m/s"
+        raise InputError(f"{asked} cannot be rated yet: one vehicle at a time, no speed", place=crossing.title)
     return _trains(crossing.loading, float(across.at(crossing.z)))
 
 
@@ -92,12 +96,21 @@ def whole_trains(subject: Vehicle | Loading) -> tuple[Train, ...]:
 
 
 def _trains(loading: Loading, share: float) -> tuple[Train, ...]:
-    """Return one train for each case that moves."""
-    return tuple(
-        _train(case.title, case.moving, share * case.factor) for case in loading.cases if case.moving is not None
-    )
+    """Return one train for each case."""
+    return tuple(_train(case.title, _axles_only(case), share * case.factor) for case in loading.cases)
+
+
+def _axles_only(case: Case) -> Vehicle:
+    """Return a case's vehicle, or refuse what would otherwise be left out in silence."""
+    if case.moving is None or case.fills:
+        raise InputError("loads that fill the bridge cannot be swept yet", place=f"case {case.title}")
+    if case.lanes > 1:
+        raise InputError(f"{case.lanes} lanes cannot be swept yet", place=f"case {case.title}")
+    return case.moving
 
 
 def _train(case: str, vehicle: Vehicle, share: float) -> Train:
     """Return a train whose axles all have one share."""
+    if vehicle.strips or vehicle.tail is not None:
+        raise InputError("uniform loads that move with a vehicle cannot be swept yet", place=vehicle.title)
     return Train(case, vehicle, held(np.full(vehicle.loads.size, share)), headings=vehicle.headings)

@@ -99,5 +99,5 @@ class Loading:
 
     @property
     def gross(self) -> float:
-        """Greatest weight that moves, over the cases [N]."""
-        return max((case.factor * case.moving.gross for case in self.cases if case.moving), default=0.0)
+        """Weight of the heaviest vehicle over the cases [N], their factors left out: what a weighbridge would say."""
+        return max((case.moving.gross for case in self.cases if case.moving), default=0.0)

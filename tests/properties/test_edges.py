@@ -73,6 +73,21 @@ def test_one_heading_never_gives_more_than_both(bridge: Laid, vehicle: Vehicle) 
     assert (np.abs(either.lowest - np.minimum(one.lowest, other.lowest)) <= 1e-12 * size).all()
 
 
+@pytest.mark.parametrize("headings", [(1, -1), (1,), (-1,)])
+@pytest.mark.parametrize("longer", [0.0, 1e-12, 1e-9, 1e-3])
+def test_a_bridge_alike_from_both_ends_keeps_headings_apart(headings: tuple[int, ...], longer: float) -> None:
+    """A symmetrical bridge invites a short cut over the headings, a nearly symmetrical one invites a wrong one."""
+    panels = [3.3, 2.7, 4.1, 4.1, 2.7, 3.3 + longer]
+    lines = influence_lines(truss_of(pratt(panels, [2.9, 3.4, 3.8, 3.4, 2.9]), simple_span(6)), bottom(6))
+    vehicle = Vehicle("heavy behind", [20e3, 35e3, 90e3], [3.1, 1.3], headings=headings)
+    peaks, (highest, lowest) = sweep(lines, vehicle), extremes(lines, vehicle)
+    size = scales(lines, [vehicle])[0]
+    assert (np.abs(peaks.highest - highest) <= 1e-12 * size).all()
+    assert (np.abs(peaks.lowest - lowest) <= 1e-12 * size).all()
+    mirror_images = peaks["U1-L2"].highest.value, peaks["L4-U5"].highest.value
+    assert (mirror_images[0] == pytest.approx(mirror_images[1], rel=1e-3)) == (len(headings) == 2)
+
+
 def test_one_heading_matters() -> None:
     vehicle = Vehicle("heavy behind", [20e3, 90e3], [3.0], headings=(1,))
     name = "U1-L2"

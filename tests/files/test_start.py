@@ -1,0 +1,133 @@
+"""The starter text: it reads back for every form, asks for what is missing by place, and rates once it is filled."""
+
+from __future__ import annotations
+
+import re
+from typing import Any
+
+import numpy as np
+import pytest
+from numpy.testing import assert_allclose
+
+import movload
+from movload.bridge.layout import DECKS, FORMS, Layout, lay_out
+from movload.errors import InputError, MissingDataError
+from movload.files.read import bridge_from
+from movload.files.start import lengths_from, starter_text
+from movload.units import UnitSystem
+
+METRIC, US = UnitSystem("m", "kN", "mm"), UnitSystem("ft", "kip", "in")
+COUNTS = {"pratt": 5, "howe": 4, "warren": 5, "warren with verticals": 4, "k": 6, "baltimore": 8}
+ANSWERS = {
+    "density": "7850 kg/m3", "tension": "400 kN", "compression": "300 kN", "truss_share": "60 %", "deck": "4 kN/m",
+    "impact": "30 %",
+}  # fmt: skip
+
+
+def layout(form: str, deck: str) -> Layout:
+    """Return a layout of a form with unequal panels, of lengths that no few decimals hold."""
+    count = COUNTS[form]
+    panels = 3.0 + np.sin(np.arange(count) * 1.9) / 3
+    size = {"warren": count, "baltimore": count // 2 + 1}.get(form, count + 1)
+    depths = 2.9 + np.sin(np.arange(size)) / 7
+    if form != "warren":
+        depths[[0, -1]] = 0.0
+    return Layout(form, panels, depths, deck=deck, middle="falling" if form == "pratt" else None)
+
+
+def filled(text: str) -> str:
+    """Return a starter with every "?" outside comments answered."""
+    for name, answer in ANSWERS.items():
+        text = re.sub(rf'(?m)^([^#\n]*\b{name} = )"\?"', rf'\g<1>"{answer}"', text)
+    return text
+
+
+@pytest.mark.parametrize("units", [METRIC, US], ids=["metric", "US"])
+@pytest.mark.parametrize("deck", DECKS)
+@pytest.mark.parametrize("form", FORMS)
+def test_every_form_reads_back(form: str, deck: str, units: UnitSystem) -> None:
+    begun = layout(form, deck)
+    bridge = bridge_from(starter_text("A bridge", begun, units), "begun.toml")
+    laid_out = lay_out(begun)
+    assert list(bridge.truss.joints) == list(laid_out.joints)
+    assert [member.name for member in bridge.truss.members] == [f"{bar.start}-{bar.end}" for bar in laid_out.bars]
+    assert [member.role for member in bridge.truss.members] == [bar.role for bar in laid_out.bars]
+    assert bridge.deck.panel_points == laid_out.panel_points
+    # atol: lengths are written with ten digits, and up to eight of them are added
+    assert_allclose(bridge.truss.coordinates, list(laid_out.joints.values()), rtol=0, atol=1e-8)
+    assert bridge.truss.redundancy == 0
+    assert bridge.units == units
+    movload.influence_lines(bridge.truss, bridge.deck.panel_points)
+
+
+@pytest.mark.parametrize("form", FORMS)
+def test_a_rating_names_every_open_place_until_it_is_filled(form: str) -> None:
+    begun = layout(form, "pony")
+    text = starter_text("A bridge", begun, METRIC)
+    bridge = bridge_from(text, "begun.toml")
+    roles = dict.fromkeys(bar.role for bar in lay_out(begun).bars)
+    named = [f'members."{role}"' if " " in role else f"members.{role}" for role in roles]
+    places = [f"{role}.{key}" for role in named for key in ("density", "permits.tension", "permits.compression")]
+    places += ["deck.truss_share", "permanent.deck", "permanent.truss_share", "rating.impact"]
+    assert bridge.missing == tuple(places)
+    with pytest.raises(MissingDataError, match="a rating needs data that is not there yet") as caught:
+        movload.solve(bridge)
+    for place in places:
+        assert f'{place} (still holds "?")' in str(caught.value)
+
+
+@pytest.mark.parametrize("form", FORMS)
+def test_filled_it_rates(form: str) -> None:
+    bridge = bridge_from(filled(starter_text("A bridge", layout(form, "through"), METRIC)), "filled.toml")
+    assert bridge.missing == ()
+    ratings = movload.rate(bridge, [movload.read_vehicle("h5")])
+    assert ratings.coverage.complete
+    assert ratings.worst.factor > 0
+
+
+@pytest.mark.parametrize("number", range(7))
+def test_one_open_place_is_enough_to_refuse(number: int) -> None:
+    text = filled(starter_text("A bridge", layout("howe", "through"), METRIC))
+    answers = [match.span() for match in re.finditer("|".join(f'"{answer}"' for answer in ANSWERS.values()), text)]
+    start, end = answers[number * len(answers) // 7]
+    bridge = bridge_from(f'{text[:start]}"?"{text[end:]}', "begun.toml")
+    assert len(bridge.missing) == 1
+    with pytest.raises(MissingDataError, match=re.escape(f'yet: {bridge.missing[0]} (still holds "?")')):
+        movload.solve(bridge)
+
+
+def test_comments_say_what_the_units_are_and_what_is_common() -> None:
+    text = starter_text("A bridge", layout("pratt", "pony"), METRIC)
+    assert text.startswith('# A bridge: begun with "movload start". Fill every "?"')
+    assert "areas in mm2, moduli in kN/mm2" in text
+    assert "7850 kg/m3 is common for steel" in text
+    assert "never assume them equal" in text
+
+
+@pytest.mark.parametrize("title", ['a "b" \\ c', "tab\tand\nline", "ünïcödé 😀", "# not a comment"])
+def test_a_title_cannot_break_the_file(title: str) -> None:
+    text = starter_text(title, layout("pratt", "pony"), METRIC)
+    if title.isprintable():
+        assert bridge_from(text, "begun.toml").title == title
+    else:
+        with pytest.raises(InputError, match=r"begun.toml: title: must be one line without control characters"):
+            bridge_from(text, "begun.toml")
+
+
+LENGTHS: dict[str, list[Any]] = {
+    "4.2 4.35": [4.2, 4.35],
+    "4.2,4.35": [4.2, 4.35],
+    "3x4.2": [4.2] * 3,
+    "2×4.2 4": [4.2, 4.2, 4],
+    "14 ft, 4.2 m": [14 * 0.3048, 4.2],
+    "12'-6 1/2\", 1": [150.5 * 0.0254, 1],
+}
+
+
+@pytest.mark.parametrize("text", LENGTHS)
+def test_lengths(text: str) -> None:
+    assert_allclose(lengths_from(text, METRIC, "--panels"), LENGTHS[text], rtol=1e-15)
+
+
+def test_bare_lengths_are_in_the_units_asked_for() -> None:
+    assert_allclose(lengths_from("10 2x5", US, "--panels"), [3.048, 1.524, 1.524], rtol=1e-15)
