@@ -199,6 +199,12 @@ class Truss:
         return rows | {member.name: row for row, member in enumerate(self.members)}
 
     @cached_property
+    def named_by_hand(self) -> tuple[str, ...]:
+        """The joints "U1-L2" of each member that has a name of its own, "" for the others (M)."""
+        joints = (f"{member.start}-{member.end}" for member in self.members)
+        return tuple("" if member.name == both else both for member, both in zip(self.members, joints, strict=True))
+
+    @cached_property
     def joint_index(self) -> Mapping[str, int]:
         """Number of each joint in the order given."""
         return {name: number for number, name in enumerate(self.joints)}

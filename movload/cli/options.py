@@ -41,16 +41,26 @@ def read_loadings(names: Sequence[str]) -> list[Loading]:
     Raises
     ------
     InputError
-        A vehicle is named twice.
+        A vehicle is named twice, or has a spacing that is a range.
     """
-    from movload.files.library import read_vehicle
-
-    loadings = [read_vehicle(name) for name in names]
+    loadings = [_with_one_distance(name) for name in names]
     titles = [loading.title for loading in loadings]
     for number, title in enumerate(titles):
         if title in titles[:number]:
             raise InputError(f'"{title}" is asked for twice', place=names[number])
     return loadings
+
+
+def _with_one_distance(name: str) -> Loading:
+    """Return a vehicle; one with a range of spacings cannot be placed yet, and its file is named here."""
+    from movload.files.library import read_vehicle
+
+    loading = read_vehicle(name)
+    for case in loading.cases:
+        if case.moving is not None and case.moving.has_ranges:
+            with naming(name):
+                _ = case.moving.distances
+    return loading
 
 
 def one_line(text: str) -> str:
@@ -59,12 +69,12 @@ def one_line(text: str) -> str:
 
 
 @contextmanager
-def naming(bridge: Path) -> Iterator[None]:
-    """Put the bridge file's name before what is wrong with the bridge in it."""
+def naming(file: Path | str) -> Iterator[None]:
+    """Put a file's name before what is wrong with the bridge or the vehicle in it."""
     try:
         yield
     except MovloadError as error:
-        raise error.at(str(bridge)) from None
+        raise error.at(str(file)) from None
 
 
 def check_outputs(csv: Path | None, plot: Path | None, *, force: bool, inputs: Sequence[Path | str] = ()) -> None:

@@ -9,7 +9,7 @@ import numpy as np
 from movload.arrays import keep_memory_warm
 from movload.peaks.candidates import Candidates, candidates_of
 from movload.peaks.placement import panel_loads
-from movload.statics.condensed import spread
+from movload.statics.condensed import Condensed, spread
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -33,17 +33,28 @@ def static_extremes(response: Response, trains: Sequence[Train]) -> tuple[Floats
         V trains, all swept in one batch.
     """
     keep_memory_warm()
-    condensed = response.condensed
-    one_heading = condensed.symmetric and all(len(train.headings) == 2 for train in trains)
-    highest, lowest = _batch(condensed.response, trains, (1,) if one_heading else None)
-    if one_heading:
-        other = spread(highest, lowest, condensed.mirror, condensed.mirror_scale)
-        highest, lowest = np.maximum(highest, other[0]), np.minimum(lowest, other[1])
-    highest, lowest = spread(highest, lowest, condensed.row, condensed.scale)
+    highest, lowest = np.empty((2, len(trains), len(response.effects)))
+    both_ways = [len(train.headings) == 2 for train in trains]
+    for two in (True, False):  # apart, so that what a vehicle gets does not depend on which others are asked about
+        group = [number for number, both in enumerate(both_ways) if both is two]
+        if group:
+            some = [trains[number] for number in group]
+            highest[group], lowest[group] = _of_all_rows(response.condensed, some, mirrored=two)
     noise = _NOISE * np.maximum(np.abs(highest), np.abs(lowest))
     highest[highest <= noise] = 0.0
     lowest[lowest >= -noise] = 0.0
     return highest, lowest
+
+
+def _of_all_rows(condensed: Condensed, trains: Sequence[Train], *, mirrored: bool) -> tuple[Floats, Floats]:
+    """Return every row's extremes (V, R) from the distinct rows; of a symmetric bridge from one heading only."""
+    one_heading = mirrored and condensed.symmetric
+    highest, lowest = _batch(condensed.response, trains, (1,) if one_heading else None)
+    if one_heading:
+        other = spread(highest, lowest, condensed.mirror, condensed.mirror_scale)
+        highest, lowest = np.maximum(highest, other[0]), np.minimum(lowest, other[1])
+    highest, lowest = np.maximum(highest, 0.0), np.minimum(lowest, 0.0)
+    return spread(highest, lowest, condensed.row, condensed.scale)
 
 
 def _batch(response: Response, trains: Sequence[Train], headings: tuple[int, ...] | None) -> tuple[Floats, Floats]:

@@ -21,17 +21,20 @@ _TIE: Final = 1e-12  # of the row's largest value: positions whose effects diffe
 _SAME_PLACE: Final = 9  # decimals of a metre to which positions count as equal when ties are broken
 
 
-def governing_candidates(response: Response, trains: Sequence[Train]) -> tuple[Ints, Ints]:
+def governing_candidates(response: Response, trains: Sequence[Train], impact: Floats) -> tuple[Ints, Ints]:
     """Return the train and its candidate that give every row's highest and lowest, (2, R) each.
 
     Of equally bad trains the first counts; of equally bad positions the smallest, heading +1 before -1, then the axle
-    nearest the front.
+    nearest the front. ``impact`` (R, 2) makes the trains that are dynamic worse; it does not move their positions.
     """
-    highest, lowest = static_extremes(response, trains)
-    adverse = np.stack((highest, -lowest))
-    worst = adverse.max(axis=1)
-    floor = worst - _TIE * worst.max(axis=0)
-    train = np.argmax(adverse >= floor[:, None], axis=1)
+    static = np.stack(static_extremes(response, trains))
+    adverse = np.stack((static[0], -static[1]))
+    dynamic = np.array([train.dynamic for train in trains])[:, None]
+    felt = adverse * (1.0 + dynamic * impact.T[:, None, :])
+    worst = felt.max(axis=1)
+    train = np.argmax(felt >= (worst - _TIE * worst.max(axis=0))[:, None], axis=1)
+    reached = np.take_along_axis(adverse, train[:, None], axis=1)[:, 0]
+    floor = reached - _TIE * adverse.max(axis=(0, 1))
     where = np.zeros_like(train)
     for number in np.unique(train):
         candidates = candidates_of(response.stations, [trains[number]])

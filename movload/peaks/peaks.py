@@ -8,15 +8,15 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import cached_property
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
 from movload.arrays import held
 from movload.errors import InputError, UnknownNameError
-from movload.peaks.candidates import LOST, Candidates, candidates_of
+from movload.peaks.candidates import LOST, candidates_of
 from movload.peaks.governing import governing_candidates
-from movload.peaks.placement import Placement, edge, panel_loads
+from movload.peaks.placement import Placement, edge, on_the_ends, panel_loads
 from movload.statics.part import Effect, Response, row_of
 
 if TYPE_CHECKING:
@@ -24,6 +24,9 @@ if TYPE_CHECKING:
 
     from movload.arrays import Floats, Ints
     from movload.traffic.crossing import Train
+
+
+_ROUNDINGS: Final = 16  # last places by which summed spacings may be off
 
 
 @dataclass(frozen=True, slots=True)
@@ -95,7 +98,7 @@ class PartPeaks:
     @cached_property
     def _governing(self) -> tuple[Ints, Ints]:
         """Train and candidate of every row's highest and lowest (2, R) each."""
-        return governing_candidates(self.response, self.trains)
+        return governing_candidates(self.response, self.trains, self.impact)
 
     def peak(self, row: int, side: int) -> Peak:
         """Return one row's highest (side 0) or lowest (side 1) peak."""
@@ -109,11 +112,12 @@ class PartPeaks:
         x, _ = candidates.standing(run, run + 1)
         heading, axle = int(candidates.heading[run]), int(candidates.axle[run])
         impact = np.full(train.shares.shape, self.impact[row, side] if train.dynamic else 0.0)
-        placement = Placement(x[0, stop], train.vehicle.loads, train.shares, impact)
-        count = self.response.stations.size
+        stations = self.response.stations
+        placement = Placement(on_the_ends(stations, x[0, stop]), train.vehicle.loads, train.shares, impact)
+        count = stations.size
         return Peak(
             value,
-            _front(self.response.stations, candidates, placement.x, (heading, axle, stop)),
+            _front(stations, placement.x, heading * train.vehicle.distances, lost=stop - stations.size),
             heading,
             tuple(map(float, np.diff(train.vehicle.distances))),
             axle,
@@ -124,22 +128,28 @@ class PartPeaks:
         )
 
 
-def _front(stations: Floats, candidates: Candidates, x: Floats, standing: tuple[int, int, int]) -> float:
-    """Return the front axle's x, so that the standing axle's, found from it again, is on the same side of an end.
+def _front(stations: Floats, x: Floats, behind: Floats, *, lost: int) -> float:
+    """Return the front axle's x, so that every axle found from it again is on the same side of an end station.
 
     Subtracting a distance again may round an axle that stands on an end station to just outside it.
+
+    Parameters
+    ----------
+    x, behind
+        Where the axles stand and heading times their distances (A,) [m].
+    lost
+        0 when an axle is just outside the first station, 1 the last, negative when none is.
     """
-    heading, axle, stop = standing
     front = float(x[0])
-    behind = heading * float(candidates.distances[0, axle])
-    if stop >= stations.size:
-        outward = -1.0 if stop == stations.size else 1.0
-        return front + outward * LOST * edge(stations)
-    if stop not in {0, stations.size - 1}:
-        return front
-    inward = np.inf if stop == 0 else -np.inf
-    while not stations[0] <= front - behind <= stations[-1]:
-        front = float(np.nextafter(front, inward))
+    if lost >= 0:
+        return front + (1.0 if lost else -1.0) * LOST * edge(stations)
+    on_first, on_last = x == stations[0], x == stations[-1]
+    for _ in range(_ROUNDINGS):
+        again = front - behind
+        short, beyond = (again[on_first] < stations[0]).any(), (again[on_last] > stations[-1]).any()
+        if short == beyond:  # neither; or both, when a vehicle is exactly as long as the deck but for round-off
+            break
+        front = float(np.nextafter(front, np.inf if short else -np.inf))
     return front
 
 

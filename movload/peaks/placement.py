@@ -65,6 +65,13 @@ def edge(stations: Floats) -> float:
     return SNAP * float(np.abs(stations).max())
 
 
+def on_the_ends(stations: Floats, x: Floats) -> Floats:
+    """Return the places x with those that stand on an end station but for round-off put exactly there."""
+    margin = edge(stations)
+    placed = np.where(np.abs(x - stations[0]) <= margin, stations[0], x)
+    return np.where(np.abs(x - stations[-1]) <= margin, stations[-1], placed)
+
+
 def panel_loads(stations: Floats, x: Floats, felt: Floats) -> Floats:
     """Return panel-point loads (K, B) [N] of axles standing at x (..., A) [m], K positions in all.
 

@@ -88,8 +88,13 @@ def _factors(solved: SolvedBridge, live: Floats) -> Floats:
 def _notes(loadings: Iterable[Loading]) -> list[Note]:
     """Return where each vehicle's numbers come from when that is less than a page read, once for each."""
     notes = (
-        Note("vehicle-source", loading.title, f"axles and spacings: {loading.source}", loading.source)
+        Note(
+            "vehicle-source",
+            loading.title,
+            f"axles and spacings: {loading.source or 'source not said'}",
+            loading.source,
+        )
         for loading in loadings
-        if "memory" in loading.source or "invented" in loading.source
+        if not loading.source or "memory" in loading.source or "invented" in loading.source
     )
     return list(dict.fromkeys(notes))

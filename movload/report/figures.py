@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
-from movload.report.frame import SUFFIXES, figure_bytes
-from movload.report.influence_sheet import influence_figure
-from movload.report.peak_sheet import peak_figure
-from movload.report.standing import elevation_figure
+from movload.report.drawing.frame import SUFFIXES, figure_bytes
+from movload.report.drawing.influence_sheet import influence_figure
+from movload.report.drawing.peak_sheet import peak_figure
+from movload.report.drawing.standing import elevation_figure
 
 __all__ = ["SUFFIXES", "elevation_figure", "figure_bytes", "influence_figure", "peak_figure"]

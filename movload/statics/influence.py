@@ -64,13 +64,19 @@ class InfluenceLines:
     ordinates: Floats
 
     def __post_init__(self) -> None:
-        """Check that rows and stations fit the ordinates."""
+        """Check that rows and stations fit the ordinates, and let nobody write into them."""
+        for array in (self.stations, self.ordinates):
+            held(array)
         if self.ordinates.shape != (len(self.effects), self.stations.size):
             raise InputError(
                 f"{len(self.effects)} effects and {self.stations.size} stations do not fit ordinates of shape "
                 f"{self.ordinates.shape}",
                 place="influence lines",
             )
+
+    def __reduce__(self) -> tuple[object, ...]:
+        """Pickle by parts, so that arrays come back read-only."""
+        return (InfluenceLines, (self.effects, self.stations, self.ordinates))
 
     def __getitem__(self, key: str | tuple[str, str]) -> InfluenceLine:
         """Return one row by its name (a member's joints in either order) or by (part, name)."""
@@ -142,7 +148,9 @@ def effects_of(truss: Truss, panel_points: Sequence[PanelPoint], part: str) -> t
     down = [f"{point} down" for point in panel_points if isinstance(point, str)]
     kinds = ["axial"] * len(members) + ["reaction"] * len(reactions) + ["down"] * len(down)
     units = ["N"] * (len(members) + len(reactions)) + ["m"] * len(down)
-    return tuple(map(tuple.__new__, repeat(Effect), zip(repeat(part), members + reactions + down, kinds, units)))
+    joints = [*truss.named_by_hand, *([""] * (len(reactions) + len(down)))]
+    rows = zip(repeat(part), members + reactions + down, kinds, units, joints, strict=False)
+    return tuple(map(tuple.__new__, repeat(Effect), rows))
 
 
 def effects_under(solver: FactoredTruss, joints: Ints, loads: Floats, misfit: Floats | None = None) -> Floats:

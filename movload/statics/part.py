@@ -30,6 +30,7 @@ class Effect(NamedTuple):
     name: str
     kind: Kind
     unit: str
+    joints: str = ""  # the joints of a member that has a name of its own, by which it may be asked for too
 
     @property
     def key(self) -> tuple[str, str]:
@@ -84,6 +85,6 @@ def row_of(effects: Sequence[Effect], key: str | tuple[str, str]) -> int:
     start, dash, end = name.partition("-")
     for wanted in (name, f"{end}-{start}") if dash else (name,):
         for row, effect in enumerate(effects):
-            if effect.name == wanted and part in {"", effect.part}:
+            if wanted in {effect.name, effect.joints} and part in {"", effect.part}:
                 return row
     raise UnknownNameError(f'row "{name}" is not known', nearest=nearest_name(name, (e.name for e in effects)))

@@ -98,6 +98,16 @@ def test_a_bearing_names_its_reactions(support: Support, names: tuple[str, ...])
     assert support.bed_angle == pytest.approx(math.radians(support.slides or 0.0), rel=1e-15)
 
 
+def test_an_error_keeps_its_parts_through_pickle() -> None:
+    """Work is spread over processes: an error comes back with its place, its rule and the nearest name."""
+    with pytest.raises(UnknownNameError, match="M2") as caught:
+        truss(supports=[Support("L0"), Support("M2", 0)])
+    again = pickle.loads(pickle.dumps(caught.value))  # noqa: S301 - our own bytes
+    assert type(again) is UnknownNameError
+    assert (again.place, again.rule, again.nearest) == ("support M2", 'joint "M2" is not defined', "L2")
+    assert str(again.at("pony.toml")) == 'pony.toml: support M2: joint "M2" is not defined (nearest: "L2")'
+
+
 NOT_ABOVE_ZERO = [0.0, -1.0, math.nan, math.inf]
 
 

@@ -98,3 +98,13 @@ def test_a_vehicle_that_is_not_there(tmp_path: Path, name: str) -> None:
 def test_a_vehicle_named_twice(tmp_path: Path, second: object) -> None:
     bridge = written(tmp_path, BY_JOINTS)
     assert_refused(movload("rate", bridge, "h5", second), '"H5 maintenance vehicle" is asked for twice', place=second)
+
+
+def test_a_range_of_spacings_is_shown_but_not_swept_yet(tmp_path: Path) -> None:
+    bridge = written(tmp_path, BY_JOINTS)
+    path = written(tmp_path, changed(CART, (REAR, "after = [3, 5]")), "cart.toml")
+    assert movload("vehicles", path, "--json").json()["rows"][0]["cases"][0]["spacings"] == [2.7, [3.0, 5.0]]
+    for words in (["rate", bridge, path], ["sweep", bridge, "h5", path]):
+        assert_refused(
+            movload(*words), "Alder hay cart: spacings[1]: a spacing between 3 and 5 m is a range", place=path
+        )

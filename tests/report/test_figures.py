@@ -25,12 +25,12 @@ from movload.bridge.layout import Layout, lay_out
 from movload.bridge.truss import Member, Support, Truss
 from movload.errors import InputError, UnknownNameError
 from movload.peaks.sweep import sweep
+from movload.report.drawing.ink import ACCENT, INK, LEAST_SIZE, PAPER
+from movload.report.drawing.labels import Board, Lettering, Spot, squeezed, wrapped
+from movload.report.drawing.line_strip import kinks, with_zeros
+from movload.report.drawing.train import load_levels
+from movload.report.drawing.words import figures, lengths
 from movload.report.figures import SUFFIXES, elevation_figure, figure_bytes, influence_figure, peak_figure
-from movload.report.ink import ACCENT, INK, LEAST_SIZE, PAPER
-from movload.report.labels import Board, Lettering, Spot, squeezed, wrapped
-from movload.report.line_strip import kinks, with_zeros
-from movload.report.train import load_levels
-from movload.report.words import figures, lengths
 from movload.statics.influence import InfluenceLines, influence_lines
 from movload.traffic.vehicle import Vehicle
 from movload.units import UnitSystem

@@ -330,4 +330,4 @@ def test_every_crossing_is_in_the_document() -> None:
         "title": "lorry", "kind": "farm", "weight": 90e3, "place": "centre line", "source": "invented",
     }  # fmt: skip
     assert np.unique([one["crossing"] for one in read["rows"]]).tolist() == ["cart", "lorry"]
-    assert [note["code"] for note in read["notes"]] == ["shares-typed", "vehicle-source"]
+    assert [note["code"] for note in read["notes"]] == ["shares-typed", "vehicle-source", "vehicle-source"]

@@ -57,7 +57,6 @@ def test_a_row_is_found_by_its_name_from_either_end_and_by_its_part(truss: Truss
         lines["right truss", "U1-L2"]
 
 
-@pytest.mark.xfail(strict=True, reason="truss.member finds it by its joints, a row with a name of its own is not found")
 def test_a_named_member_is_found_by_its_joints_too() -> None:
     members = [Member("A", "B", 1e-3, 2e11, name="tie"), Member("B", "C", 1e-3, 2e11), Member("A", "C", 1e-3, 2e11)]
     truss = Truss({"A": (0.0, 0.0), "B": (4.0, 0.0), "C": (2.0, 1.0)}, members, [Support("A"), Support("B", 0)])
@@ -119,7 +118,6 @@ def test_lines_come_back_from_pickle(lines: InfluenceLines) -> None:
     assert (row.ordinates == lines["U1-L2"].ordinates).all()
 
 
-@pytest.mark.xfail(strict=True, reason="numpy does not keep an array's read-only flag through pickle")
 def test_lines_stay_read_only_through_pickle(lines: InfluenceLines) -> None:
     again = pickle.loads(pickle.dumps(lines))  # noqa: S301 - our own bytes
     assert not again.ordinates.flags.writeable

@@ -36,8 +36,6 @@ def test_a_triangle_by_hand() -> None:
     assert_allclose(state.displacements["B"], [40e3 * 8.0 / (STEEL * AREA), 0.0], rtol=EXACT)
 
 
-
-
 @pytest.mark.parametrize("bed", [30.0, -30.0, 150.0, 210.0, 0.0, 180.0])
 def test_a_reaction_pushes_along_its_beds_normal(bed: float) -> None:
     """N = (-sin a, cos a): R cos a = 30 kN whichever way the bed is written, and the pin takes R sin a along x."""

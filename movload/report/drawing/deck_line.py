@@ -11,8 +11,8 @@ import numpy as np
 
 from movload.arrays import held
 from movload.bridge.deck import stations_of
-from movload.report.ink import HAIR, INK, PAPER, POINT, THIN
-from movload.report.labels import Spot
+from movload.report.drawing.ink import HAIR, INK, PAPER, POINT, THIN
+from movload.report.drawing.labels import Spot
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -20,7 +20,7 @@ if TYPE_CHECKING:
     from movload.arrays import Floats
     from movload.bridge.deck import PanelPoint
     from movload.bridge.truss import Truss
-    from movload.report.sheet import Place, Strip
+    from movload.report.drawing.sheet import Place, Strip
     from movload.statics.part import Response
 
 _SAME_PLACE: Final = 1e-6  # m

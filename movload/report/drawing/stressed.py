@@ -6,10 +6,10 @@ from typing import TYPE_CHECKING, Any, Final
 
 import numpy as np
 
-from movload.report.bearings import draw_bearings, name_beds
-from movload.report.deck_line import draw_abutments
-from movload.report.dimensions import row_height
-from movload.report.elevation import (
+from movload.report.drawing.bearings import draw_bearings, name_beds
+from movload.report.drawing.deck_line import draw_abutments
+from movload.report.drawing.dimensions import row_height
+from movload.report.drawing.elevation import (
     DOTS,
     PLAIN_BAR,
     Look,
@@ -21,12 +21,12 @@ from movload.report.elevation import (
     mark_joint,
     name_joints,
 )
-from movload.report.ink import ACCENT, BOLD, FRAME, GREY, MARGIN, PAPER, THIN
-from movload.report.words import bar_force
+from movload.report.drawing.ink import ACCENT, BOLD, FRAME, GREY, MARGIN, PAPER, THIN
+from movload.report.drawing.words import bar_force
 
 if TYPE_CHECKING:
-    from movload.report.peak_subject import Subject
-    from movload.report.sheet import Sheet, Strip
+    from movload.report.drawing.peak_subject import Subject
+    from movload.report.drawing.sheet import Sheet, Strip
 
 _KEY: Final = (("open", "T tension"), ("solid", "C compression"), ("dotted", "under 0.5 % of the largest"))
 

@@ -8,10 +8,10 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 
 from movload.errors import InputError
-from movload.report.bearings import REACH, draw_bearings, name_beds, over
-from movload.report.deck_line import DeckLine, draw_abutments
-from movload.report.dimensions import row_height, row_of_words
-from movload.report.elevation import (
+from movload.report.drawing.bearings import REACH, draw_bearings, name_beds, over
+from movload.report.drawing.deck_line import DeckLine, draw_abutments
+from movload.report.drawing.dimensions import row_height, row_of_words
+from movload.report.drawing.elevation import (
     PLAIN_BAR,
     Look,
     bar_spots,
@@ -20,11 +20,11 @@ from movload.report.elevation import (
     mark_joint,
     name_joints,
 )
-from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
-from movload.report.ink import ACCENT, BOLD, FAINT, FRAME, HAIR
-from movload.report.line_strip import Band, draw_line, name_line, write_kinks, write_zeros
-from movload.report.sheet import Sheet, Window
-from movload.report.words import lengths, origin
+from movload.report.drawing.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
+from movload.report.drawing.ink import ACCENT, BOLD, FAINT, FRAME, HAIR
+from movload.report.drawing.line_strip import Band, draw_line, name_line, write_kinks, write_zeros
+from movload.report.drawing.sheet import Sheet, Window
+from movload.report.drawing.words import lengths, origin
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -32,7 +32,7 @@ if TYPE_CHECKING:
     from matplotlib.figure import Figure
 
     from movload.bridge.truss import Truss
-    from movload.report.sheet import Strip
+    from movload.report.drawing.sheet import Strip
     from movload.statics.influence import InfluenceLine, InfluenceLines
     from movload.units import UnitSystem
 

@@ -8,10 +8,10 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 
 from movload.peaks.placement import edge
-from movload.report.dimensions import row_height
-from movload.report.ink import BOLD
-from movload.report.labels import Lettering
-from movload.report.words import figures, plain
+from movload.report.drawing.dimensions import row_height
+from movload.report.drawing.ink import BOLD
+from movload.report.drawing.labels import Lettering
+from movload.report.drawing.words import figures, plain
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -20,7 +20,7 @@ if TYPE_CHECKING:
 
     from movload.arrays import Floats
     from movload.peaks.peaks import Peak
-    from movload.report.sheet import Window
+    from movload.report.drawing.sheet import Window
     from movload.units import UnitSystem
 
 _ROOM: Final = 0.25  # of the bridge's length: how far beyond its ends wheels are drawn

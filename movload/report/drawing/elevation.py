@@ -8,15 +8,15 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
-from movload.report.ink import ACCENT, FIRM, FRAME, INK, PAPER, POINT, THIN
-from movload.report.labels import Lettering, Spot
+from movload.report.drawing.ink import ACCENT, FIRM, FRAME, INK, PAPER, POINT, THIN
+from movload.report.drawing.labels import Lettering, Spot
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from movload.arrays import Floats
     from movload.bridge.truss import Truss
-    from movload.report.sheet import Place, Strip
+    from movload.report.drawing.sheet import Place, Strip
 
 PIN: Final = 0.9  # mm, radius of a joint
 _TRIM: Final = 1.15  # mm, how far a bar stops short of its joint

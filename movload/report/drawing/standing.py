@@ -6,14 +6,14 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
-from movload.report.bearings import REACH, draw_bearings, name_beds, over
-from movload.report.deck_line import DeckLine, draw_abutments
-from movload.report.dimensions import dimension_string, row_height, row_of_words, upright_dimension
-from movload.report.elevation import PLAIN_BAR, bar_spots, draw_bars, draw_joints, name_joints
-from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
-from movload.report.ink import FAINT, FIRM, HAIR
-from movload.report.sheet import Sheet, Window
-from movload.report.words import lengths, origin
+from movload.report.drawing.bearings import REACH, draw_bearings, name_beds, over
+from movload.report.drawing.deck_line import DeckLine, draw_abutments
+from movload.report.drawing.dimensions import dimension_string, row_height, row_of_words, upright_dimension
+from movload.report.drawing.elevation import PLAIN_BAR, bar_spots, draw_bars, draw_joints, name_joints
+from movload.report.drawing.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
+from movload.report.drawing.ink import FAINT, FIRM, HAIR
+from movload.report.drawing.sheet import Sheet, Window
+from movload.report.drawing.words import lengths, origin
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -22,7 +22,7 @@ if TYPE_CHECKING:
 
     from movload.bridge.deck import PanelPoint
     from movload.bridge.truss import Truss
-    from movload.report.sheet import Strip
+    from movload.report.drawing.sheet import Strip
     from movload.units import UnitSystem
 
 _TALLEST: Final = 130.0  # mm of paper for the truss's own height

@@ -8,19 +8,19 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 
 from movload.errors import InputError
-from movload.report.bearings import REACH, over
-from movload.report.deck_line import DeckLine
-from movload.report.dimensions import row_height
-from movload.report.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
-from movload.report.influence_sheet import draw_stations
-from movload.report.ink import ACCENT, BOLD, FINE, FIRM, GREY, HAIR, INK, MARGIN
-from movload.report.labels import Lettering
-from movload.report.line_strip import Band, draw_line, name_line, write_kinks, write_ordinate, write_zeros
-from movload.report.peak_subject import Subject
-from movload.report.sheet import Sheet, Window
-from movload.report.stressed import draw_key, draw_stressed
-from movload.report.train import Train, TrainPlan
-from movload.report.train_strip import draw_train
+from movload.report.drawing.bearings import REACH, over
+from movload.report.drawing.deck_line import DeckLine
+from movload.report.drawing.dimensions import row_height
+from movload.report.drawing.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
+from movload.report.drawing.influence_sheet import draw_stations
+from movload.report.drawing.ink import ACCENT, BOLD, FINE, FIRM, GREY, HAIR, INK, MARGIN
+from movload.report.drawing.labels import Lettering
+from movload.report.drawing.line_strip import Band, draw_line, name_line, write_kinks, write_ordinate, write_zeros
+from movload.report.drawing.peak_subject import Subject
+from movload.report.drawing.sheet import Sheet, Window
+from movload.report.drawing.stressed import draw_key, draw_stressed
+from movload.report.drawing.train import Train, TrainPlan
+from movload.report.drawing.train_strip import draw_train
 
 if TYPE_CHECKING:
     from matplotlib.figure import Figure
@@ -28,7 +28,7 @@ if TYPE_CHECKING:
     from movload.arrays import Floats
     from movload.bridge.truss import Truss
     from movload.peaks.peaks import Peak
-    from movload.report.sheet import Strip
+    from movload.report.drawing.sheet import Strip
     from movload.statics.influence import InfluenceLines
     from movload.units import UnitSystem
 

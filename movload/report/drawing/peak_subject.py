@@ -7,14 +7,14 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from movload.report.drawing.words import effect_value, figures, lengths, origin
 from movload.report.phrases import ARROWS, standing_text
-from movload.report.words import effect_value, figures, lengths, origin
 
 if TYPE_CHECKING:
     from movload.arrays import Floats
     from movload.bridge.truss import Truss
     from movload.peaks.peaks import Peak
-    from movload.report.deck_line import DeckLine
+    from movload.report.drawing.deck_line import DeckLine
     from movload.statics.influence import InfluenceLine
     from movload.units import UnitSystem
 

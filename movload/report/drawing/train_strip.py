@@ -7,16 +7,16 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 from matplotlib.patches import Circle
 
-from movload.report.dimensions import dimension_string
-from movload.report.ink import BOLD, EDGE, FIRM, GREY, HAIR, INK, PAPER, PASSIVE, POINT, THIN
-from movload.report.labels import Spot, squeezed
+from movload.report.drawing.dimensions import dimension_string
+from movload.report.drawing.ink import BOLD, EDGE, FIRM, GREY, HAIR, INK, PAPER, PASSIVE, POINT, THIN
+from movload.report.drawing.labels import Spot, squeezed
+from movload.report.drawing.train import ARROW
+from movload.report.drawing.words import lengths
 from movload.report.phrases import ARROWS
-from movload.report.train import ARROW
-from movload.report.words import lengths
 
 if TYPE_CHECKING:
-    from movload.report.sheet import Place, Strip
-    from movload.report.train import TrainPlan
+    from movload.report.drawing.sheet import Place, Strip
+    from movload.report.drawing.train import TrainPlan
     from movload.units import UnitSystem
 
 _HEAD: Final = 1.7  # mm, length of an arrow head

@@ -19,7 +19,7 @@ from matplotlib.figure import Figure
 from matplotlib.font_manager import FontProperties
 from matplotlib.text import Text
 
-from movload.report.ink import DPI, EDGE, FONT, LEAST_SIZE, POINT
+from movload.report.drawing.ink import DPI, EDGE, FONT, LEAST_SIZE, POINT
 
 if TYPE_CHECKING:
     from collections.abc import Sequence

@@ -5,13 +5,13 @@ from __future__ import annotations
 from itertools import pairwise
 from typing import TYPE_CHECKING, Final
 
-from movload.report.ink import FAINT, FINE, HAIR, INK, THIN
-from movload.report.labels import Spot
+from movload.report.drawing.ink import FAINT, FINE, HAIR, INK, THIN
+from movload.report.drawing.labels import Spot
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
-    from movload.report.sheet import Place, Sheet
+    from movload.report.drawing.sheet import Place, Sheet
 
 _TICK: Final = 1.0  # mm, half the width of a tick
 _ABOVE: Final = 0.75  # mm between a dimension line and the figures on it

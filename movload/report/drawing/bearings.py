@@ -6,14 +6,14 @@ import math
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Any, Final
 
-from movload.report.elevation import PIN, bar_directions
-from movload.report.ink import HAIR, PAPER, POINT, THIN
-from movload.report.labels import Spot
-from movload.report.words import plain
+from movload.report.drawing.elevation import PIN, bar_directions
+from movload.report.drawing.ink import HAIR, PAPER, POINT, THIN
+from movload.report.drawing.labels import Spot
+from movload.report.drawing.words import plain
 
 if TYPE_CHECKING:
     from movload.bridge.truss import Support, Truss
-    from movload.report.sheet import Place, Sheet, Strip
+    from movload.report.drawing.sheet import Place, Sheet, Strip
 
 _TALL: Final = 4.2  # mm from the pin's middle to the bed
 _HALF: Final = 2.5  # mm, half the foot of a triangle

@@ -8,16 +8,16 @@ from typing import TYPE_CHECKING, Final
 import matplotlib as mpl
 
 from movload.errors import InputError
-from movload.report.dimensions import row_height
-from movload.report.ink import ATTEMPTS, BOLD, EDGE, FINE, GREY, INK, MARGIN, STYLE
-from movload.report.labels import Lettering, Spot, squeezed, wrapped
+from movload.report.drawing.dimensions import row_height
+from movload.report.drawing.ink import ATTEMPTS, BOLD, EDGE, FINE, GREY, INK, MARGIN, STYLE
+from movload.report.drawing.labels import Lettering, Spot, squeezed, wrapped
 
 if TYPE_CHECKING:
     from collections.abc import Callable
 
     from matplotlib.figure import Figure
 
-    from movload.report.sheet import Sheet
+    from movload.report.drawing.sheet import Sheet
 
 SUFFIXES: Final = (".png", ".svg", ".pdf")
 TITLE: Final = 13.0  # pt

@@ -16,8 +16,8 @@ from matplotlib.lines import Line2D
 from matplotlib.patches import Circle, Polygon
 from matplotlib.transforms import Affine2D
 
-from movload.report.ink import DPI, FINE, HAIR, INK, LEFT, MARGIN, PAPER, POINT, RIGHT, THIN
-from movload.report.labels import Board, Lettering, Spot, font
+from movload.report.drawing.ink import DPI, FINE, HAIR, INK, LEFT, MARGIN, PAPER, POINT, RIGHT, THIN
+from movload.report.drawing.labels import Board, Lettering, Spot, font
 
 if TYPE_CHECKING:
     from collections.abc import Sequence

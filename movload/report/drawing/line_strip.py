@@ -9,15 +9,15 @@ import numpy as np
 from matplotlib.collections import LineCollection
 from matplotlib.patches import Polygon
 
-from movload.report.dimensions import row_height
-from movload.report.ink import FINE, FIRM, GREY, HAIR, PALE, PAPER, POINT
-from movload.report.labels import Lettering, Spot, squeezed
-from movload.report.words import lengths, ordinate_decimals, ordinate_factor, ordinate_unit, sides, signed
+from movload.report.drawing.dimensions import row_height
+from movload.report.drawing.ink import FINE, FIRM, GREY, HAIR, PALE, PAPER, POINT
+from movload.report.drawing.labels import Lettering, Spot, squeezed
+from movload.report.drawing.words import lengths, ordinate_decimals, ordinate_factor, ordinate_unit, sides, signed
 
 if TYPE_CHECKING:
     from movload.arrays import Floats, Ints
     from movload.bridge.truss import Truss
-    from movload.report.sheet import Place, Sheet, Strip, Window
+    from movload.report.drawing.sheet import Place, Sheet, Strip, Window
     from movload.statics.influence import InfluenceLine
     from movload.units import UnitSystem
 

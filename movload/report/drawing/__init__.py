@@ -1,0 +1,1 @@
+"""How does a truss and what crosses it look in ink? The parts of the drawings that ``report.figures`` puts together."""
