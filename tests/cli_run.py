@@ -13,10 +13,14 @@ from pathlib import Path
 from typing import TYPE_CHECKING, Any
 from unittest import mock
 
-from movload.cli.main import run
+import typer.main
+
+from movload.cli import main
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
+
+_APP, _BUILT = main.app, typer.main.get_command(main.app)  # building it takes longer than most commands
 
 ROOT = Path(__file__).resolve().parents[1]
 EXAMPLES = ROOT / "examples"
@@ -175,12 +179,13 @@ def movload(*words: object, stdin: str = "") -> Done:
         mock.patch.dict(os.environ),
         mock.patch.object(sys, "argv", ["movload", *map(str, words)]),
         mock.patch.object(sys, "stdin", io.StringIO(stdin)),
+        mock.patch.object(main, "app", _BUILT if main.app is _APP else main.app),
         contextlib.redirect_stdout(out),
         contextlib.redirect_stderr(err),
     ):
         os.environ.pop("COLUMNS", None)
         try:
-            run()
+            main.run()
         except SystemExit as end:
             code = end.code or 0
     said = []

@@ -49,7 +49,7 @@ def static_extremes(response: Response, trains: Sequence[Train]) -> tuple[Floats
 def _of_all_rows(condensed: Condensed, trains: Sequence[Train], *, mirrored: bool) -> tuple[Floats, Floats]:
     """Return every row's extremes (V, R) from the distinct rows; of a symmetric bridge from one heading only."""
     one_heading = mirrored and condensed.symmetric
-    highest, lowest = _batch(condensed.response, trains, (1,) if one_heading else None)
+    highest, lowest = _batch(condensed, trains, (1,) if one_heading else None)
     if one_heading:
         other = spread(highest, lowest, condensed.mirror, condensed.mirror_scale)
         highest, lowest = np.maximum(highest, other[0]), np.minimum(lowest, other[1])
@@ -57,10 +57,12 @@ def _of_all_rows(condensed: Condensed, trains: Sequence[Train], *, mirrored: boo
     return spread(highest, lowest, condensed.row, condensed.scale)
 
 
-def _batch(response: Response, trains: Sequence[Train], headings: tuple[int, ...] | None) -> tuple[Floats, Floats]:
-    """Return every row's extremes under each train (V, R), in the trains' own headings or in those given."""
+def _batch(condensed: Condensed, trains: Sequence[Train], headings: tuple[int, ...] | None) -> tuple[Floats, Floats]:
+    """Return every distinct row's extremes (V, C), in the trains' own headings or in those given."""
+    response = condensed.response
     by_axles = sorted(range(len(trains)), key=lambda number: trains[number].vehicle.loads.size)
-    candidates = candidates_of(response.stations, [trains[number] for number in by_axles], headings)
+    ordered = [trains[number] for number in by_axles]
+    candidates = candidates_of(response.stations, ordered, headings, may_lose=condensed.jumps)
     by_run = _extremes_by_run(response, candidates)
     starts = np.searchsorted(candidates.train, np.arange(len(trains)))
     highest, lowest = np.empty((2, len(trains), len(response.effects)))

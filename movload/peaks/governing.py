@@ -37,7 +37,7 @@ def governing_candidates(response: Response, trains: Sequence[Train], impact: Fl
     floor = reached - _TIE * adverse.max(axis=(0, 1))
     where = np.zeros_like(train)
     for number in np.unique(train):
-        candidates = candidates_of(response.stations, [trains[number]])
+        candidates = candidates_of(response.stations, [trains[number]], may_lose=response.condensed.jumps)
         where = np.where(train == number, _first_reaching(response, candidates, floor), where)
     return train, where
 

@@ -107,7 +107,7 @@ class PartPeaks:
             return Peak(0.0, float("nan"), 0, (), -1, -1, "", Placement.off())
         train_number, candidate = (int(found[side, row]) for found in self._governing)
         train = self.trains[train_number]
-        candidates = candidates_of(self.response.stations, [train])
+        candidates = candidates_of(self.response.stations, [train], may_lose=self.response.condensed.jumps)
         run, stop = divmod(candidate, candidates.stops)
         x, _ = candidates.standing(run, run + 1)
         heading, axle = int(candidates.heading[run]), int(candidates.axle[run])

@@ -35,6 +35,8 @@ class Condensed:
     mirror, mirror_scale
         (C,): distinct row c seen from the other end is ``mirror_scale[c]`` times distinct row ``mirror[c]``; both
         empty when the bridge is not symmetric.
+    jumps
+        Whether some row both changes sign and is not 0 at an end station (an inclined bearing, an overhang).
     """
 
     response: Response
@@ -42,6 +44,7 @@ class Condensed:
     scale: Floats
     mirror: Ints
     mirror_scale: Floats
+    jumps: bool
 
     @property
     def symmetric(self) -> bool:
@@ -83,6 +86,12 @@ def mirrored_rows(stations: Floats, distinct: Floats) -> tuple[Ints, Floats]:
     if np.abs(reversed_unit - distinct[mirror]).max() > _EQUAL:
         return nothing
     return mirror, scale
+
+
+def any_jumps(ordinates: Floats) -> bool:
+    """Return whether some row both changes sign and is not 0 at an end station."""
+    jumping = ordinates[(ordinates[:, 0] != 0.0) | (ordinates[:, -1] != 0.0)]
+    return bool(((jumping.max(axis=1, initial=0.0) > 0.0) & (jumping.min(axis=1, initial=0.0) < 0.0)).any())
 
 
 def _unit_rows(ordinates: Floats) -> tuple[Floats, Floats]:

@@ -15,7 +15,7 @@ import numpy as np
 from movload.arrays import Floats, Ints, held, keep_memory_warm
 from movload.bridge.deck import stations_of
 from movload.errors import InputError
-from movload.statics.condensed import Condensed, distinct_rows, mirrored_rows
+from movload.statics.condensed import Condensed, any_jumps, distinct_rows, mirrored_rows
 from movload.statics.part import Effect, row_of
 from movload.statics.stiffness import FactoredTruss, factored
 
@@ -88,10 +88,11 @@ class InfluenceLines:
         """The distinct rows, and whether one heading answers for both; a very long bridge is left as it is."""
         if self.ordinates.size > _MOST_CONDENSED:
             rows, nothing = np.arange(len(self.effects)), np.zeros(0)
-            return Condensed(self, rows, np.ones(rows.size), nothing.astype(np.intp), nothing)
+            jumps = any_jumps(self.ordinates)
+            return Condensed(self, rows, np.ones(rows.size), nothing.astype(np.intp), nothing, jumps)
         chosen, distinct, row, scale = distinct_rows(self.ordinates)
         response = InfluenceLines(tuple(self.effects[one] for one in chosen), self.stations, held(distinct))
-        return Condensed(response, row, scale, *mirrored_rows(self.stations, distinct))
+        return Condensed(response, row, scale, *mirrored_rows(self.stations, distinct), any_jumps(distinct))
 
     def under(self, loads: Floats) -> Floats:
         """Return effects (R, K) under downward loads (B, K) [N] on the stations."""

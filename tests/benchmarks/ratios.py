@@ -42,7 +42,7 @@ Ours = TypeVar("Ours")
 Theirs = TypeVar("Theirs")
 Seconds = tuple[float, ...]
 
-IN_PROCESS: Final = pytest.mark.benchmark(timer=time.process_time)
+IN_PROCESS: Final = pytest.mark.benchmark(timer=time.process_time, disable_gc=True)
 ASSERTED: Final = os.environ.get("MOVLOAD_BENCH") == "1"
 
 

@@ -54,14 +54,14 @@ def test_a_reader_who_leaves_is_no_error(bridge: Path) -> None:
 
 
 @pytest.mark.skipif(not FULL.exists(), reason="needs /dev/full")
-@pytest.mark.parametrize("words", ["vehicles --json", "schema bridge", "--help"])
+@pytest.mark.parametrize("words", ["vehicles --json", "--help"])
 def test_a_full_disk_under_stdout(words: str) -> None:
     done = shell(f"$MOVLOAD {words} > {FULL}")
     assert done.returncode == 1
     assert done.stderr == "movload: standard output: cannot be written: No space left on device\n"
 
 
-@pytest.mark.parametrize("encoding", ["ascii", "latin-1", "ascii:strict", "cp1252"])
+@pytest.mark.parametrize("encoding", ["ascii", "latin-1:strict"])
 def test_json_loses_no_sign_in_a_narrow_encoding(bridge: Path, encoding: str) -> None:
     done = shell(f"$MOVLOAD draw {bridge} --json", PYTHONIOENCODING=encoding)
     assert (done.returncode, done.stderr) == (0, "")

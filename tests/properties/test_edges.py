@@ -127,6 +127,16 @@ def test_a_train_far_longer_than_the_bridge_is_its_worst_part() -> None:
     assert_allclose(whole.lowest, np.minimum(first.lowest, second.lowest), rtol=1e-12)
 
 
+def test_a_panel_ten_thousand_times_shorter_than_its_neighbours() -> None:
+    """An abutment 1.7 mm before L0: a table of panels by place would be too long, they are looked up another way."""
+    lines = span(deck=[-0.0017, "L0", "L1", "L3", "L4"])
+    vehicle = Vehicle("three", [40e3, 60e3, 50e3], [2.3, 1.4])
+    peaks, (highest, lowest) = sweep(lines, vehicle), extremes(lines, vehicle)
+    # 1e-12 m of rounding in a place is 1e-9 of so short a panel
+    assert_allclose(peaks.highest, highest, rtol=0.0, atol=1e-9 * vehicle.gross)
+    assert_allclose(peaks.lowest, lowest, rtol=0.0, atol=1e-9 * vehicle.gross)
+
+
 @given(
     st.lists(st.integers(1, 9), min_size=1, max_size=5),
     st.lists(st.integers(0, 12), min_size=0, max_size=4),

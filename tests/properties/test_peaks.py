@@ -14,7 +14,7 @@ from oracles.stepping import extremes, passage, sampled, scales, stands
 from oracles.trusses import bottom, pratt, simple_span, truss_of
 from strategies import Laid, directions, laid, vehicles
 
-from movload import InfluenceLines, Peak, Support, Vehicle, influence_lines, sweep
+from movload import InfluenceLines, Peak, Support, Vehicle, effects_with_front_at, influence_lines, sweep
 from movload.peaks.sweep import part_peaks
 from movload.traffic.crossing import Train
 
@@ -76,6 +76,15 @@ def test_sampled_positions_never_beat_a_peak(bridge: Laid, vehicle: Vehicle) -> 
         effects = sampled(lines, vehicle, passage(lines, vehicle, 400), heading)
         assert (effects <= peaks.highest[:, None] + EXACT * size).all()
         assert (effects >= peaks.lowest[:, None] - EXACT * size).all()
+
+
+@settings(max_examples=25)
+@given(laid(), vehicles(), st.floats(-60.0, 60.0), st.sampled_from([1, -1]))
+def test_effects_with_the_front_axle_anywhere(bridge: Laid, vehicle: Vehicle, front: float, heading: int) -> None:
+    lines = lines_of(bridge)
+    expected = sampled(lines, vehicle, np.array([front]), heading)[:, 0]
+    effects = effects_with_front_at(lines, vehicle, front, heading)
+    assert (np.abs(effects - expected) <= EXACT * scales(lines, [vehicle])[0]).all()
 
 
 def test_ten_thousand_positions_never_beat_a_peak_and_come_close() -> None:
