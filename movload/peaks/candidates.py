@@ -90,7 +90,9 @@ class Candidates:
         return x, self.felt[train, None, :width]
 
 
-def candidates_of(response: Response, trains: Sequence[Train], headings: tuple[int, ...] | None = None) -> Candidates:
+def candidates_of(
+    stations: Floats, trains: Sequence[Train], headings: tuple[int, ...] | None = None, *, may_lose: bool
+) -> Candidates:
     """Return the candidates of trains; those with as many axles should stand together (padding costs).
 
     Parameters

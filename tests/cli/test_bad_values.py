@@ -81,13 +81,11 @@ def test_a_quantity_is_taken_where_it_stands(tmp_path: Path, place: str) -> None
     assert movload("draw", written(tmp_path, put(place, good))).code == 0
 
 
-@pytest.mark.parametrize("value", WRONG, ids=lambda value: value[:24])
 @pytest.mark.parametrize("place", QUANTITIES)
-def test_no_quantity_of_the_wrong_kind(tmp_path: Path, place: str, value: str) -> None:
-    if value == '"5"' and (place.endswith("share") or place == "rating.impact"):
-        pytest.skip("a fraction needs no unit")
-    path = written(tmp_path, put(place, value))
-    assert_refused(movload("draw", path), f"{place}: ", WRONG[value], place=path)
+def test_no_quantity_of_the_wrong_kind(tmp_path: Path, place: str) -> None:
+    for value, message in WRONG.items():
+        path = written(tmp_path, put(place, value))
+        assert_refused(movload("draw", path), f"{place}: ", message, place=path)
 
 
 @pytest.mark.parametrize("place", QUANTITIES)
