@@ -265,12 +265,23 @@ class Truss:
                 if key in seen:
                     raise InputError(f'is given twice (the other is "{seen[key]}")', place=f"member {member.name}")
                 seen[key] = member.name
+        self._check_names_of_their_own()
         self._check_lengths()
         reached = {joint for member in self.members for joint in (member.start, member.end)}
         for name in self.joints:
             if name not in reached:
                 near = nearest_name(name, reached)
                 raise InputError("no member reaches it", place=f"joint {name}", nearest=near)
+
+    def _check_names_of_their_own(self) -> None:
+        """Refuse a member's name that another row of the results is called by."""
+        taken = {f"{joint} {word}" for joint in self.joints for word in ("x", "y", "normal", "along", "down")}
+        for member, joints in zip(self.members, self.named_by_hand, strict=True):
+            if joints:
+                both_ways = {f"{one.start}-{one.end}" for one in self.members if one is not member}
+                both_ways |= {f"{one.end}-{one.start}" for one in self.members if one is not member}
+                if member.name in taken | both_ways:
+                    raise InputError("is also what another row is called by", place=f"member {member.name}")
 
     def _check_lengths(self) -> None:
         extent = float(np.ptp(self.coordinates, axis=0).max())

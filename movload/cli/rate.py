@@ -83,7 +83,8 @@ def _with_impact(stands: Bridge, impact: str) -> Bridge:
     from movload.units import to_si
 
     try:
-        return replace(stands, impact=to_si(impact, "fraction"))
+        missing = tuple(place for place in stands.missing if place != "rating.impact")
+        return replace(stands, impact=to_si(impact, "fraction"), missing=missing)
     except InputError as error:
         raise InputError(error.rule, place="--impact", nearest=error.nearest) from None
 

@@ -169,7 +169,7 @@ def _loading(table: VehicleFile) -> Loading:
             gauges=gauges,
             headings=tuple({"+x": 1, "-x": -1}[heading] for heading in table.headings),
         )
-    return Loading.of(vehicle, table.kind, source=table.source or "")
+    return Loading.of(vehicle, table.kind, source=table.source or "", notes=table.notes)
 
 
 def _axle_place(place: str) -> str:

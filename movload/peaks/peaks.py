@@ -100,6 +100,10 @@ class PartPeaks:
         """Train and candidate of every row's highest and lowest (2, R) each."""
         return governing_candidates(self.response, self.trains, self.impact)
 
+    def train(self, row: int, side: int) -> Train:
+        """Return the train that gives one row's highest (side 0) or lowest (side 1) peak."""
+        return self.trains[int(self._governing[0][side, row]) if len(self.trains) > 1 else 0]
+
     def peak(self, row: int, side: int) -> Peak:
         """Return one row's highest (side 0) or lowest (side 1) peak."""
         value = float((self.highest, self.lowest)[side][row])
@@ -187,6 +191,11 @@ class Peaks:
         """Return the highest (side 0) or lowest (side 1) peak of row ``number``."""
         part, inside = self.part_of(number)
         return part.peak(inside, side)
+
+    def train(self, number: int, side: int) -> Train:
+        """Return the train that gives the highest (side 0) or lowest (side 1) of row ``number``."""
+        part, inside = self.part_of(number)
+        return part.train(inside, side)
 
     def part_of(self, number: int) -> tuple[PartPeaks, int]:
         """Return the part that row ``number`` belongs to, and its row there."""

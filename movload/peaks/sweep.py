@@ -42,7 +42,7 @@ def sweep(lines: Response, vehicle: Vehicle | Loading | Sequence[Vehicle | Loadi
     if isinstance(vehicle, (Vehicle, Loading)):
         return sweep(lines, [vehicle])[0]
     trains = [whole_trains(one) for one in vehicle]
-    no_impact = held(np.zeros((len(lines.effects), 2)))
+    no_impact = held(np.zeros((len(trains), len(lines.effects), 2)))
     swept = part_peaks(lines, trains, no_impact)
     return [stacked(one.title, [peaks]) for one, peaks in zip(vehicle, swept, strict=True)]
 
@@ -55,20 +55,21 @@ def part_peaks(response: Response, trains: Sequence[tuple[Train, ...]], impact: 
     trains
         For each crossing the trains that the part feels.
     impact
-        (R, 2) dynamic allowance on highest and lowest of every row, for trains that are dynamic.
+        (C, R, 2) dynamic allowance on highest and lowest of every row, for trains that are dynamic.
     """
     flat = [train for one in trains for train in one]
+    counts = [len(one) for one in trains]
     highest, lowest = static_extremes(response, flat)
     dynamic = np.array([train.dynamic for train in flat])[:, None]
-    highest *= 1.0 + dynamic * impact[:, 0]
-    lowest *= 1.0 + dynamic * impact[:, 1]
-    counts = [len(one) for one in trains]
+    of_train = np.repeat(impact, counts, axis=0)
+    highest *= 1.0 + dynamic * of_train[:, :, 0]
+    lowest *= 1.0 + dynamic * of_train[:, :, 1]
     if max(counts, default=0) > 1:  # the envelope over each crossing's trains
         starts = np.cumsum([0, *counts[:-1]])
         highest = np.maximum.reduceat(highest, starts, axis=0)
         lowest = np.minimum.reduceat(lowest, starts, axis=0)
     highest, lowest = held(highest), held(lowest)
-    return [PartPeaks(response, one, highest[row], lowest[row], impact) for row, one in enumerate(trains)]
+    return [PartPeaks(response, one, highest[row], lowest[row], impact[row]) for row, one in enumerate(trains)]
 
 
 def effects_with_front_at(lines: Response, vehicle: Vehicle, position: float, heading: int = 1) -> Floats:

@@ -1,24 +1,40 @@
 """The one rating equation, as arrays.
 
-RF = (R - s a D) / (b L), with s = +1 for tension and -1 for compression, D the permanent effect (tension positive), a
-and b the level's factors, and L the live effect's magnitude in that sense, impact included.
+RF = (R - sum of a D, s as pushed) / (b L), with s = +1 for tension and -1 for compression, D the permanent effect of
+each class (tension positive), a its margin and b the live one, and L the live effect's magnitude in that sense, impact
+included.
 """
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, Final
+from typing import Final
 
 import numpy as np
 
 from movload.arrays import Floats, held
 
-if TYPE_CHECKING:
-    from movload.rating.factor_sets import Level
-
 SIGNS: Final = np.array([1.0, -1.0])  # tension, compression
 
 
-def rating_factors(strength: Floats, permanent: Floats, live: Floats, level: Level) -> Floats:
+def pushed_by_permanent(permanent: Floats, margins: Floats) -> Floats:
+    """Return what permanent load uses of each sense's strength (R, 2) [N], its margins included; negative relieves.
+
+    The margin is chosen for each row, class and sense by what the class's whole effect does there: push or relieve.
+
+    Parameters
+    ----------
+    permanent
+        D (K, R) [N] by class, tension positive.
+    margins
+        (K, 2): on a class that pushes and on one that relieves.
+    """
+    pushed = SIGNS * permanent[:, :, None]
+    factored: Floats = np.where(pushed > 0, margins[:, None, None, 0], margins[:, None, None, 1]) * pushed
+    used: Floats = factored.sum(axis=0)
+    return used
+
+
+def rating_factors(strength: Floats, pushed: Floats, live: Floats) -> Floats:
     """Return RF, shape of ``live``.
 
     0 where permanent load alone uses all strength, even where the live effect is zero; infinite where there is
@@ -29,16 +45,15 @@ def rating_factors(strength: Floats, permanent: Floats, live: Floats, level: Lev
     ----------
     strength
         R (R, 2) [N], magnitudes, tension then compression.
-    permanent
-        D (R,) [N], tension positive.
+    pushed
+        What permanent load uses of it (R, 2) [N], margins included (see `pushed_by_permanent`).
     live
-        L (..., R, 2) [N], magnitudes with impact; leading axes are crossings.
+        b L (..., R, 2) [N], magnitudes with impact and margin; leading axes are crossings.
     """
-    pushed = SIGNS * level.permanent * permanent[:, None]
     spare = strength - pushed
     felt = live > 0
     factors = np.full(live.shape, np.inf)
-    np.divide(spare, level.live * live, out=factors, where=felt)
+    np.divide(spare, live, out=factors, where=felt)
     factors[(spare <= 0) & (felt | (pushed > 0))] = 0.0
     factors[..., np.isnan(spare)] = np.nan
     return held(factors)

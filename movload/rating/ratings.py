@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 
 from movload.errors import MissingDataError
-from movload.rating.kernel import SIGNS
+from movload.rating.kernel import SIGNS, pushed_by_permanent
 from movload.strength.typed import SENSES
 
 if TYPE_CHECKING:
@@ -20,6 +20,7 @@ if TYPE_CHECKING:
     from movload.statics.part import Effect
     from movload.traffic.crossing import Crossing
 
+_NO_PULL: Final = 1e-9  # of the largest permanent effect: an upward pull below it is round-off
 _DIGITS: Final = 10  # to which ratings are compared: bars alike but for round-off keep the order of their rows
 
 
@@ -43,10 +44,10 @@ class Rating:
         L with impact [N], tension positive.
     impact
         I [-].
-    safe_weight
-        RF x the vehicle's weight [N]: what this vehicle could weigh, its axles in the same proportions.
-    permanent_factor, live_factor
-        The level's margins on D and on L [-].
+    pushed
+        What permanent load uses of R [N], the level's margins included; negative relieves.
+    live_factor
+        The level's margin on L [-].
     peaks, row, side
         Where the placement is found.
     """
@@ -60,8 +61,7 @@ class Rating:
     permanent: float
     live: float
     impact: float
-    safe_weight: float
-    permanent_factor: float
+    pushed: float
     live_factor: float
     peaks: Peaks
     row: int
@@ -72,16 +72,21 @@ class Rating:
         """The live peak with its placement."""
         return self.peaks.peak(self.row, self.side)
 
+    @cached_property
+    def safe_weight(self) -> float:
+        """RF x the weight of the vehicle that governs [N]: what it could weigh, its axles in the same proportions."""
+        vehicle = self.peaks.train(self.row, self.side).vehicle
+        return self.factor * vehicle.gross
+
     @property
     def permanent_use(self) -> float:
         """Part of the strength that permanent load alone uses, the level's margin on it included [-].
 
         0 when permanent load relieves; infinite when it acts and there is no strength at all.
         """
-        pushed = float(SIGNS[self.side]) * self.permanent_factor * self.permanent
-        if pushed <= 0:
+        if self.pushed <= 0:
             return 0.0
-        return pushed / self.strength if self.strength > 0 else float("inf")
+        return self.pushed / self.strength if self.strength > 0 else float("inf")
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -109,7 +114,7 @@ class Coverage:
         return not (self.partly or self.none)
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class Ratings:
     """The ratings of a solved bridge under crossings.
 
@@ -139,50 +144,76 @@ class Ratings:
         """Return one rating."""
         peaks, solved, loading = self.peaks[crossing], self.solved, self.crossings[crossing].loading
         margins = solved.method.levels[level]
-        factor = float(self.factor[level, crossing, row, side])
         return Rating(
             effect=peaks.effects[row],
             sense=SENSES[side],
             crossing=loading.title,
             level=self.levels[level],
-            factor=factor,
+            factor=float(self.factor[level, crossing, row, side]),
             strength=float(solved.strength[level, row, side]),
             permanent=float(solved.permanent[:, row].sum()),
             live=float((peaks.highest, peaks.lowest)[side][row]),
             impact=float(self.impact[crossing, row, side]),
-            safe_weight=factor * loading.gross,
-            permanent_factor=margins.permanent,
-            live_factor=margins.live,
+            pushed=float(self._pushed[level][row, side]),
+            live_factor=margins.live_margin(loading.kind),
             peaks=peaks,
             row=row,
             side=side,
         )
 
-    def rows(self, crossing: int, *, level: int = 0) -> list[Rating]:
-        """Return every rated row of a crossing, the worst first.
+    @cached_property
+    def _pushed(self) -> tuple[Floats, ...]:
+        """What permanent load uses of every strength (R, 2) [N], level by level."""
+        solved = self.solved
+        return tuple(
+            pushed_by_permanent(solved.permanent, level.permanent_margins(solved.classes))
+            for level in solved.method.levels
+        )
+
+    def rows(self, crossing: int, *, level: int | None = None) -> list[Rating]:
+        """Return every rated row of a crossing at one level or at all, the worst first.
 
         A row whose strength permanent load alone uses comes before all others, the most overused first.
         """
         return sorted(self._among(crossing, np.inf, level), key=_order)
 
-    def governing(self, crossing: int, *, level: int = 0) -> Rating:
-        """Return the worst row of a crossing, the first of `rows`.
+    def governing(self, crossing: int, *, level: int | None = None) -> Rating:
+        """Return the worst row of a crossing at one level or of all, the first of `rows`.
 
         Raises
         ------
         MissingDataError
             No row has a strength.
         """
-        factors = self.factor[level, crossing]
+        factors = self.factor[self._asked(level), crossing]
         if np.isnan(factors).all():
             raise MissingDataError("no row has a strength, so nothing can be rated", place=self.solved.title)
         as_bad = np.nanmin(factors) * (1.0 + 10.0 ** (1 - _DIGITS))
         return min(self._among(crossing, as_bad, level), key=_order)
 
-    def _among(self, crossing: int, greatest: float, level: int) -> list[Rating]:
+    def _asked(self, level: int | None) -> list[int]:
+        """Return the numbers of the levels that are asked for."""
+        return list(range(len(self.levels))) if level is None else [level]
+
+    def _among(self, crossing: int, greatest: float, level: int | None) -> list[Rating]:
         """Return the rated rows of a crossing with factors up to ``greatest``, tension before compression."""
-        found = np.argwhere(self.factor[level, crossing] <= greatest)
-        return [self.rating(crossing, int(row), int(side), level=level) for row, side in found]
+        return [
+            self.rating(crossing, int(row), int(side), level=one)
+            for one in self._asked(level)
+            for row, side in np.argwhere(self.factor[one, crossing] <= greatest)
+        ]
+
+    @property
+    def uplifts(self) -> dict[str, float]:
+        """Bearings that a crossing pulls up: row name and the greatest pull [N], permanent and live with impact."""
+        permanent = self.solved.permanent.sum(axis=0)
+        least = permanent + np.min([peaks.lowest for peaks in self.peaks], axis=0)
+        noise = _NO_PULL * np.abs(permanent).max(initial=0.0)
+        return {
+            effect.name: float(-pull)
+            for effect, pull in zip(self.solved.effects, least, strict=True)
+            if effect.presses and pull < -noise
+        }
 
     @property
     def coverage(self) -> Coverage:
@@ -190,12 +221,14 @@ class Ratings:
         felt = SIGNS * self.solved.permanent.sum(axis=0)[:, None] > 0
         for peaks in self.peaks:
             felt |= np.stack((peaks.highest > 0, peaks.lowest < 0), axis=1)
-        gaps = (felt & np.isnan(self.solved.strength[0])).sum(axis=1)
+        gaps = (felt & np.isnan(self.solved.strength).any(axis=0)).sum(axis=1)
         by_gap: dict[str, list[str]] = {"full": [], "partly": [], "none": []}
+        several = len(self.solved.parts) > 1
         for row, effect in enumerate(self.solved.effects):
             if effect.kind == "axial":
+                name = f"{effect.part} {effect.name}" if several else effect.name
                 kind = "full" if not gaps[row] else "partly" if gaps[row] < felt[row].sum() else "none"
-                by_gap[kind].append(effect.name)
+                by_gap[kind].append(name)
         return Coverage(**{kind: tuple(names) for kind, names in by_gap.items()}, not_rated=("floor", "deck"))
 
     @property
@@ -205,9 +238,9 @@ class Ratings:
 
     @property
     def passes(self) -> bool:
-        """Whether every unrounded rating is 1 or more and every member rated in every sense it feels."""
+        """Whether every unrounded rating is 1 or more, every member rated in what it feels, and no bearing lifted."""
         rated = self.factor[~np.isnan(self.factor)]
-        return bool((rated >= 1.0).all()) and self.coverage.complete
+        return bool((rated >= 1.0).all()) and self.coverage.complete and not self.uplifts
 
 
 def _order(rating: Rating) -> tuple[bool, float, float]:

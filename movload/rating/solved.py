@@ -136,20 +136,24 @@ def _members_needed(bridge: Bridge) -> list[str]:
 
 def _notes(bridge: Bridge) -> tuple[Note, ...]:
     """Return what a reader of any rating of this bridge must know."""
-    truss = bridge.truss
-    notes = [Note("shares-typed", "truss", _SHARES.format(deck=bridge.deck, permanent=bridge.permanent))]
+    truss, supports = bridge.truss, bridge.truss.supports
+    texts = {"shares-typed": _SHARES.format(deck=bridge.deck, permanent=bridge.permanent, impact=bridge.impact)}
     if truss.redundancy > 0:
-        notes.append(
-            Note(
-                "redundant", "truss",
-                f"{truss.redundancy} member(s) or reaction(s) beyond what equilibrium can find: forces depend on the "
-                "areas and on a fit without initial stress.",
-            )
-        )  # fmt: skip
-    return tuple(notes)
+        texts["redundant"] = _REDUNDANT.format(count=truss.redundancy)
+    if any(support.settlement or support.movement for support in supports):
+        texts["settlement"] = "Settlements and imposed movements of bearings are in the permanent effects."
+    if any(permitted.compression == 0 for permitted in bridge.permits.values()):
+        texts["no-compression"] = (
+            "Some bars permit no compression: where live load pushes one a counter must act, and none is modelled."
+        )
+    return tuple(Note(code, "truss", text) for code, text in texts.items())
 
 
 _SHARES = (
     "One truss is rated with typed shares: {deck.truss_share:g} of a whole axle and {permanent.truss_share:g} of the "
-    "deck's weight reach it, wherever the vehicle keeps across the deck."
+    "deck's weight reach it, wherever the vehicle keeps across the deck. Impact {impact:g} is on every live effect."
+)
+_REDUNDANT = (
+    "{count} member(s) or reaction(s) beyond what equilibrium can find: forces depend on the areas and on a fit "
+    "without initial stress."
 )

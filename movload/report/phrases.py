@@ -8,6 +8,8 @@ from typing import TYPE_CHECKING, Final
 from movload.units import unit_factor
 
 if TYPE_CHECKING:
+    from collections.abc import Mapping
+
     from movload.peaks.peaks import Peak
     from movload.rating.ratings import Coverage, Rating
     from movload.statics.part import Effect
@@ -25,6 +27,7 @@ CAUTIONS: Final = (
         "Not checked: floor, deck, connections, pins, bearings, foundations, fatigue, hidden section loss, bending of "
         "members, sideways buckling of a pony truss's top chord, 3-D action."
     ),
+    "Bars are taken to pull and to push: rods that only pull (counters) are not modelled.",
     (
         "Holds for the geometry, condition and axle weights in the files only; axle weights must be weighed, not read "
         "from a brochure. Stop using the bridge at any sign of distress."
@@ -129,15 +132,27 @@ def coverage_text(coverage: Coverage) -> str:
     return f"{text}; {', '.join(coverage.not_rated)} not rated."
 
 
-def verdict_text(factor: float, coverage: Coverage) -> str:
+def verdict_text(factor: float, coverage: Coverage, uplifts: Mapping[str, float]) -> str:
     """Return adequate, adequate only if, or not adequate, for the parts rated; the unrounded value decides."""
     if factor < 1.0:
         return "not adequate"
-    if coverage.complete:
-        return "adequate, for the members rated"
-    count = len(coverage.partly) + len(coverage.none)
-    which = f"{count} members not fully rated are" if count > 1 else "one member not fully rated is"
-    return f"adequate only if the {which}"
+    conditions = []
+    gaps = len(coverage.partly) + len(coverage.none)
+    if gaps:
+        conditions.append(f"the {gaps} members not fully rated are" if gaps > 1 else "the member not fully rated is")
+    if uplifts:
+        conditions.append(f"{', '.join(name.partition(' ')[0] for name in uplifts)} is held down")
+    return f"adequate only if {' and '.join(conditions)}" if conditions else "adequate, for the members rated"
+
+
+def uplift_texts(uplifts: Mapping[str, float], units: UnitSystem) -> list[str]:
+    """Return a line for each bearing that is pulled up."""
+    symbol = units.symbol("force")
+    return [
+        f"Uplift: {name} is pulled up with {number_text(pull, 'force', units)} {symbol} (permanent and live); whether "
+        "anything holds it down is not checked."
+        for name, pull in uplifts.items()
+    ]
 
 
 def _some(names: tuple[str, ...]) -> str:

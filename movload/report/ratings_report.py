@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Final
 
+import numpy as np
+
 from movload.report.columns import Column, csv_text, json_rows, json_text
 from movload.report.phrases import (
     CAUTIONS,
@@ -14,6 +16,7 @@ from movload.report.phrases import (
     place_text,
     standing_text,
     unsigned_zero,
+    uplift_texts,
     use_text,
     verdict_text,
     weight_text,
@@ -54,7 +57,7 @@ COLUMNS: Final[list[Column[Rating]]] = [
     ),
     Column("impact", "impact", lambda row: row.impact, right=True, text=lambda row, _: f"{row.impact:.2f}"),
     Column(
-        "safe_weight", "safe weight of this vehicle", lambda row: row.safe_weight, "force",
+        "safe_weight", "safe weight", lambda row: row.safe_weight, "force",
         text=lambda row, units: weight_text(row.safe_weight, units),
     ),
     Column(
@@ -82,13 +85,13 @@ def summary(ratings: Ratings) -> RenderableType:
                 crossing.title,
                 f"{number_text(crossing.loading.gross, 'force', units)} {units.symbol('force')}",
                 factor_text(worst.factor),
-                verdict_text(worst.factor, ratings.coverage),
+                verdict_text(worst.factor, ratings.coverage, ratings.uplifts),
                 f"{worst.effect.name} {worst.sense}",
                 weight_text(worst.safe_weight, units),
                 use_text(worst) or place_text(worst.peak, units),
             ]
         )
-    heads = ["crossing", "weighs", "RF", "answer", "governed by", "safe weight of this vehicle", "worst with"]
+    heads = ["crossing", "weighs", "RF", "answer", "governed by", "safe weight", "worst with"]
     return grid(heads, lines, right=[False, True, True, False, False, False, False])
 
 
@@ -120,16 +123,17 @@ def sum_table(
 
 
 def _equation(rating: Rating, units: UnitSystem) -> str:
-    """Return RF = (R - a D) / (b L) with its numbers, margins a and b only where they are not 1."""
+    """Return RF = (R - a D) / (b L) with its numbers, what permanent load uses with its margins."""
     strength, live = (number_text(value, "force", units, more=1) for value in (rating.strength, abs(rating.live)))
-    permanent = number_text(rating.permanent, "force", units, more=1, sign="+")
     sign = "-" if rating.side == 0 else "+"
-    on_permanent, on_live = (
-        "" if margin == 1 else f"{margin:g} x " for margin in (rating.permanent_factor, rating.live_factor)
-    )
+    pushed = rating.permanent if rating.side == 0 else -rating.permanent
+    factored = "" if np.isclose(rating.pushed, pushed, rtol=1e-12) else "factored "
+    used = rating.pushed if rating.side == 0 else -rating.pushed
+    permanent = number_text(used, "force", units, more=1, sign="+")
+    on_live = "" if rating.live_factor == 1 else f"{rating.live_factor:g} x "
     why = use_text(rating)
     return (
-        f"RF = (strength {strength} {sign} {on_permanent}permanent ({permanent})) / {on_live}live {live} "
+        f"RF = (strength {strength} {sign} {factored}permanent ({permanent})) / {on_live}live {live} "
         f"{units.symbol('force')} = {factor_text(rating.factor)}{f': {why}' if why else ''}"
     )
 
@@ -143,9 +147,25 @@ def closing(ratings: Ratings) -> list[str]:
     return [
         ratings.solved.method.statement,
         "Covers: " + coverage_text(ratings.coverage),
+        *uplift_texts(ratings.uplifts, ratings.solved.units),
+        *_relief_texts(ratings),
         *notes,
         *(f"Caution: {caution}" for caution in CAUTIONS),
     ]
+
+
+def _relief_texts(ratings: Ratings) -> list[str]:
+    """Return a line for each governing row that permanent load relieves: less of it would lower the rating."""
+    units, lines = ratings.solved.units, []
+    for number in range(len(ratings.crossings)):
+        worst = ratings.governing(number)
+        if worst.pushed < 0:
+            relief = number_text(-worst.pushed, "force", units)
+            lines.append(
+                f"Note: permanent load relieves {worst.effect.name} {worst.sense} by {relief} {units.symbol('force')}; "
+                "less of it than typed (a lighter deck, surfacing removed) lowers that rating."
+            )
+    return list(dict.fromkeys(lines))
 
 
 def ratings_csv(rows: Sequence[Rating], units: UnitSystem) -> str:
@@ -178,6 +198,7 @@ def ratings_json(ratings: Ratings, rows: Sequence[Rating]) -> str:
                 {"code": note.code, "subject": note.subject, "text": note.text, "source": note.source}
                 for note in ratings.notes
             ],
+            "uplifts": ratings.uplifts,
             "cautions": CAUTIONS,
             "sources": ratings.solved.sources,
             "rows": json_rows([*COLUMNS, *_JSON_ONLY], rows),

@@ -12,7 +12,7 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
-from movload.arrays import Floats, Ints, held, keep_memory_warm
+from movload.arrays import Floats, Ints, frozen_floats, held, keep_memory_warm
 from movload.bridge.deck import stations_of
 from movload.errors import InputError
 from movload.statics.condensed import Condensed, any_jumps, distinct_rows, mirrored_rows
@@ -64,9 +64,11 @@ class InfluenceLines:
     ordinates: Floats
 
     def __post_init__(self) -> None:
-        """Check that rows and stations fit the ordinates, and let nobody write into them."""
-        for array in (self.stations, self.ordinates):
-            held(array)
+        """Check that rows and stations fit the ordinates; copy what somebody could still write into."""
+        for name in ("stations", "ordinates"):
+            array = getattr(self, name)
+            if array.flags.writeable:
+                object.__setattr__(self, name, frozen_floats(array))
         if self.ordinates.shape != (len(self.effects), self.stations.size):
             raise InputError(
                 f"{len(self.effects)} effects and {self.stations.size} stations do not fit ordinates of shape "

@@ -33,6 +33,11 @@ class Effect(NamedTuple):
     joints: str = ""  # the joints of a member that has a name of its own, by which it may be asked for too
 
     @property
+    def presses(self) -> bool:
+        """Whether it is a reaction across its bed, which lifts when negative (named by `Support.reaction_names`)."""
+        return self.kind == "reaction" and self.name.rpartition(" ")[2] in {"y", "normal"}
+
+    @property
     def key(self) -> tuple[str, str]:
         """Part and name: unique in a bridge."""
         return (self.part, self.name)

@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass, field
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
@@ -14,6 +15,9 @@ from movload.traffic.vehicle import Vehicle
 if TYPE_CHECKING:
     from movload.bridge.across import Across
     from movload.traffic.loading import Case, Fill, Loading
+
+
+TYPED_SHARE: Final = "typed share"
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -35,10 +39,15 @@ class Crossing:
     """
 
     loading: Loading
-    place: str = "typed share"
+    place: str = TYPED_SHARE
     z: float = 0.0
     lanes: int = field(default=1, kw_only=True)
     speed: float | None = field(default=None, kw_only=True)
+
+    def __post_init__(self) -> None:
+        """Refuse a place that is no number."""
+        if not math.isfinite(self.z):
+            raise InputError(f"the offset across must be a finite number, got {self.z} m", place=self.title)
 
     @property
     def title(self) -> str:
@@ -85,6 +94,11 @@ def trains_on(across: Across, crossing: Crossing) -> tuple[Train, ...]:
     if crossing.lanes != 1 or crossing.speed is not None:
         asked = f"{crossing.lanes} lanes" if crossing.lanes != 1 else f"a speed of {crossing.speed:g} m/s"
         raise InputError(f"{asked} cannot be rated yet: one vehicle at a time, no speed", place=crossing.title)
+    if across.z.size == 1 and (crossing.z != 0.0 or crossing.place != TYPED_SHARE):
+        raise InputError(
+            f'one share is typed wherever the vehicle keeps; "{crossing.place}" at {crossing.z:g} m cannot be rated',
+            place=crossing.title,
+        )
     return _trains(crossing.loading, float(across.at(crossing.z)))
 
 

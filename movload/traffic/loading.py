@@ -74,12 +74,15 @@ class Loading:
         At least one.
     source
         Where its numbers come from, e.g. "AASHTO ..., from memory", or "invented"; "" when its file does not say.
+    notes
+        What every rating of it must say (a load that takes no impact, a fixed spacing).
     """
 
     title: str
     kind: str
     cases: tuple[Case, ...]
     source: str = field(default="", kw_only=True)
+    notes: tuple[str, ...] = field(default=(), kw_only=True)
 
     def __post_init__(self) -> None:
         """Check kind and cases."""
@@ -93,9 +96,9 @@ class Loading:
             raise InputError("a loading needs at least one case", place=self.title)
 
     @classmethod
-    def of(cls, vehicle: Vehicle, kind: str = "routine", *, source: str = "") -> Loading:
+    def of(cls, vehicle: Vehicle, kind: str = "routine", *, source: str = "", notes: tuple[str, ...] = ()) -> Loading:
         """Return the loading that is one vehicle in one state."""
-        return cls(vehicle.title, kind, (Case(vehicle.title, vehicle),), source=source)
+        return cls(vehicle.title, kind, (Case(vehicle.title, vehicle),), source=source, notes=notes)
 
     @property
     def gross(self) -> float:

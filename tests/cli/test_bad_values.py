@@ -46,7 +46,7 @@ WRONG = {
     "{ a = 1 }": "got the table",
     '""': '"" is not a number with a unit',
     '"many"': '"many" is not a number with a unit',
-    '"5"': '"5" ',
+    '"5"': "5",  # no unit, or for a fraction too much
     '"5 s"': '"5 s"',
     '"5 ton"': '"5 ton": "ton" can mean three weights; write t (tonne), short ton or long ton',
     '"1/0 in"': '"1/0 in"',

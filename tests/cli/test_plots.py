@@ -44,19 +44,17 @@ def test_a_picture_of_the_right_kind(files: dict[str, Path], tmp_path: Path, com
     assert done.out == movload(*words).out
 
 
-@pytest.mark.parametrize("command", ["draw", "rate"])
-def test_the_same_picture_has_the_same_bytes(files: dict[str, Path], tmp_path: Path, command: str) -> None:
-    words = words_of(command, files)
+def test_the_same_picture_has_the_same_bytes(files: dict[str, Path], tmp_path: Path) -> None:
+    words = words_of("rate", files)
     for name in ("a.svg", "b.svg"):
         assert movload(*words, "--plot", tmp_path / name).code == 0
     assert (tmp_path / "a.svg").read_bytes() == (tmp_path / "b.svg").read_bytes()
 
 
 def test_a_suffix_in_capitals(files: dict[str, Path], tmp_path: Path) -> None:
-    for command in COMMANDS:
-        out = tmp_path / f"{command}.SVG"
-        assert movload(*words_of(command, files), "--plot", out, "--json").code == 0
-        assert out.read_bytes().startswith(FIRST_BYTES[".svg"])
+    out = tmp_path / "out.PDF"
+    assert movload(*words_of("draw", files), "--plot", out, "--json").code == 0
+    assert out.read_bytes().startswith(FIRST_BYTES[".pdf"])
 
 
 def test_a_picture_that_exists_is_kept_unless_forced(files: dict[str, Path], tmp_path: Path) -> None:
@@ -106,9 +104,8 @@ def test_a_bridge_that_permanent_load_alone_uses_up_can_be_drawn(files: dict[str
     assert movload("rate", heavy, files["CART"], "--plot", tmp_path / "out.svg").code == 0
 
 
-@pytest.mark.parametrize("name", ["stag_ledge", "tanner_gorge"])
-def test_an_example_is_drawn_with_its_worst_row(tmp_path: Path, name: str) -> None:
-    assert movload("rate", EXAMPLES / f"{name}.toml", "h5", "--plot", tmp_path / "out.svg").code == 0
+def test_an_example_with_abutments_and_a_bed_is_drawn_with_its_worst_row(tmp_path: Path) -> None:
+    assert movload("rate", EXAMPLES / "stag_ledge.toml", "h5", "--plot", tmp_path / "out.svg").code == 0
 
 
 @pytest.mark.xfail(strict=True, reason="drawing: a sign that the font has not warns, with source lines, on stderr")

@@ -30,7 +30,7 @@ def test_a_schema_names_every_key_and_which_are_needed(subject: str) -> None:
     schema = done.json()
     keys, needed = SUBJECTS[subject]
     assert schema["$schema"] == "https://json-schema.org/draft/2020-12/schema"
-    assert list(schema["properties"]) == keys
+    assert [key for key in schema["properties"] if key in keys] == keys  # keys are only ever added
     assert schema["required"] == needed
 
 

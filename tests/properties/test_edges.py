@@ -127,6 +127,15 @@ def test_a_train_far_longer_than_the_bridge_is_its_worst_part() -> None:
     assert_allclose(whole.lowest, np.minimum(first.lowest, second.lowest), rtol=1e-12)
 
 
+@pytest.mark.parametrize(("small", "peak"), [(1e-4, -1e-4), (1e-9, -1e-9), (1e-14, 0.0)])
+def test_a_small_reversal_is_a_peak_and_round_off_is_none(small: float, peak: float) -> None:
+    """Below 1e-12 of the row's largest value a reversal is round-off: the vehicle is better off the bridge."""
+    lines = InfluenceLines(span().effects[:1], np.array([0.0, 4.1, 9.3]), np.array([[1.0, 0.4, -small]]))
+    lowest = sweep(lines, Vehicle("one", [1.0], []))[lines.effects[0].key].lowest
+    assert lowest.value == pytest.approx(peak, rel=1e-12, abs=0.0)
+    assert lowest.heading == (1 if peak else 0)
+
+
 def test_a_panel_ten_thousand_times_shorter_than_its_neighbours() -> None:
     """An abutment 1.7 mm before L0: a table of panels by place would be too long, they are looked up another way."""
     lines = span(deck=[-0.0017, "L0", "L1", "L3", "L4"])

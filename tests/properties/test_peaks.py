@@ -12,7 +12,7 @@ from hypothesis import strategies as st
 from numpy.testing import assert_allclose
 from oracles.stepping import extremes, passage, sampled, scales, stands
 from oracles.trusses import bottom, pratt, simple_span, truss_of
-from strategies import Laid, directions, laid, vehicles
+from strategies import Laid, laid, vehicles
 
 from movload import InfluenceLines, Peak, Support, Vehicle, effects_with_front_at, influence_lines, sweep
 from movload.peaks.sweep import part_peaks
@@ -39,12 +39,9 @@ def test_peaks_are_the_extremes_over_all_stands(bridge: Laid, crossing: list[Veh
         assert (peaks.lowest <= 0.0).all()
 
 
-@given(laid(), st.data(), directions)
-def test_one_batch_gives_exactly_what_one_by_one_does(
-    bridge: Laid, data: st.DataObject, headings: tuple[int, ...]
-) -> None:
+@given(laid(), st.lists(vehicles(), min_size=2, max_size=5))
+def test_one_batch_gives_exactly_what_one_by_one_does(bridge: Laid, crossing: list[Vehicle]) -> None:
     lines = lines_of(bridge)
-    crossing = data.draw(st.lists(vehicles(headings=headings), min_size=2, max_size=5))
     for vehicle, together in zip(crossing, sweep(lines, crossing), strict=True):
         alone = sweep(lines, vehicle)
         assert (together.highest == alone.highest).all()
@@ -82,6 +79,9 @@ def test_sampled_positions_never_beat_a_peak(bridge: Laid, vehicle: Vehicle) -> 
 @given(laid(), vehicles(), st.floats(-60.0, 60.0), st.sampled_from([1, -1]))
 def test_effects_with_the_front_axle_anywhere(bridge: Laid, vehicle: Vehicle, front: float, heading: int) -> None:
     lines = lines_of(bridge)
+    x = front - heading * vehicle.distances
+    from_ends = np.abs(x[:, None] - lines.stations[[0, -1]])
+    assume(not ((from_ends > 0.0) & (from_ends < 1e-9)).any())  # so near an end an axle counts as standing on it
     expected = sampled(lines, vehicle, np.array([front]), heading)[:, 0]
     effects = effects_with_front_at(lines, vehicle, front, heading)
     assert (np.abs(effects - expected) <= EXACT * scales(lines, [vehicle])[0]).all()

@@ -86,6 +86,7 @@ class RatingsDocument(Document):
     crossings: list[CrossingDocument]
     coverage: CoverageDocument
     notes: list[NoteDocument]
+    uplifts: dict[str, float] = Field(description="bearings that are pulled up and by how much [N]")
     cautions: list[str]
     sources: list[str]
     rows: list[RatingDocument]

@@ -41,6 +41,7 @@ class VehicleFile(Table):
     title: Text
     kind: Text
     source: Text | None = Field(None, description='where its numbers come from, or "invented"')
+    notes: tuple[Text, ...] = Field(default=(), description="what every rating of it must say")
     units: Units
     axles: list[AxleTable]
     headings: tuple[Literal["+x", "-x"], ...] = ("+x", "-x")
