@@ -212,13 +212,35 @@ class UnitSystem:
                 raise error.at(f"units.{name}") from None
             object.__setattr__(self, name, _spelled(getattr(self, name)))
 
+    @classmethod
+    def beside(cls, length: str, *, force: str = "", section: str = "") -> UnitSystem:
+        """Return the units that go with a length: kN and mm beside metres, kip and in beside feet, where not given.
+
+        Raises
+        ------
+        InputError
+            A unit of another kind, or none that is known.
+
+        Examples
+        --------
+        >>> UnitSystem.beside("ft", force="kN")
+        UnitSystem(length='ft', force='kN', section='in')
+        """
+        common_force, common_section = ("kN", "mm") if _spelled(length) in _METRIC else ("kip", "in")
+        return cls(length, force or common_force, section or common_section)
+
+    @property
+    def is_us(self) -> bool:
+        """Whether lengths are feet or inches: what has no unit of its own in the file then follows US custom."""
+        return self.length not in _METRIC
+
     def symbol(self, quantity: Quantity) -> str:
         """Return the unit's symbol for a quantity, e.g. ``"kN/m"``."""
         symbols: dict[Quantity, str] = {
             "length": self.length, "section": self.section, "force": self.force,
             "line load": f"{self.force}/{self.length}", "area": f"{self.section}2",
             "stress": f"{self.force}/{self.section}2", "stiffness": f"{self.force}/{self.section}",
-            "density": "kg/m3" if self.length in _METRIC else "lb/ft3", "fraction": "",
+            "density": "lb/ft3" if self.is_us else "kg/m3", "fraction": "",
         }  # fmt: skip
         return symbols[quantity]
 

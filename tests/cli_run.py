@@ -191,7 +191,7 @@ def movload(*words: object, stdin: str = "") -> Done:
     said = []
     for stream in (out, err):
         stream.flush()
-        said.append(stream.buffer.getvalue().decode("utf-8"))  # type: ignore[attr-defined]  # a BytesIO is beneath
+        said.append(stream.buffer.getvalue().decode("utf-8"))
     assert isinstance(code, int)
     return Done(code, *said)
 

@@ -206,6 +206,32 @@ def test_a_density_beside_metres_is_metric_however_they_are_spelled() -> None:
     assert UnitSystem("metre", "kN", "mm").factor("density") == 1.0
 
 
+@pytest.mark.parametrize(
+    ("length", "given", "expected"),
+    [
+        ("m", {}, ("m", "kN", "mm")),
+        ("cm", {"force": "t"}, ("cm", "t", "mm")),
+        ("metre", {"section": "m"}, ("m", "kN", "m")),
+        ("ft", {}, ("ft", "kip", "in")),
+        ("feet", {"force": "kN"}, ("ft", "kN", "in")),
+        ("in", {"force": "lb", "section": "ft"}, ("in", "lb", "ft")),
+        ("'", {}, ("'", "kip", "in")),
+    ],
+)
+def test_what_is_left_out_goes_with_the_length(
+    length: str, given: dict[str, str], expected: tuple[str, str, str]
+) -> None:
+    system = UnitSystem.beside(length, **given)
+    assert system == UnitSystem(*expected)
+    assert system.is_us == (expected[0] in {"ft", "in", "'"}) == (system.symbol("density") == "lb/ft3")
+
+
+@pytest.mark.parametrize(("length", "message"), [("mtr", r'"mtr" is not known .*"m"'), ("kN", '"kN" is a force')])
+def test_no_units_go_with_what_is_no_length(length: str, message: str) -> None:
+    with pytest.raises(InputError, match=rf"^units.length: .*{message}"):
+        UnitSystem.beside(length)
+
+
 def test_gravity_is_standard() -> None:
     """Standard gravity is 9.80665 m/s2 by definition (NIST SP 811, B.8, from memory)."""
     assert REGISTRY.Quantity(1.0, "standard_gravity").to("m/s**2").magnitude == GRAVITY

@@ -105,6 +105,12 @@ def test_what_is_from_memory_says_so(row: dict[str, str]) -> None:
     assert ("axle limits read" in source) == ("axle limits read" in row["tag"])
 
 
+def test_hs20_says_which_of_its_rear_spacings_it_has() -> None:
+    """The truck's rear spacing may be 14 to 30 ft; a rating shows the title, so the title says which it is."""
+    loading = movload.read_vehicle("hs20")
+    assert loading.title == f"HS20 truck, rear spacing {np.diff(only_vehicle(loading).distances)[-1] / FOOT:g} ft"
+
+
 def test_emergency_vehicles_stand_at_the_axle_limits() -> None:
     """Axle limits of the FAST Act 2015 (read): steering axle 24, driven axle 33.5, tandem 62, gross 86 kip."""
     ev2, ev3 = (only_vehicle(movload.read_vehicle(name)) for name in ("ev2", "ev3"))

@@ -127,10 +127,13 @@ def _in_ascii(document: str) -> str:
 
 
 def _rendered(parts: Sequence[RenderableType | str]) -> str:
-    """Return a person's text, as wide as the terminal and in colour only where there is one."""
+    """Return a person's text, as wide as the terminal and in colour only where there is one.
+
+    NO_COLOR asks for none when it holds anything; empty, it is as good as not set (no-color.org, from memory).
+    """
     from movload.report.table import rendered
 
     terminal = sys.stdout.isatty()
     wide = "COLUMNS" in os.environ or terminal
     width = shutil.get_terminal_size().columns if wide else _PIPED_WIDTH
-    return rendered(parts, width=max(width, 40), colour=terminal and "NO_COLOR" not in os.environ)
+    return rendered(parts, width=max(width, 40), colour=terminal and not os.environ.get("NO_COLOR"))

@@ -19,11 +19,12 @@ Panels = Annotated[
     typer.Option("--panels", prompt="Panel lengths from the left", help='"4.2 4.35 4.2" or "6x3.5".'),
 ]
 Depths = Annotated[
-    str,
+    str | None,
     typer.Option(
         "--depths",
-        prompt="Depths at the panel points (0 = tapers to a point)",
-        help='"0 2.1 2.6 2.1 0"; 0 at a pointed end.',
+        help='"0 2.1 2.6 2.1 0", 0 at a pointed end: one a panel point; warren: one a panel; baltimore: one a main '
+        "panel point. Asked for when left out.",
+        show_default=False,
     ),
 ]
 Chord = Annotated[
@@ -44,8 +45,8 @@ def start(
     *,
     form: Form,
     panels: Panels,
-    depths: Depths,
     deck: Chord,
+    depths: Depths = None,
     middle: Middle = None,
     length: Length = "m",
     loads: Forces = None,
@@ -56,16 +57,18 @@ def start(
     from movload.bridge.layout import Layout
     from movload.errors import InputError, MovloadError
     from movload.files.read import bridge_from
-    from movload.files.start import lengths_from, starter_text
+    from movload.files.start import depths_question, lengths_from, starter_text
     from movload.files.write import check_writable, write_files
     from movload.units import UnitSystem
 
     if file.suffix.lower() != ".toml":
         raise InputError(f'a bridge file ends in .toml, got "{file.suffix}"', place=str(file))
     check_writable([file], force=force)
-    feet = length in {"ft", "in"}
-    units = UnitSystem(length, loads or ("kip" if feet else "kN"), "in" if feet else "mm")
-    lengths, heights = lengths_from(panels, units, "--panels"), lengths_from(depths, units, "--depths")
+    units = UnitSystem.beside(length, force=loads or "")
+    lengths = lengths_from(panels, units, "--panels")
+    if depths is None:  # what is asked for depends on the form
+        depths = typer.prompt(depths_question(form, lengths.size))
+    heights = lengths_from(depths, units, "--depths")
     try:
         layout = Layout(form, lengths, heights, deck=deck, middle=middle)
     except MovloadError as error:  # layout.panels[2] was typed as --panels

@@ -17,7 +17,9 @@ if TYPE_CHECKING:
 
 _MOST_REPEATS: Final = 1000
 _DIGITS: Final = 9  # of a count are read: with more than four it is refused anyway
-_STAND_IN: Final = {"mm": ("2000", "200", "7850"), "in": ("3.0", "29000", "490")}
+# Area, modulus and density of steel, with their units: right beside any units that the file may have.
+_STAND_IN: Final = ("2000 mm2", "200 GPa", "7850 kg/m3")
+_STAND_IN_US: Final = ("3 in2", "29000 ksi", "490 lb/ft3")
 
 
 def lengths_from(text: str, units: UnitSystem, place: str) -> Floats:
@@ -54,14 +56,24 @@ def _length(word: str, units: UnitSystem, place: str) -> float:
         raise error.at(place) from None
 
 
+def depths_question(form: str, panels: int) -> str:
+    """Return how to ask for the depths that a form needs over ``panels`` panels: where, and how many."""
+    if form == "warren":
+        return f"Depths at the middle of each panel ({panels})"
+    if form == "baltimore":
+        return f"Depths at the main panel points, every second one ({panels // 2 + 1}; 0 = tapers to a point)"
+    return f"Depths at the panel points ({panels + 1}; 0 = tapers to a point)"
+
+
 def starter_text(title: str, layout: Layout, units: UnitSystem) -> str:
     """Return the text of a bridge file for a layout.
 
     What nobody can know yet (strengths, densities, weights, shares) stands as "?": `movload rate` refuses until each
-    is filled. Areas are stand-ins: the forces of a determinate truss do not depend on them.
+    is filled. Areas are stand-ins: the forces of a determinate truss do not depend on them. They and the modulus carry
+    their own units.
     """
     laid_out = lay_out(layout)
-    area, modulus, density = _STAND_IN["in" if units.section == "in" else "mm"]
+    area, modulus, density = _STAND_IN_US if units.is_us else _STAND_IN
     first, last = laid_out.panel_points[0], laid_out.panel_points[-1]
     roles = dict.fromkeys(bar.role for bar in laid_out.bars)
     groups = "\n".join(_group(role, area, modulus) for role in roles)
@@ -85,7 +97,7 @@ depths = {_numbers(layout.depths, units)}
 {last} = {{ slides = 0 }}
 
 # One group for the bars of each role; bars = ["U1-L2"] in a group of its own gives single bars their own values.
-# area: a stand-in, put the measured one. density: {density} {units.symbol("density")} is common for steel.
+# area: a stand-in, put the measured one. modulus: that of steel. density: "{density}" is common for steel.
 # permits: the axial force each bar may carry, margin included, in {units.symbol("force")}.
 {groups}
 [deck]
@@ -103,7 +115,7 @@ impact = "?"                # dynamic allowance, e.g. 0.30
 def _group(role: str, area: str, modulus: str) -> str:
     """Return one member group with its placeholders."""
     return (
-        f'[members.{_quoted(role)}]\narea = {area}\nmodulus = {modulus}\ndensity = "?"\n'
+        f'[members.{_quoted(role)}]\narea = "{area}"\nmodulus = "{modulus}"\ndensity = "?"\n'
         'permits = { tension = "?", compression = "?" }\n'
     )
 

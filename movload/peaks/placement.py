@@ -104,10 +104,11 @@ def panels_at(stations: Floats, panels: Floats, x: Floats) -> Ints:
     A grid no coarser than the shortest panel names the panel to within one, which is several times faster than a
     search by halving; very unequal panels, whose grid would be long, are searched.
     """
-    cells = int(np.ceil((stations[-1] - stations[0]) / panels.min()))
-    if cells > _LONGEST_GRID:
+    fineness = (stations[-1] - stations[0]) / panels.min()
+    if not fineness <= _LONGEST_GRID:
         found = np.searchsorted(stations, x, side="right") - 1
         return np.clip(found, 0, panels.size - 1)
+    cells = int(np.ceil(fineness))
     per_cell = cells / (stations[-1] - stations[0])
     cell_starts = stations[0] + np.arange(cells) / per_cell
     grid = np.minimum(np.searchsorted(stations, cell_starts, side="right") - 1, panels.size - 1)

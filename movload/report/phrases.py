@@ -90,7 +90,7 @@ def weight_text(weight: float, units: UnitSystem) -> str:
     """
     if not math.isfinite(weight):
         return "-"
-    order = ("short ton", "t") if units.length in {"ft", "in"} else ("t", "short ton")
+    order = ("short ton", "t") if units.is_us else ("t", "short ton")
     first, second = (
         f"{rounded_down(weight / unit_factor(unit, 'force'), 1):.1f} {'short tons' if unit == 'short ton' else unit}"
         for unit in order

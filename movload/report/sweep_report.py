@@ -56,6 +56,9 @@ def _extreme(name: str, title: str) -> list[Column[Swept]]:
             f"{name}_axle", "with", lambda row: peak(row).axle + 1 if peak(row).heading else None,
             text=lambda row, _: standing_text(peak(row), row.stations),
         ),
+        Column(
+            f"{name}_station_name", "", lambda row: row.stations[peak(row).station] if peak(row).heading else None,
+        ),
     ]  # fmt: skip
 
 
@@ -89,7 +92,8 @@ def sweep_csv(rows: Sequence[Swept], units: UnitSystem) -> str:
 
 
 def sweep_json(title: str, rows: Sequence[Swept]) -> str:
-    """Return the document movload.peaks/1."""
+    """Return the document movload.peaks/1; a field ``unit`` says what highest and lowest are in."""
+    unit: Column[Swept] = Column("unit", "", lambda row: row.peaks.effect.unit)
     placements: list[Column[Swept]] = [
         Column("highest_placement", "", lambda row: placement_json(row.peaks.highest.placement)),
         Column("lowest_placement", "", lambda row: placement_json(row.peaks.lowest.placement)),
@@ -99,7 +103,7 @@ def sweep_json(title: str, rows: Sequence[Swept]) -> str:
             "format": FORMAT,
             "title": title,
             "units": {"force": "N", "length": "m", "deflection": "m"},
-            "rows": json_rows([*COLUMNS, *placements], rows),
+            "rows": json_rows([*COLUMNS[:4], unit, *COLUMNS[4:], *placements], rows),
         }
     )
 

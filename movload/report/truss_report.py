@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import asdict, dataclass
 from typing import TYPE_CHECKING, Final
 
 from movload.report.columns import Column, csv_text, json_rows, json_text
@@ -13,7 +13,7 @@ if TYPE_CHECKING:
 
     from movload.bridge.bridge import Bridge
     from movload.bridge.truss import Member, Support
-    from movload.units import UnitSystem
+    from movload.units import Quantity, UnitSystem
 
 FORMAT: Final = "movload.truss/1"
 
@@ -33,6 +33,11 @@ def _force(value: float | None, units: UnitSystem) -> str:
     return "-" if value is None else f"{units.shown(value, 'force'):.1f}"
 
 
+def _density(value: float | None, units: UnitSystem) -> str:
+    """Return a density, or a dash where nobody has typed one."""
+    return "-" if value is None else f"{units.shown(value, 'density'):.6g}"
+
+
 COLUMNS: Final[list[Column[Bar]]] = [
     Column("row", "member", lambda bar: bar.member.name),
     Column("role", "role", lambda bar: bar.member.role),
@@ -47,6 +52,10 @@ COLUMNS: Final[list[Column[Bar]]] = [
     Column(
         "modulus", "modulus", lambda bar: bar.member.modulus, "stress", right=True,
         text=lambda bar, units: f"{units.shown(bar.member.modulus, 'stress'):.6g}",
+    ),
+    Column(
+        "density", "density", lambda bar: bar.member.density, "density", right=True,
+        text=lambda bar, units: _density(bar.member.density, units),
     ),
     Column(
         "permitted_tension", "permitted T", lambda bar: bar.tension, "force", right=True,
@@ -94,24 +103,44 @@ def truss_tables(bridge: Bridge) -> list[RenderableType | str]:
         "",
         (
             f"Lengths in {length}, areas in {units.symbol('area')}, moduli in {units.symbol('stress')}, "
-            f"forces in {units.symbol('force')}."
+            f"densities in {units.symbol('density')}, forces in {units.symbol('force')}."
         ),
         f"Panel points: {', '.join(points)}",
-        *(_support_text(support) for support in truss.supports),
+        *(_support_text(support, units) for support in truss.supports),
         *([f'Still to be filled ("?"): {", ".join(bridge.missing)}'] if bridge.missing else []),
     ]
 
 
-def _support_text(support: Support) -> str:
-    """Return one bearing in words."""
+def _support_text(support: Support, units: UnitSystem) -> str:
+    """Return one bearing in words: its bed, what it is moved by, and its springs."""
+    is_level = (support.slides or 0.0) % 360 == 0
+    across, along = ("upright", "along x") if is_level else ("square to its bed", "along its bed")
+    parts = [_bed_text(support)]
+    if support.settlement:
+        verb = "settles" if support.settlement > 0 else "rises"
+        parts.append(f"{verb} {_shift(abs(support.settlement), units)}{'' if is_level else f' {across}'}")
+    if support.movement is not None:
+        parts.append(f"imposed movement of {_shift(support.movement, units)} {along}")
+    for direction, stiffness in ((across, support.normal_stiffness), (along, support.slide_stiffness)):
+        if stiffness is not None:
+            spring = f"{units.shown(stiffness, 'stiffness'):.6g} {units.symbol('stiffness')}"
+            parts.append(f"spring of {spring} {direction}")
+    return f"Bearing {support.joint}: {', '.join(parts)}"
+
+
+def _bed_text(support: Support) -> str:
+    """Return what a bearing holds, in words."""
     if support.slides is None:
-        text = "pinned"
-    elif support.slides % 180 == 0:
-        text = "slides along the bridge"
-    else:
-        text = f"slides along a bed at {support.slides:g} degrees"
-    springs = support.normal_stiffness is not None or support.slide_stiffness is not None
-    return f"Bearing {support.joint}: {text}{', on springs' if springs else ''}"
+        return "pinned"
+    if support.slides % 360 == 0:
+        return "slides along the bridge"
+    return f"slides along a bed at {support.slides:g} degrees"
+
+
+def _shift(metres: float, units: UnitSystem) -> str:
+    """Return a bearing's movement with its unit: the section's while it is short of one unit of length."""
+    quantity: Quantity = "section" if abs(units.shown(metres, "length")) < 1 else "length"
+    return f"{units.shown(metres, quantity):.6g} {units.symbol(quantity)}"
 
 
 def truss_csv(bridge: Bridge) -> str:
@@ -126,12 +155,15 @@ def truss_json(bridge: Bridge) -> str:
         {
             "format": FORMAT,
             "title": bridge.title,
-            "units": {"length": "m", "area": "m2", "modulus": "Pa", "force": "N", "slides": "degrees"},
+            "units": {
+                "length": "m", "area": "m2", "modulus": "Pa", "density": "kg/m3", "force": "N", "stiffness": "N/m",
+                "slides": "degrees",
+            },
             "redundancy": truss.redundancy,
             "joints": {name: list(point) for name, point in truss.joints.items()},
-            "supports": [{"joint": support.joint, "slides": support.slides} for support in truss.supports],
+            "supports": [asdict(support) for support in truss.supports],
             "panel_points": list(bridge.deck.panel_points),
             "missing": bridge.missing,
             "rows": json_rows(COLUMNS, bars_of(bridge)),
         }
-    )
+    )  # fmt: skip

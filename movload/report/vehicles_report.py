@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass
-from typing import TYPE_CHECKING, Final
+from typing import TYPE_CHECKING, Final, Literal
 
 from movload.report.columns import Column, csv_text, json_text
 from movload.report.phrases import weight_text
@@ -16,11 +17,12 @@ if TYPE_CHECKING:
     from rich.console import RenderableType
 
     from movload.traffic.loading import Loading
-    from movload.traffic.vehicle import Vehicle
+    from movload.traffic.vehicle import Spacing, Vehicle
 
 FORMAT: Final = "movload.vehicles/1"
 _METRIC: Final = UnitSystem("m", "kN", "mm")
 _US: Final = UnitSystem("ft", "kip", "in")
+_SOURCES: Final = ("invented", "from memory", "read")  # what a source says of its numbers
 
 
 @dataclass(frozen=True, slots=True)
@@ -33,12 +35,16 @@ class Listed:
 
 @dataclass(frozen=True, slots=True)
 class Axle:
-    """One axle: its number from the front, load [N], distance behind the one before and gauge [m]."""
+    """One axle: its number from the front, load [N], distance behind the one before (or its range) and gauge [m]."""
 
     number: int
     load: float
-    after: float | None
+    after: Spacing | None
     gauge: float | None
+
+    def gap(self, end: int) -> float | None:
+        """Return the least (0) or the greatest (-1) distance behind the axle before [m]."""
+        return self.after[end] if isinstance(self.after, tuple) else self.after
 
 
 LIST_COLUMNS: Final[list[Column[Listed]]] = [
@@ -53,27 +59,39 @@ LIST_COLUMNS: Final[list[Column[Listed]]] = [
 
 
 def _kind_of_source(source: str) -> str:
-    """Return how far a vehicle's numbers can be trusted, in two words."""
-    words = ("invented", "from memory", "read")
-    return next((word for word in words if word in source), "not said")
+    """Return how far a vehicle's numbers can be trusted, in a few words; "spread over" is no word "read"."""
+    invented, recalled, read = (re.search(rf"\b{words}\b", source, re.IGNORECASE) for words in _SOURCES)
+    if invented:
+        return "invented"
+    if recalled:
+        return "partly from memory" if read else "from memory"
+    return "read" if read else "not said"
 
 
-def _both(value: float | None, quantity: str) -> str:
-    """Return a length or force in SI and US units."""
+def _both(value: float | tuple[float, float] | None, quantity: Literal["length", "force"]) -> str:
+    """Return a length or force, or a range of them, in SI and US units."""
     if value is None:
         return "-"
-    metric, us = (units.shown(value, quantity) for units in (_METRIC, _US))  # type: ignore[arg-type]  # both are quantities
-    return f"{metric:.2f} m ({us:.2f} ft)" if quantity == "length" else f"{metric:.2f} kN ({us:.2f} kip)"
+    ends = value if isinstance(value, tuple) else (value,)
+    metric, us = (
+        f"{' to '.join(f'{units.shown(end, quantity):.2f}' for end in ends)} {units.symbol(quantity)}"
+        for units in (_METRIC, _US)
+    )
+    return f"{metric} ({us})"
 
 
 AXLE_COLUMNS: Final[list[Column[Axle]]] = [
     Column("axle", "axle", lambda axle: axle.number, right=True),
     Column("load", "load", lambda axle: axle.load, "force", text=lambda axle, _: _both(axle.load, "force"), right=True),
-    Column("after", "behind the axle before", lambda axle: axle.after, "length", right=True,
-           text=lambda axle, _: _both(axle.after, "length")),
+    Column("after", "behind the axle before", lambda axle: None if isinstance(axle.after, tuple) else axle.after,
+           "length", right=True, text=lambda axle, _: _both(axle.after, "length")),
     Column("gauge", "gauge", lambda axle: axle.gauge, "length", right=True,
            text=lambda axle, _: _both(axle.gauge, "length")),
 ]  # fmt: skip
+_RANGE: Final[list[Column[Axle]]] = [
+    Column("after_least", "", lambda axle: axle.gap(0), "length"),
+    Column("after_greatest", "", lambda axle: axle.gap(-1), "length"),
+]
 
 
 def axle_count(loading: Loading) -> int:
@@ -83,9 +101,8 @@ def axle_count(loading: Loading) -> int:
 
 def axles_of(vehicle: Vehicle) -> list[Axle]:
     """Return a vehicle axle by axle."""
-    gaps = [None, *(gap if isinstance(gap, float) else None for gap in vehicle.spacings)]
     gauges = vehicle.gauges or (None,) * vehicle.loads.size
-    axles = zip(vehicle.loads, gaps, gauges, strict=True)
+    axles = zip(vehicle.loads, [None, *vehicle.spacings], gauges, strict=True)
     return [Axle(number, float(load), gap, gauge) for number, (load, gap, gauge) in enumerate(axles, start=1)]
 
 
@@ -117,10 +134,9 @@ def list_csv(loadings: Mapping[str, Loading]) -> str:
 
 
 def one_csv(loading: Loading) -> str:
-    """Return one loading's axles as CSV, all cases after each other."""
-    return csv_text(
-        AXLE_COLUMNS, [axle for case in loading.cases if case.moving for axle in axles_of(case.moving)], _METRIC
-    )
+    """Return one loading's axles as CSV, all cases after each other; ``after`` is empty where it is a range."""
+    axles = [axle for case in loading.cases if case.moving for axle in axles_of(case.moving)]
+    return csv_text([*AXLE_COLUMNS, *_RANGE], axles, _METRIC)
 
 
 def list_json(loadings: Mapping[str, Loading]) -> str:

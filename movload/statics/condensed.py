@@ -52,8 +52,8 @@ class Condensed:
         return bool(self.mirror.size)
 
 
-def distinct_rows(ordinates: Floats) -> tuple[Ints, Floats, Ints, Floats]:
-    """Return the rows that differ by more than scale and sign.
+def distinct_rows(stations: Floats, ordinates: Floats) -> tuple[Ints, Floats, Ints, Floats, Ints, Floats]:
+    """Return the rows that differ by more than scale and sign, and each one's mirror image among them.
 
     Returns
     -------
@@ -61,31 +61,47 @@ def distinct_rows(ordinates: Floats) -> tuple[Ints, Floats, Ints, Floats]:
         (C,) one row of each kind, and (C, B) its ordinates scaled to a first large one of 1.
     row, scale
         (R,) so that ordinates[r] = scale[r] * distinct[row[r]].
+    mirror, mirror_scale
+        As in `Condensed`; empty unless stations and rows are their own mirror image.
     """
+    rows = len(ordinates)
+    mirror, mirror_scale = np.zeros(0, dtype=np.intp), np.zeros(0)
+    if _is_symmetric(stations):
+        both = np.concatenate((ordinates, ordinates[:, ::-1]))
+        unit, scale, kind = _kinds(both)
+        chosen = _first_of_each(kind[:rows], int(kind.max()) + 1)
+        if (chosen >= 0).all():  # no mirrored row is of a kind of its own
+            mirror = kind[rows + chosen]
+            mirror_scale = scale[rows + chosen] / np.where(scale[chosen] == 0.0, 1.0, scale[chosen])
+            return chosen, unit[chosen], kind[:rows], scale[:rows], mirror, mirror_scale
+    unit, scale, kind = _kinds(ordinates)
+    chosen = _first_of_each(kind, int(kind.max()) + 1)
+    return chosen, unit[chosen], kind, scale, mirror, mirror_scale
+
+
+def _kinds(ordinates: Floats) -> tuple[Floats, Floats, Ints]:
+    """Return unit rows, their scales and the number of each row's kind: the same for rows that differ by scale only."""
     unit, scale = _unit_rows(ordinates)
-    order = np.argsort(unit @ _weights(ordinates.shape[1]), kind="stable")
+    order = np.argsort(unit @ _weights(unit.shape[1]), kind="stable")
     in_order = unit[order]
-    differs = np.ones(order.size, dtype=bool)
+    differs = np.zeros(order.size, dtype=np.intp)
     differs[1:] = np.abs(in_order[1:] - in_order[:-1]).max(axis=1, initial=0.0) > _EQUAL
-    row = np.empty_like(order)
-    row[order] = np.cumsum(differs) - 1
-    return order[differs], in_order[differs], row, scale
+    kind = np.empty_like(order)
+    kind[order] = np.cumsum(differs)
+    return unit, scale, kind
 
 
-def mirrored_rows(stations: Floats, distinct: Floats) -> tuple[Ints, Floats]:
-    """Return for each of C distinct rows its mirror image among them and the scale; both empty without symmetry."""
-    nothing = np.zeros(0, dtype=np.intp), np.zeros(0)
+def _first_of_each(kind: Ints, kinds: int) -> Ints:
+    """Return the first row of each kind, -1 where no row is of it."""
+    first = np.full(kinds, -1, dtype=np.intp)
+    first[kind[::-1]] = np.arange(kind.size)[::-1]
+    return first
+
+
+def _is_symmetric(stations: Floats) -> bool:
+    """Return whether the stations are their own mirror image."""
     from_right = (stations[0] + stations[-1]) - stations[::-1]
-    if np.abs(from_right - stations).max() > _EQUAL * np.abs(stations).max():
-        return nothing
-    weights = _weights(distinct.shape[1])
-    reversed_unit, scale = _unit_rows(distinct[:, ::-1])
-    key, reversed_key = distinct @ weights, reversed_unit @ weights
-    mirror = np.empty(key.size, dtype=np.intp)
-    mirror[np.argsort(reversed_key, kind="stable")] = np.argsort(key, kind="stable")  # a symmetric set sorts alike
-    if np.abs(reversed_unit - distinct[mirror]).max() > _EQUAL:
-        return nothing
-    return mirror, scale
+    return bool(np.abs(from_right - stations).max() <= _EQUAL * np.abs(stations).max())
 
 
 def any_jumps(ordinates: Floats) -> bool:

@@ -15,7 +15,7 @@ import numpy as np
 from movload.arrays import Floats, Ints, frozen_floats, held, keep_memory_warm
 from movload.bridge.deck import stations_of
 from movload.errors import InputError
-from movload.statics.condensed import Condensed, any_jumps, distinct_rows, mirrored_rows
+from movload.statics.condensed import Condensed, any_jumps, distinct_rows
 from movload.statics.part import Effect, row_of
 from movload.statics.stiffness import FactoredTruss, factored
 
@@ -92,9 +92,9 @@ class InfluenceLines:
             rows, nothing = np.arange(len(self.effects)), np.zeros(0)
             jumps = any_jumps(self.ordinates)
             return Condensed(self, rows, np.ones(rows.size), nothing.astype(np.intp), nothing, jumps)
-        chosen, distinct, row, scale = distinct_rows(self.ordinates)
+        chosen, distinct, row, scale, mirror, mirror_scale = distinct_rows(self.stations, self.ordinates)
         response = InfluenceLines(tuple(self.effects[one] for one in chosen), self.stations, held(distinct))
-        return Condensed(response, row, scale, *mirrored_rows(self.stations, distinct), any_jumps(distinct))
+        return Condensed(response, row, scale, mirror, mirror_scale, any_jumps(distinct))
 
     def under(self, loads: Floats) -> Floats:
         """Return effects (R, K) under downward loads (B, K) [N] on the stations."""

@@ -90,6 +90,7 @@ def row_of(effects: Sequence[Effect], key: str | tuple[str, str]) -> int:
     start, dash, end = name.partition("-")
     for wanted in (name, f"{end}-{start}") if dash else (name,):
         for row, effect in enumerate(effects):
-            if wanted in {effect.name, effect.joints} and part in {"", effect.part}:
+            named = wanted == effect.name or (wanted and wanted == effect.joints)
+            if named and part in {"", effect.part}:
                 return row
     raise UnknownNameError(f'row "{name}" is not known', nearest=nearest_name(name, (e.name for e in effects)))

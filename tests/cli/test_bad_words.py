@@ -29,7 +29,6 @@ def test_an_unknown_row_and_the_nearest(tmp_path: Path, row: str) -> None:
     assert names_in(tmp_path) == {path.name}
 
 
-@pytest.mark.xfail(strict=True, reason='statics: row_of("") finds the first row that is no member')
 def test_an_empty_row(tmp_path: Path) -> None:
     path = written(tmp_path, BY_JOINTS)
     assert_refused(movload("influence", path, ""), 'row "" is not known', place=path)

@@ -50,7 +50,7 @@ def as_toml(value: object) -> str:
     return str(value)
 
 
-def places(data: object) -> list[tuple[Any, Any]]:
+def places(data: Any) -> list[tuple[Any, Any]]:
     """Return every (container, key) below some data."""
     items = data.items() if isinstance(data, dict) else enumerate(data) if isinstance(data, list) else ()
     found = [(data, key) for key, _ in items]

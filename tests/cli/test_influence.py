@@ -20,7 +20,7 @@ ROWS = [
 ]  # fmt: skip
 SPAN, FIRST, SECOND = 9.6, 3.1, 6.4
 # By moments: about U1 for L0-L1, of the whole for the reactions; the hanger takes what stands under it.
-BY_HAND = {
+BY_HAND: dict[str, list[float]] = {
     "L0-L1": [0, (SPAN - FIRST) / SPAN * FIRST / 2.2, (SPAN - SECOND) / SPAN * FIRST / 2.2, 0],
     "U1-L1": [0, 1, 0, 0],
     "L0 y": [1, (SPAN - FIRST) / SPAN, (SPAN - SECOND) / SPAN, 0],

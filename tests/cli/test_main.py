@@ -16,6 +16,8 @@ from movload.cli import main
 if TYPE_CHECKING:
     from pathlib import Path
 
+    from rich.console import RenderableType
+
 COMMANDS = ("start", "draw", "influence", "sweep", "rate", "vehicles", "schema")
 
 
@@ -87,21 +89,25 @@ def test_piped_text_holds_no_colour_and_no_trailing_blanks(tmp_path: Path) -> No
         assert max(widths(out)) <= 132
 
 
-@pytest.mark.parametrize("no_colour", [True, False])
+@pytest.mark.parametrize(("no_colour", "is_coloured"), [("1", False), ("0", False), ("", True), (None, True)])
 def test_a_terminal_gets_colour_unless_it_asks_for_none(
-    tmp_path: Path, monkeypatch: pytest.MonkeyPatch, no_colour: bool
+    monkeypatch: pytest.MonkeyPatch, no_colour: str | None, is_coloured: bool
 ) -> None:
+    """NO_COLOR counts when it is set and not empty, whatever it holds (no-color.org, from memory)."""
     from movload.cli import options
 
-    monkeypatch.setenv("NO_COLOR", "1") if no_colour else monkeypatch.delenv("NO_COLOR", raising=False)
+    if no_colour is None:
+        monkeypatch.delenv("NO_COLOR", raising=False)
+    else:
+        monkeypatch.setenv("NO_COLOR", no_colour)
     monkeypatch.setenv("TERM", "xterm")
-    shown = []
+    shown: list[str] = []
     with mock.patch.object(sys, "stdout", mock.Mock(encoding="utf-8", write=shown.append, isatty=lambda: True)):
         options.deliver(text=lambda: [_table()], json=None, files={}, force=False)
-    assert ("\x1b" in shown[0]) == (not no_colour)
+    assert ("\x1b" in shown[0]) == is_coloured
 
 
-def _table() -> object:
+def _table() -> RenderableType:
     """Return a table with a head, which is bold in colour."""
     from movload.report.table import grid
 

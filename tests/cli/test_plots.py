@@ -108,7 +108,6 @@ def test_an_example_with_abutments_and_a_bed_is_drawn_with_its_worst_row(tmp_pat
     assert movload("rate", EXAMPLES / "stag_ledge.toml", "h5", "--plot", tmp_path / "out.svg").code == 0
 
 
-@pytest.mark.xfail(strict=True, reason="drawing: a sign that the font has not warns, with source lines, on stderr")
 def test_a_title_that_the_font_cannot_show(tmp_path: Path) -> None:
     path = written(tmp_path, changed(BY_JOINTS, ("Alder footpath", "Alder 橋")))
     assert movload("draw", path, "--plot", tmp_path / "out.png").code == 0

@@ -16,7 +16,8 @@ if TYPE_CHECKING:
     from pathlib import Path
 
 FIELDS = [
-    "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "cautions", "sources", "rows",
+    "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "uplifts", "cautions",
+    "sources", "rows",
 ]  # fmt: skip
 CROSSING = ["title", "kind", "weight", "place", "source"]
 COVERAGE = ["full", "partly", "none", "not_rated"]
@@ -48,6 +49,7 @@ def test_the_document_has_these_fields(asked: list[Any]) -> None:
     assert all(list(note) == NOTE for note in rated["notes"])
     assert all(list(row) == ROW for row in rated["rows"])
     assert rated["sources"] == [str(asked[1])]
+    assert rated["uplifts"] == {}
     assert RatingsDocument.model_validate(rated).model_dump() == rated
 
 
@@ -118,6 +120,8 @@ def test_text_answers_sums_covers_and_warns(asked: list[Any]) -> None:
         "Covers: 9 of 9 members rated in every sense they feel; floor, deck not rated.",
         "Note: One truss is rated with typed shares: 0.6 of a whole axle and 0.5 of the deck's weight reach it",
         "Note, Alder hay cart: axles and spacings: invented",
+        "Impact 0.3 is on every live effect.",
+        "Caution: Bars are taken to pull and to push: rods that only pull (counters) are not modelled.",
         "Caution: An analysis aid until a qualified engineer adopts it; local codes and licensed practice decide.",
         "Caution: Not checked: floor, deck, connections, pins, bearings, foundations, fatigue, hidden section loss",
         "Stop using the bridge at any sign of distress.",
@@ -147,6 +151,52 @@ def test_gate(asked: list[Any], tmp_path: Path) -> None:
         assert movload(*words, "--gate", "--json").code == gated.code
 
 
+def test_a_span_that_lifts_a_bearing(asked: list[Any], tmp_path: Path) -> None:
+    """L2-L3 overhangs L2: 200 kN on L3 pull at L0 with 200 x 0.6 x 1.3 x 3.2 / 6.4 kN less what permanent load holds.
+
+    Deck 2 kN/m over 9.6 m, its middle 4.8 m from L0; the bars' own weight adds a little, so the pull is a little less.
+    """
+    text = changed(BY_JOINTS, ("L3 = { slides = 0 }", "L2 = { slides = 0 }"))
+    for force in ("200, compression = 150", "180, compression = 40", "180, compression = 140", "90, compression = 60"):
+        text = changed(text, (force, "5000, compression = 5000"))
+    light = changed(text, *(("density = 7850", "density = 0"),) * 4)
+    bridge = written(tmp_path, light, "overhang.toml")
+    axle = "axles = [ { load = 200 } ]"
+    cart = written(tmp_path, CART[: CART.index("axles")] + axle + "\n", "axle.toml")
+    done = movload("rate", bridge, cart, "--gate")
+    out = " ".join(done.out.split())
+    assert done.code == 3
+    assert "adequate only if L0 is held down" in out
+    pulled = 200e3 * 0.6 * 1.3 * 3.2 / 6.4 - 2e3 * 9.6 * (6.4 - 4.8) / 6.4
+    assert f"Uplift: L0 y is pulled up with {pulled / 1e3:.1f} kN" in out
+    # rtol: round-off of a solve with a handful of unknowns
+    assert movload("rate", bridge, cart, "--json").json()["uplifts"] == {"L0 y": pytest.approx(pulled, rel=1e-12)}
+    assert movload("rate", bridge, asked[2], "--json").json()["uplifts"].keys() == {"L0 y"}
+    held = written(tmp_path, changed(light, ("deck = 4.0", "deck = 400")), "held.toml")
+    assert movload("rate", held, cart, "--json").json()["uplifts"] == {}
+
+
+def test_a_vehicle_files_notes_and_one_way(asked: list[Any], tmp_path: Path) -> None:
+    """The cart is not alike front and back: toward +x 20 kN stand 2.7 m off in the 3.3 m panel, toward -x in 3.1 m.
+
+    The third axle is off the hanger's line both ways: 6.8 - 2.7 = 4.1 m is longer than either panel.
+    """
+    for heading, panel in (("+x", 3.3), ("-x", 3.1)):
+        text = changed(CART, ("axles =", f'headings = ["{heading}"]\nnotes = ["its drawbar is fixed"]\naxles ='))
+        cart = written(tmp_path, text, "oneway.toml")
+        read = movload("rate", asked[1], cart, "--json").json()
+        row = next(row for row in read["rows"] if (row["row"], row["sense"]) == ("U1-L1", "tension"))
+        # rtol: round-off of a solve with a handful of unknowns
+        assert_allclose(row["live"], (45e3 + 20e3 * (1 - 2.7 / panel)) * 0.6 * 1.3, rtol=1e-12)
+        assert {row["heading"] for row in read["rows"]} <= {0, 1 if heading == "+x" else -1}
+        assert [(note["code"], note["text"]) for note in read["notes"][1:]] == [
+            ("vehicle-source", "axles and spacings: invented"),
+            ("vehicle", "its drawbar is fixed"),
+            ("one-way", f"crosses toward {heading} only; not rated the other way."),
+        ]
+        assert "Note, Alder hay cart: its drawbar is fixed" in movload("rate", asked[1], cart).out
+
+
 def test_what_is_not_rated_is_named(asked: list[Any], tmp_path: Path) -> None:
     gap = written(tmp_path, changed(BY_JOINTS, ("tension = 200, compression = 150", "tension = 200")), "gap.toml")
     out = " ".join(movload("rate", gap, asked[2]).out.split())
@@ -165,6 +215,19 @@ def test_an_allowance_instead_of_the_files(asked: list[Any]) -> None:
     assert plain[0]["row"] == own[0]["row"]
     assert_allclose(plain[0]["factor"], own[0]["factor"] * 1.3 / 1.5, rtol=1e-14)
     assert "x (1 + I)" in movload(*asked, "--impact", "0").out
+
+
+def test_an_allowance_answers_the_files_question_mark(asked: list[Any], tmp_path: Path) -> None:
+    """But no other one."""
+    open_file = changed(BY_JOINTS, ("impact = 0.3", 'impact = "?"'))
+    path = written(tmp_path, open_file, "open.toml")
+    assert_refused(movload("rate", path, asked[2]), 'rating.impact (still holds "?")', place=path)
+    answered = movload("rate", path, asked[2], "--impact", "0.3", "--json").json()["rows"]
+    assert answered == movload(*asked, "--json").json()["rows"]
+    more = written(tmp_path, changed(open_file, ("deck = 4.0", 'deck = "?"')), "more.toml")
+    refused = movload("rate", more, asked[2], "--impact", "0.3")
+    assert_refused(refused, 'permanent.deck (still holds "?")', place=more)
+    assert "rating.impact" not in refused.err
 
 
 def test_permanent_load_alone_may_use_everything(asked: list[Any], tmp_path: Path) -> None:

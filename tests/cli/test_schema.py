@@ -15,8 +15,8 @@ SUBJECTS = {
     "vehicle": (["title", "kind", "source", "units", "axles", "headings"], ["title", "kind", "units", "axles"]),
     "ratings": (
         [
-            "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "cautions", "sources",
-            "rows",
+            "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "uplifts", "cautions",
+            "sources", "rows",
         ],
     )
     * 2,

@@ -34,13 +34,42 @@ def test_it_writes_a_file_that_can_be_drawn_and_says_how(tmp_path: Path) -> None
 
 def test_it_asks_for_what_was_left_out(tmp_path: Path) -> None:
     path = tmp_path / "mill.toml"
-    done = movload("start", path, stdin="pratt\n4x3.2\n0 2 2.2 2 0\npony\n")
+    done = movload("start", path, stdin="pratt\n4x3.2\npony\n0 2 2.2 2 0\n")
     assert done.code == 0
-    for question in ("Form", "Panel lengths from the left", "Depths at the panel points", "Deck (through, pony, deck)"):
+    for question in (
+        "Form",
+        "Panel lengths from the left",
+        "Depths at the panel points (5",
+        "Deck (through, pony, deck)",
+    ):
         assert question in done.out
     again = tmp_path / "again.toml"
     assert start(again).code == 0
     assert again.read_text() == path.read_text()
+
+
+@pytest.mark.parametrize(
+    ("form", "panels", "depths", "question"),
+    [
+        ("warren", "4x3.2", "2 2.2 2.2 2", "Depths at the middle of each panel (4): "),
+        ("baltimore", "8x3.2", "0 4 4.4 4 0", "Depths at the main panel points, every second one (5; 0 = tapers"),
+        ("k", "6x3.2", "0 4 4.4 4.6 4.4 4 0", "Depths at the panel points (7; 0 = tapers to a point): "),
+    ],
+)
+def test_it_asks_for_the_depths_that_the_form_takes(
+    tmp_path: Path, form: str, panels: str, depths: str, question: str
+) -> None:
+    path = tmp_path / "mill.toml"
+    done = movload("start", path, "--form", form, "--panels", panels, "--deck", "through", stdin=f"{depths}\n")
+    assert (done.code, done.err) == (0, "")
+    assert question in done.out
+    assert movload("draw", path).code == 0
+
+
+def test_what_was_given_is_refused_before_depths_are_asked_for(tmp_path: Path) -> None:
+    given = {"--form": "pratt", "--panels": "4xthree", "--deck": "pony"}
+    done = movload("start", tmp_path / "mill.toml", *(word for pair in given.items() for word in pair))
+    assert_refused(done, '--panels[0]: "three" is not a number with a unit')
 
 
 def test_nobody_answers(tmp_path: Path) -> None:
@@ -130,10 +159,11 @@ def test_feet_bring_kips_and_inches(tmp_path: Path) -> None:
         'force = "kip"',
         'section = "in" ',
         "panels = [16.125, 16, 16, 16]",
-        "modulus = 29000",
+        'area = "3 in2"',
+        'modulus = "29000 ksi"',
     ):
         assert line in text
-    assert "490 lb/ft3 is common for steel" in text
+    assert '"490 lb/ft3" is common for steel' in text
     assert movload("draw", path).code == 0
 
 

@@ -14,16 +14,16 @@ if TYPE_CHECKING:
 
 FIELDS = ["format", "title", "units", "rows"]
 ROW = [
-    "vehicle", "part", "row", "kind",
-    "highest", "highest_position", "highest_heading", "highest_axle",
-    "lowest", "lowest_position", "lowest_heading", "lowest_axle",
+    "vehicle", "part", "row", "kind", "unit",
+    "highest", "highest_position", "highest_heading", "highest_axle", "highest_station_name",
+    "lowest", "lowest_position", "lowest_heading", "lowest_axle", "lowest_station_name",
     "highest_placement", "lowest_placement",
 ]  # fmt: skip
 PLACEMENT = ["x", "load", "share", "impact"]
 HEADS = [
     "vehicle", "part", "row", "kind", "unit",
-    "highest", "highest_position [m]", "highest_heading", "highest_axle",
-    "lowest", "lowest_position [m]", "lowest_heading", "lowest_axle",
+    "highest", "highest_position [m]", "highest_heading", "highest_axle", "highest_station_name",
+    "lowest", "lowest_position [m]", "lowest_heading", "lowest_axle", "lowest_station_name",
 ]  # fmt: skip
 
 
@@ -51,7 +51,8 @@ def test_a_hanger_takes_the_axle_over_it_and_what_its_panels_bring(asked: list[o
     (row,) = movload(*asked, "--row", "L1-U1", "--json").json()["rows"]
     assert row["row"] == "U1-L1"
     assert_allclose(row["highest"], 45e3 + 20e3 * 0.6 / 3.3, rtol=1e-13)
-    assert (row["highest_heading"], row["highest_axle"]) == (1, 2)
+    assert (row["highest_heading"], row["highest_axle"], row["highest_station_name"]) == (1, 2, "L1")
+    assert row["unit"] == "N"
     assert_allclose(row["highest_placement"]["x"], [5.8, 3.1, -1.0], rtol=1e-14)
     assert row["highest_placement"]["load"] == [20e3, 45e3, 30e3]
     assert_allclose(row["highest_position"], 5.8, rtol=1e-14)
@@ -59,13 +60,8 @@ def test_a_hanger_takes_the_axle_over_it_and_what_its_panels_bring(asked: list[o
 
 def test_a_row_that_feels_nothing_has_nulls(asked: list[object]) -> None:
     (row,) = movload(*asked, "--row", "U1-L1", "--json").json()["rows"]
-    assert [row[f"lowest{part}"] for part in ("", "_position", "_heading", "_axle", "_placement")] == [
-        0,
-        None,
-        0,
-        None,
-        None,
-    ]
+    parts = ("", "_position", "_heading", "_axle", "_station_name", "_placement")
+    assert [row[f"lowest{part}"] for part in parts] == [0, None, 0, None, None, None]
 
 
 def test_text_has_one_table_a_vehicle(asked: list[object]) -> None:
@@ -88,6 +84,7 @@ def test_csv_carries_units_and_the_numbers_of_the_json(asked: list[object], tmp_
     for texts, row in zip(rows, said, strict=True):
         read = dict(zip(HEADS, texts, strict=True))
         assert read["unit"] == ("mm" if row["kind"] == "down" else "kN")
+        assert row["unit"] == ("m" if row["kind"] == "down" else "N")
         for side in ("highest", "lowest"):
             # rtol: one division and one multiplication by the unit
             scale = 1e-3 if row["kind"] == "down" else 1e3
@@ -95,6 +92,7 @@ def test_csv_carries_units_and_the_numbers_of_the_json(asked: list[object], tmp_
             position = row[f"{side}_position"]
             assert read[f"{side}_position [m]"] == ("" if position is None else str(position))
             assert read[f"{side}_heading"] == str(row[f"{side}_heading"])
+            assert read[f"{side}_station_name"] == (row[f"{side}_station_name"] or "")
 
 
 def test_one_heading_only_is_never_worse_than_both(asked: list[object], tmp_path: Path) -> None:

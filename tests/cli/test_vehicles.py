@@ -60,7 +60,8 @@ def test_one_vehicle_axle_by_axle(tmp_path: Path) -> None:
     assert "45.00 kN (10.12 kip)" in done.out
     assert "2.70 m (8.86 ft)" in done.out
     assert out.read_text().splitlines() == [
-        "axle,load [kN],after [m],gauge [m]", "1,20.0,,1.8", "2,45.0,2.7,1.9", "3,30.0,4.1,1.9",
+        "axle,load [kN],after [m],gauge [m],after_least [m],after_greatest [m]",
+        "1,20.0,,1.8,,", "2,45.0,2.7,1.9,2.7,2.7", "3,30.0,4.1,1.9,4.1,4.1",
     ]  # fmt: skip
     (row,) = movload("vehicles", path, "--json").json()["rows"]
     assert row["cases"] == [
@@ -69,6 +70,20 @@ def test_one_vehicle_axle_by_axle(tmp_path: Path) -> None:
             "headings": [1, -1],
         }
     ]  # fmt: skip
+
+
+def test_a_range_of_spacings_is_told_whole(tmp_path: Path) -> None:
+    """14 to 30 ft are 4.2672 to 9.144 m."""
+    ranged = changed(CART, ("after = 4.1", 'after = ["14 ft", "30 ft"]'))
+    path, out = written(tmp_path, ranged, "cart.toml"), tmp_path / "out.csv"
+    done = movload("vehicles", path, "--csv", out)
+    assert "4.27 to 9.14 m (14.00 to 30.00 ft)" in done.out
+    _, _, fixed, last = csv.reader(out.read_text().splitlines())
+    assert fixed[2] == "2.7"
+    assert last[2] == ""
+    assert_allclose([float(end) for end in last[4:]], [4.2672, 9.144], rtol=1e-15)
+    (row,) = movload("vehicles", path, "--json").json()["rows"]
+    assert_allclose(row["cases"][0]["spacings"][1], [4.2672, 9.144], rtol=1e-15)
 
 
 @pytest.mark.parametrize("name", ["HS20", "hs 20", "hs-20", "Hs_20"])

@@ -13,7 +13,7 @@ import movload
 from movload.bridge.layout import DECKS, FORMS, Layout, lay_out
 from movload.errors import InputError, MissingDataError
 from movload.files.read import bridge_from
-from movload.files.start import lengths_from, starter_text
+from movload.files.start import depths_question, lengths_from, starter_text
 from movload.units import UnitSystem
 
 METRIC, US = UnitSystem("m", "kN", "mm"), UnitSystem("ft", "kip", "in")
@@ -88,7 +88,9 @@ def test_filled_it_rates(form: str) -> None:
 @pytest.mark.parametrize("number", range(7))
 def test_one_open_place_is_enough_to_refuse(number: int) -> None:
     text = filled(starter_text("A bridge", layout("howe", "through"), METRIC))
-    answers = [match.span() for match in re.finditer("|".join(f'"{answer}"' for answer in ANSWERS.values()), text)]
+    answers = [
+        match.span() for match in re.finditer("|".join(f'(?<== )"{answer}"' for answer in ANSWERS.values()), text)
+    ]
     start, end = answers[number * len(answers) // 7]
     bridge = bridge_from(f'{text[:start]}"?"{text[end:]}', "begun.toml")
     assert len(bridge.missing) == 1
@@ -96,11 +98,43 @@ def test_one_open_place_is_enough_to_refuse(number: int) -> None:
         movload.solve(bridge)
 
 
+@pytest.mark.parametrize(("length", "force"), [("m", "kN"), ("ft", "kip"), ("ft", "kN"), ("m", "t"), ("m", "N")])
+@pytest.mark.parametrize("section", ["", "cm", "m", "in"])
+def test_steel_is_steel_in_any_units(length: str, force: str, section: str) -> None:
+    """Stand-ins of modulus (200 GPa), density (7850 kg/m3) and area (about 2000 mm2), read back.
+
+    rtol: 29000 ksi is 199.95 GPa and 490 lb/ft3 is 7849 kg/m3; an area of 3 in2 is 1935 mm2.
+    """
+    units = UnitSystem.beside(length, force=force, section=section)
+    text = starter_text("A bridge", layout("pratt", "pony"), units)
+    common = re.search(r'density: ("[^"]+") is common for steel', text)
+    assert common
+    bridge = bridge_from(text.replace('density = "?"', f"density = {common[1]}"), "begun.toml")
+    assert bridge.units == units
+    for member in bridge.truss.members:
+        assert_allclose(member.modulus, 200e9, rtol=0.01)
+        assert_allclose(member.area, 2000e-6, rtol=0.05)
+        assert member.density is not None
+        assert_allclose(member.density, 7850, rtol=0.01)
+
+
+@pytest.mark.parametrize("form", FORMS)
+def test_the_question_for_depths_says_how_many_the_form_takes(form: str) -> None:
+    """The number asked for is the one that a layout takes, and one more is refused."""
+    begun = layout(form, "pony")
+    question = depths_question(form, begun.panels.size)
+    (count,) = re.findall(r"\d+(?=[;)])", question)
+    assert int(count) == begun.depths.size
+    where = {"warren": "middle of each panel", "baltimore": "main panel points, every second one"}
+    assert where.get(form, "Depths at the panel points") in question
+    assert ("tapers" in question) == (form != "warren")  # every depth of a warren is above 0
+
+
 def test_comments_say_what_the_units_are_and_what_is_common() -> None:
     text = starter_text("A bridge", layout("pratt", "pony"), METRIC)
     assert text.startswith('# A bridge: begun with "movload start". Fill every "?"')
     assert "areas in mm2, moduli in kN/mm2" in text
-    assert "7850 kg/m3 is common for steel" in text
+    assert 'density: "7850 kg/m3" is common for steel' in text
     assert "never assume them equal" in text
 
 

@@ -19,12 +19,15 @@ from rating.bridges import (
     PANELS,
     SHARE,
     brook,
+    part_of,
     rated,
+    solved_by_hand,
     weightless,
 )
 from strategies import vehicles
 
 from movload import Crossing, Loading, Support, Truss, Vehicle, judge, rate, solve
+from movload.bridge.across import Across
 from movload.bridge.bridge import PermanentLoads, Permitted
 from movload.errors import InputError
 from movload.rating.factor_sets import FactorSet, Level
@@ -243,11 +246,7 @@ def test_strength_zero_lets_nothing_cross_that_compresses() -> None:
     assert not ratings.passes
 
 
-def test_each_vehicles_source_is_noted_once_after_the_bridges_own_notes() -> None:
-    solved = solve(brook())
-    recalled = Loading.of(CART, source="a handbook, from memory")
-    read = Loading.of(Vehicle("lorry", [60e3], []), source="read in its log book")
-    notes = judge(solved, [Crossing(recalled, "left", 1.0), read, Crossing(recalled, "right", -1.0)]).notes
-    assert notes[: len(solved.notes)] == solved.notes
-    assert [(note.code, note.subject) for note in notes[len(solved.notes) :]] == [("vehicle-source", "cart")]
-    assert notes[-1].text == "axles and spacings: a handbook, from memory"
+def test_a_live_effect_that_is_no_number_is_refused() -> None:
+    part = part_of("truss", {"L0-L1": [0.0, 1.0, 0.0]}, [0.0, 4.0, 8.0], Across.typed(1.0))
+    with pytest.raises(InputError, match=r"^Hand bridge: a live effect is not a finite number$"):
+        judge(solved_by_hand([part], impact=[(math.nan, 0.0)]), [CART])

@@ -79,6 +79,16 @@ def test_two_parts_are_stacked_row_by_row() -> None:
         peaks.part_of(3)
 
 
+def test_of_several_parts_coverage_names_each_rows_own() -> None:
+    """Two trusses have a "tie" each; only the left one's strength is known."""
+    across = Across(np.array([-2.0, 2.0]), np.array([0.0, 1.0]))
+    parts = [part_of(title, {"tie": [0.0, 1.0, 0.0]}, [0.0, 4.0, 8.0], across) for title in ("left", "right")]
+    solved = solved_by_hand(parts, strength=[(100e3, 1e3), (float("nan"), 1e3)])
+    coverage = judge(solved, [Crossing(Loading.of(CART), "centre")]).coverage
+    assert (coverage.full, coverage.partly, coverage.none) == (("left tie",), (), ("right tie",))
+    assert judge(solved_by_hand(parts[:1]), [Crossing(Loading.of(CART), "centre")]).coverage.full == ("tie",)
+
+
 def test_a_wheel_beside_the_deck_is_refused() -> None:
     part = part_of(
         "left", {"tie": [0.0, 1.0, 0.0]}, [0.0, 4.0, 8.0], Across(np.array([-2.0, 2.0]), np.array([0.0, 1.0]))

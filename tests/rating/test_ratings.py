@@ -12,9 +12,10 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
-from rating.bridges import CART, bars, brook, brook_truss, one_bar
+from rating.bridges import CART, bars, brook, brook_truss, one_bar, part_of, solved_by_hand
 
 from movload import Case, Loading, Truss, Vehicle, judge, rate
+from movload.bridge.across import Across
 from movload.errors import MissingDataError
 from movload.rating.factor_sets import FactorSet, Level
 from movload.report.phrases import factor_text
@@ -157,22 +158,14 @@ def test_the_unrounded_rating_decides(strength: float, passes: bool, text: str) 
     assert factor_text(ratings.worst.factor) == text
 
 
-def test_one_level_below_one_is_enough_to_fail() -> None:
-    method = FactorSet("two", (Level("upper", 1.0, 1.0), Level("lower", 1.0, 1.5)), "Two levels.", "invented")
-    solved = one_bar(strength=(50e3, 0.0))
-    ratings = judge(replace(solved, method=method, strength=np.repeat(solved.strength, 2, axis=0)), [AXLE])
-    assert [ratings.governing(0, level=level).factor for level in (0, 1)] == [1.25, 50 / 60]
-    assert ratings.rows(0, level=1)[0].level == "lower"
-    assert not ratings.passes
-
-
 def test_permanent_use_counts_the_levels_margin() -> None:
     """80 kN of 100 kN with a margin of 1.3 is 104 %: RF 0, and the figure said is what makes it so."""
     method = FactorSet("margin", (Level("margin", 1.3, 1.7),), "Margin.", "invented")
     worst = judge(replace(one_bar(permanent=80e3), method=method), [AXLE]).worst
     assert (worst.sense, worst.factor) == ("tension", 0.0)
     assert_allclose(worst.permanent_use, 1.04, rtol=1e-15)
-    assert (worst.permanent_factor, worst.live_factor) == (1.3, 1.7)
+    assert_allclose(worst.pushed, 104e3, rtol=1e-15)
+    assert worst.live_factor == 1.7
 
 
 def test_permanent_load_that_relieves_uses_nothing() -> None:
@@ -199,6 +192,33 @@ def test_nothing_felt_has_no_safe_weight() -> None:
 def test_the_weight_that_moves_is_the_heaviest_case() -> None:
     cases = tuple(Case(f"{load:g}", Vehicle(f"{load:g}", [load], [])) for load in (20e3, 50e3, 30e3))
     assert judge(one_bar(), [Loading("lorry", "farm", cases)]).worst.safe_weight == 2.0 * 50e3
+
+
+@pytest.mark.parametrize("first", [0, 1])
+def test_the_safe_weight_is_that_of_the_case_that_governs(first: int) -> None:
+    """30 kN counted twice are 60 kN of effect, more than 40 kN counted once: 100 / 60 of the 30 kN that stand there."""
+    cases = [
+        Case("empty, hurried", Vehicle("light", [30e3], []), factor=2.0),
+        Case("laden", Vehicle("heavy", [40e3], [])),
+    ]
+    ratings = judge(one_bar(), [Loading("lorry", "farm", (cases[first], cases[1 - first]))])
+    assert ratings.worst.peak.case == "empty, hurried"
+    assert_allclose(ratings.worst.safe_weight, 100 / 60 * 30e3, rtol=1e-14)
+    assert ratings.crossings[0].loading.gross == 40e3
+
+
+def test_each_row_has_the_safe_weight_of_its_own_case() -> None:
+    """B0 is pulled most by the short vehicle's 50 kN, B1, whose line is level, by the long one's 3 x 30 kN."""
+    part = part_of("truss", {"B0": [0.0, 1.0, 0.0], "B1": [1.0, 1.0, 1.0]}, [0.0, 4.0, 8.0], Across.typed(1.0))
+    cases = (
+        Case("long", Vehicle("long", [30e3, 30e3, 30e3], [4.0, 4.0])),
+        Case("short", Vehicle("short", [50e3], [])),
+    )
+    ratings = judge(solved_by_hand([part]), [Loading("lorry", "farm", cases)])
+    short, long = (ratings.rating(0, row, 0) for row in (0, 1))
+    assert [short.peak.case, long.peak.case] == ["short", "long"]
+    assert_allclose([short.factor, short.safe_weight], [100 / 50, 100e3], rtol=1e-14)
+    assert_allclose([long.factor, long.safe_weight], [100 / 90, 100e3], rtol=1e-14)
 
 
 def test_what_has_no_strength_is_never_a_row() -> None:

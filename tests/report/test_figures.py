@@ -6,6 +6,7 @@ All bridges and vehicles are invented, in the invented Alder valley.
 from __future__ import annotations
 
 import itertools
+import re
 import subprocess
 import sys
 from functools import lru_cache
@@ -27,6 +28,7 @@ from movload.errors import InputError, UnknownNameError
 from movload.peaks.sweep import sweep
 from movload.report.drawing.ink import ACCENT, INK, LEAST_SIZE, PAPER
 from movload.report.drawing.labels import Board, Lettering, Spot, squeezed, wrapped
+from movload.report.drawing.left_out import DEPTH, ORDINATE, LeftOut, told_left_out
 from movload.report.drawing.line_strip import kinks, with_zeros
 from movload.report.drawing.train import load_levels
 from movload.report.drawing.words import figures, lengths
@@ -44,6 +46,11 @@ METRIC = UnitSystem("m", "kN", "mm")
 US = UnitSystem("ft", "kip", "in")
 TANKER = Vehicle("tractor + tanker", np.array([28e3, 62e3, 85e3, 85e3]), [2.8, 4.1, 1.5])
 LOW_LOADER = Vehicle("low-loader", np.array([60e3, 90e3, 90e3, 110e3, 110e3, 110e3]), [3.4, 1.4, 6.0, 1.5, 1.5])
+WORKS_TRAIN = Vehicle(
+    "works train",
+    1e3 * np.array([80, 160, 160, 160, 104, 104, 104, 104, 90, 90, 90, 90]),
+    [2.4, 1.2, 1.2, 2.7, 1.2, 1.2, 1.2, 2.6, 1.2, 1.2, 1.2],
+)
 LAYOUTS = (("pratt", 4), ("pratt", 6), ("warren", 12), ("pratt", 20), ("k", 8), ("baltimore", 16))
 WORST = {
     ("pratt", 4): "L1-L2",
@@ -52,6 +59,7 @@ WORST = {
     ("pratt", 20): "U2-L3",
     ("k", 8): "U2-M2",
     ("baltimore", 16): "U2-M3",
+    ("pratt", 48): "U2-L3",
 }
 
 
@@ -146,7 +154,15 @@ def test_every_joint_and_every_stressed_bar_is_labelled(form: str, count: int) -
     forces = lines.under(peak.placement.panel_loads(lines.stations)[:, None])[: len(truss.members), 0]
     stressed = int((np.abs(forces) >= 0.005 * np.abs(forces).max()).sum())
     assert sum(text.endswith((" T", " C")) and "kN" not in text for text in said) == stressed
-    assert not [text for text in said if "want of room" in text]
+    assert not announced(figure)
+
+
+def announced(figure: Figure) -> dict[str, int]:
+    """Return how many labels of each kind the caption says are not written, by the kind in the singular or plural."""
+    lead = "Not written for want of room:".replace(" ", r"\s+")  # the caption is broken into lines anywhere
+    told = re.search(rf"{lead}\s+(.*?)\.$", "\n".join(texts(figure)), re.DOTALL | re.MULTILINE)
+    parts = [part.split(" ", 1) for part in " ".join(told[1].split()).split("; ")] if told else []
+    return {kind.split(",")[0].removesuffix("s"): int(count) for count, kind in parts}
 
 
 def test_crowded_labels_are_left_out_and_the_figure_says_so() -> None:
@@ -156,8 +172,53 @@ def test_crowded_labels_are_left_out_and_the_figure_says_so() -> None:
     forces = 1e3 * np.round(123456.0 + np.arange(len(truss.members)))
     figure = peak_figure(truss, lines, peak, "U2-L3", METRIC, title="Alderwater", forces=forces)
     assert_readable(figure)
-    assert [text for text in texts(figure) if "not written for want of room" in text]
+    assert "up to 1235" in " ".join(texts(figure))  # the largest of them, 123 5.. T
+    written = [text for text in texts(figure) if re.fullmatch(r"1235\d\d T", text)]
+    assert len(written) + announced(figure)["bar force"] == len(truss.members) - 1
     assert [text for text in words(figure) if to_rgb(text.get_color()) == to_rgb(ACCENT)]
+
+
+@pytest.mark.parametrize("count", [20, 32])
+def test_what_is_not_written_is_counted_kind_by_kind(count: int) -> None:
+    """A long works train: what is written and what the caption says is not are all there is, with nothing twice."""
+    truss, _, lines = standing("pratt", count)
+    peak = sweep(lines, WORKS_TRAIN)["U2-L3"].highest
+    figure = peak_figure(truss, lines, peak, "U2-L3", METRIC, title="Alderwater")
+    assert_readable(figure)
+    said, missing, x = texts(figure), announced(figure), peak.placement.x
+    spacings = {f"{gap:.2f}" for gap in WORKS_TRAIN.spacings}
+    assert sum(text in spacings for text in said) + missing.get("axle spacing", 0) == x.size - 1
+    kinked = [station for station in lines.stations[kinks(lines["U2-L3"])] if not np.isclose(x, station).any()]
+    ordinates = [text for text in said if re.fullmatch(r"[+−]\d\.\d{3}", text)]
+    assert len(ordinates) + missing.get("influence ordinate", 0) == x.size + len(kinked)
+    black = [text.get_text() for text in words(figure) if to_rgb(text.get_color()) == to_rgb(INK)]
+    forces = lines.under(peak.placement.panel_loads(lines.stations)[:, None])[: len(truss.members), 0]
+    stressed = int((np.abs(forces) >= 0.005 * np.abs(forces).max()).sum())
+    assert sum(bool(re.fullmatch(r"\d+ [TC]", text)) for text in black) + missing.get("bar force", 0) == stressed - 1
+    assert missing["axle spacing"] > 0  # or there would be nothing to own up to
+    assert set(missing) <= {"axle spacing", "influence ordinate", "bar force"}
+
+
+@pytest.mark.parametrize("made", [elevation, three_lines])
+def test_an_elevation_and_influence_lines_own_up_too(made: Callable[[str, int], Figure]) -> None:
+    """48 panels: not every x finds room in its row."""
+    figure = made("pratt", 48)
+    assert_readable(figure)
+    (head,) = (text for text in words(figure) if text.get_text() == "x, m")
+    level = head.get_position()[1]
+    row = [text for text in words(figure) if abs(text.get_position()[1] - level) < 0.5]  # mm
+    missing = announced(figure)
+    assert missing["panel points' x"] > 0
+    assert len(row) - 1 + missing["panel points' x"] == 49
+
+
+def test_nothing_left_out_is_not_spoken_of() -> None:
+    for made in (elevation, three_lines, tanker_peak):
+        assert announced(shared(made, "pratt", 6)) == {}
+    assert told_left_out(LeftOut()) == told_left_out(LeftOut({ORDINATE: 0})) == ""
+    assert told_left_out(LeftOut({ORDINATE: 1, DEPTH: 2})) == (
+        "Not written for want of room: 1 influence ordinate; 2 depths."
+    )
 
 
 @pytest.mark.parametrize("form", ["pratt", "baltimore"])

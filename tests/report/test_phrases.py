@@ -8,9 +8,10 @@ from dataclasses import replace
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
-from rating.bridges import CART, brook, one_bar
+from rating.bridges import CART, brook, one_bar, part_of
 
 from movload import Vehicle, influence_lines, judge, rate, sweep
+from movload.bridge.across import Across
 from movload.rating.ratings import Coverage
 from movload.report.phrases import (
     CAUTIONS,
@@ -22,6 +23,7 @@ from movload.report.phrases import (
     quantity_of,
     rounded_down,
     standing_text,
+    uplift_texts,
     use_text,
     verdict_text,
     weight_text,
@@ -194,8 +196,24 @@ def test_where_a_vehicle_stands() -> None:
     assert standing_text(hanger, tuple(points)) == "axle 2 on L1"
     assert place_text(never, SI) == "off the bridge"
     assert standing_text(never, tuple(points)) == ""
+    assert standing_text(replace(hanger, lost=True), tuple(points)) == "axle 2 just off L1"
     assert place_text(replace(hanger, heading=1), SI) == "2.00 m →"
     assert place_text(replace(hanger, position=-3.2e-11), SI) == "0.00 m ←"
+
+
+def test_an_axle_that_has_just_left_is_not_said_to_stand_there() -> None:
+    """A line of 0, 1 and -1: 40 kN at midspan, 10 kN 4 m before it. On the last station it would relieve.
+
+    30 kN with it there, 10 kN when it stands at midspan itself: 40 kN at the most, with the front axle just off.
+    """
+    part = part_of("truss", {"L0-L1": [0.0, 1.0, -1.0]}, [0.0, 4.0, 8.0], Across.typed(1.0))
+    peak = sweep(part.response, Vehicle("pair", [10e3, 40e3], [4.0], headings=(1,)))["L0-L1"].highest
+    assert peak.value == pytest.approx(40e3, rel=1e-6)  # the rear axle is a hair beyond midspan
+    assert (peak.lost, peak.axle, peak.station) == (True, 0, 2)
+    assert standing_text(peak, ("L0", "L1", "L2")) == "axle 1 just off L2"
+    assert place_text(peak, SI) == "8.00 m →"
+    beside = sweep(part.response, Vehicle("pair", [10e3, 40e3], [3.0], headings=(-1,)))["L0-L1"].highest
+    assert (beside.lost, standing_text(beside, ("L0", "L1", "L2"))) == (False, "axle 2 on L1")
 
 
 @pytest.mark.parametrize(
@@ -209,7 +227,7 @@ def test_where_a_vehicle_stands() -> None:
         (
             Coverage(("a",), ("b",), (), ("floor",)),
             "1 of 2 members rated in every sense they feel; 1 in one sense only (b); floor not rated.",
-            "adequate only if the one member not fully rated is",
+            "adequate only if the member not fully rated is",
         ),
         (
             Coverage((), ("a",), tuple("bcdefgh"), ("floor", "deck")),
@@ -223,17 +241,43 @@ def test_where_a_vehicle_stands() -> None:
 )
 def test_what_an_answer_covers(coverage: Coverage, text: str, verdict: str) -> None:
     assert coverage_text(coverage) == text
-    assert verdict_text(1.0, coverage) == verdict
-    assert verdict_text(math.inf, coverage) == verdict
-    assert verdict_text(math.nextafter(1.0, 0.0), coverage) == "not adequate"
-    assert verdict_text(0.0, coverage) == "not adequate"
+    assert verdict_text(1.0, coverage, {}) == verdict
+    assert verdict_text(math.inf, coverage, {}) == verdict
+    for uplifts in ({}, {"L0 y": 5e3}):
+        assert verdict_text(math.nextafter(1.0, 0.0), coverage, uplifts) == "not adequate"
+        assert verdict_text(0.0, coverage, uplifts) == "not adequate"
+
+
+@pytest.mark.parametrize(
+    ("missing", "uplifts", "verdict"),
+    [
+        ((), {"L0 y": 5e3}, "adequate only if L0 is held down"),
+        ((), {"L0 y": 5e3, "L9 normal": 2e3}, "adequate only if L0, L9 is held down"),
+        (("a",), {"L0 y": 5e3}, "adequate only if the member not fully rated is and L0 is held down"),
+        (("a", "b"), {"L0 y": 1.0}, "adequate only if the 2 members not fully rated are and L0 is held down"),
+    ],
+)
+def test_a_bearing_that_lifts_makes_a_condition(
+    missing: tuple[str, ...], uplifts: dict[str, float], verdict: str
+) -> None:
+    assert verdict_text(1.0, Coverage(("z",), (), missing, ("floor",)), uplifts) == verdict
+
+
+def test_uplift_is_said_with_its_pull() -> None:
+    first, second = uplift_texts({"L0 y": 5.77e3, "L9 normal": 2 * KIP}, SI)
+    assert first == (
+        "Uplift: L0 y is pulled up with 5.8 kN (permanent and live); whether anything holds it down is not checked."
+    )
+    assert second.startswith("Uplift: L9 normal is pulled up with 8.9 kN")
+    assert uplift_texts({"L9 normal": 2 * KIP}, US)[0].startswith("Uplift: L9 normal is pulled up with 2.0 kip")
+    assert uplift_texts({}, SI) == []
 
 
 def test_the_verdict_is_the_ratings_own() -> None:
     """What is told as adequate without a condition is exactly what passes."""
     for load in (40e3, 4e5, 4e6):
         ratings = rate(brook(), [Vehicle("axle", [load], [])])
-        adequate = verdict_text(ratings.worst.factor, ratings.coverage).startswith("adequate, ")
+        adequate = verdict_text(ratings.worst.factor, ratings.coverage, ratings.uplifts).startswith("adequate, ")
         assert adequate is ratings.passes
 
 
@@ -241,3 +285,4 @@ def test_the_cautions_say_what_was_not_checked() -> None:
     said = " ".join(CAUTIONS)
     for word in ("qualified engineer", "connections", "bearings", "foundations", "hidden section loss", "local codes"):
         assert word in said
+    assert "Bars are taken to pull and to push: rods that only pull (counters) are not modelled." in CAUTIONS

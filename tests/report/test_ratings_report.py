@@ -13,9 +13,9 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 import pytest
 from numpy.testing import assert_allclose
-from rating.bridges import CART, brook, one_bar, part_of, solved_by_hand
+from rating.bridges import CART, bars, brook, brook_truss, one_bar, part_of, solved_by_hand
 
-from movload import Crossing, Loading, Vehicle, judge, rate, solve
+from movload import Crossing, Loading, Support, Truss, Vehicle, judge, rate, solve
 from movload.bridge.across import Across
 from movload.bridge.bridge import PermanentLoads, Permitted
 from movload.files.read import bridge_from
@@ -71,8 +71,8 @@ def test_json_is_the_published_document() -> None:
     RatingsDocument.model_validate(read)
     assert (read["format"], read["title"]) == ("movload.ratings/1", "Brook bridge")
     assert list(read) == [
-        "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "cautions", "sources",
-        "rows",
+        "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "uplifts", "cautions",
+        "sources", "rows",
     ]  # fmt: skip
     assert list(read["rows"][0]) == [
         "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "safe_weight",
@@ -82,6 +82,8 @@ def test_json_is_the_published_document() -> None:
     assert list(read["crossings"][0]) == ["title", "kind", "weight", "place", "source"]
     assert read["units"] == {"force": "N", "length": "m"}
     assert read["sources"] == ["brook.toml"]
+    assert read["uplifts"] == {}
+    assert read["cautions"] == list(CAUTIONS)
 
 
 def test_json_rows_are_the_ratings_to_the_last_bit() -> None:
@@ -133,7 +135,7 @@ def test_the_summary_has_one_line_a_crossing_with_its_answer() -> None:
     ratings = judge(one_bar(permanent=20e3), [AXLE, Vehicle("lorry", [90e3, 10e3], [9.0])])
     head, _, axle, lorry = lines_of(summary(ratings))
     assert re.split(r"\s{2,}", head.strip()) == [
-        "crossing", "weighs", "RF", "answer", "governed by", "safe weight of this vehicle", "worst with",
+        "crossing", "weighs", "RF", "answer", "governed by", "safe weight", "worst with",
     ]  # fmt: skip
     assert re.split(r"\s{2,}", axle) == [
         "axle", "40.0 kN", "2.00", "adequate, for the members rated", "L0-L1 tension", "8.1 t (8.9 short tons)",
@@ -212,7 +214,19 @@ def test_the_equation_shows_the_levels_margins() -> None:
     method = FactorSet("lf", (Level("inventory", 1.3, 2.17),), "One level.", "from memory")
     solved = replace(one_bar(permanent=20e3, strength=(100e3, 1.0)), method=method)
     equation = sum_lines(judge(solved, [AXLE]).governing(0))[-1]
-    assert equation == "RF = (strength 100.00 - 1.3 x permanent (+20.00)) / 2.17 x live 40.00 kN = 0.85"  # 74 / 86.8
+    assert equation == "RF = (strength 100.00 - factored permanent (+26.00)) / 2.17 x live 40.00 kN = 0.85"  # 74 / 86.8
+
+
+def test_the_equation_shows_relief_as_it_counts() -> None:
+    """20 kN of relief counts whole without a word, and 18 kN as factored where the level cuts it to 0.9."""
+    for relieving, said in ((1.0, "permanent (-20.00)"), (0.9, "factored permanent (-18.00)")):
+        method = FactorSet("lf", (Level("lower", 1.3, relieving=relieving),), "One level.", "invented")
+        ratings = judge(replace(one_bar(permanent=-20e3, strength=(100e3, 1e9)), method=method), [AXLE])
+        assert f"RF = (strength 100.00 - {said}) / live 40.00 kN = " in sum_lines(ratings.rating(0, 0, 0))[-1]
+    pushed = judge(
+        replace(bars([-1.0], permanent=[-20e3], strength=[(1e9, 100e3)]), method=method), [AXLE]
+    ).governing(0)  # fmt: skip
+    assert sum_lines(pushed)[-1].startswith("RF = (strength 100.00 + factored permanent (-26.00)) / live 40.00 kN")
 
 
 def test_the_equation_of_a_bar_that_permanent_load_fills_says_why_it_is_zero() -> None:
@@ -254,6 +268,34 @@ def test_what_closes_every_answer() -> None:
     assert said[2].startswith("Note: One truss is rated with typed shares")
     assert said[3] == "Note, cart: axles and spacings: invented"
     assert said[4:] == [f"Caution: {caution}" for caution in CAUTIONS]
+
+
+def test_relief_that_a_rating_leans_on_is_said_once() -> None:
+    """B0 in tension leans on 20 kN of permanent compression, whichever crossing; the level counts 0.9 of it."""
+    method = FactorSet("lf", (Level("lower", 1.3, relieving=0.9),), "One level.", "invented")
+    solved = replace(bars([1.0], permanent=[-20e3], strength=[(60e3, 1e9)]), method=method)
+    said = [line for line in closing(judge(solved, [AXLE, CART])) if "relieves" in line]
+    (line,) = said
+    assert line == (
+        "Note: permanent load relieves B0 tension by 18.0 kN; less of it than typed (a lighter deck, surfacing "
+        "removed) lowers that rating."
+    )
+    pushing = bars([1.0], permanent=[20e3], strength=[(60e3, 1e9)])
+    assert not [line for line in closing(judge(pushing, [AXLE])) if "relieves" in line]
+
+
+def test_uplift_is_said_and_is_in_the_document() -> None:
+    """L0 lifts when 120 kN stand on the overhang beyond L3: 5.77 kN by moments (tests/rating/test_uplift.py)."""
+    bare = brook_truss(0.0)
+    truss = Truss(bare.joints, bare.members, [Support("L0"), Support("L3", 0)])
+    ratings = rate(brook(truss=truss), [Vehicle("axle", [120e3], [])])
+    read = document(ratings)
+    RatingsDocument.model_validate(read)
+    assert read["uplifts"] == ratings.uplifts
+    assert list(read["uplifts"]) == ["L0 y"]
+    line = "Uplift: L0 y is pulled up with 5.8 kN (permanent and live); whether anything holds it down is not checked."
+    assert closing(ratings)[2] == line
+    assert re.split(r"\s{2,}", lines_of(summary(ratings))[2])[3] == "adequate only if L0 is held down"
 
 
 def test_what_is_not_rated_is_said() -> None:
@@ -322,12 +364,16 @@ def test_the_same_bridge_written_in_si_and_in_us_units() -> None:
 
 
 def test_every_crossing_is_in_the_document() -> None:
-    heavy = Crossing(Loading.of(Vehicle("lorry", [90e3], []), "farm", source="invented"), "centre line")
+    heavy = Crossing(Loading.of(Vehicle("lorry", [90e3], []), "farm", source="invented", notes=("One axle.",)))
     ratings = judge(solve(brook()), [CART, heavy])
     read = json.loads(ratings_json(ratings, [one for number in range(2) for one in ratings.rows(number)]))
     assert [one["title"] for one in read["crossings"]] == ["cart", "lorry"]
     assert read["crossings"][1] == {
-        "title": "lorry", "kind": "farm", "weight": 90e3, "place": "centre line", "source": "invented",
+        "title": "lorry", "kind": "farm", "weight": 90e3, "place": "typed share", "source": "invented",
     }  # fmt: skip
     assert np.unique([one["crossing"] for one in read["rows"]]).tolist() == ["cart", "lorry"]
-    assert [note["code"] for note in read["notes"]] == ["shares-typed", "vehicle-source", "vehicle-source"]
+    assert [note["code"] for note in read["notes"]] == [
+        "shares-typed", "vehicle-source", "vehicle-source", "vehicle",
+    ]  # fmt: skip
+    assert read["notes"][-1] == {"code": "vehicle", "subject": "lorry", "text": "One axle.", "source": ""}
+    assert "Note, lorry: One axle." in closing(ratings)

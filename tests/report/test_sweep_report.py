@@ -8,6 +8,7 @@ import json
 import re
 from typing import Any
 
+import numpy as np
 import pytest
 from numpy.testing import assert_allclose
 from rating.bridges import CART, brook
@@ -30,7 +31,7 @@ from movload.units import UnitSystem
 POINTS = ("L0", "L1", "L2", "L3", "L4")
 US = UnitSystem("ft", "kip", "in")
 KIP = 4448.2216152605  # N, exact (NIST SP 811, B.8, from memory)
-LORRY = Vehicle("lorry", [60e3, 90e3], [3.3])
+LORRY = Vehicle("lorry", np.array([60e3, 90e3]), [3.3])
 
 
 @pytest.fixture(scope="module")
@@ -66,9 +67,11 @@ def test_json_is_si_to_the_last_bit_with_every_placement(peaks: list[Peaks]) -> 
     assert (read["format"], read["title"]) == ("movload.peaks/1", "Brook bridge")
     assert read["units"] == {"force": "N", "length": "m", "deflection": "m"}
     assert list(read["rows"][0]) == [
-        "vehicle", "part", "row", "kind", "highest", "highest_position", "highest_heading", "highest_axle", "lowest",
-        "lowest_position", "lowest_heading", "lowest_axle", "highest_placement", "lowest_placement",
+        "vehicle", "part", "row", "kind", "unit", "highest", "highest_position", "highest_heading", "highest_axle",
+        "highest_station_name", "lowest", "lowest_position", "lowest_heading", "lowest_axle", "lowest_station_name",
+        "highest_placement", "lowest_placement",
     ]  # fmt: skip
+    assert [said["unit"] for said in read["rows"][:3]] == ["N", "N", "m"]
     for said, row in zip(read["rows"], rows, strict=True):
         for extreme in ("highest", "lowest"):
             peak = getattr(row.peaks, extreme)
@@ -76,11 +79,14 @@ def test_json_is_si_to_the_last_bit_with_every_placement(peaks: list[Peaks]) -> 
             assert said[f"{extreme}_heading"] == peak.heading
             if peak.heading:
                 assert said[f"{extreme}_axle"] == peak.axle + 1
+                assert said[f"{extreme}_station_name"] == POINTS[peak.station]
                 assert said[f"{extreme}_position"] == peak.position
                 assert said[f"{extreme}_placement"]["x"] == peak.placement.x.tolist()
                 assert said[f"{extreme}_placement"]["share"] == [1.0, 1.0]
             else:
-                assert [said[f"{extreme}_{key}"] for key in ("position", "axle", "placement")] == [None] * 3
+                assert [said[f"{extreme}_{key}"] for key in ("position", "axle", "station_name", "placement")] == [
+                    None
+                ] * 4
     assert read["rows"][1]["lowest"] == 0.0  # a tie is never pushed
 
 

@@ -27,7 +27,7 @@ def test_terms_add_up_to_every_peak(bridge: Laid, vehicle: Vehicle, impact: floa
     lines = influence_lines(bridge.truss, bridge.panel_points)
     allowance = np.outer(np.linspace(1.0, 0.3, len(lines.effects)), [impact, 0.5 * impact])
     train = Train("drawn", vehicle, np.full(vehicle.loads.size, share))
-    (part,) = part_peaks(lines, [(train,)], allowance)
+    (part,) = part_peaks(lines, [(train,)], allowance[None])
     peaks = stacked("drawn", [part])
     for row in range(len(lines.effects)):
         for side in (0, 1):

@@ -77,7 +77,12 @@ REFUSED: list[tuple[dict[str, Any], str]] = [
     ({"headings": ()}, "headings: headings are +1, -1 or both, got ()"),
     ({"headings": (1, 0)}, "headings: headings are +1, -1 or both, got (1, 0)"),
     ({"gauges": (1.9,)}, "gauges: one for each of 2 axles, got 1"),
+    ({"gauges": (1.9, 0.0)}, "gauges[1]: a gauge must be above 0, got 0.0 m"),
+    ({"gauges": (math.nan, 1.9)}, "gauges[0]: a gauge must be above 0, got nan m"),
     ({"left_shares": (0.5, 0.5, 0.5)}, "left_shares: one for each of 2 axles, got 3"),
+    ({"left_shares": (0.5, 1.01)}, "left_shares: a left share is 0 to 1, got (0.5, 1.01)"),
+    ({"left_shares": (-0.01, 0.5)}, "left_shares: a left share is 0 to 1, got (-0.01, 0.5)"),
+    ({"left_shares": (math.nan, 0.5)}, "left_shares: a left share is 0 to 1, got (nan, 0.5)"),
 ]  # fmt: skip
 
 
@@ -86,6 +91,10 @@ def test_a_vehicle_refuses(changed: dict[str, Any], message: str) -> None:
     given: dict[str, Any] = {"loads": [1e3, 2e3], "spacings": [3.0]} | changed
     with pytest.raises(InputError, match=re.escape(message)):
         Vehicle("refused", given.pop("loads"), given.pop("spacings"), **given)
+
+
+def test_an_axle_may_stand_on_its_left_or_right_wheels_alone() -> None:
+    assert Vehicle("tilted", [1e3, 2e3], [3.0], left_shares=(0.0, 1.0)).left_shares == (0.0, 1.0)
 
 
 def same(one: Vehicle, other: Vehicle) -> bool:
@@ -111,7 +120,9 @@ def test_loadings_and_crossings_come_back_from_pickle() -> None:
 
 
 def test_a_loading_of_one_vehicle() -> None:
-    loading = Loading.of(CART, "farm", source="invented")
+    loading = Loading.of(CART, "farm", source="invented", notes=("its drawbar is fixed",))
+    assert loading.notes == ("its drawbar is fixed",)
+    assert Loading.of(CART).notes == ()
     assert (loading.title, loading.kind, loading.gross, loading.source) == (CART.title, "farm", 175e3, "invented")
     (case,) = loading.cases
     assert (case.title, case.factor) == (CART.title, 1.0)

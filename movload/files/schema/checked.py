@@ -2,9 +2,10 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, Final, TypeVar
+from types import NoneType, UnionType
+from typing import TYPE_CHECKING, Annotated, Final, TypeVar, Union, cast, get_args, get_origin
 
-from pydantic import ValidationError
+from pydantic import BaseModel, ValidationError
 
 from movload.errors import InputError, MovloadError
 from movload.files.schema.quantities import STILL_HELD, Table, Units, shown
@@ -58,13 +59,13 @@ def _validated(model: type[Model], data: object, place: str, *, units: UnitSyste
     try:
         return model.model_validate(data, context={"units": units} if units else None)
     except ValidationError as error:
-        raise _our_error(error, place) from None
+        raise _our_error(error, model, place) from None
 
 
-def _our_error(error: ValidationError, outer: str) -> MovloadError:
+def _our_error(error: ValidationError, model: type[BaseModel], outer: str) -> MovloadError:
     """Return the first of pydantic's complaints in our words, with its place."""
     first = error.errors(include_url=False)[0]
-    where = ".".join(filter(None, (outer, _place(first["loc"]))))
+    where = ".".join(filter(None, (outer, _place(first["loc"], model))))
     context = first.get("ctx", {})
     cause = context.get("error")
     if first["input"] == PLACEHOLDER:
@@ -81,12 +82,46 @@ def _our_error(error: ValidationError, outer: str) -> MovloadError:
     return InputError(f"{rule}, got {shown(first['input'])}", place=where)
 
 
-def _place(location: tuple[int | str, ...]) -> str:
-    """Return a place as one writes it: members."top chord".bars[2]."""
-    text = ""
+def _place(location: tuple[int | str, ...], model: type[BaseModel]) -> str:
+    """Return a place as one writes it: members."top chord".bars[2].
+
+    Pydantic also puts words of its own in a location, and a joint may bear the same word: what a step is follows from
+    where in the model it stands, never from how it reads.
+    """
+    text, kind = "", cast("object", model)
     for step in location:
-        if isinstance(step, int):
+        kind, is_in_file = _within(kind, step)
+        if is_in_file and isinstance(step, int):
             text += f"[{step}]"
-        elif step not in {"SupportTable", "literal['pinned']", "tuple[float, float]", "float"} and "[" not in step:
-            text += f".{written_key(step)}" if text else written_key(step)
+        elif is_in_file:
+            text += f".{written_key(str(step))}" if text else written_key(str(step))
     return text
+
+
+def _within(kind: object, step: int | str) -> tuple[object, bool]:
+    """Return what kind of value stands one step further in, and whether the file has that step."""
+    kinds = _alternatives(kind)
+    if len(kinds) > 1:  # the step says which of them was tried; at most one of ours has anything within it
+        return next((one for one in kinds if _has_parts(one)), object), False
+    (only,) = kinds
+    if isinstance(only, type) and issubclass(only, BaseModel):
+        field = only.model_fields.get(str(step))
+        return (field.annotation, True) if field else (object, False)
+    if get_origin(only) is dict:
+        return get_args(only)[1], True
+    return next(iter(get_args(only)), object), isinstance(step, int)
+
+
+def _alternatives(kind: object) -> list[object]:
+    """Return the kinds of value among which pydantic chooses; None, which no file can hold, is not one of them."""
+    while get_origin(kind) is Annotated:
+        kind = get_args(kind)[0]
+    if get_origin(kind) not in {Union, UnionType}:
+        return [kind]
+    kinds = [one for one in get_args(kind) if one is not NoneType]
+    return kinds if len(kinds) > 1 else _alternatives(kinds[0])
+
+
+def _has_parts(kind: object) -> bool:
+    """Say whether a value of this kind is a table or a list."""
+    return get_origin(kind) in {dict, list, tuple} or (isinstance(kind, type) and issubclass(kind, BaseModel))

@@ -154,5 +154,4 @@ class Units(Table):
 
     def system(self) -> UnitSystem:
         """Return them as a unit system."""
-        feet = self.length in {"ft", "in", "feet", "inch", "inches"}
-        return UnitSystem(self.length, self.force, self.section or ("in" if feet else "mm"))
+        return UnitSystem.beside(self.length, force=self.force, section=self.section or "")

@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING, Any, Final
 from movload.report.drawing.elevation import PIN, bar_directions
 from movload.report.drawing.ink import HAIR, PAPER, POINT, THIN
 from movload.report.drawing.labels import Spot
+from movload.report.drawing.left_out import ANGLE, LeftOut
 from movload.report.drawing.words import plain
 
 if TYPE_CHECKING:
@@ -37,8 +38,9 @@ def draw_bearings(strip: Strip, truss: Truss) -> None:
         _draw_bearing(strip.sheet, support, _Stand(joint, _turn(truss, support)))
 
 
-def name_beds(strip: Strip, truss: Truss) -> None:
-    """Write the angle of each bed that is not level beside it; to be done when all that it must avoid is drawn."""
+def name_beds(strip: Strip, truss: Truss) -> LeftOut:
+    """Write the angle of each bed that is not level beside it, when all that it must avoid is drawn; count left out."""
+    left_out = LeftOut()
     for support in truss.supports:
         if support.slides is None or support.slides % 360 == 0:
             continue
@@ -49,7 +51,8 @@ def name_beds(strip: Strip, truss: Truss) -> None:
         spots = [
             Spot(*stand.off(along * (_BED + 1 + half), -_TALL + up * (_HATCH + 1.2 + half))) for along, up in places
         ]
-        strip.sheet.write(lettering, spots)
+        left_out[ANGLE] += not strip.sheet.write(lettering, spots)
+    return +left_out
 
 
 @dataclass(frozen=True, slots=True)

@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 import io
+import warnings
+from contextlib import contextmanager
 from typing import TYPE_CHECKING, Final
 
 import matplotlib as mpl
@@ -11,9 +13,10 @@ from movload.errors import InputError
 from movload.report.drawing.dimensions import row_height
 from movload.report.drawing.ink import ATTEMPTS, BOLD, EDGE, FINE, GREY, INK, MARGIN, STYLE
 from movload.report.drawing.labels import Lettering, Spot, squeezed, wrapped
+from movload.report.drawing.left_out import LeftOut
 
 if TYPE_CHECKING:
-    from collections.abc import Callable
+    from collections.abc import Callable, Iterator
 
     from matplotlib.figure import Figure
 
@@ -46,33 +49,45 @@ def figure_bytes(figure: Figure, suffix: str) -> bytes:
     if suffix not in SUFFIXES:
         raise InputError(f'a figure is written as {", ".join(SUFFIXES)}, got "{suffix}"', place="figure")
     held = io.BytesIO()
-    with mpl.rc_context(dict(STYLE)):
+    with inked():
         figure.savefig(held, format=suffix[1:], dpi=figure.dpi, metadata=_NO_DATE[suffix])
     return held.getvalue()
 
 
-def fitted(draw: Callable[[float, float], tuple[Sheet, int]]) -> Figure:
-    """Return the first attempt that leaves no label out; else the one that leaves out the fewest.
+@contextmanager
+def inked() -> Iterator[None]:
+    """Draw in the house's style; a sign that the font lacks becomes its empty box without a word on stderr."""
+    with mpl.rc_context(dict(STYLE)), warnings.catch_warnings():
+        warnings.filterwarnings("ignore", message=r"Glyph \d+ .* missing from font")
+        yield
+
+
+def fitted(draw: Callable[[float, float, LeftOut], tuple[Sheet, LeftOut]]) -> Figure:
+    """Return the first attempt that leaves no label out; else the one that leaves out the fewest, and says so.
 
     Each attempt has more room than the one before, so the first that fits is found by halving.
 
     Parameters
     ----------
     draw
-        Makes the figure on a sheet of a width [mm] in a letter size [pt] and says how many labels found no room.
+        Makes the figure on a sheet of a width [mm] in a letter size [pt], its caption owning up to the labels that are
+        known to be left out, and says which labels found no room.
     """
-    with mpl.rc_context(dict(STYLE)):
-        first, left_out = draw(*ATTEMPTS[0])
-        if not left_out:
+    nothing = LeftOut()
+    with inked():
+        first, left_out = draw(*ATTEMPTS[0], nothing)
+        if not left_out.total():
             return first.figure
-        best, fewest = draw(*ATTEMPTS[-1])
-        if fewest:
-            return (best if fewest < left_out else first).figure
+        best, fewest = draw(*ATTEMPTS[-1], nothing)
+        if fewest.total():  # once more: a longer caption lifts all that stands over it, and changes nothing else
+            is_last = fewest.total() < left_out.total()
+            told, _ = draw(*ATTEMPTS[-1 if is_last else 0], fewest if is_last else left_out)
+            return told.figure
         crowded, fits = 0, len(ATTEMPTS) - 1
         while fits - crowded > 1:
             middle = (crowded + fits) // 2
-            sheet, left_out = draw(*ATTEMPTS[middle])
-            crowded, fits, best = (middle, fits, best) if left_out else (crowded, middle, sheet)
+            sheet, left_out = draw(*ATTEMPTS[middle], nothing)
+            crowded, fits, best = (middle, fits, best) if left_out.total() else (crowded, middle, sheet)
     return best.figure
 
 

@@ -12,6 +12,7 @@ from matplotlib.patches import Polygon
 from movload.report.drawing.dimensions import row_height
 from movload.report.drawing.ink import FINE, FIRM, GREY, HAIR, PALE, PAPER, POINT
 from movload.report.drawing.labels import Lettering, Spot, squeezed
+from movload.report.drawing.left_out import ORDINATE, ZERO, LeftOut
 from movload.report.drawing.words import lengths, ordinate_decimals, ordinate_factor, ordinate_unit, sides, signed
 
 if TYPE_CHECKING:
@@ -114,31 +115,33 @@ def kinks(line: InfluenceLine) -> Ints:
     return np.asarray(found[np.argsort(-np.abs(line.ordinates[found]), kind="stable")])
 
 
-def write_kinks(strip: Strip, line: InfluenceLine, units: UnitSystem, *, taken: Floats) -> int:
+def write_kinks(strip: Strip, line: InfluenceLine, units: UnitSystem, *, taken: Floats) -> LeftOut:
     """Write the ordinate at each kink not already ``taken`` [m]; return how many found no room."""
-    left_out = 0
+    left_out = LeftOut()
     if not line.ordinates.any():
         lettering = strip.sheet.lettering("zero everywhere")
         middle = (strip.window.left + strip.window.right) / 2
-        left_out += not strip.sheet.write(lettering, around((middle, strip.zero), lettering, upward=True), GREY)
+        left_out[ORDINATE] += not strip.sheet.write(
+            lettering, around((middle, strip.zero), lettering, upward=True), GREY
+        )
     for station in kinks(line):
         x, y = float(line.stations[station]), float(line.ordinates[station])
         if not np.isclose(taken, x, rtol=0.0, atol=1e-6).any():
-            left_out += not write_ordinate(strip, line, (x, y), units)
-    return left_out
+            left_out[ORDINATE] += not write_ordinate(strip, line, (x, y), units)
+    return +left_out
 
 
-def write_zeros(strip: Strip, line: InfluenceLine, units: UnitSystem) -> int:
+def write_zeros(strip: Strip, line: InfluenceLine, units: UnitSystem) -> LeftOut:
     """Ring each zero inside a panel and write its x; return how many found no room."""
     x, _ = with_zeros(line.stations, line.ordinates)
-    left_out = 0
+    left_out = LeftOut()
     for zero in np.setdiff1d(x, line.stations):
         place = (strip.window.mm(float(zero)), strip.zero)
         strip.sheet.disc(place, _RING, PAPER, label=f"zero of {line.effect.name}")
         strip.sheet.board.keep_clear([place], _RING)
         lettering = strip.sheet.lettering(f"x = {lengths([float(zero)], units, rounded=True)[0]}")
-        left_out += not strip.sheet.write(lettering, around(place, lettering, upward=False), GREY)
-    return left_out
+        left_out[ZERO] += not strip.sheet.write(lettering, around(place, lettering, upward=False), GREY)
+    return +left_out
 
 
 def write_ordinate(

@@ -15,6 +15,7 @@ from movload.report.drawing.frame import HEADING, caption_height, draw_caption, 
 from movload.report.drawing.influence_sheet import draw_stations
 from movload.report.drawing.ink import ACCENT, BOLD, FINE, FIRM, GREY, HAIR, INK, MARGIN
 from movload.report.drawing.labels import Lettering
+from movload.report.drawing.left_out import ORDINATE, LeftOut
 from movload.report.drawing.line_strip import Band, draw_line, name_line, write_kinks, write_ordinate, write_zeros
 from movload.report.drawing.peak_subject import Subject
 from movload.report.drawing.sheet import Sheet, Window
@@ -87,7 +88,7 @@ def peak_figure(  # noqa: PLR0913 - the caller's own words and forces are keywor
         )
     deck = DeckLine.under(truss, lines)
     subject = Subject(truss, deck, lines[key], peak, shown, units, title, caption)
-    return fitted(lambda width, size: _drawn(subject, width, size))
+    return fitted(lambda width, size, known: _drawn(subject, width, size, known))
 
 
 def _vehicle_forces(truss: Truss, lines: InfluenceLines, peak: Peak) -> Floats:
@@ -110,22 +111,23 @@ class Places:
     top: float
 
 
-def _drawn(subject: Subject, width: float, size: float) -> tuple[Sheet, int]:
-    """Draw one attempt; return the sheet and how many labels found no room on it."""
+def _drawn(subject: Subject, width: float, size: float, known: LeftOut) -> tuple[Sheet, LeftOut]:
+    """Draw one attempt whose caption tells the ``known`` to be left out; return the sheet and what found no room."""
     truss, deck, row = subject.truss, subject.deck, row_height(size)
     first, last, low, high = deck.extent(truss)
     train = Train.of(subject.peak, deck.stations)
     first, last = train.extent(first, last)
     window = Window.fitting(first, last, width, steepest=_TALLEST / (high - low))
     plan = TrainPlan.of(train, window, subject.units, size)
-    foot = caption_height(subject.told(), width, size)
+    caption = subject.told(known)
+    foot = caption_height(caption, width, size)
     line = foot + (3 if subject.is_stressed else 2) * row + 3.0
     level = line + _LINE + plan.below
     zero = level + (0.0 if subject.is_off else plan.above) + _BELOW - low * window.scale
     places = Places(foot, line, level, zero, zero + high * window.scale + _ABOVE + over(truss))
     sheet = Sheet(width, places.top + _ANSWER + HEADING, size)
     draw_heading(sheet, subject.title, "")
-    draw_caption(sheet, subject.told())
+    draw_caption(sheet, caption)
     _write_answer(sheet, subject)
     left_out = _draw_strips(sheet, window, subject, plan=plan, places=places)
     return sheet, left_out
@@ -138,14 +140,14 @@ def _write_answer(sheet: Sheet, subject: Subject) -> None:
     sheet.write_from(sheet.lettering(subject.placed()), end + 6.0, level)
 
 
-def _draw_strips(sheet: Sheet, window: Window, subject: Subject, *, plan: TrainPlan, places: Places) -> int:
-    """Draw truss, train and influence line, then write on them; return how many labels found no room."""
+def _draw_strips(sheet: Sheet, window: Window, subject: Subject, *, plan: TrainPlan, places: Places) -> LeftOut:
+    """Draw truss, train and influence line, then write on them; return which labels found no room."""
     line, units = subject.line, subject.units
     elevation = sheet.strip(window, places.zero, window.scale)
     band = Band(places.line, _LINE).strip(sheet, window, line)
     draw_line(band, line)
     name_line(band, line, units, subject.truss)
-    left_out = 0
+    left_out = LeftOut()
     if not subject.is_off:
         deck = sheet.strip(window, places.deck, window.scale)
         _draw_deck(deck, subject)
@@ -154,9 +156,10 @@ def _draw_strips(sheet: Sheet, window: Window, subject: Subject, *, plan: TrainP
     on = plan.train.x[plan.train.on]
     left_out += write_kinks(band, line, units, taken=on) + write_zeros(band, line, units)
     left_out += draw_stations(sheet, window, subject.deck, units, reach=(places.line, places.zero))
-    unnamed, unwritten = draw_stressed(elevation, subject)
-    draw_key(sheet, subject, places.foot, unwritten)
-    return left_out + unnamed + len(unwritten)
+    left_out += draw_stressed(elevation, subject)
+    if subject.is_stressed:
+        draw_key(sheet, places.foot)
+    return left_out
 
 
 def _draw_deck(strip: Strip, subject: Subject) -> None:
@@ -170,7 +173,7 @@ def _draw_deck(strip: Strip, subject: Subject) -> None:
     strip.sheet.board.keep_clear([first, last], BOLD / 2)
 
 
-def _draw_stems(band: Strip, deck: Strip, subject: Subject, train: Train) -> int:
+def _draw_stems(band: Strip, deck: Strip, subject: Subject, train: Train) -> LeftOut:
     """Draw a stem under each axle on the bridge with its ordinate; return how many ordinates found no room."""
     sheet = band.sheet
     on = np.unique(train.x[train.on])
@@ -183,8 +186,8 @@ def _draw_stems(band: Strip, deck: Strip, subject: Subject, train: Train) -> int
         sheet.board.keep_clear([tip], _DOT)
         sheet.stroke([deck.mm(float(x), 0.0), max(foot, tip, key=lambda end: end[1])], FINE, GREY, zorder=-4,
                      linestyle=(0, (4, 2)))  # fmt: skip
-    left_out = 0
+    left_out = LeftOut()
     for number in np.argsort(-np.abs(ordinates), kind="stable"):
         point = (float(on[number]), float(ordinates[number]))
-        left_out += not write_ordinate(band, subject.line, point, subject.units, bold=True)
-    return left_out
+        left_out[ORDINATE] += not write_ordinate(band, subject.line, point, subject.units, bold=True)
+    return +left_out

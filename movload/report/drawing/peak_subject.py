@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from movload.report.drawing.left_out import told_left_out
 from movload.report.drawing.words import effect_value, figures, lengths, origin
 from movload.report.phrases import ARROWS, standing_text
 
@@ -15,6 +16,7 @@ if TYPE_CHECKING:
     from movload.bridge.truss import Truss
     from movload.peaks.peaks import Peak
     from movload.report.drawing.deck_line import DeckLine
+    from movload.report.drawing.left_out import LeftOut
     from movload.statics.influence import InfluenceLine
     from movload.units import UnitSystem
 
@@ -74,14 +76,14 @@ class Subject:
         standing = standing_text(self.peak, tuple(name or "the abutment" for name in self.deck.names))
         return f"front axle at x = {front} {self.units.length}, {toward}, {standing}"
 
-    def told(self) -> str:
-        """Return the caption: what the forces are, the units, what the line is, where x starts."""
+    def told(self, left_out: LeftOut) -> str:
+        """Return the caption: what the forces are, the units, what the line is, where x starts, what is not written."""
         forces = f"{(self.caption or self._vehicle_alone()).rstrip('.')}. " if self.caption or self.is_stressed else ""
         units = f"Forces in {self.units.force}, lengths in" if self.is_stressed else "Lengths in"
         under = "" if self.is_off else ", with its ordinates under the axles"
         return (
             f"{forces}Influence line: {self.line.effect.name} per unit load standing at x{under}. "
-            f"{units} {self.units.length}; {origin(self.truss, self.units)}."
+            f"{units} {self.units.length}; {origin(self.truss, self.units)}. {told_left_out(left_out)}"
         )
 
     @property

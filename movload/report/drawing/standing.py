@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
@@ -12,6 +13,7 @@ from movload.report.drawing.dimensions import dimension_string, row_height, row_
 from movload.report.drawing.elevation import PLAIN_BAR, bar_spots, draw_bars, draw_joints, name_joints
 from movload.report.drawing.frame import HEADING, caption_height, draw_caption, draw_heading, fitted
 from movload.report.drawing.ink import FAINT, FIRM, HAIR
+from movload.report.drawing.left_out import BAR_NAME, DEPTH, JOINT_NAME, LENGTH, STATION, LeftOut, told_left_out
 from movload.report.drawing.sheet import Sheet, Window
 from movload.report.drawing.words import lengths, origin
 
@@ -56,26 +58,35 @@ def elevation_figure(truss: Truss, panel_points: Sequence[PanelPoint], units: Un
         Panel points that are not joints, or not in order.
     """
     deck = DeckLine.of(truss, panel_points)
-    return fitted(lambda width, size: _drawn(truss, deck, units, title=title, paper=(width, size)))
+    asked = _Asked(truss, deck, units, title)
+    return fitted(lambda width, size, known: _drawn(asked, width, size, known))
 
 
-def _drawn(
-    truss: Truss, deck: DeckLine, units: UnitSystem, *, title: str, paper: tuple[float, float]
-) -> tuple[Sheet, int]:
-    """Draw one attempt; return the sheet and how many labels found no room on it."""
-    width, size = paper
+@dataclass(frozen=True, slots=True, eq=False)
+class _Asked:
+    """What one elevation shows."""
+
+    truss: Truss
+    deck: DeckLine
+    units: UnitSystem
+    title: str
+
+
+def _drawn(asked: _Asked, width: float, size: float, known: LeftOut) -> tuple[Sheet, LeftOut]:
+    """Draw one attempt whose caption tells the ``known`` to be left out; return the sheet and what found no room."""
+    truss, deck, units = asked.truss, asked.deck, asked.units
     row = row_height(size)
     first, last, low, high = deck.extent(truss)
     window = Window.fitting(first, last, width, steepest=_TALLEST / (high - low))
     caption = (
         f"To scale; lengths in {units.length}. {origin(truss, units)}. "
-        "Filled joint: panel point, where the deck loads the truss."
+        f"Filled joint: panel point, where the deck loads the truss. {told_left_out(known)}"
     )
     foot = caption_height(caption, width, size)
     strings = 2 * (row + 3.0) + 2 * row
     zero = foot + strings + _BELOW - low * window.scale
     sheet = Sheet(width, zero + high * window.scale + _ABOVE + over(truss) + HEADING, size)
-    draw_heading(sheet, title, "elevation")
+    draw_heading(sheet, asked.title, "elevation")
     draw_caption(sheet, caption)
     strip = sheet.strip(window, zero, window.scale)
     left_out = _draw_truss(strip, truss, deck)
@@ -83,14 +94,16 @@ def _drawn(
     return sheet, left_out
 
 
-def _draw_truss(strip: Strip, truss: Truss, deck: DeckLine) -> int:
-    """Draw bars, bearings, joints and abutments; return how many names found no room."""
+def _draw_truss(strip: Strip, truss: Truss, deck: DeckLine) -> LeftOut:
+    """Draw bars, bearings, joints and abutments; return which names found no room."""
     draw_bearings(strip, truss)
     draw_bars(strip, truss, [PLAIN_BAR] * len(truss.members))
     draw_joints(strip, truss, deck.joints)
     draw_abutments(strip, deck)
-    name_beds(strip, truss)
-    return name_joints(strip, truss) + _name_bars(strip, truss)
+    left_out = name_beds(strip, truss)
+    left_out[JOINT_NAME] = name_joints(strip, truss)
+    left_out[BAR_NAME] = _name_bars(strip, truss)
+    return +left_out
 
 
 def _name_bars(strip: Strip, truss: Truss) -> int:
@@ -103,20 +116,22 @@ def _name_bars(strip: Strip, truss: Truss) -> int:
     return left_out
 
 
-def _draw_strings(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem, *, foot: float) -> int:
-    """Draw panel lengths, the overall length, the rows of x and depth and the greatest depth."""
+def _draw_strings(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem, *, foot: float) -> LeftOut:
+    """Draw panel lengths, the overall length, the rows of x and depth and the greatest depth; count left out."""
     sheet, window, row = strip.sheet, strip.window, row_height(strip.sheet.size)
     upper = foot + 2 * row + 2.0 + row + 3.0
     places = [window.mm(x) for x in deck.stations]
-    left_out = dimension_string(sheet, upper, places, lengths(np.diff(deck.stations), units))
+    left_out = LeftOut()
+    left_out[LENGTH] = dimension_string(sheet, upper, places, lengths(np.diff(deck.stations), units))
     ends = (float(truss.coordinates[:, 0].min()), float(truss.coordinates[:, 0].max()))
     overall = lengths([ends[1] - ends[0]], units)
-    left_out += dimension_string(sheet, upper - row - 3.0, [window.mm(x) for x in ends], overall)
+    left_out[LENGTH] += dimension_string(sheet, upper - row - 3.0, [window.mm(x) for x in ends], overall)
     for place, height in zip(places, deck.heights, strict=True):
         sheet.stroke([(place, strip.mm(0, height)[1]), (place, foot + 2 * row + 1)], HAIR, FAINT, zorder=-5)
     sheet.write_from(sheet.lettering(f"x, {units.length}"), window.side, foot + 1.5 * row + 1)
-    left_out += row_of_words(sheet, foot + 1.5 * row + 1, places, lengths(deck.stations, units))
-    return left_out + _draw_depths(strip, truss, deck, units, level=foot + 0.5 * row + 1)
+    left_out[STATION] = row_of_words(sheet, foot + 1.5 * row + 1, places, lengths(deck.stations, units))
+    left_out[DEPTH] = _draw_depths(strip, truss, deck, units, level=foot + 0.5 * row + 1)
+    return +left_out
 
 
 def _draw_depths(strip: Strip, truss: Truss, deck: DeckLine, units: UnitSystem, *, level: float) -> int:

@@ -21,7 +21,8 @@ from movload.report.drawing.elevation import (
     mark_joint,
     name_joints,
 )
-from movload.report.drawing.ink import ACCENT, BOLD, FRAME, GREY, MARGIN, PAPER, THIN
+from movload.report.drawing.ink import ACCENT, BOLD, FRAME, MARGIN, PAPER, THIN
+from movload.report.drawing.left_out import FRAMED_NAME, JOINT_NAME, LeftOut, forces_left_out
 from movload.report.drawing.words import bar_force
 
 if TYPE_CHECKING:
@@ -31,8 +32,8 @@ if TYPE_CHECKING:
 _KEY: Final = (("open", "T tension"), ("solid", "C compression"), ("dotted", "under 0.5 % of the largest"))
 
 
-def draw_stressed(strip: Strip, subject: Subject) -> tuple[int, list[float]]:
-    """Draw the truss by its forces with its labels; return how many names and which forces [N] found no room."""
+def draw_stressed(strip: Strip, subject: Subject) -> LeftOut:
+    """Draw the truss by its forces with its labels; return which of them found no room."""
     truss, row = subject.truss, subject.governing
     depth = float(np.ptp(truss.coordinates[:, 1])) * strip.scale
     bars = looks(subject.forces, heaviest_bar(depth), row)
@@ -42,10 +43,10 @@ def draw_stressed(strip: Strip, subject: Subject) -> tuple[int, list[float]]:
     draw_bars(strip, truss, bars)
     draw_joints(strip, truss, subject.deck.joints)
     draw_abutments(strip, subject.deck)
-    name_beds(strip, truss)
-    unmarked = 0 if _mark_subject(strip, subject, bars) else 1
-    unnamed = name_joints(strip, truss, besides=frozenset([subject.joint]))
-    return unmarked + unnamed, _write_forces(strip, subject, bars)
+    left_out = name_beds(strip, truss)
+    left_out[FRAMED_NAME] = 0 if _mark_subject(strip, subject, bars) else 1
+    left_out[JOINT_NAME] = name_joints(strip, truss, besides=frozenset([subject.joint]))
+    return left_out + _write_forces(strip, subject, bars)
 
 
 def _mark_subject(strip: Strip, subject: Subject, bars: list[Look]) -> bool:
@@ -65,8 +66,8 @@ def _mark_subject(strip: Strip, subject: Subject, bars: list[Look]) -> bool:
     return False
 
 
-def _write_forces(strip: Strip, subject: Subject, bars: list[Look]) -> list[float]:
-    """Write each bar's force along it, the largest first; return those [N] that found no room."""
+def _write_forces(strip: Strip, subject: Subject, bars: list[Look]) -> LeftOut:
+    """Write each bar's force along it, the largest first; return how many found no room."""
     unwritten = []
     for row in np.argsort(-np.abs(subject.forces), kind="stable"):
         force = float(subject.forces[row])
@@ -74,23 +75,18 @@ def _write_forces(strip: Strip, subject: Subject, bars: list[Look]) -> list[floa
             continue
         lettering = strip.sheet.lettering(bar_force(force, subject.units, subject.decimals))
         if not strip.sheet.write(lettering, bar_spots(strip, subject.truss, row, lettering, weight=bars[row].weight)):
-            unwritten.append(force)
-    return unwritten
+            unwritten.append(lettering.text)
+    return LeftOut({forces_left_out(unwritten[0]): len(unwritten)} if unwritten else {})
 
 
-def draw_key(sheet: Sheet, subject: Subject, foot: float, unwritten: list[float]) -> None:
-    """Draw what the bars' strokes mean over the caption, and say which forces are not written."""
+def draw_key(sheet: Sheet, foot: float) -> None:
+    """Draw what the bars' strokes mean over the caption."""
     level, right = foot + 0.55 * row_height(sheet.size), MARGIN
-    if subject.is_stressed:
-        for style, words in _KEY:
-            ends = [(right, level), (right + 12.0, level)]
-            weight = THIN if style == "dotted" else 1.6
-            dots: dict[str, Any] = {"linestyle": DOTS} if style == "dotted" else {}
-            sheet.stroke(ends, weight, **dots)
-            if style == "open":
-                sheet.stroke(ends, weight - 2 * THIN, PAPER)
-            right = sheet.write_from(sheet.lettering(words), right + 14.0, level) + 8.0
-    if unwritten:
-        largest = bar_force(max(unwritten, key=abs), subject.units, subject.decimals)
-        words = f"{len(unwritten)} forces, up to {largest}, not written for want of room"
-        sheet.write_from(sheet.lettering(words), right, level, GREY)
+    for style, words in _KEY:
+        ends = [(right, level), (right + 12.0, level)]
+        weight = THIN if style == "dotted" else 1.6
+        dots: dict[str, Any] = {"linestyle": DOTS} if style == "dotted" else {}
+        sheet.stroke(ends, weight, **dots)
+        if style == "open":
+            sheet.stroke(ends, weight - 2 * THIN, PAPER)
+        right = sheet.write_from(sheet.lettering(words), right + 14.0, level) + 8.0

@@ -10,6 +10,7 @@ from matplotlib.patches import Circle
 from movload.report.drawing.dimensions import dimension_string
 from movload.report.drawing.ink import BOLD, EDGE, FIRM, GREY, HAIR, INK, PAPER, PASSIVE, POINT, THIN
 from movload.report.drawing.labels import Spot, squeezed
+from movload.report.drawing.left_out import AXLE_LOAD, AXLE_SPACING, AXLES_BEYOND, LeftOut
 from movload.report.drawing.train import ARROW
 from movload.report.drawing.words import lengths
 from movload.report.phrases import ARROWS
@@ -23,13 +24,14 @@ _HEAD: Final = 1.7  # mm, length of an arrow head
 _NOSE: Final = 8.0  # mm, length of the arrow that shows the heading
 
 
-def draw_train(strip: Strip, plan: TrainPlan, units: UnitSystem) -> int:
-    """Draw a train on its deck; return how many of its figures found no room."""
-    left_out = sum(not _draw_axle(strip, plan, int(number)) for number in np.flatnonzero(plan.train.shown))
-    _draw_frame(strip, plan)
-    left_out += _draw_spacings(strip, plan, units)
+def draw_train(strip: Strip, plan: TrainPlan, units: UnitSystem) -> LeftOut:
+    """Draw a train on its deck; return which of its figures found no room."""
+    left_out = LeftOut()
+    left_out[AXLE_LOAD] = sum(not _draw_axle(strip, plan, int(number)) for number in np.flatnonzero(plan.train.shown))
+    left_out[AXLES_BEYOND] = _draw_frame(strip, plan)
+    left_out[AXLE_SPACING] = _draw_spacings(strip, plan, units)
     _name_train(strip, plan, units)
-    return left_out
+    return +left_out
 
 
 def _draw_axle(strip: Strip, plan: TrainPlan, number: int) -> bool:
@@ -54,8 +56,11 @@ def _draw_axle(strip: Strip, plan: TrainPlan, number: int) -> bool:
     return plan.levels[number] >= 0
 
 
-def _draw_frame(strip: Strip, plan: TrainPlan) -> None:
-    """Draw the frame that joins the wheels and the arrow that shows the heading; axles not drawn leave it cut."""
+def _draw_frame(strip: Strip, plan: TrainPlan) -> int:
+    """Draw the frame that joins the wheels and the arrow that shows the heading; axles not drawn leave it cut.
+
+    Return how many counts of such axles found no room.
+    """
     train, sheet, window = plan.train, strip.sheet, strip.window
     level = strip.zero + 2 * plan.radius + BOLD / 2
     drawn = train.x[train.shown]
@@ -63,17 +68,17 @@ def _draw_frame(strip: Strip, plan: TrainPlan) -> None:
     right = window.right if train.is_cut(1) else window.mm(float(drawn.max())) + plan.radius
     sheet.stroke([(left, level), (right, level)], BOLD, label="frame")
     front = right if train.heading > 0 else left
-    for side, end in ((-1, left), (1, right)):
-        if train.is_cut(side):
-            _draw_cut(strip, plan, (end, level), side)
+    ends = ((-1, left), (1, right))
+    left_out = sum(not _draw_cut(strip, plan, (end, level), side) for side, end in ends if train.is_cut(side))
     if not train.is_cut(train.heading):
         tip, back = front + train.heading * _NOSE, front + train.heading * (_NOSE - 2.6)
         sheet.stroke([(front, level), (back, level)], FIRM, label="heading")
         sheet.shape([(tip, level), (back, level + 1.1), (back, level - 1.1)], INK, label="heading arrow")
+    return left_out
 
 
-def _draw_cut(strip: Strip, plan: TrainPlan, end: Place, side: int) -> None:
-    """Show that a train goes on beyond what is drawn, and how many axles stand there."""
+def _draw_cut(strip: Strip, plan: TrainPlan, end: Place, side: int) -> bool:
+    """Show that a train goes on beyond what is drawn, and how many axles stand there; say whether there was room."""
     sheet, ahead = strip.sheet, side == plan.train.heading
     for shift in (0.4, 1.3):
         x = end[0] + side * shift
@@ -81,7 +86,7 @@ def _draw_cut(strip: Strip, plan: TrainPlan, end: Place, side: int) -> None:
     words = [f"{plan.train.beyond(side)} more", ARROWS[side] if ahead else ""]
     lettering = sheet.lettering(" ".join(words[::side]).strip())
     middle = end[0] + side * (2.8 + lettering.width / 2)
-    sheet.write(lettering, [Spot(middle, end[1]), Spot(middle, end[1] + 4.0), Spot(middle, end[1] + 8.0)], GREY)
+    return sheet.write(lettering, [Spot(middle, end[1] + rise) for rise in (0.0, 4.0, 8.0)], GREY)
 
 
 def _draw_spacings(strip: Strip, plan: TrainPlan, units: UnitSystem) -> int:
