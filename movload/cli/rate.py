@@ -35,7 +35,9 @@ Impact = Annotated[
     typer.Option("--impact", metavar="FRACTION", help='Dynamic allowance instead of the file\'s: 0.3 or "30 %".'),
 ]
 All = Annotated[bool, typer.Option("--all", help="Every rated row of every crossing.")]
-Gate = Annotated[bool, typer.Option("--gate", help="Exit with 3 when a rating is below 1 or a member is unrated.")]
+Gate = Annotated[
+    bool, typer.Option("--gate", help="Exit with 3: a rating below 1, a member unrated or a bearing lifted.")
+]
 
 
 def rate(

@@ -141,7 +141,8 @@ def verdict_text(factor: float, coverage: Coverage, uplifts: Mapping[str, float]
     if gaps:
         conditions.append(f"the {gaps} members not fully rated are" if gaps > 1 else "the member not fully rated is")
     if uplifts:
-        conditions.append(f"{', '.join(name.partition(' ')[0] for name in uplifts)} is held down")
+        bearings = ", ".join(name.partition(" ")[0] for name in uplifts)
+        conditions.append(f"{bearings} {'are' if len(uplifts) > 1 else 'is'} held down")
     return f"adequate only if {' and '.join(conditions)}" if conditions else "adequate, for the members rated"
 
 

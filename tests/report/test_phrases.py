@@ -252,7 +252,7 @@ def test_what_an_answer_covers(coverage: Coverage, text: str, verdict: str) -> N
     ("missing", "uplifts", "verdict"),
     [
         ((), {"L0 y": 5e3}, "adequate only if L0 is held down"),
-        ((), {"L0 y": 5e3, "L9 normal": 2e3}, "adequate only if L0, L9 is held down"),
+        ((), {"L0 y": 5e3, "L9 normal": 2e3}, "adequate only if L0, L9 are held down"),
         (("a",), {"L0 y": 5e3}, "adequate only if the member not fully rated is and L0 is held down"),
         (("a", "b"), {"L0 y": 1.0}, "adequate only if the 2 members not fully rated are and L0 is held down"),
     ],
