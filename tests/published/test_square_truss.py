@@ -1,6 +1,6 @@
 """A square with both diagonals: the smallest truss that statics alone cannot solve.
 
-"Indeterminate square truss", lecture note. READ.
+"Indeterminate square truss", a teaching note without author or date. READ.
 
 A (0, 0) pinned, B (0, L), C (L, L), D (L, 0) on a level roller; six bars of one E A; P along x at C.
 """
