@@ -8,7 +8,6 @@ import numpy as np
 
 from movload.arrays import keep_memory_warm
 from movload.peaks.candidates import Candidates, candidates_of
-from movload.peaks.placement import panel_loads
 from movload.statics.condensed import Condensed, spread
 
 if TYPE_CHECKING:
@@ -18,7 +17,7 @@ if TYPE_CHECKING:
     from movload.statics.part import Response
     from movload.traffic.crossing import Train
 
-_IN_CACHE: Final = 150_000  # doubles worked on at a time
+_IN_CACHE: Final = 250_000  # doubles worked on at a time
 _NOISE: Final = 1e-12  # of the row's largest value under the same train: round-off, no peak
 
 
@@ -60,28 +59,22 @@ def _of_all_rows(condensed: Condensed, trains: Sequence[Train], *, mirrored: boo
 def _batch(condensed: Condensed, trains: Sequence[Train], headings: tuple[int, ...] | None) -> tuple[Floats, Floats]:
     """Return every distinct row's extremes (V, C), in the trains' own headings or in those given."""
     response = condensed.response
-    by_axles = sorted(range(len(trains)), key=lambda number: trains[number].vehicle.loads.size)
-    ordered = [trains[number] for number in by_axles]
-    candidates = candidates_of(response.stations, ordered, headings, may_lose=condensed.jumps)
+    candidates = candidates_of(response.stations, trains, headings, may_lose=condensed.jumps)
     by_run = _extremes_by_run(response, candidates)
-    starts = np.searchsorted(candidates.train, np.arange(len(trains)))
-    highest, lowest = np.empty((2, len(trains), len(response.effects)))
-    highest[by_axles] = np.maximum.reduceat(by_run[0], starts, axis=0)
-    lowest[by_axles] = np.minimum.reduceat(by_run[1], starts, axis=0)
-    return highest, lowest
+    starts = np.searchsorted(candidates.runs.train, np.arange(len(trains)))
+    return np.maximum.reduceat(by_run[0], starts, axis=0), np.minimum.reduceat(by_run[1], starts, axis=0)
 
 
 def _extremes_by_run(response: Response, candidates: Candidates) -> Floats:
     """Return each run's highest and lowest (2, N, R), in pieces that stay in cache."""
-    rows, runs = len(response.effects), candidates.train.size
+    rows, runs = len(response.effects), candidates.runs.train.size
     step = runs_at_a_time(response, candidates)
     extremes = np.empty((2, runs, rows))
     for first in range(0, runs, step):
         last = min(first + step, runs)
-        loads = panel_loads(candidates.stations, *candidates.standing(first, last))
-        values = response.under(loads.T).T.reshape(last - first, candidates.stops, rows)
-        values.max(axis=1, out=extremes[0, first:last])
-        values.min(axis=1, out=extremes[1, first:last])
+        values = response.under(candidates.panel_loads(first, last).T).T.reshape(candidates.stops, last - first, rows)
+        values.max(axis=0, out=extremes[0, first:last])
+        values.min(axis=0, out=extremes[1, first:last])
     return extremes
 
 

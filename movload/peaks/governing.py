@@ -8,7 +8,6 @@ import numpy as np
 
 from movload.peaks.candidates import Candidates, candidates_of
 from movload.peaks.extremes import runs_at_a_time, static_extremes
-from movload.peaks.placement import panel_loads
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -44,16 +43,17 @@ def governing_candidates(response: Response, trains: Sequence[Train], impact: Fl
 
 def _first_reaching(response: Response, candidates: Candidates, floor: Floats) -> Ints:
     """Return the first candidate (2, R), in the order of ties, whose effect reaches ``floor`` (2, R) in each sense."""
-    heading, axle = (np.repeat(one, candidates.stops) for one in (candidates.heading, candidates.axle))
+    heading, axle = (np.tile(one, candidates.stops) for one in (candidates.runs.heading, candidates.runs.axle))
     order = np.lexsort((axle, -heading, np.round(candidates.fronts().reshape(-1), _SAME_PLACE)))
     rank = np.empty_like(order)
     rank[order] = np.arange(order.size)
+    by_stop = rank.reshape(candidates.stops, -1)
     first = np.full(floor.shape, order.size - 1)
     step = runs_at_a_time(response, candidates)
-    for run in range(0, candidates.train.size, step):
-        last = min(run + step, candidates.train.size)
-        values = response.under(panel_loads(candidates.stations, *candidates.standing(run, last)).T)
-        ranks = rank[run * candidates.stops : last * candidates.stops]
+    for run in range(0, candidates.runs.train.size, step):
+        last = min(run + step, candidates.runs.train.size)
+        values = response.under(candidates.panel_loads(run, last).T)
+        ranks = by_stop[:, run:last].reshape(-1)
         for side, adverse in enumerate((values, -values)):
             reached = np.where(adverse >= floor[side][:, None], ranks, order.size - 1).min(axis=1)
             np.minimum(first[side], reached, out=first[side])

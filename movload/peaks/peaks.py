@@ -112,12 +112,12 @@ class PartPeaks:
         train_number, candidate = (int(found[side, row]) for found in self._governing)
         train = self.trains[train_number]
         candidates = candidates_of(self.response.stations, [train], may_lose=self.response.condensed.jumps)
-        run, stop = divmod(candidate, candidates.stops)
-        x, _ = candidates.standing(run, run + 1)
-        heading, axle = int(candidates.heading[run]), int(candidates.axle[run])
+        stop, run = divmod(candidate, candidates.runs.train.size)
+        x = candidates.standing(run, run + 1)[stop]
+        heading, axle = int(candidates.runs.heading[run]), int(candidates.runs.axle[run])
         impact = np.full(train.shares.shape, self.impact[row, side] if train.dynamic else 0.0)
         stations = self.response.stations
-        placement = Placement(on_the_ends(stations, x[0, stop]), train.vehicle.loads, train.shares, impact)
+        placement = Placement(on_the_ends(stations, x), train.vehicle.loads, train.shares, impact)
         count = stations.size
         return Peak(
             value,

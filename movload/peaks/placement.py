@@ -13,7 +13,6 @@ if TYPE_CHECKING:
     from movload.traffic.vehicle import Strip
 
 SNAP: Final = 1e-13  # of the largest station: an axle no further outside an end station stands on it
-_LONGEST_GRID: Final = 4096
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -73,49 +72,46 @@ def on_the_ends(stations: Floats, x: Floats) -> Floats:
 
 
 def panel_loads(stations: Floats, x: Floats, felt: Floats) -> Floats:
-    """Return panel-point loads (K, B) [N] of axles standing at x (..., A) [m], K positions in all.
-
-    A load between two stations reaches both as a simple beam's reactions; one outside the stations reaches none.
+    """Return panel-point loads (K, B) [N] of axles standing at x (K, A) [m].
 
     Parameters
     ----------
     felt
         Load [N] of each axle; its shape spreads over that of x.
     """
-    panels = np.diff(stations)
-    panel = panels_at(stations, panels, x)
+    return scattered(stations, x, felt, np.arange(len(x))[:, None])
+
+
+def scattered(stations: Floats, x: Floats, felt: Floats, position: Ints) -> Floats:
+    """Return panel-point loads (K, B) [N] of axles at x [m], each belonging to one of K positions, all of them met.
+
+    A load between two stations reaches both as a simple beam's reactions; one outside the stations reaches none.
+
+    Parameters
+    ----------
+    felt, position
+        Load [N] and position of each axle; their shapes spread over that of x, positions count up to the last.
+    """
+    panel = panels_at(stations, x)
     margin = edge(stations)
     felt = felt * ((x >= stations[0] - margin) & (x <= stations[-1] + margin))
-    onward = (x - stations[panel]) / panels[panel]
+    onward = (x - stations[panel]) * (1.0 / np.diff(stations))[panel]
     onward *= felt
     felt -= onward
-    positions = x.size // x.shape[-1]
-    panel += (stations.size * np.arange(positions)).reshape(*x.shape[:-1], 1)
+    panel += stations.size * position
     panel = panel.reshape(-1)
+    positions = int(position.reshape(-1)[-1]) + 1
     size = positions * stations.size
     loads: Floats = np.bincount(panel, felt.reshape(-1), size).astype(np.float64, copy=False)
     loads[1:] += np.bincount(panel, onward.reshape(-1), size)[:-1]
     return loads.reshape(positions, stations.size)
 
 
-def panels_at(stations: Floats, panels: Floats, x: Floats) -> Ints:
+def panels_at(stations: Floats, x: Floats) -> Ints:
     """Return the panel that holds each x, the outermost for an x outside: the number of its left station.
 
-    A grid no coarser than the shortest panel names the panel to within one, which is several times faster than a
-    search by halving; very unequal panels, whose grid would be long, are searched.
+    An x within a last place of a station may be given to the panel on its other side, where its load is the same.
     """
-    fineness = (stations[-1] - stations[0]) / panels.min()
-    if not fineness <= _LONGEST_GRID:
-        found = np.searchsorted(stations, x, side="right") - 1
-        return np.clip(found, 0, panels.size - 1)
-    cells = int(np.ceil(fineness))
-    per_cell = cells / (stations[-1] - stations[0])
-    cell_starts = stations[0] + np.arange(cells) / per_cell
-    grid = np.minimum(np.searchsorted(stations, cell_starts, side="right") - 1, panels.size - 1)
-    cell = (x - stations[0]) * per_cell
-    np.minimum(cell, cells - 1, out=cell)
-    np.maximum(cell, 0, out=cell)
-    panel = grid[cell.astype(np.intp)]
-    panel += x >= stations[1:][panel]
-    inside: Ints = np.minimum(panel, panels.size - 1, out=panel)
-    return inside
+    among = np.interp(x, stations, np.arange(stations.size, dtype=np.float64))
+    panel: Ints = among.astype(np.intp)
+    return np.minimum(panel, stations.size - 2, out=panel)

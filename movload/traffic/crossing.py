@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass, field
+from functools import lru_cache
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
@@ -102,6 +103,7 @@ def trains_on(across: Across, crossing: Crossing) -> tuple[Train, ...]:
     return _trains(crossing.loading, float(across.at(crossing.z)))
 
 
+@lru_cache(maxsize=256)  # one vehicle meets many bridges and parts: the same trains, so that their runs are made once
 def whole_trains(subject: Vehicle | Loading) -> tuple[Train, ...]:
     """Return the trains of whole axles on one line: no share but the case's own factor."""
     if isinstance(subject, Vehicle):
