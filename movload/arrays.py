@@ -11,6 +11,7 @@ if TYPE_CHECKING:
 
 Floats: TypeAlias = "NDArray[np.float64]"
 Ints: TypeAlias = "NDArray[np.intp]"
+Bools: TypeAlias = "NDArray[np.bool_]"
 
 _KEPT: Final = 1 << 18  # doubles: 2 MB, more than one batch holds at a time
 

@@ -21,7 +21,10 @@ from movload.errors import InputError, UnknownNameError, nearest_name
 if TYPE_CHECKING:
     from collections.abc import Mapping
 
-Quantity = Literal["length", "section", "force", "line load", "area", "stress", "density", "stiffness", "fraction"]
+Quantity = Literal[
+    "length", "section", "force", "line load", "pressure", "moment", "area", "stress", "density", "stiffness", "speed",
+    "fraction",
+]  # fmt: skip
 
 GRAVITY: Final = 9.80665  # m/s2, standard
 _POUND: Final = 0.45359237  # kg
@@ -50,6 +53,14 @@ _AREA: Final = {
     for square in ("2", "²")
 }
 _PER_AREA: Final = {f"{force}/{area}": newton / m2 for force, newton in _FORCE.items() for area, m2 in _AREA.items()}
+_MOMENT: Final = {
+    f"{force}{between}{length}": newton * metre
+    for force, newton in _FORCE.items()
+    for length, metre in _LENGTH.items()
+    if length in {"m", "cm", "mm", "ft", "in"}
+    for between in (" ", "-", "*", "")
+}
+_SPEED: Final = {"m/s": 1.0, "km/h": 1 / 3.6, "mph": 1609.344 / 3600}
 _STRESS: Final = _PER_AREA | {
     "Pa": 1.0, "kPa": 1e3, "MPa": 1e6, "GPa": 1e9,
     "psi": _POUND_FORCE / _INCH**2, "ksi": 1e3 * _POUND_FORCE / _INCH**2, "psf": _POUND_FORCE / _FOOT**2,
@@ -64,6 +75,9 @@ _TABLES: Final[Mapping[Quantity, Mapping[str, float]]] = MappingProxyType(
         "section": _LENGTH,
         "force": _FORCE,
         "line load": _PER_LENGTH | {"klf": 1e3 * _POUND_FORCE / _FOOT, "plf": _POUND_FORCE / _FOOT},
+        "pressure": _PER_AREA | {"kPa": 1e3, "Pa": 1.0, "psf": _POUND_FORCE / _FOOT**2},
+        "moment": _MOMENT,
+        "speed": _SPEED,
         "area": _AREA,
         "stress": _STRESS,
         "density": _DENSITY,
@@ -72,7 +86,13 @@ _TABLES: Final[Mapping[Quantity, Mapping[str, float]]] = MappingProxyType(
     }
 )
 _AS_WORDS: Final[Mapping[Quantity, str]] = MappingProxyType(
-    {"section": "a length", "area": "an area", "line load": "a load per length", "stiffness": "a force per length"}
+    {
+        "section": "a length",
+        "area": "an area",
+        "line load": "a load per length",
+        "stiffness": "a force per length",
+        "pressure": "a load per area",
+    }
 )
 
 _NUMBER: Final = r"[-+]?(?:\d+(?:\.\d*)?|\.\d+)(?:[eE][-+]?\d+)?"
@@ -183,6 +203,7 @@ def _example(quantity: Quantity) -> str:
         "length": '"4.2 m" or "12\'-6 1/2\\""', "section": '"300 mm" or "12 in"', "force": '"62 kN" or "18 kip"',
         "line load": '"9 kN/m" or "0.64 klf"', "area": '"2400 mm2" or "3.75 in2"', "stress": '"200 GPa" or "29000 ksi"',
         "density": '"7850 kg/m3" or "490 pcf"', "stiffness": '"50 kN/mm" or "280 kip/in"', "fraction": '"30 %"',
+        "pressure": '"1.2 kN/m2" or "25 psf"', "moment": '"85 kN m" or "62 kip ft"', "speed": '"8 km/h" or "5 mph"',
     }  # fmt: skip
     return examples[quantity]
 
@@ -241,6 +262,8 @@ class UnitSystem:
             "line load": f"{self.force}/{self.length}", "area": f"{self.section}2",
             "stress": f"{self.force}/{self.section}2", "stiffness": f"{self.force}/{self.section}",
             "density": "lb/ft3" if self.is_us else "kg/m3", "fraction": "",
+            "pressure": f"{self.force}/{self.length}2", "moment": f"{self.force} {self.length}",
+            "speed": "mph" if self.is_us else "km/h",
         }  # fmt: skip
         return symbols[quantity]
 
@@ -255,6 +278,7 @@ class UnitSystem:
             "length": length, "section": section, "force": force, "line load": force / length,
             "area": section**2, "stress": force / section**2, "stiffness": force / section,
             "density": _DENSITY[self.symbol("density")], "fraction": 1.0,
+            "pressure": force / length**2, "moment": force * length, "speed": _SPEED[self.symbol("speed")],
         }  # fmt: skip
         return factors[quantity]
 

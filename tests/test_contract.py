@@ -137,6 +137,6 @@ def test_from_files_to_ratings() -> None:
     rows = len(solved.effects)
     assert ratings.factor.shape == (1, 1, rows, 2)
     assert ratings.impact.shape == (1, rows, 2)
-    assert solved.permanent.shape == (2, rows)
+    assert solved.permanent.shape == (len(solved.classes), rows)
     assert solved.strength.shape == (1, rows, 2)
     np.testing.assert_array_equal(rate(bridge, [loading]).factor, ratings.factor)

@@ -1,66 +1,25 @@
-"""A bridge as one value: its truss, its deck, what it carries for good, what its bars may carry, and who says so."""
+"""A bridge as one value: truss, deck and floor, what it carries for good, what its parts may carry, and who says so."""
 
 from __future__ import annotations
 
-import math
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, fields
 from types import MappingProxyType
 from typing import TYPE_CHECKING, Final
 
-from movload.bridge.deck import MOST_SHARE, Deck, stations_of
-from movload.errors import InputError
+from movload.bridge.deck import Deck, stations_of
+from movload.bridge.floor import Floor
+from movload.errors import InputError, MissingDataError
 from movload.units import UnitSystem
 
 if TYPE_CHECKING:
     from collections.abc import Mapping
 
+    from movload.bridge.permanent import PermanentItems
+    from movload.bridge.strengths import TypedStrength
     from movload.bridge.truss import Truss
 
 
 _MOST_IMPACT: Final = 2.0  # no rule asks for as much; 30 for 30 % is caught
-
-
-@dataclass(frozen=True, slots=True)
-class Permitted:
-    """The axial force a bar may carry, margin already taken off, as typed.
-
-    ``tension`` and ``compression`` are magnitudes [N]; None where nobody has typed one (that sense is not rated).
-    """
-
-    tension: float | None = None
-    compression: float | None = None
-
-    def __post_init__(self) -> None:
-        """Refuse a permitted force that is not a finite number, 0 or more."""
-        for sense in ("tension", "compression"):
-            force = getattr(self, sense)
-            if force is not None and not (math.isfinite(force) and force >= 0):
-                raise InputError(f"a permitted force must be 0 or more, got {force} N", place=f"permits.{sense}")
-
-
-@dataclass(frozen=True, slots=True)
-class PermanentLoads:
-    """What stands on the bridge for good.
-
-    Parameters
-    ----------
-    deck
-        Weight of deck, floor and surfacing of the whole bridge per metre along it [N/m], 0 or more.
-    truss_share
-        Share [-], 0 to 2, of that weight that reaches the rated truss (0.5 when everything lies symmetrically).
-    """
-
-    deck: float
-    truss_share: float
-
-    def __post_init__(self) -> None:
-        """Refuse weights that lift and shares that are no part of a whole."""
-        if not (math.isfinite(self.deck) and self.deck >= 0):
-            raise InputError(f"must be 0 or more, got {self.deck} N/m", place="permanent.deck")
-        if not 0 <= self.truss_share <= MOST_SHARE:
-            raise InputError(
-                f"must be 0 to {MOST_SHARE:g} (one half is 0.5), got {self.truss_share}", place="permanent.truss_share"
-            )
 
 
 @dataclass(frozen=True, eq=False)
@@ -73,10 +32,21 @@ class Bridge:
         Its name, its plane truss (both trusses alike), and where the deck stands on it.
     permanent
         None when nobody has typed it; rating then asks for it.
-    permits
-        Permitted forces by member name; a member without an entry is not rated.
+    strengths
+        Typed strengths by member name; a member without an entry is not rated.
+    floor
+        Stringers, floorbeams and planks.
     impact
         Dynamic allowance added to the static live effect [-], 0 to 2; None when nobody has typed it.
+    impact_rule
+        Name of the rule that gives it instead; "" when nobody has said, and a method's own rule then counts.
+    surface
+        Riding surface, for rules that ask: "smooth", "minor", "severe".
+    traffic
+        Trucks a day one way, for factors that depend on it; infinite when it was said to be unknown, None when nobody
+        has said.
+    deflection_limit
+        n in "live deflection at most span / n"; None when none is asked.
     units
         The units its file is written in and its results are shown in.
     missing
@@ -88,30 +58,69 @@ class Bridge:
     title: str
     truss: Truss
     deck: Deck
-    permanent: PermanentLoads | None = field(default=None, kw_only=True)
-    permits: Mapping[str, Permitted] = field(default_factory=dict, kw_only=True)
+    permanent: PermanentItems | None = field(default=None, kw_only=True)
+    strengths: Mapping[str, TypedStrength] = field(default_factory=dict, kw_only=True)
+    floor: Floor = field(default_factory=Floor, kw_only=True)
     impact: float | None = field(default=None, kw_only=True)
+    impact_rule: str = field(default="", kw_only=True)
+    surface: str = field(default="", kw_only=True)
+    traffic: float | None = field(default=None, kw_only=True)
+    deflection_limit: float | None = field(default=None, kw_only=True)
     units: UnitSystem = field(default_factory=UnitSystem, kw_only=True)
     missing: tuple[str, ...] = field(default=(), kw_only=True)
     sources: tuple[str, ...] = field(default=(), kw_only=True)
 
     def __post_init__(self) -> None:
         """Check that the parts belong together."""
-        object.__setattr__(self, "permits", MappingProxyType(dict(self.permits)))
+        object.__setattr__(self, "strengths", MappingProxyType(dict(self.strengths)))
         stations_of(self.truss, self.deck.panel_points)
-        for name in self.permits:
+        for name in self.strengths:
             self.truss.member(name)
         if self.impact is not None and not 0 <= self.impact <= _MOST_IMPACT:
             raise InputError(
                 f"impact must be 0 to {_MOST_IMPACT:g} (30 % is 0.3), got {self.impact}", place="rating.impact"
             )
+        for word, value in (("traffic", self.traffic), ("deflection_limit", self.deflection_limit)):
+            if value is not None and not value >= 0:
+                raise InputError(f"must be 0 or more, got {value}", place=f"rating.{word}")
+        self._check_across()
+
+    def _check_across(self) -> None:
+        """Refuse a floor without the trusses' spacing, and kerbs beyond trusses that reach above the deck."""
+        deck, floor = self.deck, self.floor
+        if deck.truss_spacing is None:
+            if floor.stringers is not None:
+                raise MissingDataError("a floor is rated across the trusses: type it", place="deck.truss_spacing")
+            return
+        half = 0.5 * deck.truss_spacing
+        brackets = floor.floorbeams.brackets if floor.floorbeams else (0.0, 0.0)
+        if deck.roadway is None:
+            return
+        outside = deck.roadway.right < -half or deck.roadway.left > half
+        if outside and deck.kind != "deck" and not any(brackets):
+            said = f"a {deck.kind} truss" if deck.kind else "a truss whose deck.kind is not said"
+            raise InputError(
+                f"kerbs at {deck.roadway.right:g} and {deck.roadway.left:g} m stand outside the trusses at "
+                f"{-half:g} and {half:g} m; {said} has no deck there unless floor.floorbeams.brackets carry it",
+                place="deck.kerbs",
+            )
+
+    @property
+    def edges(self) -> tuple[float, float]:
+        """Right and left edge of what carries load across [m]: kerbs, trusses with brackets, outer stringers."""
+        half = 0.5 * (self.deck.truss_spacing or 0.0)
+        right, left = self.floor.floorbeams.brackets if self.floor.floorbeams else (0.0, 0.0)
+        reach = [-half - right, half + left]
+        if self.deck.roadway is not None:
+            reach += [self.deck.roadway.right, self.deck.roadway.left]
+        if self.floor.stringers is not None:
+            reach += self.floor.stringers.z
+        return min(reach), max(reach)
 
     def __reduce__(self) -> tuple[object, ...]:
         """Pickle by parts (a read-only mapping cannot be pickled)."""
-        return (_rebuilt, (self.title, self.truss, self.deck, {
-            "permanent": self.permanent, "permits": dict(self.permits), "impact": self.impact, "units": self.units,
-            "missing": self.missing, "sources": self.sources,
-        }))  # fmt: skip
+        rest = {one.name: getattr(self, one.name) for one in fields(self) if one.kw_only}
+        return (_rebuilt, (self.title, self.truss, self.deck, {**rest, "strengths": dict(self.strengths)}))
 
 
 def _rebuilt(title: str, truss: Truss, deck: Deck, rest: dict[str, object]) -> Bridge:

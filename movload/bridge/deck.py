@@ -9,40 +9,72 @@ from typing import TYPE_CHECKING, Final, TypeAlias
 import numpy as np
 
 from movload.arrays import Floats, held
-from movload.errors import InputError
+from movload.errors import InputError, MissingDataError, UnknownNameError, nearest_name
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
+    from movload.bridge.roadway import Roadway
     from movload.bridge.truss import Truss
 
+KINDS: Final = ("through", "pony", "deck")
+BEARS_ON: Final = ("floorbeams", "chord")
 MOST_SHARE: Final = 2.0  # a load half a truss spacing outside reaches the nearer truss 1.5 times; 56 for 56 % is caught
 PanelPoint: TypeAlias = "str | float"  # a joint's name, or the x [m] of an abutment that carries an end stringer
 
 
 @dataclass(frozen=True, slots=True)
 class Deck:
-    """Where the deck stands on the truss and what share of a load reaches one truss.
+    """Where the deck stands on the truss, and what of the vehicles and the weight on it reaches one truss.
 
     Parameters
     ----------
     panel_points
         Joints of the loaded chord in order along +x; the first or the last may be an abutment's x [m].
     truss_share
-        Share [-], above 0 and at most 2, of a whole axle that reaches the rated truss; None when nobody has typed it.
+        Share [-], above 0 and at most 2, of a whole axle that reaches the rated truss, as typed; None where the
+        trusses' spacing says it, or nobody has typed it.
+    truss_spacing
+        Distance between the trusses' middle planes [m]; they stand at z = +spacing/2 (left) and -spacing/2 (right).
+    roadway
+        The kerbs; None where only a share is typed.
+    kind
+        One of KINDS; "" when nobody has said.
+    bears_on
+        "floorbeams", or "chord" for a deck laid on the chord between its joints, which then bends.
+    chord_bending
+        Who checked that bending, where, and with what result; "" when nobody has.
     """
 
     panel_points: tuple[PanelPoint, ...]
     truss_share: float | None = field(default=None, kw_only=True)
+    truss_spacing: float | None = field(default=None, kw_only=True)
+    roadway: Roadway | None = field(default=None, kw_only=True)
+    kind: str = field(default="", kw_only=True)
+    bears_on: str = field(default="floorbeams", kw_only=True)
+    chord_bending: str = field(default="", kw_only=True)
 
     def __post_init__(self) -> None:
-        """Refuse a share that no truss can get."""
-        share = self.truss_share
+        """Refuse a share that no truss can get, trusses in one plane, words not known, and a share said twice."""
+        share, spacing = self.truss_share, self.truss_spacing
         if share is not None and not 0 < share <= MOST_SHARE:
             raise InputError(
                 f"must be above 0 and at most {MOST_SHARE:g} (0.5 is an axle on the centre line), got {share}",
                 place="deck.truss_share",
             )
+        if spacing is not None and not (math.isfinite(spacing) and spacing > 0):
+            raise InputError(f"the trusses stand more than 0 m apart, got {spacing} m", place="deck.truss_spacing")
+        if share is not None and spacing is not None:
+            raise InputError("the share is given twice: typed, and by deck.truss_spacing", place="deck.truss_share")
+        if spacing is None and self.roadway is not None:
+            raise MissingDataError("is needed beside deck.kerbs", place="deck.truss_spacing")
+        for word, said, known in (("kind", self.kind, ("", *KINDS)), ("bears_on", self.bears_on, BEARS_ON)):
+            if said not in known:
+                raise UnknownNameError(
+                    f'"{said}" is not one of {", ".join(filter(None, known))}',
+                    place=f"deck.{word}",
+                    nearest=nearest_name(said, known),
+                )
 
 
 def stations_of(truss: Truss, panel_points: Sequence[PanelPoint]) -> Floats:
@@ -71,6 +103,13 @@ def stations_of(truss: Truss, panel_points: Sequence[PanelPoint]) -> Floats:
                 place=f"deck.panel_points[{number}]",
             )
     return held(np.array(stations))
+
+
+def deck_lengths(stations: Floats) -> Floats:
+    """Return the length of deck (B,) [m] that simple stringers bring to each panel point."""
+    panels = np.diff(stations)
+    reach: Floats = 0.5 * (np.append(panels, 0.0) + np.append(0.0, panels))
+    return reach
 
 
 def _station(truss: Truss, point: PanelPoint, number: int) -> float:

@@ -23,20 +23,41 @@ from movload.cli.options import (
 if TYPE_CHECKING:
     from collections.abc import Callable
 
-    from rich.console import RenderableType
-
     from movload.bridge.bridge import Bridge
     from movload.rating.ratings import Rating, Ratings
+    from movload.traffic.crossing import Crossing
 
-_SHOWN = 8  # rows of a single crossing that are printed without --all
-
+Method = Annotated[
+    str,
+    typer.Option("--method", metavar="SET", help="Factor set: permitted, lrfr, load_factor, allowable_stress, en, or a "
+                 "file of your own."),
+]  # fmt: skip
+Places = Annotated[
+    list[str] | None,
+    typer.Option("--at", metavar="PLACE", help='Where across (may be repeated): anywhere, "left kerb", "right kerb", '
+                 '"own lane", "centre line", or an offset such as "0.4 m" from the centre line, + left.'),
+]  # fmt: skip
+Speeds = Annotated[
+    list[str] | None, typer.Option("--speed", metavar="SPEED", help='"8 km/h" or "5 mph" (may be repeated).')
+]
+Abreast = Annotated[
+    int, typer.Option("--abreast", metavar="N", help="Vehicles side by side; as many as fit if left out.")
+]
+Wander = Annotated[
+    str | None, typer.Option("--wander", metavar="LENGTH", help='Stray to either side of the centre line: "0.3 m".')
+]
 Impact = Annotated[
     str | None,
-    typer.Option("--impact", metavar="FRACTION", help='Dynamic allowance instead of the file\'s: 0.3 or "30 %".'),
+    typer.Option("--impact", metavar="RULE", help='Dynamic allowance instead of the file\'s: 0.3, "30 %", or a rule: '
+                 '"by loaded length", "by riding surface", "railway".'),
+]  # fmt: skip
+Explain = Annotated[
+    list[str] | None,
+    typer.Option("--explain", metavar="ROW", help='Take a row apart: U1-L2, "floorbeam L2 moment at S3".'),
 ]
 All = Annotated[bool, typer.Option("--all", help="Every rated row of every crossing.")]
 Gate = Annotated[
-    bool, typer.Option("--gate", help="Exit with 3: a rating below 1, a member unrated or a bearing lifted.")
+    bool, typer.Option("--gate", help="Exit with 3: a rating below 1, a part unrated or a bearing lifted.")
 ]
 
 
@@ -44,7 +65,13 @@ def rate(
     bridge: BridgePath,
     vehicle: VehicleNames,
     *,
+    method: Method = "permitted",
+    at: Places = None,
+    speed: Speeds = None,
+    abreast: Abreast = 0,
+    wander: Wander = None,
     impact: Impact = None,
+    explain: Explain = None,
     every: All = False,
     gate: Gate = False,
     json: Json = False,
@@ -54,20 +81,24 @@ def rate(
 ) -> None:
     """Rate a bridge for vehicles: rating factor, what governs, safe weight, and where the vehicle stands then."""
     check_outputs(csv, plot, force=force, inputs=[bridge, *vehicle])
+    from movload.files.factor_sets import read_factor_set
     from movload.files.read import read_bridge
     from movload.rating.judge import judge
     from movload.rating.solved import solve
+    from movload.report.rating_text import rating_text
     from movload.report.ratings_report import ratings_csv, ratings_json
 
     stands = read_bridge(bridge)
     if impact is not None:
         stands = _with_impact(stands, impact)
+    factors = read_factor_set(method)
     with naming(bridge):
-        solved = solve(stands)
-    ratings = judge(solved, read_loadings(vehicle))
+        solved = solve(stands, factors)
+    ratings = judge(solved, _crossings(vehicle, at, speed, abreast=abreast, wander=wander))
+    wanted = [_asked(ratings, row) for row in explain or []]
     rows = [row for number in range(len(ratings.crossings)) for row in ratings.rows(number)]
     deliver(
-        text=lambda: _text(stands, ratings, rows, every=every),
+        text=lambda: rating_text(ratings, _station_names(stands), every=every, explain=wanted),
         json=(lambda: ratings_json(ratings, rows)) if json else None,
         files={
             csv: lambda: ratings_csv(rows, stands.units).encode(),
@@ -79,52 +110,96 @@ def rate(
         raise typer.Exit(3)
 
 
-def _with_impact(stands: Bridge, impact: str) -> Bridge:
-    """Return the bridge with a typed dynamic allowance."""
+def _crossings(
+    vehicles: list[str], places: list[str] | None, speeds: list[str] | None, *, abreast: int, wander: str | None
+) -> list[Crossing]:
+    """Return every vehicle in every place at every speed."""
+    from movload.traffic.crossing import WANDER, Crossing
+
+    stray = WANDER if wander is None else _quantity(wander, "length", "--wander")
+    where = [_place(one) for one in places or ["anywhere"]]
+    rates: list[float | None] = [_quantity(one, "speed", "--speed") for one in speeds or []]
+    return [
+        Crossing(loading, place, z, lanes=abreast, speed=rate, wander=stray)
+        for loading in read_loadings(vehicles)
+        for place, z in where
+        for rate in rates or [None]
+    ]
+
+
+def _place(said: str) -> tuple[str, float]:
+    """Return a place by its name, or an offset [m]."""
+    from movload.bridge.roadway import PLACES
+    from movload.errors import InputError, UnknownNameError, nearest_name
+
+    if said in PLACES and said != "offset":
+        return said, 0.0
+    if any(sign.isdigit() for sign in said):
+        return "offset", _quantity(said, "length", "--at")
+    named = [place for place in PLACES if place != "offset"]
+    if said == "offset":
+        raise InputError('say how far: --at "0.4 m"', place="--at")
+    raise UnknownNameError(
+        f'"{said}" is none of {", ".join(named)} and no offset', place="--at", nearest=nearest_name(said, named)
+    )
+
+
+def _quantity(text: str, quantity: str, option: str) -> float:
+    """Return a typed option in SI; errors name the option."""
     from movload.errors import InputError
     from movload.units import to_si
 
     try:
-        missing = tuple(place for place in stands.missing if place != "rating.impact")
-        return replace(stands, impact=to_si(impact, "fraction"), missing=missing)
+        return to_si(text, quantity)  # type: ignore[arg-type]  # one of the quantities
     except InputError as error:
-        raise InputError(error.rule, place="--impact", nearest=error.nearest) from None
+        raise type(error)(error.rule, place=option, nearest=error.nearest) from None
 
 
-def _text(stands: Bridge, ratings: Ratings, rows: list[Rating], *, every: bool) -> list[RenderableType | str]:
-    """Return what a person reads: the answer, the rows that decide it, the sum, what it covers."""
+def _asked(ratings: Ratings, row: str) -> Rating:
+    """Return the worst rating of a row that was asked about, over crossings, levels and senses."""
+    from movload.errors import MissingDataError
+    from movload.statics.part import row_of
+
+    number = row_of(ratings.solved.effects, row)
+    found = [one for crossing in range(len(ratings.crossings)) for one in ratings.of_row(crossing, number)]
+    if not found:
+        raise MissingDataError("has no strength, so it is not rated", place=f"--explain {row}")
+    return min(found, key=lambda one: one.factor)
+
+
+def _station_names(stands: Bridge) -> tuple[str, ...]:
+    """Return what a person calls the panel points."""
     from movload.report.lines_report import station_names
-    from movload.report.ratings_report import closing, detail, sum_table, summary
-    from movload.review.hand import terms
 
-    parts: list[RenderableType | str] = [stands.title, "", summary(ratings), ""]
-    for number, crossing in enumerate(ratings.crossings):
-        mine = [row for row in rows if row.crossing == crossing.title]
-        if every or len(ratings.crossings) == 1:
-            shown = mine if every else mine[:_SHOWN]
-            rest = f", the worst {len(shown)} of {len(mine)} (--all for every row)" if len(shown) < len(mine) else ""
-            parts += [
-                f"{crossing.title}: forces in {stands.units.symbol('force')}{rest}",
-                "",
-                detail(shown, stands.units),
-                "",
-            ]
-        if len(ratings.crossings) == 1:
-            worst = ratings.governing(number)
-            names = station_names(stands.deck.panel_points)
-            parts += [*sum_table(worst, terms(worst.peaks, worst.row, worst.side), names, stands.units), ""]
-    return [*parts, *closing(ratings)]
+    return station_names(stands.deck.panel_points)
+
+
+def _with_impact(stands: Bridge, impact: str) -> Bridge:
+    """Return the bridge with a typed dynamic allowance or another rule."""
+    from movload.errors import UnknownNameError, nearest_name
+    from movload.rating.impact import RULES
+
+    missing = tuple(place for place in stands.missing if place != "rating.impact")
+    if any(sign.isdigit() for sign in impact):
+        typed = _quantity(impact, "fraction", "--impact")
+        return replace(stands, impact=typed, impact_rule="", missing=missing)
+    if impact not in RULES[1:]:
+        raise UnknownNameError(
+            f'"{impact}" is no fraction and none of {", ".join(RULES[1:])}',
+            place="--impact", nearest=nearest_name(impact, RULES[1:]),
+        )  # fmt: skip
+    return replace(stands, impact=None, impact_rule=impact, missing=missing)
 
 
 def _drawing(stands: Bridge, ratings: Ratings, suffix: str) -> Callable[[], bytes]:
-    """Return what makes the drawing: the worst row of the worst crossing."""
+    """Return what makes the drawing: the worst member of the worst crossing."""
 
     def make() -> bytes:
         from movload.report.figures import figure_bytes, peak_figure
         from movload.report.phrases import factor_text
         from movload.statics.influence import influence_lines
 
-        worst = ratings.worst
+        worst = ratings.worst_member
         lines = influence_lines(stands.truss, stands.deck.panel_points)
         figure = peak_figure(
             stands.truss, lines, worst.peak, worst.effect.name, stands.units,

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from movload.bridge.bridge import Permitted
+from movload.bridge.strengths import FOOTINGS, TypedStrength
 from movload.bridge.truss import Member
 from movload.errors import InputError, MovloadError, UnknownNameError, nearest_name
 from movload.files.toml import written_key
@@ -13,7 +13,7 @@ if TYPE_CHECKING:
     from collections.abc import Iterator, Mapping
 
     from movload.bridge.layout import LaidOut
-    from movload.files.schema.bridge import BridgeFile, MemberGroup
+    from movload.files.schema.bridge import BridgeFile, MemberGroup, PartTable
 
 
 def members_of(table: BridgeFile, laid_out: LaidOut, joints: Mapping[str, tuple[float, float]]) -> dict[str, Member]:
@@ -40,24 +40,32 @@ def members_of(table: BridgeFile, laid_out: LaidOut, joints: Mapping[str, tuple[
     return members
 
 
-def permits_of(table: BridgeFile, laid_out: LaidOut) -> dict[str, Permitted]:
-    """Return typed permitted forces by member.
+def strengths_of(table: BridgeFile, laid_out: LaidOut) -> dict[str, TypedStrength]:
+    """Return typed strengths by member; a group without any leaves its members unrated.
 
     Raises
     ------
     InputError
-        A permitted force below 0.
+        A strength below 0, or given twice.
     """
-    permits: dict[str, Permitted] = {}
-    for name, (title, _) in _group_of_each(table, laid_out).items():
-        typed = table.members[title].permits
-        if typed is None:
-            continue
-        try:
-            permits[name] = Permitted(typed.tension, typed.compression)
-        except MovloadError as error:
-            raise error.at(f"members.{written_key(title)}") from None
-    return permits
+    of_group = {title: strength_of(group, f"members.{written_key(title)}") for title, group in table.members.items()}
+    groups = _group_of_each(table, laid_out)
+    return {name: of_group[title] for name, (title, _) in groups.items() if of_group[title].typed}
+
+
+def strength_of(table: MemberGroup | PartTable, place: str) -> TypedStrength:
+    """Return a group's or a floor part's typed strengths; ``place`` is its key."""
+    said = [getattr(table, footing) for footing in FOOTINGS]
+    try:
+        return TypedStrength(
+            *({} if one is None else one.model_dump(exclude_none=True) for one in said),
+            condition=table.condition or "",
+            measured=table.measured,
+            system=table.system or "",
+            timber=table.timber,
+        )
+    except MovloadError as error:
+        raise error.at(place) from None
 
 
 def _group_of_each(table: BridgeFile, laid_out: LaidOut) -> dict[str, tuple[str, str]]:

@@ -41,10 +41,10 @@ def read_vehicle(vehicle: str | Path) -> Loading:
         The file cannot be read, or something in it is wrong.
     """
     text = str(vehicle)
-    if isinstance(vehicle, Path) or text.lower().endswith(".toml") or "/" in text or "\\" in text or "\0" in text:
+    if is_file_name(vehicle):
         return _from_file(Path(vehicle))
-    names = {_folded(name): name for name in vehicle_names()}
-    found = names.get(_folded(text))
+    names = {folded(name): name for name in vehicle_names()}
+    found = names.get(folded(text))
     if found is None:
         raise UnknownVehicleError(
             f'vehicle "{text}" is not in the library and is no .toml file; "movload vehicles" lists them',
@@ -64,6 +64,12 @@ def _from_file(path: Path) -> Loading:
     return vehicle_from(text, str(path))
 
 
-def _folded(name: str) -> str:
+def is_file_name(name: str | Path) -> bool:
+    """Return whether a file is meant and not a shipped name."""
+    text = str(name)
+    return isinstance(name, Path) or text.lower().endswith(".toml") or "/" in text or "\\" in text or "\0" in text
+
+
+def folded(name: str) -> str:
     """Return a name without case, spaces, hyphens and underscores."""
     return "".join(character for character in name.casefold() if character.isalnum())

@@ -9,12 +9,12 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from movload.bridge.bridge import Bridge, PermanentLoads
-from movload.bridge.deck import Deck
+from movload.bridge.bridge import Bridge
 from movload.bridge.layout import LaidOut, Layout, lay_out
 from movload.bridge.truss import Support, Truss
 from movload.errors import InputError, MovloadError, UnknownNameError, nearest_name
-from movload.files.bars import members_of, permits_of
+from movload.files.bars import members_of, strengths_of
+from movload.files.decks import deck_of, floor_of, permanent_of
 from movload.files.schema.bridge import BridgeFile, DeckTable, LayoutTable, SupportTable
 from movload.files.schema.checked import checked
 from movload.files.schema.vehicle import VehicleFile
@@ -25,7 +25,7 @@ from movload.traffic.vehicle import Vehicle
 if TYPE_CHECKING:
     from collections.abc import Callable, Iterator
 
-    from movload.bridge.deck import PanelPoint
+    from movload.bridge.deck import Deck, PanelPoint
     from movload.units import UnitSystem
 
 
@@ -58,18 +58,21 @@ def _bridge(table: BridgeFile, units: UnitSystem, missing: tuple[str, ...], sour
     supports = [_support(joint, support) for joint, support in table.supports.items()]
     members = members_of(table, laid_out, joints)
     truss = Truss(joints, list(members.values()), supports)
-    permanent = table.permanent
-    deck = Deck(_panel_points(table.deck, laid_out), truss_share=table.deck.truss_share)
+    deck = deck_of(table, _panel_points(table.deck, laid_out))
+    rating = table.rating
     with _placed(lambda place: _deck_place(place, deck, table.deck)):
         return Bridge(
             table.title,
             truss,
             deck,
-            permanent=None
-            if permanent is None or permanent.deck is None or permanent.truss_share is None
-            else PermanentLoads(permanent.deck, permanent.truss_share),
-            permits=permits_of(table, laid_out),
-            impact=table.rating.impact,
+            permanent=permanent_of(table, deck),
+            strengths=strengths_of(table, laid_out),
+            floor=floor_of(table.floor),
+            impact=None if isinstance(rating.impact, str) else rating.impact,
+            impact_rule=rating.impact if isinstance(rating.impact, str) else "",
+            surface=rating.surface or "",
+            traffic=rating.traffic,
+            deflection_limit=rating.deflection,
             units=units,
             missing=missing,
             sources=(source,),
@@ -169,7 +172,13 @@ def _loading(table: VehicleFile) -> Loading:
             gauges=gauges,
             headings=tuple({"+x": 1, "-x": -1}[heading] for heading in table.headings),
         )
-    return Loading.of(vehicle, table.kind, source=table.source or "", notes=table.notes)
+    of_impact = {
+        "included": ("its loads hold impact already: none is added",),
+        "none": ("its rule asks for no impact",),
+    }
+    notes = (*table.notes, *of_impact.get(table.impact, ()))
+    dynamic = table.impact == "added"
+    return Loading.of(vehicle, table.kind, source=table.source or "", notes=notes, dynamic=dynamic)
 
 
 def _axle_place(place: str) -> str:

@@ -58,7 +58,7 @@ def runs_of(trains: tuple[Train, ...], headings: tuple[int, ...] | None = None) 
     tried = [headings or train.headings for train in trains]
     axles = np.array([train.vehicle.loads.size for train in trains], dtype=np.intp)
     distances = np.concatenate([train.vehicle.distances for train in trains])
-    felt = np.concatenate([train.vehicle.loads * train.shares for train in trains])
+    felt = np.concatenate([train.felt for train in trains])
     foremost = np.cumsum(axles) - axles  # number of each train's front axle
     group = np.array([(number, heading) for number, one in enumerate(tried) for heading in one], dtype=np.intp)
     member, axle = _counted(axles[group[:, 0]])

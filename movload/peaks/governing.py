@@ -1,47 +1,79 @@
-"""Which train and which position gave each row's extremes, found again from the values."""
+"""Which formation and which position gave each row's extremes, found again from the values."""
 
 from __future__ import annotations
 
+from functools import lru_cache
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
 from movload.peaks.candidates import Candidates, candidates_of
-from movload.peaks.extremes import runs_at_a_time, static_extremes
+from movload.peaks.extremes import may_lose, runs_at_a_time, static_extremes
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from movload.arrays import Floats, Ints
-    from movload.statics.part import Response
-    from movload.traffic.crossing import Train
+    from movload.statics.part import AtStations
+    from movload.traffic.crossing import Formation, Train
 
 _TIE: Final = 1e-12  # of the row's largest value: positions whose effects differ by less are equally bad
 _SAME_PLACE: Final = 9  # decimals of a metre to which positions count as equal when ties are broken
 
 
-def governing_candidates(response: Response, trains: Sequence[Train], impact: Floats) -> tuple[Ints, Ints]:
-    """Return the train and its candidate that give every row's highest and lowest, (2, R) each.
+def formation_extremes(response: AtStations, formations: Sequence[Formation], impact: Floats) -> tuple[Floats, Floats]:
+    """Return the highest and lowest value of each row under each formation (F, R), impact included.
 
-    Of equally bad trains the first counts; of equally bad positions the smallest, heading +1 before -1, then the axle
-    nearest the front. ``impact`` (R, 2) makes the trains that are dynamic worse; it does not move their positions.
+    The vehicles of a formation stand abreast, each where it is worst: their extremes add.
+
+    Parameters
+    ----------
+    impact
+        (F, R, 2) dynamic allowance on highest and lowest, for the trains that are dynamic.
     """
-    static = np.stack(static_extremes(response, trains))
-    adverse = np.stack((static[0], -static[1]))
+    counts = [len(formation) for formation in formations]
+    trains = [train for formation in formations for train in formation]
+    extremes = static_extremes(response, trains)
     dynamic = np.array([train.dynamic for train in trains])[:, None]
-    felt = adverse * (1.0 + dynamic * impact.T[:, None, :])
-    worst = felt.max(axis=1)
-    train = np.argmax(felt >= (worst - _TIE * worst.max(axis=0))[:, None], axis=1)
-    reached = np.take_along_axis(adverse, train[:, None], axis=1)[:, 0]
-    floor = reached - _TIE * adverse.max(axis=(0, 1))
-    where = np.zeros_like(train)
-    for number in np.unique(train):
-        candidates = candidates_of(response.stations, [trains[number]], may_lose=response.condensed.jumps)
-        where = np.where(train == number, _first_reaching(response, candidates, floor), where)
-    return train, where
+    of_train = impact if len(trains) == len(formations) else np.repeat(impact, counts, axis=0)
+    felt = [extreme * (1.0 + dynamic * of_train[:, :, side]) for side, extreme in enumerate(extremes)]
+    if len(trains) > len(formations):
+        starts = np.cumsum([0, *counts[:-1]])
+        felt = [np.add.reduceat(one, starts, axis=0) for one in felt]
+    return felt[0], felt[1]
 
 
-def _first_reaching(response: Response, candidates: Candidates, floor: Floats) -> Ints:
+def governing_formation(response: AtStations, formations: Sequence[Formation], impact: Floats) -> Ints:
+    """Return which formation gives every row's highest and lowest (2, R); of equally bad ones the first.
+
+    Parameters
+    ----------
+    impact
+        (R, 2), as in `formation_extremes`.
+    """
+    every = np.broadcast_to(impact, (len(formations), *impact.shape))
+    highest, lowest = formation_extremes(response, formations, every)
+    adverse = np.stack((highest, -lowest))
+    worst = adverse.max(axis=1)
+    first: Ints = np.argmax(adverse >= (worst - _TIE * worst.max(axis=0))[:, None], axis=1)
+    return first
+
+
+@lru_cache(maxsize=256)  # every row of a part asks about the same few trains
+def worst_candidates(response: AtStations, train: Train) -> tuple[Candidates, Ints]:
+    """Return a train's candidates, and which of them gives every row's highest and lowest static value (2, R).
+
+    Of equally bad positions the smallest counts, then heading +1 before -1, then the axle nearest the front.
+    """
+    highest, lowest = (extreme[0] for extreme in static_extremes(response, [train]))
+    reached = np.stack((highest, -lowest))
+    floor = reached - _TIE * reached.max(axis=0)
+    lost = may_lose(response.condensed, lifting=bool((train.shares < 0.0).any()))
+    candidates = candidates_of(response.stations, [train], may_lose=lost)
+    return candidates, _first_reaching(response, candidates, floor)
+
+
+def _first_reaching(response: AtStations, candidates: Candidates, floor: Floats) -> Ints:
     """Return the first candidate (2, R), in the order of ties, whose effect reaches ``floor`` (2, R) in each sense."""
     heading, axle = (np.tile(one, candidates.stops) for one in (candidates.runs.heading, candidates.runs.axle))
     order = np.lexsort((axle, -heading, np.round(candidates.fronts().reshape(-1), _SAME_PLACE)))

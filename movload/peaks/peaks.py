@@ -6,24 +6,25 @@ screening many vehicles never pays for placements nobody reads.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cached_property
-from typing import TYPE_CHECKING, Final
+from typing import TYPE_CHECKING, Final, Protocol
 
 import numpy as np
 
 from movload.arrays import held
 from movload.errors import InputError, UnknownNameError
-from movload.peaks.candidates import LOST, candidates_of
-from movload.peaks.governing import governing_candidates
-from movload.peaks.placement import Placement, edge, on_the_ends, panel_loads
-from movload.statics.part import Effect, Response, row_of
+from movload.peaks.candidates import LOST
+from movload.peaks.governing import governing_formation, worst_candidates
+from movload.peaks.placement import Placement, edge, joined, on_the_ends, panel_loads
+from movload.statics.part import AtStations, Effect, Response, row_of
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from movload.arrays import Floats, Ints
-    from movload.traffic.crossing import Train
+    from movload.traffic.crossing import Formation, Train
+    from movload.traffic.vehicle import Vehicle
 
 
 _ROUNDINGS: Final = 16  # last places by which summed spacings may be off
@@ -64,6 +65,9 @@ class Peak:
     lost: bool = False
 
 
+NO_PEAK: Final = Peak(0.0, float("nan"), 0, (), -1, -1, "", Placement.off())
+
+
 @dataclass(frozen=True, slots=True)
 class RowPeaks:
     """Highest and lowest peak of one row."""
@@ -73,63 +77,123 @@ class RowPeaks:
     lowest: Peak
 
 
+class Swept(Protocol):
+    """The peaks of one part under one crossing, whatever found them."""
+
+    @property
+    def effects(self) -> tuple[Effect, ...]:
+        """The rows (R)."""
+        ...
+
+    @property
+    def highest(self) -> Floats:
+        """(R,) with impact, including 0."""
+        ...
+
+    @property
+    def lowest(self) -> Floats:
+        """(R,) with impact, including 0."""
+        ...
+
+    def peak(self, row: int, side: int) -> Peak:
+        """Return one row's highest (side 0) or lowest (side 1) peak."""
+        ...
+
+    def vehicle(self, row: int, side: int) -> Vehicle:
+        """Return the vehicle that gives it; any of them where the row feels none."""
+        ...
+
+    def ordinates(self, row: int, side: int, x: Floats) -> Floats:
+        """Return that peak's effect per unit load at each x (A,): added with the placement's loads they give it."""
+        ...
+
+
 @dataclass(frozen=True, eq=False)
 class PartPeaks:
-    """The peaks of one part under the trains of one crossing.
+    """The peaks of one part on straight lines, under the formations of one crossing.
 
     Attributes
     ----------
     response
         How the part answers.
-    trains
-        The trains swept; their envelope gives the peaks.
+    formations
+        The formations swept; their envelope gives the peaks.
     highest, lowest
         (R,) with impact, both including 0.
     impact
         (R, 2) dynamic allowance on the highest and the lowest.
     """
 
-    response: Response
-    trains: tuple[Train, ...]
+    response: AtStations
+    formations: tuple[Formation, ...]
     highest: Floats
     lowest: Floats
     impact: Floats
 
-    @cached_property
-    def _governing(self) -> tuple[Ints, Ints]:
-        """Train and candidate of every row's highest and lowest (2, R) each."""
-        return governing_candidates(self.response, self.trains, self.impact)
+    @property
+    def effects(self) -> tuple[Effect, ...]:
+        """The rows (R)."""
+        return self.response.effects
 
-    def train(self, row: int, side: int) -> Train:
-        """Return the train that gives one row's highest (side 0) or lowest (side 1) peak."""
-        return self.trains[int(self._governing[0][side, row]) if len(self.trains) > 1 else 0]
+    @cached_property
+    def _governing(self) -> Ints:
+        """Formation of every row's highest and lowest (2, R)."""
+        return governing_formation(self.response, self.formations, self.impact)
+
+    def formation(self, row: int, side: int) -> Formation:
+        """Return the formation that gives one row's highest (side 0) or lowest (side 1) peak."""
+        return self.formations[int(self._governing[side, row]) if len(self.formations) > 1 else 0]
+
+    def vehicle(self, row: int, side: int) -> Vehicle:
+        """Return the vehicle that gives it (abreast they are all alike)."""
+        return self.formation(row, side)[0].vehicle
+
+    def ordinates(self, row: int, side: int, x: Floats) -> Floats:  # noqa: ARG002  # the line serves both sides
+        """Return the row's effect per unit load at each x (A,)."""
+        unit = panel_loads(self.response.stations, x[:, None], np.ones(1))
+        ordinates: Floats = self.response.under(unit.T)[row]
+        return ordinates
 
     def peak(self, row: int, side: int) -> Peak:
         """Return one row's highest (side 0) or lowest (side 1) peak."""
         value = float((self.highest, self.lowest)[side][row])
         if value == 0.0:
-            return Peak(0.0, float("nan"), 0, (), -1, -1, "", Placement.off())
-        train_number, candidate = (int(found[side, row]) for found in self._governing)
-        train = self.trains[train_number]
-        candidates = candidates_of(self.response.stations, [train], may_lose=self.response.condensed.jumps)
-        stop, run = divmod(candidate, candidates.runs.train.size)
-        x = candidates.standing(run, run + 1)[stop]
-        heading, axle = int(candidates.runs.heading[run]), int(candidates.runs.axle[run])
-        impact = np.full(train.shares.shape, self.impact[row, side] if train.dynamic else 0.0)
-        stations = self.response.stations
-        placement = Placement(on_the_ends(stations, x), train.vehicle.loads, train.shares, impact)
-        count = stations.size
+            return NO_PEAK
+        abreast = [self._standing(train, row, side) for train in self.formation(row, side)]
+        felt = [one for one in abreast if one.value != 0.0]
+        return replace(felt[0], value=value, placement=joined([one.placement for one in felt]))
+
+    def _standing(self, train: Train, row: int, side: int) -> Peak:
+        """Return one train where it is worst for a row, impact left out of the value; nothing where it is not felt."""
+        candidates, worst = worst_candidates(self.response, train)
+        stop, run = divmod(int(worst[side, row]), candidates.runs.train.size)
+        stations, count = self.response.stations, self.response.stations.size
+        x = on_the_ends(stations, candidates.standing(run, run + 1)[stop])
+        heading = int(candidates.runs.heading[run])
+        placement = standing_train(train, x, self.impact[row, side])
+        static = float(self.ordinates(row, side, x) @ train.felt)
+        if static * (1, -1)[side] <= 0.0:
+            return NO_PEAK
         return Peak(
-            value,
-            _front(stations, placement.x, heading * train.vehicle.distances, lost=stop - stations.size),
+            static,
+            _front(stations, x, heading * train.vehicle.distances, lost=stop - count),
             heading,
             tuple(map(float, np.diff(train.vehicle.distances))),
-            axle,
+            int(candidates.runs.axle[run]),
             stop if stop < count else (0, count - 1)[stop - count],
             train.case,
             placement,
             lost=stop >= count,
         )
+
+
+def standing_train(train: Train, x: Floats, impact: float) -> Placement:
+    """Return a train's axles standing at x (A,) [m] with an impact that counts where the train is dynamic."""
+    axles = np.ones(x.size)
+    return Placement(
+        x, train.vehicle.loads, train.shares, (impact if train.dynamic else 0.0) * axles,
+        train.factor * axles, train.z * axles, np.zeros(x.size, dtype=np.intp),
+    )  # fmt: skip
 
 
 def _front(stations: Floats, x: Floats, behind: Floats, *, lost: int) -> float:
@@ -177,7 +241,7 @@ class Peaks:
     effects: tuple[Effect, ...]
     highest: Floats
     lowest: Floats
-    parts: tuple[PartPeaks, ...]
+    parts: tuple[Swept, ...]
 
     def __getitem__(self, key: str | tuple[str, str]) -> RowPeaks:
         """Return one row's peaks by its name (a member's joints in either order) or by (part, name)."""
@@ -192,12 +256,12 @@ class Peaks:
         part, inside = self.part_of(number)
         return part.peak(inside, side)
 
-    def train(self, number: int, side: int) -> Train:
-        """Return the train that gives the highest (side 0) or lowest (side 1) of row ``number``."""
+    def vehicle(self, number: int, side: int) -> Vehicle:
+        """Return the vehicle that gives the highest (side 0) or lowest (side 1) of row ``number``."""
         part, inside = self.part_of(number)
-        return part.train(inside, side)
+        return part.vehicle(inside, side)
 
-    def part_of(self, number: int) -> tuple[PartPeaks, int]:
+    def part_of(self, number: int) -> tuple[Swept, int]:
         """Return the part that row ``number`` belongs to, and its row there."""
         inside = number
         for part in self.parts:
@@ -218,19 +282,19 @@ def effects_at(response: Response, train: Train, position: float, heading: int) 
     if heading not in {1, -1} or not np.isfinite(position):
         raise InputError(f"heading is +1 or -1 and a position finite, got {heading} and {position} m", place="position")
     x = position - heading * train.vehicle.distances
-    loads = panel_loads(response.stations, x[None, :], train.vehicle.loads * train.shares)
+    loads = panel_loads(response.stations, x[None, :], train.felt)
     values: Floats = response.under(loads.T)[:, 0]
     return values
 
 
-def stacked(title: str, parts: Sequence[PartPeaks]) -> Peaks:
+def stacked(title: str, parts: Sequence[Swept]) -> Peaks:
     """Return the peaks of all parts as one, rows in the order of the parts."""
     if len(parts) == 1:
         (part,) = parts
-        return Peaks(title, part.response.effects, part.highest, part.lowest, (part,))
+        return Peaks(title, part.effects, part.highest, part.lowest, (part,))
     return Peaks(
         title,
-        tuple(effect for part in parts for effect in part.response.effects),
+        tuple(effect for part in parts for effect in part.effects),
         held(np.concatenate([part.highest for part in parts])),
         held(np.concatenate([part.lowest for part in parts])),
         tuple(parts),

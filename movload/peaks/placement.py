@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
@@ -10,53 +10,77 @@ import numpy as np
 from movload.arrays import Floats, Ints, frozen_floats
 
 if TYPE_CHECKING:
-    from movload.traffic.vehicle import Strip
+    from collections.abc import Sequence
 
 SNAP: Final = 1e-13  # of the largest station: an axle no further outside an end station stands on it
 
 
 @dataclass(frozen=True, slots=True, eq=False)
 class Placement:
-    """One vehicle standing still on the bridge, as one part feels it.
+    """One vehicle, or several abreast, standing still on the bridge, as one part feels it.
 
     Attributes
     ----------
     x
-        Where each axle stands (A,) [m], front axle first; an axle outside the stations is off the bridge.
+        Where each axle stands (A,) [m], vehicle by vehicle, front axle first; one outside the stations is off.
     load
         Whole-axle loads (A,) [N].
     share
         Share of each axle that reaches the part (A,) [-].
     impact
         Dynamic allowance of each axle (A,) [-]: its effect counts 1 + impact times.
-    strips
-        Uniform loads as they stand.
+    factor
+        What the case and multiple presence multiply each axle by (A,) [-].
+    z
+        Where the middle of each axle's vehicle keeps across (A,) [m]; nan where a share was typed.
+    vehicle
+        (A,) number of the vehicle that each axle belongs to, counted from 0.
     """
 
     x: Floats
     load: Floats
     share: Floats
     impact: Floats
-    strips: tuple[Strip, ...] = field(default=(), kw_only=True)
+    factor: Floats
+    z: Floats
+    vehicle: Ints
 
     def __post_init__(self) -> None:
         """Copy read-only."""
-        for name in ("x", "load", "share", "impact"):
+        for name in ("x", "load", "share", "impact", "factor", "z"):
             object.__setattr__(self, name, frozen_floats(getattr(self, name)))
 
     @classmethod
     def off(cls) -> Placement:
         """Return the empty placement: the vehicle is off the bridge."""
         nothing = np.zeros(0)
-        return cls(nothing, nothing, nothing, nothing)
+        return cls(nothing, nothing, nothing, nothing, nothing, nothing, np.zeros(0, dtype=np.intp))
+
+    @property
+    def felt(self) -> Floats:
+        """Each axle as the part feels it (A,) [N], impact included."""
+        loads: Floats = self.load * self.share * self.factor * (1.0 + self.impact)
+        return loads
 
     def panel_loads(self, stations: Floats) -> Floats:
         """Return the downward loads (B,) [N] that reach the stations, impact included."""
         if not self.x.size:
             return np.zeros(stations.size)
-        felt = self.load * self.share * (1.0 + self.impact)
-        loads: Floats = panel_loads(stations, self.x[None, :], felt)[0]
+        loads: Floats = panel_loads(stations, self.x[None, :], self.felt)[0]
         return loads
+
+
+def joined(placements: Sequence[Placement]) -> Placement:
+    """Return vehicles abreast as one placement, counted in their order."""
+    if len(placements) == 1:
+        return placements[0]
+    columns = [
+        np.concatenate([getattr(one, name) for one in placements])
+        for name in ("x", "load", "share", "impact", "factor", "z")
+    ]
+    vehicle = np.repeat(np.arange(len(placements)), [one.x.size for one in placements])
+    x, load, share, impact, factor, z = columns
+    return Placement(x, load, share, impact, factor, z, vehicle)
 
 
 def edge(stations: Floats) -> float:

@@ -2,13 +2,17 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, overload
+from dataclasses import replace
+from typing import TYPE_CHECKING, cast, overload
 
 import numpy as np
 
 from movload.arrays import Floats, held
-from movload.peaks.extremes import static_extremes
-from movload.peaks.peaks import PartPeaks, Peaks, effects_at, stacked
+from movload.peaks.governing import formation_extremes
+from movload.peaks.peaks import PartPeaks, Peaks, Swept, effects_at, stacked
+from movload.peaks.span_peaks import spans_peaks
+from movload.peaks.wheel_peaks import wheels_peaks
+from movload.statics.spans import PlankSpan, SimpleSpans
 from movload.traffic.crossing import whole_trains
 from movload.traffic.loading import Loading
 from movload.traffic.vehicle import Vehicle
@@ -16,15 +20,15 @@ from movload.traffic.vehicle import Vehicle
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
-    from movload.statics.part import Response
-    from movload.traffic.crossing import Train
+    from movload.statics.part import AtStations, Response
+    from movload.traffic.crossing import Formation
 
 
 @overload
-def sweep(lines: Response, vehicle: Vehicle | Loading) -> Peaks: ...
+def sweep(lines: AtStations, vehicle: Vehicle | Loading) -> Peaks: ...
 @overload
-def sweep(lines: Response, vehicle: Sequence[Vehicle | Loading]) -> list[Peaks]: ...
-def sweep(lines: Response, vehicle: Vehicle | Loading | Sequence[Vehicle | Loading]) -> Peaks | list[Peaks]:
+def sweep(lines: AtStations, vehicle: Sequence[Vehicle | Loading]) -> list[Peaks]: ...
+def sweep(lines: AtStations, vehicle: Vehicle | Loading | Sequence[Vehicle | Loading]) -> Peaks | list[Peaks]:
     """Return the exact peaks of every row: whole axles on one line, no share, no impact.
 
     Parameters
@@ -41,38 +45,60 @@ def sweep(lines: Response, vehicle: Vehicle | Loading | Sequence[Vehicle | Loadi
     """
     if isinstance(vehicle, (Vehicle, Loading)):
         return sweep(lines, [vehicle])[0]
-    trains = [whole_trains(one) for one in vehicle]
-    no_impact = held(np.zeros((len(trains), len(lines.effects), 2)))
-    swept = part_peaks(lines, trains, no_impact)
+    formations = [tuple((train,) for train in whole_trains(one)) for one in vehicle]
+    no_impact = np.broadcast_to(0.0, (len(formations), len(lines.effects), 2))
+    swept = part_peaks(lines, formations, no_impact)
     return [stacked(one.title, [peaks]) for one, peaks in zip(vehicle, swept, strict=True)]
 
 
-def part_peaks(response: Response, trains: Sequence[tuple[Train, ...]], impact: Floats) -> list[PartPeaks]:
-    """Return the peaks of one part under each crossing's trains, impact included.
+def swept_parts(
+    responses: Sequence[Response], crossings: Sequence[tuple[Formation, ...]], impact: Floats
+) -> list[Swept]:
+    """Return the peaks of parts that answer alike, each under one crossing's formations, impact included.
 
     Parameters
     ----------
-    trains
-        For each crossing the trains that the part feels.
+    responses
+        For each of P askings the part's own response; all are alike.
+    crossings
+        For each asking the formations that the part feels.
+    impact
+        (P, R, 2) dynamic allowance on highest and lowest of every row, for trains that are dynamic.
+    """
+    spans = [one for one in responses if isinstance(one, SimpleSpans)]
+    if spans:
+        return [*spans_peaks(spans, crossings, impact)]
+    planks = [one for one in responses if isinstance(one, PlankSpan)]
+    if planks:
+        return [*wheels_peaks(planks, crossings, impact)]
+    lines = [cast("AtStations", one) for one in responses]
+    by_line = part_peaks(lines[0], crossings, impact)
+    return [replace(peaks, response=response) for peaks, response in zip(by_line, lines, strict=True)]
+
+
+def part_peaks(response: AtStations, crossings: Sequence[tuple[Formation, ...]], impact: Floats) -> list[PartPeaks]:
+    """Return the peaks of one part under each crossing's formations, impact included.
+
+    Parameters
+    ----------
+    crossings
+        For each of C crossings the formations that the part feels; parts that share a response may be asked together.
     impact
         (C, R, 2) dynamic allowance on highest and lowest of every row, for trains that are dynamic.
     """
-    flat = [train for one in trains for train in one]
-    counts = [len(one) for one in trains]
-    highest, lowest = static_extremes(response, flat)
-    dynamic = np.array([train.dynamic for train in flat])[:, None]
-    of_train = np.repeat(impact, counts, axis=0)
-    highest *= 1.0 + dynamic * of_train[:, :, 0]
-    lowest *= 1.0 + dynamic * of_train[:, :, 1]
-    if max(counts, default=0) > 1:  # the envelope over each crossing's trains
+    counts = [len(formations) for formations in crossings]
+    several = max(counts, default=0) > 1
+    flat = [formation for formations in crossings for formation in formations]
+    highest, lowest = formation_extremes(response, flat, np.repeat(impact, counts, axis=0) if several else impact)
+    if several:  # the envelope over each crossing's formations
         starts = np.cumsum([0, *counts[:-1]])
         highest = np.maximum.reduceat(highest, starts, axis=0)
         lowest = np.minimum.reduceat(lowest, starts, axis=0)
     highest, lowest = held(highest), held(lowest)
-    return [PartPeaks(response, one, highest[row], lowest[row], impact[row]) for row, one in enumerate(trains)]
+    return [PartPeaks(response, one, highest[row], lowest[row], impact[row]) for row, one in enumerate(crossings)]
 
 
-def effects_with_front_at(lines: Response, vehicle: Vehicle, position: float, heading: int = 1) -> Floats:
+def effects_with_front_at(lines: AtStations, vehicle: Vehicle, position: float, heading: int = 1) -> Floats:
     """Return every row's effect (R,) with a vehicle standing with its front axle at x = ``position`` [m]."""
     (train,) = whole_trains(vehicle)
     return effects_at(lines, train, position, heading)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 from functools import cached_property
 from typing import TYPE_CHECKING, Final
@@ -10,16 +11,19 @@ import numpy as np
 
 from movload.errors import MissingDataError
 from movload.rating.kernel import SIGNS, pushed_by_permanent
-from movload.strength.typed import SENSES
+from movload.rating.resistance import SENSES
 
 if TYPE_CHECKING:
-    from movload.arrays import Floats
+    from movload.arrays import Bools, Floats
     from movload.errors import Note
     from movload.peaks.peaks import Peak, Peaks
     from movload.rating.solved import SolvedBridge
     from movload.statics.part import Effect
     from movload.traffic.crossing import Crossing
 
+EITHER: Final = "either truss"
+_TRUSSES: Final = ("left truss", "right truss")
+_SAME: Final = 1e-9  # relative: two trusses alike but for round-off
 _NO_PULL: Final = 1e-9  # of the largest permanent effect: an upward pull below it is round-off
 _DIGITS: Final = 10  # to which ratings are compared: bars alike but for round-off keep the order of their rows
 
@@ -30,10 +34,10 @@ class Rating:
 
     Attributes
     ----------
-    effect, sense
-        What, and whether tension or compression is rated.
-    crossing, level
-        Titles.
+    effect, part, sense
+        What, of which part as a person says it ("either truss" where both are alike), and in which sense.
+    crossing, number, level
+        The crossing's title and number, and the level's title.
     factor
         RF [-]; 0 when permanent load alone uses the strength, infinite when there is no live effect.
     strength
@@ -53,8 +57,10 @@ class Rating:
     """
 
     effect: Effect
+    part: str
     sense: str
     crossing: str
+    number: int
     level: str
     factor: float
     strength: float
@@ -75,8 +81,18 @@ class Rating:
     @cached_property
     def safe_weight(self) -> float:
         """RF x the weight of the vehicle that governs [N]: what it could weigh, its axles in the same proportions."""
-        vehicle = self.peaks.train(self.row, self.side).vehicle
-        return self.factor * vehicle.gross
+        return self.factor * self.gross
+
+    @property
+    def gross(self) -> float:
+        """Weight of the vehicle that governs [N]."""
+        return self.peaks.vehicle(self.row, self.side).gross
+
+    @property
+    def abreast(self) -> int:
+        """How many vehicles stand side by side then; 0 when off the bridge."""
+        vehicle = self.peak.placement.vehicle
+        return int(vehicle.max(initial=-1)) + 1
 
     @property
     def permanent_use(self) -> float:
@@ -146,8 +162,10 @@ class Ratings:
         margins = solved.method.levels[level]
         return Rating(
             effect=peaks.effects[row],
-            sense=SENSES[side],
+            part=self.said(peaks.effects[row]),
+            sense=sense_of(peaks.effects[row], side),
             crossing=loading.title,
+            number=crossing,
             level=self.levels[level],
             factor=float(self.factor[level, crossing, row, side]),
             strength=float(solved.strength[level, row, side]),
@@ -155,7 +173,7 @@ class Ratings:
             live=float((peaks.highest, peaks.lowest)[side][row]),
             impact=float(self.impact[crossing, row, side]),
             pushed=float(self._pushed[level][row, side]),
-            live_factor=margins.live_margin(loading.kind),
+            live_factor=margins.live_margin(loading.kind, self._traffic),
             peaks=peaks,
             row=row,
             side=side,
@@ -170,12 +188,53 @@ class Ratings:
             for level in solved.method.levels
         )
 
+    @property
+    def _traffic(self) -> float | None:
+        """Trucks a day, None where unknown."""
+        traffic = self.solved.traffic
+        return None if traffic is None or math.isinf(traffic) else traffic
+
+    def said(self, effect: Effect) -> str:
+        """Return a row's part as a person says it."""
+        return EITHER if self.alike and effect.part in _TRUSSES else effect.part
+
+    @cached_property
+    def alike(self) -> bool:
+        """Whether both trusses carry the same in every crossing, so that one stands for both."""
+        sides = [[row for row, effect in enumerate(self.solved.effects) if effect.part == part] for part in _TRUSSES]
+        left, right = (np.array(rows, dtype=np.intp) for rows in sides)
+        if not left.size:
+            return False
+        values = [self.solved.permanent, np.array([(one.highest, one.lowest) for one in self.peaks])]
+        return all(
+            np.allclose(one[..., left], one[..., right], rtol=_SAME, atol=_SAME * np.abs(one).max(initial=0.0))
+            for one in values
+        )
+
+    @cached_property
+    def _counted(self) -> Bools:
+        """Which rows stand for themselves (R,): not those of a right truss that is like the left one."""
+        return np.array([not (self.alike and effect.part == _TRUSSES[1]) for effect in self.solved.effects])
+
+    def counted(self, row: int) -> bool:
+        """Return whether a row stands for itself: not one of a right truss that is like the left one."""
+        return bool(self._counted[row])
+
+    def rates(self, crossing: int, level: int) -> bool:
+        """Return whether a level rates a crossing's kind of loading."""
+        return self.solved.method.levels[level].rates(self.crossings[crossing].loading.kind)
+
     def rows(self, crossing: int, *, level: int | None = None) -> list[Rating]:
         """Return every rated row of a crossing at one level or at all, the worst first.
 
         A row whose strength permanent load alone uses comes before all others, the most overused first.
         """
         return sorted(self._among(crossing, np.inf, level), key=_order)
+
+    def of_row(self, crossing: int, row: int) -> list[Rating]:
+        """Return a row's ratings under a crossing, at every level and in every sense that has a strength."""
+        rated = self.factor[:, crossing, row]
+        return [self.rating(crossing, row, int(side), level=int(level)) for level, side in np.argwhere(rated >= 0.0)]
 
     def governing(self, crossing: int, *, level: int | None = None) -> Rating:
         """Return the worst row of a crossing at one level or of all, the first of `rows`.
@@ -200,7 +259,7 @@ class Ratings:
         return [
             self.rating(crossing, int(row), int(side), level=one)
             for one in self._asked(level)
-            for row, side in np.argwhere(self.factor[one, crossing] <= greatest)
+            for row, side in np.argwhere((self.factor[one, crossing] <= greatest) & self._counted[:, None])
         ]
 
     @property
@@ -210,26 +269,38 @@ class Ratings:
         least = permanent + np.min([peaks.lowest for peaks in self.peaks], axis=0)
         noise = _NO_PULL * np.abs(permanent).max(initial=0.0)
         return {
-            effect.name: float(-pull)
-            for effect, pull in zip(self.solved.effects, least, strict=True)
-            if effect.presses and pull < -noise
+            self._named(effect): float(-pull)
+            for effect, pull, counted in zip(self.solved.effects, least, self._counted, strict=True)
+            if effect.presses and counted and pull < -noise
         }
 
-    @property
+    def _named(self, effect: Effect) -> str:
+        """Return a row's name, with its truss where the two differ."""
+        return f"{effect.part} {effect.name}" if self._several and not self.alike else effect.name
+
+    @cached_property
+    def _several(self) -> bool:
+        """Whether more than one part has members."""
+        return len({effect.part for effect in self.solved.effects if effect.kind == "axial"}) > 1
+
+    @cached_property
     def coverage(self) -> Coverage:
-        """What these ratings cover."""
+        """What these ratings cover: members one by one, the floor beam by beam."""
         felt = SIGNS * self.solved.permanent.sum(axis=0)[:, None] > 0
         for peaks in self.peaks:
             felt |= np.stack((peaks.highest > 0, peaks.lowest < 0), axis=1)
-        gaps = (felt & np.isnan(self.solved.strength).any(axis=0)).sum(axis=1)
-        by_gap: dict[str, list[str]] = {"full": [], "partly": [], "none": []}
-        several = len(self.solved.parts) > 1
+        open_senses = felt & np.isnan(self.solved.strength).any(axis=0)
+        asked: dict[str, list[int]] = {}
         for row, effect in enumerate(self.solved.effects):
-            if effect.kind == "axial":
-                name = f"{effect.part} {effect.name}" if several else effect.name
-                kind = "full" if not gaps[row] else "partly" if gaps[row] < felt[row].sum() else "none"
-                by_gap[kind].append(name)
-        return Coverage(**{kind: tuple(names) for kind, names in by_gap.items()}, not_rated=("floor", "deck"))
+            if effect.kind in SENSES and self._counted[row]:
+                name = self._named(effect) if effect.kind == "axial" else effect.part
+                known = asked.setdefault(name, [0, 0])
+                known[0] += int(open_senses[row].sum())
+                known[1] += int(felt[row].sum())
+        by_gap: dict[str, list[str]] = {"full": [], "partly": [], "none": []}
+        for name, (gaps, senses) in asked.items():
+            by_gap["full" if not gaps else "partly" if gaps < senses else "none"].append(name)
+        return Coverage(**{kind: tuple(names) for kind, names in by_gap.items()}, not_rated=self.solved.not_rated)
 
     @property
     def worst(self) -> Rating:
@@ -237,10 +308,23 @@ class Ratings:
         return min((self.governing(number) for number in range(len(self.crossings))), key=_order)
 
     @property
+    def worst_member(self) -> Rating:
+        """Return the worst member of all crossings, the floor left out: what an elevation can show."""
+        members = [
+            one for number in range(len(self.crossings)) for one in self.rows(number) if one.effect.kind == "axial"
+        ]
+        return min(members, key=_order) if members else self.worst
+
+    @property
     def passes(self) -> bool:
         """Whether every unrounded rating is 1 or more, every member rated in what it feels, and no bearing lifted."""
         rated = self.factor[~np.isnan(self.factor)]
         return bool((rated >= 1.0).all()) and self.coverage.complete and not self.uplifts
+
+
+def sense_of(effect: Effect, side: int) -> str:
+    """Return what a row's positive (0) or negative (1) side is called."""
+    return SENSES.get(effect.kind, ("positive", "negative"))[side]
 
 
 def _order(rating: Rating) -> tuple[bool, float, float]:

@@ -10,16 +10,25 @@ import numpy as np
 
 from movload.arrays import Floats, held
 from movload.bridge.across import Across
-from movload.errors import MissingDataError, Note
+from movload.errors import Note
 from movload.rating.factor_sets import PERMITTED, FactorSet
+from movload.rating.impact_table import ImpactTable, impact_table
+from movload.rating.required import require_data
+from movload.rating.resistance import SENSES, UNRATED, resistance
+from movload.statics.floor import floor_parts, truss_lines
 from movload.statics.influence import lines_of
 from movload.statics.part import Effect, Part
 from movload.statics.permanent import PERMANENT_CLASSES, permanent_effects
 from movload.statics.stiffness import factored
-from movload.strength.typed import permitted_strengths
 
 if TYPE_CHECKING:
-    from movload.bridge.bridge import Bridge, PermanentLoads
+    from collections.abc import Sequence
+
+    from movload.bridge.bridge import Bridge
+    from movload.bridge.roadway import Roadway
+    from movload.bridge.strengths import TypedStrength
+    from movload.rating.factor_sets import Level
+    from movload.strength.strength import Strength
     from movload.units import UnitSystem
 
 
@@ -34,9 +43,9 @@ class SolvedBridge:
     parts
         What is rated, each with its response and its across line; rows are counted part after part.
     permanent
-        Permanent effects (classes, R) [N, m], tension positive.
+        Permanent effects (classes, R) [N, N m], tension and sagging positive.
     strength
-        Strengths (levels, R, 2), tension then compression; nan where none is known.
+        Strengths (levels, R, 2), of the positive side then of the negative; nan where none is known.
     notes
         What a reader must know.
     sources
@@ -46,9 +55,21 @@ class SolvedBridge:
     method
         The factor set.
     impact
-        (R, 2) dynamic allowance [-].
+        What gives the dynamic allowance of every row for a kind of loading and a speed.
     units
         Units to show results in.
+    roadway
+        The kerbs; None where a share was typed.
+    strengths
+        The distinct strengths with their steps.
+    which
+        (levels, R, 2) number of each row's strength among those.
+    traffic
+        Trucks a day one way; None when nobody has said, infinite when unknown.
+    deflection_limit
+        n of a limit span / n on the live deflection; None when none is asked.
+    not_rated
+        What of the bridge no row stands for.
     """
 
     title: str
@@ -59,13 +80,23 @@ class SolvedBridge:
     sources: tuple[str, ...] = ()
     classes: tuple[str, ...] = field(kw_only=True)
     method: FactorSet = field(kw_only=True)
-    impact: Floats = field(kw_only=True)
+    impact: ImpactTable = field(kw_only=True)
     units: UnitSystem = field(kw_only=True)
+    roadway: Roadway | None = field(default=None, kw_only=True)
+    strengths: tuple[Strength, ...] = field(default=(), kw_only=True)
+    which: np.ndarray[tuple[int, ...], np.dtype[np.intp]] | None = field(default=None, kw_only=True)
+    traffic: float | None = field(default=None, kw_only=True)
+    deflection_limit: float | None = field(default=None, kw_only=True)
+    not_rated: tuple[str, ...] = field(default=("floor", "deck"), kw_only=True)
 
     @property
     def effects(self) -> tuple[Effect, ...]:
         """All rows, part after part."""
         return tuple(itertools.chain.from_iterable(part.response.effects for part in self.parts))
+
+    def derived(self, level: int, row: int, side: int) -> Strength:
+        """Return a row's strength with its steps."""
+        return UNRATED if self.which is None else self.strengths[int(self.which[level, row, side])]
 
 
 def solve(bridge: Bridge, method: FactorSet = PERMITTED) -> SolvedBridge:
@@ -78,80 +109,136 @@ def solve(bridge: Bridge, method: FactorSet = PERMITTED) -> SolvedBridge:
     UnstableError
         The truss is a mechanism.
     """
-    permanent_loads, share, impact = _required(bridge)
+    permanent = require_data(bridge, method)
     solver = factored(bridge.truss)
     lines = lines_of(solver, bridge.deck.panel_points)
-    permits = {bridge.truss.member(name).name: typed for name, typed in bridge.permits.items()}  # a bar's own name
-    strength = permitted_strengths(lines.effects, permits)
+    spacing, share = bridge.deck.truss_spacing, bridge.deck.truss_share
+    if spacing is not None:
+        left, right = truss_lines(spacing, bridge.edges)
+        trusses = tuple(
+            Part(title, lines.named_for(title), across)
+            for title, across in (("left truss", left), ("right truss", right))
+        )
+    else:
+        trusses = (Part("truss", lines, Across.typed(share or 0.0)),)
+    parts = (*trusses, *floor_parts(bridge))
+    which, strengths = _strengths(bridge, parts, method)
     return SolvedBridge(
         bridge.title,
-        (Part("truss", lines, Across.typed(share)),),
-        permanent_effects(solver, bridge.deck.panel_points, permanent_loads),
-        held(np.repeat(strength[None], len(method.levels), axis=0)),
-        _notes(bridge),
+        parts,
+        permanent_effects(bridge, solver, parts, permanent),
+        held(np.array([one.value for one in strengths])[which]),
+        _notes(bridge, method),
         bridge.sources,
         classes=PERMANENT_CLASSES,
         method=method,
-        impact=held(np.full(strength.shape, impact)),
+        impact=impact_table(bridge, parts, method),
         units=bridge.units,
+        roadway=bridge.deck.roadway,
+        strengths=strengths,
+        which=which,
+        traffic=bridge.traffic,
+        deflection_limit=bridge.deflection_limit,
+        not_rated=_not_rated(bridge),
     )
 
 
-def _required(bridge: Bridge) -> tuple[PermanentLoads, float, float]:
-    """Return permanent loads, axle share and impact, or raise with everything that is still to be typed."""
-    needed = [f'{place} (still holds "?")' for place in bridge.missing]
-    asked = {
-        "deck.truss_share (share of a whole axle that reaches one truss)": bridge.deck.truss_share,
-        "permanent.deck and permanent.truss_share (weight per length of the whole deck, 0 if none)":
-            bridge.permanent,
-        "rating.impact (dynamic allowance, e.g. 0.30, and 0 only if a rule allows it)": bridge.impact,
-    }  # fmt: skip
-    needed += [
-        words for words, value in asked.items()
-        if value is None and not any(place in words.split() for place in bridge.missing)
-    ]  # fmt: skip
-    needed += _members_needed(bridge)
-    permanent, share, impact = bridge.permanent, bridge.deck.truss_share, bridge.impact
-    if needed or permanent is None or share is None or impact is None:
-        raise MissingDataError("a rating needs data that is not there yet: " + "; ".join(needed), place=bridge.title)
-    return permanent, share, impact
+def _strengths(
+    bridge: Bridge, parts: Sequence[Part], method: FactorSet
+) -> tuple[np.ndarray[tuple[int, ...], np.dtype[np.intp]], tuple[Strength, ...]]:
+    """Return the number (levels, R, 2) of every row's strength, and the distinct strengths; number 0 is none."""
+    effects = [effect for part in parts for effect in part.response.effects]
+    which = np.zeros((len(method.levels), len(effects), 2), dtype=np.intp)
+    found: list[Strength] = [UNRATED]
+    numbers: dict[tuple[int, str, int], int] = {}
+    own = {bridge.truss.member(name).name: typed for name, typed in bridge.strengths.items()}
+    for row, effect in enumerate(effects):
+        typed = _typed(bridge, own, effect)
+        if typed is None:
+            continue
+        for side, sense in enumerate(SENSES.get(effect.kind, ())):
+            for number, level in enumerate(method.levels):
+                key = (id(typed), sense, number)
+                if key not in numbers:
+                    numbers[key] = len(found)
+                    found.append(_resistance(typed, sense, method, level, effect))
+                which[number, row, side] = numbers[key]
+    which.flags.writeable = False
+    return which, tuple(found)
 
 
-def _members_needed(bridge: Bridge) -> list[str]:
-    """Return what no member group says and no "?" already asks for: densities, and any permitted force at all."""
-    asked = [place.replace('"', "") for place in bridge.missing if place.startswith("members.")]
-    needed = []
-    weightless = [
-        member.name for member in bridge.truss.members
-        if member.density is None and f"members.{member.role}.density" not in asked
-    ]  # fmt: skip
-    if weightless:
-        some = ", ".join(weightless[:3]) + (" ..." if len(weightless) > 3 else "")
-        needed.append(f"density of {some} (0 if in deck weight)")
-    typed = any(force is not None for one in bridge.permits.values() for force in (one.tension, one.compression))
-    if not typed and not any(".permits" in place for place in asked):
-        needed.append("permits of at least one member group: { tension = ..., compression = ... }")
-    return needed
+def _resistance(typed: TypedStrength, sense: str, method: FactorSet, level: Level, effect: Effect) -> Strength:
+    """Return a row's strength at a level; errors name the row."""
+    return resistance(typed, sense, method, level, subject=effect.name if effect.kind == "axial" else effect.part)
 
 
-def _notes(bridge: Bridge) -> tuple[Note, ...]:
+def _typed(bridge: Bridge, of_members: dict[str, TypedStrength], effect: Effect) -> TypedStrength | None:
+    """Return what was typed about a row's part; None where nothing was."""
+    if effect.kind == "axial":
+        return of_members.get(effect.name)
+    floor = bridge.floor
+    beams = {"stringer": floor.stringers, "floorbeam": floor.floorbeams, "planks": floor.planks}
+    part = beams.get(effect.part.partition(" ")[0])
+    return part.strength if part is not None and effect.kind in SENSES else None
+
+
+def _not_rated(bridge: Bridge) -> tuple[str, ...]:
+    """Return what no row stands for."""
+    floor = bridge.floor
+    named = {
+        "stringers": floor.stringers,
+        "floorbeams": floor.floorbeams,
+        "deck planks": floor.planks,
+    }
+    absent = tuple(name for name, part in named.items() if part is None)
+    return ("floor", "deck") if len(absent) == len(named) else (*absent, "deck") if floor.planks is None else absent
+
+
+def _notes(bridge: Bridge, method: FactorSet) -> tuple[Note, ...]:
     """Return what a reader of any rating of this bridge must know."""
-    truss, supports = bridge.truss, bridge.truss.supports
-    texts = {"shares-typed": _SHARES.format(deck=bridge.deck, permanent=bridge.permanent, impact=bridge.impact)}
+    truss, supports, deck = bridge.truss, bridge.truss.supports, bridge.deck
+    texts: dict[str, str] = {}
+    if deck.truss_spacing is None:
+        shares = (
+            sorted({item.share for item in bridge.permanent.items if item.share is not None})
+            if bridge.permanent
+            else []
+        )
+        of_deck = " and ".join(f"{share:g}" for share in shares) or "0"
+        texts["shares-typed"] = _SHARES.format(share=deck.truss_share, permanent=of_deck)
+    if bridge.permanent is not None and bridge.permanent.detail_allowance == 0.0:
+        texts["detail-allowance"] = (
+            "Members weigh area x density x length: nothing is added for lacing, rivets or plates."
+        )
     if truss.redundancy > 0:
         texts["redundant"] = _REDUNDANT.format(count=truss.redundancy)
     if any(support.settlement or support.movement for support in supports):
         texts["settlement"] = "Settlements and imposed movements of bearings are in the permanent effects."
-    if any(permitted.compression == 0 for permitted in bridge.permits.values()):
+    if any(typed.permits.get("compression", 1.0) == 0.0 for typed in bridge.strengths.values()):
         texts["no-compression"] = (
             "Some bars permit no compression: where live load pushes one a counter must act, and none is modelled."
         )
-    return tuple(Note(code, "truss", text) for code, text in texts.items())
+    if deck.bears_on == "chord":
+        texts["chord-bending"] = f"The deck bears on the chord between joints; its bending: {deck.chord_bending}"
+    if bridge.floor.stringers is not None:
+        texts["stringer-permanent"] = (
+            "A stringer's permanent moment is that at midspan, added to the live one wherever that is greatest."
+        )
+    notes = [Note(code, "truss", text) for code, text in texts.items()]
+    if method.from_memory:
+        some = ", ".join(method.from_memory[:4]) + (" ..." if len(method.from_memory) > 4 else "")
+        notes.append(
+            Note(
+                "factors-from-memory", method.title,
+                f"factors from memory, to be checked against the edition in force: {some}", method.source,
+            )
+        )  # fmt: skip
+    return tuple(notes)
 
 
 _SHARES = (
-    "One truss is rated with typed shares: {deck.truss_share:g} of a whole axle and {permanent.truss_share:g} of the "
-    "deck's weight reach it, wherever the vehicle keeps across the deck. Impact {impact:g} is on every live effect."
+    "One truss is rated with typed shares: {share:g} of a whole axle and {permanent} of the deck's weight reach it, "
+    "wherever the vehicle keeps across the deck."
 )
 _REDUNDANT = (
     "{count} member(s) or reaction(s) beyond what equilibrium can find: forces depend on the areas and on a fit "

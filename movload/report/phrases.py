@@ -13,18 +13,21 @@ if TYPE_CHECKING:
     from movload.peaks.peaks import Peak
     from movload.rating.ratings import Coverage, Rating
     from movload.statics.part import Effect
+    from movload.traffic.crossing import Crossing
     from movload.units import Quantity, UnitSystem
 
 ARROWS: Final = {1: "→", -1: "←", 0: ""}
 _NEVER_ABOVE: Final = 100.0  # ratings beyond this say no more than that the row does not matter
-_DECIMALS: Final[dict[Quantity, tuple[int, float]]] = {"force": (1, 1e4), "section": (2, 0.0254), "length": (2, 1.0)}
+_DECIMALS: Final[dict[Quantity, tuple[int, float]]] = {
+    "force": (1, 1e4), "section": (2, 0.0254), "length": (2, 1.0), "moment": (1, 1e4), "speed": (0, 1.0),
+}  # fmt: skip
 """Decimals that say enough in units up to this many N or m; coarser units (MN, m for sections) get more."""
 _HAIR: Final = 1e-9  # of the value: what round-off put just below a digit still counts as reaching it
 
 CAUTIONS: Final = (
     "An analysis aid until a qualified engineer adopts it; local codes and licensed practice decide.",
     (
-        "Not checked: floor, deck, connections, pins, bearings, foundations, fatigue, hidden section loss, bending of "
+        "Not checked: connections, pins, bearings, foundations, fatigue, hidden section loss, bending of "
         "members, sideways buckling of a pony truss's top chord, 3-D action."
     ),
     "Bars are taken to pull and to push: rods that only pull (counters) are not modelled.",
@@ -36,8 +39,9 @@ CAUTIONS: Final = (
 
 
 def quantity_of(effect: Effect) -> Quantity:
-    """Return the quantity an effect is shown as: a force, or a deflection in section units."""
-    return "section" if effect.kind == "down" else "force"
+    """Return the quantity an effect is shown as: a force, a moment, or a deflection in section units."""
+    shown: dict[str, Quantity] = {"down": "section", "moment": "moment"}
+    return shown.get(effect.kind, "force")
 
 
 def effect_text(effect: Effect, value: float, units: UnitSystem) -> str:
@@ -45,6 +49,8 @@ def effect_text(effect: Effect, value: float, units: UnitSystem) -> str:
     text = number_text(value, quantity_of(effect), units)
     if float(text) == 0:
         return "0"
+    if effect.kind == "moment":
+        return f"{text} {units.symbol('moment')}"
     if effect.kind != "axial":
         return text
     return f"{text} {'T' if value > 0 else 'C'}"
@@ -117,6 +123,8 @@ def place_text(peak: Peak, units: UnitSystem) -> str:
 
 def standing_text(peak: Peak, stations: tuple[str, ...]) -> str:
     """Return which axle stands on which panel point, or has just left it; "" when the vehicle is off."""
+    if peak.heading and peak.station < 0:
+        return f"moment under axle {peak.axle + 1}"
     where = "just off" if peak.lost else "on"
     return f"axle {peak.axle + 1} {where} {stations[peak.station]}" if peak.heading else ""
 
@@ -124,12 +132,12 @@ def standing_text(peak: Peak, stations: tuple[str, ...]) -> str:
 def coverage_text(coverage: Coverage) -> str:
     """Return what an answer covers, in one sentence."""
     total = len(coverage.full) + len(coverage.partly) + len(coverage.none)
-    text = f"{len(coverage.full)} of {total} members rated in every sense they feel"
+    text = f"{len(coverage.full)} of {total} members and beams rated in every sense they feel"
     if coverage.partly:
         text += f"; {len(coverage.partly)} in one sense only ({_some(coverage.partly)})"
     if coverage.none:
         text += f"; {len(coverage.none)} not rated ({_some(coverage.none)})"
-    return f"{text}; {', '.join(coverage.not_rated)} not rated."
+    return f"{text}; {', '.join(coverage.not_rated)} not rated." if coverage.not_rated else f"{text}."
 
 
 def verdict_text(factor: float, coverage: Coverage, uplifts: Mapping[str, float]) -> str:
@@ -139,11 +147,11 @@ def verdict_text(factor: float, coverage: Coverage, uplifts: Mapping[str, float]
     conditions = []
     gaps = len(coverage.partly) + len(coverage.none)
     if gaps:
-        conditions.append(f"the {gaps} members not fully rated are" if gaps > 1 else "the member not fully rated is")
+        conditions.append(f"the {gaps} parts not fully rated are" if gaps > 1 else "the part not fully rated is")
     if uplifts:
         bearings = ", ".join(name.partition(" ")[0] for name in uplifts)
         conditions.append(f"{bearings} {'are' if len(uplifts) > 1 else 'is'} held down")
-    return f"adequate only if {' and '.join(conditions)}" if conditions else "adequate, for the members rated"
+    return f"adequate only if {' and '.join(conditions)}" if conditions else "adequate, for the parts rated"
 
 
 def uplift_texts(uplifts: Mapping[str, float], units: UnitSystem) -> list[str]:
@@ -159,3 +167,20 @@ def uplift_texts(uplifts: Mapping[str, float], units: UnitSystem) -> list[str]:
 def _some(names: tuple[str, ...]) -> str:
     """Return the first few names."""
     return ", ".join(names[:6]) + (" ..." if len(names) > 6 else "")
+
+
+def way_text(crossing: Crossing, units: UnitSystem) -> str:
+    """Return where across a crossing keeps and how fast, in words."""
+    place = crossing.place
+    if place == "offset":
+        place = f"z = {number_text(crossing.z, 'length', units, sign='+')} {units.symbol('length')}"
+    elif place == "centre line":
+        place += f" \u00b1 {number_text(crossing.wander, 'length', units)} {units.symbol('length')}"
+    if crossing.speed is None:
+        return place
+    return f"{place}, {number_text(crossing.speed, 'speed', units)} {units.symbol('speed')}"
+
+
+def span_ratio_text(ratio: float) -> str:
+    """Return span over deflection, rounded down."""
+    return "-" if math.isinf(ratio) else f"1/{math.floor(ratio * (1 + _HAIR))}"

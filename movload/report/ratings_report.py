@@ -1,28 +1,27 @@
-"""Ratings as tables, CSV and JSON: a line a crossing, then row by row, then the sum that anyone can add again."""
+"""Ratings as tables, CSV and JSON: a line a crossing, then row by row."""
 
 from __future__ import annotations
 
 from typing import TYPE_CHECKING, Final
 
-import numpy as np
-
+from movload.rating.factor_sets import sign_weight
+from movload.rating.serviceability import deflections
 from movload.report.columns import Column, csv_text, json_rows, json_text
 from movload.report.phrases import (
     CAUTIONS,
-    coverage_text,
     effect_text,
     factor_text,
     number_text,
     place_text,
-    standing_text,
-    unsigned_zero,
-    uplift_texts,
+    quantity_of,
     use_text,
     verdict_text,
+    way_text,
     weight_text,
 )
 from movload.report.sweep_report import placement_json
 from movload.report.table import grid, table_of
+from movload.traffic.crossing import fitting
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -30,29 +29,36 @@ if TYPE_CHECKING:
     from rich.console import RenderableType
 
     from movload.rating.ratings import Rating, Ratings
-    from movload.review.hand import Term
     from movload.units import UnitSystem
 
 FORMAT: Final = "movload.ratings/1"
-FORCE_NOTE: Final = "permanent and live + tension; live includes share and impact"
+
+
+def _strength_text(row: Rating, units: UnitSystem) -> str:
+    """Return a strength with its letter, or its unit where it is a moment."""
+    number = number_text(row.strength, quantity_of(row.effect), units)
+    if row.effect.kind == "moment":
+        return f"{number} {units.symbol('moment')}"
+    return f"{number} {row.sense[0].upper()}" if row.effect.kind == "axial" else number
+
 
 COLUMNS: Final[list[Column[Rating]]] = [
     Column("crossing", "crossing", lambda row: row.crossing),
     Column("level", "level", lambda row: row.level),
-    Column("part", "part", lambda row: row.effect.part),
+    Column("part", "part", lambda row: row.effect.part, text=lambda row, _: row.part),
     Column("row", "row", lambda row: row.effect.name),
     Column("sense", "sense", lambda row: row.sense),
     Column("factor", "RF", lambda row: row.factor, right=True, text=lambda row, _: factor_text(row.factor)),
     Column(
-        "strength", "strength", lambda row: row.strength, "force", right=True,
-        text=lambda row, units: f"{number_text(row.strength, 'force', units)} {row.sense[0].upper()}",
+        "strength", "strength", lambda row: row.strength, lambda row: quantity_of(row.effect), right=True,
+        text=_strength_text,
     ),
     Column(
-        "permanent", "permanent", lambda row: row.permanent, "force", right=True,
+        "permanent", "permanent", lambda row: row.permanent, lambda row: quantity_of(row.effect), right=True,
         text=lambda row, units: effect_text(row.effect, row.permanent, units),
     ),
     Column(
-        "live", "live", lambda row: row.live, "force", right=True,
+        "live", "live", lambda row: row.live, lambda row: quantity_of(row.effect), right=True,
         text=lambda row, units: effect_text(row.effect, row.live, units),
     ),
     Column("impact", "impact", lambda row: row.impact, right=True, text=lambda row, _: f"{row.impact:.2f}"),
@@ -66,111 +72,80 @@ COLUMNS: Final[list[Column[Rating]]] = [
     ),
     Column("heading", "", lambda row: row.peak.heading),
     Column("axle", "", lambda row: row.peak.axle + 1 if row.peak.heading else None),
-    Column("station", "", lambda row: row.peak.station if row.peak.heading else None),
+    Column("station", "", lambda row: row.peak.station if row.peak.station >= 0 else None),
+    Column("kind", "", lambda row: row.effect.kind),
+    Column("crossing_number", "", lambda row: row.number),
+    Column("abreast", "", lambda row: row.abreast),
 ]  # fmt: skip
-_IN_TABLE: Final = {"row", "sense", "factor", "strength", "permanent", "live", "position"}
+_IN_TABLE: Final = ("part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "position")
 _JSON_ONLY: Final[list[Column[Rating]]] = [
     Column("permanent_use", "", lambda row: row.permanent_use),
+    Column("permanent_used", "", lambda row: row.pushed),
+    Column("live_factor", "", lambda row: row.live_factor),
+    Column("stands_for", "", lambda row: row.part),
     Column("placement", "", lambda row: placement_json(row.peak.placement)),
 ]
 
 
-def summary(ratings: Ratings) -> RenderableType:
-    """Return one line a crossing: weight, RF, verdict, what governs, safe weight, where it is worst."""
-    units, lines = ratings.solved.units, []
-    for number, crossing in enumerate(ratings.crossings):
-        worst = ratings.governing(number)
-        lines.append(
-            [
-                crossing.title,
-                f"{number_text(crossing.loading.gross, 'force', units)} {units.symbol('force')}",
-                factor_text(worst.factor),
-                verdict_text(worst.factor, ratings.coverage, ratings.uplifts),
-                f"{worst.effect.name} {worst.sense}",
-                weight_text(worst.safe_weight, units),
-                use_text(worst) or place_text(worst.peak, units),
-            ]
-        )
-    heads = ["crossing", "weighs", "RF", "answer", "governed by", "safe weight", "worst with"]
-    return grid(heads, lines, right=[False, True, True, False, False, False, False])
+def summary(ratings: Ratings, levels: Sequence[int]) -> RenderableType:
+    """Return one line a crossing and level: weight, place, RF, verdict, what governs, safe weight, worst position."""
+    several = len(ratings.levels) > 1
+    lines = [
+        _summary_line(ratings, ratings.governing(number, level=level), level, several=several)
+        for number in range(len(ratings.crossings))
+        for level in levels
+        if ratings.rates(number, level)
+    ]
+    heads = ["crossing", "weighs", "keeps", "abreast", "RF", "answer", "governed by", "safe weight", "worst with"]
+    right = [False, True, False, True, True, False, False, False, False]
+    if several:
+        heads.insert(4, "level")
+        right.insert(4, False)
+    return grid(heads, lines, right=right)
+
+
+def _summary_line(ratings: Ratings, worst: Rating, level: int, *, several: bool) -> list[str]:
+    """Return one crossing at one level as a line."""
+    units, crossing = ratings.solved.units, ratings.crossings[worst.number]
+    weight = sign_weight(ratings.solved.method.levels[level], worst.factor, worst.gross)
+    line = [
+        crossing.title,
+        f"{number_text(crossing.loading.gross, 'force', units)} {units.symbol('force')}",
+        way_text(crossing, units) if ratings.solved.roadway else "typed share",
+        str(fitting(crossing, ratings.solved.roadway)),
+        factor_text(worst.factor),
+        verdict_text(worst.factor, ratings.coverage, ratings.uplifts),
+        governed_text(worst),
+        weight_text(weight, units) + (" *" if crossing.controlled else ""),
+        use_text(worst) or place_text(worst.peak, units),
+    ]
+    if several:
+        line.insert(4, ratings.levels[level])
+    return line
+
+
+def governed_text(rating: Rating) -> str:
+    """Return a row in words: its truss only where the two differ or others are rated beside it."""
+    sense = "" if rating.sense in rating.effect.name else f" {rating.sense}"
+    part = "" if rating.part in {"truss", "either truss"} else f"{rating.part}, "
+    return f"{part}{rating.effect.name}{sense}"
 
 
 def detail(rows: Sequence[Rating], units: UnitSystem) -> RenderableType:
     """Return rated rows, the worst first."""
-    return table_of([column for column in COLUMNS if column.name in _IN_TABLE], rows, units)
-
-
-def sum_table(
-    rating: Rating, terms: Sequence[Term], stations: tuple[str, ...], units: UnitSystem
-) -> list[RenderableType | str]:
-    """Return a governing figure as its sum and its rating, to be added again with a pocket calculator."""
-    force, length = units.symbol("force"), units.symbol("length")
-    lines = [
-        [
-            str(term.axle),
-            number_text(term.x, "length", units, more=1), number_text(term.load, "force", units, more=1),
-            f"{term.share:.4f}", f"{1 + term.impact:.3f}", unsigned_zero(f"{term.ordinate:+.5f}"),
-            number_text(term.effect, "force", units, more=1, sign="+"),
-        ]
-        for term in terms
-    ]  # fmt: skip
-    lines.append(["", "", "", "", "", "sum", number_text(rating.live, "force", units, more=1, sign="+")])
-    heads = ["axle", f"x [{length}]", f"load [{force}]", "x share", "x (1 + I)", "x ordinate", f"= [{force}]"]
-    peak = rating.peak
-    where = ", ".join(filter(None, (standing_text(peak, stations), place_text(peak, units))))
-    title = f"{rating.effect.name} {rating.sense} under {rating.crossing}: {where}"
-    return [title, "", grid(heads, lines, right=[True] * 7), "", _equation(rating, units)]
-
-
-def _equation(rating: Rating, units: UnitSystem) -> str:
-    """Return RF = (R - a D) / (b L) with its numbers, what permanent load uses with its margins."""
-    strength, live = (number_text(value, "force", units, more=1) for value in (rating.strength, abs(rating.live)))
-    sign = "-" if rating.side == 0 else "+"
-    pushed = rating.permanent if rating.side == 0 else -rating.permanent
-    factored = "" if np.isclose(rating.pushed, pushed, rtol=1e-12) else "factored "
-    used = rating.pushed if rating.side == 0 else -rating.pushed
-    permanent = number_text(used, "force", units, more=1, sign="+")
-    on_live = "" if rating.live_factor == 1 else f"{rating.live_factor:g} x "
-    why = use_text(rating)
-    return (
-        f"RF = (strength {strength} {sign} {factored}permanent ({permanent})) / {on_live}live {live} "
-        f"{units.symbol('force')} = {factor_text(rating.factor)}{f': {why}' if why else ''}"
-    )
-
-
-def closing(ratings: Ratings) -> list[str]:
-    """Return what the answer covers, its notes and its cautions."""
-    notes = [
-        f"Note: {note.text}" if note.subject == "truss" else f"Note, {note.subject}: {note.text}"
-        for note in ratings.notes
-    ]
-    return [
-        ratings.solved.method.statement,
-        "Covers: " + coverage_text(ratings.coverage),
-        *uplift_texts(ratings.uplifts, ratings.solved.units),
-        *_relief_texts(ratings),
-        *notes,
-        *(f"Caution: {caution}" for caution in CAUTIONS),
-    ]
-
-
-def _relief_texts(ratings: Ratings) -> list[str]:
-    """Return a line for each governing row that permanent load relieves: less of it would lower the rating."""
-    units, lines = ratings.solved.units, []
-    for number in range(len(ratings.crossings)):
-        worst = ratings.governing(number)
-        if worst.pushed < 0:
-            relief = number_text(-worst.pushed, "force", units)
-            lines.append(
-                f"Note: permanent load relieves {worst.effect.name} {worst.sense} by {relief} {units.symbol('force')}; "
-                "less of it than typed (a lighter deck, surfacing removed) lowers that rating."
-            )
-    return list(dict.fromkeys(lines))
+    several = len({row.part for row in rows}) > 1
+    impacts = len({row.impact for row in rows}) > 1
+    names = [name for name in _IN_TABLE if (name != "part" or several) and (name != "impact" or impacts)]
+    if len({row.level for row in rows}) > 1:
+        names.insert(0, "level")
+    by_name = {column.name: column for column in COLUMNS}
+    return table_of([by_name[name] for name in names], rows, units)
 
 
 def ratings_csv(rows: Sequence[Rating], units: UnitSystem) -> str:
-    """Return rated rows as CSV in the file's units."""
-    return csv_text(COLUMNS, rows, units)
+    """Return rated rows as CSV in the file's units; a column ``unit`` says what strength and effects are in."""
+    unit: Column[Rating] = Column("unit", "", lambda row: units.symbol(quantity_of(row.effect)))
+    return csv_text([*COLUMNS, unit], rows, units)
 
 
 def ratings_json(ratings: Ratings, rows: Sequence[Rating]) -> str:
@@ -182,11 +157,14 @@ def ratings_json(ratings: Ratings, rows: Sequence[Rating]) -> str:
             "title": ratings.solved.title,
             "method": ratings.solved.method.title,
             "statement": ratings.solved.method.statement,
-            "units": {"force": "N", "length": "m"},
+            "units": {"force": "N", "length": "m", "moment": "N m", "speed": "m/s"},
             "crossings": [
                 {
                     "title": crossing.title, "kind": crossing.loading.kind, "weight": crossing.loading.gross,
-                    "place": crossing.place, "source": crossing.loading.source,
+                    "place": crossing.place if ratings.solved.roadway else "typed share",
+                    "source": crossing.loading.source,
+                    "z": crossing.z if crossing.place == "offset" else None, "speed": crossing.speed,
+                    "most_abreast": fitting(crossing, ratings.solved.roadway),
                 }
                 for crossing in ratings.crossings
             ],
@@ -197,6 +175,13 @@ def ratings_json(ratings: Ratings, rows: Sequence[Rating]) -> str:
             "notes": [
                 {"code": note.code, "subject": note.subject, "text": note.text, "source": note.source}
                 for note in ratings.notes
+            ],
+            "deflections": [
+                {
+                    "part": one.part, "point": one.point, "crossing": one.crossing, "crossing_number": one.number,
+                    "down": one.down, "ratio": one.ratio, "limit": one.limit,
+                }
+                for one in deflections(ratings)
             ],
             "uplifts": ratings.uplifts,
             "cautions": CAUTIONS,

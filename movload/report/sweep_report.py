@@ -112,4 +112,7 @@ def placement_json(placement: Placement) -> dict[str, object] | None:
     """Return a placement axle by axle; null when the vehicle is off the bridge."""
     if not placement.x.size:
         return None
-    return {"x": placement.x, "load": placement.load, "share": placement.share, "impact": placement.impact}
+    return {
+        "x": placement.x, "load": placement.load, "share": placement.share, "impact": placement.impact,
+        "factor": placement.factor, "z": placement.z, "vehicle": placement.vehicle + 1,
+    }  # fmt: skip

@@ -70,11 +70,16 @@ COLUMNS: Final[list[Column[Bar]]] = [
 
 def bars_of(bridge: Bridge) -> list[Bar]:
     """Return a bridge's members with their lengths and permitted forces."""
-    permits = [bridge.permits.get(member.name) for member in bridge.truss.members]
+    permits = [bridge.strengths[name].permits if name in bridge.strengths else {} for name in _names(bridge)]
     return [
-        Bar(member, float(length), one.tension if one else None, one.compression if one else None)
+        Bar(member, float(length), one.get("tension"), one.get("compression"))
         for member, length, one in zip(bridge.truss.members, bridge.truss.lengths, permits, strict=True)
     ]
+
+
+def _names(bridge: Bridge) -> list[str]:
+    """Return the members' names."""
+    return [member.name for member in bridge.truss.members]
 
 
 def truss_tables(bridge: Bridge) -> list[RenderableType | str]:

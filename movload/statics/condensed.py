@@ -14,7 +14,7 @@ import numpy as np
 
 if TYPE_CHECKING:
     from movload.arrays import Floats, Ints
-    from movload.statics.part import Response
+    from movload.statics.part import AtStations
 
 _EQUAL: Final = 1e-13  # of a row's largest ordinate: rows that differ by no more are one
 _PIVOT: Final = (
@@ -39,7 +39,7 @@ class Condensed:
         Whether some row both changes sign and is not 0 at an end station (an inclined bearing, an overhang).
     """
 
-    response: Response
+    response: AtStations
     row: Ints
     scale: Floats
     mirror: Ints

@@ -13,7 +13,7 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 
 from movload.arrays import Floats, Ints, frozen_floats, held, keep_memory_warm
-from movload.bridge.deck import stations_of
+from movload.bridge.deck import deck_lengths, stations_of
 from movload.errors import InputError
 from movload.statics.condensed import Condensed, any_jumps, distinct_rows
 from movload.statics.part import Effect, row_of
@@ -95,6 +95,21 @@ class InfluenceLines:
         chosen, distinct, row, scale, mirror, mirror_scale = distinct_rows(self.stations, self.ordinates)
         response = InfluenceLines(tuple(self.effects[one] for one in chosen), self.stations, held(distinct))
         return Condensed(response, row, scale, mirror, mirror_scale, any_jumps(distinct))
+
+    @property
+    def alike(self) -> object:
+        """The same for lines that answer alike, whatever their rows are called."""
+        return id(self.ordinates)
+
+    @property
+    def per_metre(self) -> Floats:
+        """Effect of 1 N/m on the whole deck (R,)."""
+        effects: Floats = self.ordinates @ deck_lengths(self.stations)
+        return effects
+
+    def named_for(self, part: str) -> InfluenceLines:
+        """Return the same lines as those of another part."""
+        return InfluenceLines(tuple(one._replace(part=part) for one in self.effects), self.stations, self.ordinates)
 
     def under(self, loads: Floats) -> Floats:
         """Return effects (R, K) under downward loads (B, K) [N] on the stations."""

@@ -60,8 +60,13 @@ class Response(Protocol):
         ...
 
     @property
-    def condensed(self) -> Condensed:
-        """The fewest rows that must be swept, and how all rows follow from them; the response itself if none follow."""
+    def alike(self) -> object:
+        """The same for responses that answer alike, whatever their rows are called: swept once for all of them."""
+        ...
+
+    @property
+    def per_metre(self) -> Floats:
+        """Effect of 1 N/m on the whole deck (R,)."""
         ...
 
     def under(self, loads: Floats) -> Floats:
@@ -69,17 +74,46 @@ class Response(Protocol):
         ...
 
 
+class AtStations(Response, Protocol):
+    """A response whose peaks stand where some axle is on a station: lines, or bars that only pull between them."""
+
+    @property
+    def condensed(self) -> Condensed:
+        """The fewest rows that must be swept, and how all rows follow from them; the response itself if none follow."""
+        ...
+
+    def __hash__(self) -> int:
+        """By identity: what was found for a response is remembered."""
+        ...
+
+
 @dataclass(frozen=True, slots=True, eq=False)
 class Part:
-    """Something that is rated: a truss, later a stringer span or a floorbeam section."""
+    """Something that is rated: a truss, a stringer, a section of the floorbeams, the planks.
+
+    Attributes
+    ----------
+    title
+        Its name.
+    response
+        How it answers along the bridge.
+    across
+        Its share of a wheel by the wheel's place across.
+    bears
+        Its share of what stands for good, where that differs: a typed fraction of an axle says nothing of a deck's
+        weight.
+    """
 
     title: str
     response: Response
     across: Across
+    bears: Across | None = None
 
 
 def row_of(effects: Sequence[Effect], key: str | tuple[str, str]) -> int:
-    """Return the row of an effect by its name, or by (part, name); a member's joints in either order.
+    """Return the row of an effect by its name, by "part name" or by (part, name); a member's joints in either order.
+
+    A name that several parts share means the first of them.
 
     Raises
     ------
@@ -87,10 +121,12 @@ def row_of(effects: Sequence[Effect], key: str | tuple[str, str]) -> int:
         No such row; the nearest name is given.
     """
     part, name = ("", key) if isinstance(key, str) else key
-    start, dash, end = name.partition("-")
-    for wanted in (name, f"{end}-{start}") if dash else (name,):
+    start, dash, end = name.rpartition(" ")[2].partition("-")
+    turned = f"{name.removesuffix(f'{start}-{end}')}{end}-{start}"
+    for wanted in (name, turned) if dash else (name,):
         for row, effect in enumerate(effects):
-            named = wanted == effect.name or (wanted and wanted == effect.joints)
+            named = wanted and wanted in {effect.name, effect.joints, f"{effect.part} {effect.name}"}
             if named and part in {"", effect.part}:
                 return row
-    raise UnknownNameError(f'row "{name}" is not known', nearest=nearest_name(name, (e.name for e in effects)))
+    known = [word for effect in effects for word in (effect.name, f"{effect.part} {effect.name}")]
+    raise UnknownNameError(f'row "{name}" is not known', nearest=nearest_name(name, known))

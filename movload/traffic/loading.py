@@ -75,7 +75,9 @@ class Loading:
     source
         Where its numbers come from, e.g. "AASHTO ..., from memory", or "invented"; "" when its file does not say.
     notes
-        What every rating of it must say (a load that takes no impact, a fixed spacing).
+        What every rating of it must say (a fixed spacing).
+    dynamic
+        Whether impact is put on it; not where the load model holds it already, or takes none.
     """
 
     title: str
@@ -83,6 +85,7 @@ class Loading:
     cases: tuple[Case, ...]
     source: str = field(default="", kw_only=True)
     notes: tuple[str, ...] = field(default=(), kw_only=True)
+    dynamic: bool = field(default=True, kw_only=True)
 
     def __post_init__(self) -> None:
         """Check kind and cases."""
@@ -96,9 +99,13 @@ class Loading:
             raise InputError("a loading needs at least one case", place=self.title)
 
     @classmethod
-    def of(cls, vehicle: Vehicle, kind: str = "routine", *, source: str = "", notes: tuple[str, ...] = ()) -> Loading:
+    def of(
+        cls, vehicle: Vehicle, kind: str = "routine", *, source: str = "", notes: tuple[str, ...] = (),
+        dynamic: bool = True,
+    ) -> Loading:  # fmt: skip
         """Return the loading that is one vehicle in one state."""
-        return cls(vehicle.title, kind, (Case(vehicle.title, vehicle),), source=source, notes=notes)
+        case = Case(vehicle.title, vehicle)
+        return cls(vehicle.title, kind, (case,), source=source, notes=notes, dynamic=dynamic)
 
     @property
     def gross(self) -> float:

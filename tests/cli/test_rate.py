@@ -113,11 +113,11 @@ def test_csv_carries_units_and_the_numbers_of_the_json(asked: list[Any], tmp_pat
 def test_text_answers_sums_covers_and_warns(asked: list[Any]) -> None:
     out = " ".join(movload(*asked).out.split())
     for part in (
-        "95.0 kN 2.19 adequate, for the members rated U1-L1 tension",
+        "95.0 kN 2.19 adequate, for the parts rated U1-L1 tension",
         "the worst 8 of 18 (--all for every row)",
         "U1-L1 tension under Alder hay cart: axle 2 on L1, 5.80 m →",
         "RF = (strength 90.00 - permanent (+6.85)) / live 37.94 kN = 2.19",
-        "Covers: 9 of 9 members rated in every sense they feel; floor, deck not rated.",
+        "Covers: 9 of 9 members and beams rated in every sense they feel; floor, deck not rated.",
         "Note: One truss is rated with typed shares: 0.6 of a whole axle and 0.5 of the deck's weight reach it",
         "Note, Alder hay cart: axles and spacings: invented",
         "Impact 0.3 is on every live effect.",
@@ -201,7 +201,10 @@ def test_what_is_not_rated_is_named(asked: list[Any], tmp_path: Path) -> None:
     gap = written(tmp_path, changed(BY_JOINTS, ("tension = 200, compression = 150", "tension = 200")), "gap.toml")
     out = " ".join(movload("rate", gap, asked[2]).out.split())
     assert "adequate only if" in out
-    assert "Covers: 8 of 9 members rated in every sense they feel; 1 not rated (U1-U2); floor, deck not rated." in out
+    assert (
+        "Covers: 8 of 9 members and beams rated in every sense they feel; 1 not rated (U1-U2); floor, deck not rated."
+        in out
+    )
     coverage = movload("rate", gap, asked[2], "--json").json()["coverage"]
     assert (len(coverage["full"]), coverage["none"], coverage["partly"]) == (8, ["U1-U2"], [])
     assert coverage["not_rated"] == ["floor", "deck"]

@@ -174,7 +174,7 @@ def test_of_a_mixed_crossing_the_train_that_is_worst_with_impact_governs() -> No
     lines = influence_lines(truss_of(pratt([4.1, 3.7], [3.0]), simple_span(2)), bottom(2))
     light, heavy = Vehicle("light", [10e3], []), Vehicle("heavy", [11e3], [])
     trains = (Train("dynamic", light, np.ones(1)), Train("static", heavy, np.ones(1), dynamic=False))
-    (peaks,) = part_peaks(lines, [trains], np.full((1, len(lines.effects), 2), 0.3))
+    (peaks,) = part_peaks(lines, [tuple((train,) for train in trains)], np.full((1, len(lines.effects), 2), 0.3))
     row = [effect.name for effect in lines.effects].index("L0 y")
     peak = peaks.peak(row, 0)
     assert peak.value == pytest.approx(13e3, rel=1e-12)
@@ -188,7 +188,7 @@ def test_each_crossing_has_its_own_impact_on_each_row_and_side() -> None:
     lines = influence_lines(truss_of(pratt([4.1, 3.7, 4.4], [3.0, 3.0]), simple_span(3)), bottom(3))
     light, heavy = Vehicle("light", [10e3], []), Vehicle("heavy", [20e3, 11e3], [1.7])
     one, two = Train("light", light, np.ones(1)), Train("heavy", heavy, np.ones(2))
-    crossings = [(one, two), (one,)]
+    crossings = [((one,), (two,)), ((one,),)]
     impact = np.linspace(0.0, 0.7, 4 * len(lines.effects)).reshape(2, -1, 2)
     found = part_peaks(lines, crossings, impact)
     for peaks, static, mine in zip(found, (heavy, light), impact, strict=True):

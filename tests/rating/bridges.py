@@ -12,14 +12,17 @@ import numpy as np
 from oracles.trusses import bottom, pratt, simple_span
 
 from movload.bridge.across import Across
-from movload.bridge.bridge import Bridge, PermanentLoads, Permitted
+from movload.bridge.bridge import Bridge
 from movload.bridge.deck import Deck
+from movload.bridge.permanent import Item, PermanentItems
+from movload.bridge.roadway import Roadway
+from movload.bridge.strengths import permitted
 from movload.bridge.truss import Member, Truss
 from movload.rating.factor_sets import PERMITTED
+from movload.rating.impact_table import ImpactTable
 from movload.rating.solved import SolvedBridge
 from movload.statics.influence import InfluenceLines
 from movload.statics.part import Effect, Part, row_of
-from movload.strength.typed import SENSES
 from movload.traffic.vehicle import Vehicle
 from movload.units import UnitSystem
 
@@ -34,13 +37,19 @@ AREA: Final = 5e-3  # m2
 DENSITY: Final = 7850.0  # kg/m3
 SHARE: Final = 0.6  # of an axle
 IMPACT: Final = 0.3
-CART: Final = Vehicle("cart", np.array([30e3, 50e3]), [2.1])
+CART: Final = Vehicle("cart", np.array([30e3, 50e3]), [2.1], gauges=(0.5, 0.5))
+TWO_TRUSSES: Final = Roadway(-2.0, 2.0, clearance=0.0)  # kerbs over the trusses of the parts made by hand
 
 
 def brook_truss(density: float | None = DENSITY) -> Truss:
     """Return the truss, on a pin and a level roller."""
     joints, ends = pratt(PANELS, [DEPTH] * 3)
     return Truss(joints, [Member(start, end, AREA, 200e9, density=density) for start, end in ends], simple_span(4))
+
+
+def deck_weight(line: float, share: float) -> PermanentItems:
+    """Return a deck's weight per metre [N/m] of which a typed share reaches the truss."""
+    return PermanentItems((Item("deck", "components", line=line, share=share),))
 
 
 def brook(**changes: object) -> Bridge:
@@ -51,8 +60,8 @@ def brook(**changes: object) -> Bridge:
         "Brook bridge",
         truss,
         Deck(tuple(bottom(4)), truss_share=SHARE),
-        permanent=PermanentLoads(9e3, 0.5),
-        permits={member.name: Permitted(400e3, 300e3) for member in truss.members},
+        permanent=deck_weight(9e3, 0.5),
+        strengths={member.name: permitted(400e3, 300e3) for member in truss.members},
         impact=IMPACT,
         sources=("brook.toml",),
     )
@@ -61,7 +70,7 @@ def brook(**changes: object) -> Bridge:
 
 def weightless(**changes: object) -> Bridge:
     """Return the bridge without any permanent load."""
-    return brook(**{"truss": brook_truss(0.0), "permanent": PermanentLoads(0.0, 0.5)} | changes)
+    return brook(**{"truss": brook_truss(0.0), "permanent": deck_weight(0.0, 0.5)} | changes)
 
 
 def part_of(title: str, rows: Mapping[str, Sequence[float]], stations: Sequence[float], across: Across) -> Part:
@@ -78,6 +87,7 @@ def solved_by_hand(
     strength: Sequence[tuple[float, float]] | None = None,
     impact: Sequence[tuple[float, float]] | None = None,
     units: UnitSystem | None = None,
+    roadway: Roadway | None = None,
 ) -> SolvedBridge:
     """Return a solved bridge of parts.
 
@@ -91,7 +101,8 @@ def solved_by_hand(
         np.array([strength or [(100e3, 100e3)] * count]),
         classes=("components",),
         method=PERMITTED,
-        impact=np.array(impact or [(0.0, 0.0)] * count),
+        impact=ImpactTable("typed", np.array(impact or [(0.0, 0.0)] * count, dtype=np.float64)),
+        roadway=roadway,
         units=units or UnitSystem(),
     )
 
@@ -115,4 +126,6 @@ def one_bar(
 
 def rated(ratings: Ratings, name: str, sense: str, *, crossing: int = 0, level: int = 0) -> Rating:
     """Return one row's rating by name."""
-    return ratings.rating(crossing, row_of(ratings.solved.effects, name), SENSES.index(sense), level=level)
+    return ratings.rating(
+        crossing, row_of(ratings.solved.effects, name), ("tension", "compression").index(sense), level=level
+    )

@@ -10,9 +10,10 @@ from rating.bridges import CART, bars, brook, brook_truss, part_of, solved_by_ha
 
 from movload import Crossing, Loading, Member, Truss, Vehicle, judge, rate
 from movload.bridge.across import Across
-from movload.bridge.bridge import Permitted
+from movload.bridge.roadway import Roadway
+from movload.bridge.strengths import permitted
 
-AXLE = Vehicle("axle", [40e3], [])
+AXLE = Vehicle("axle", [40e3], [], gauges=(0.5,))
 NAN = math.nan
 
 
@@ -39,8 +40,8 @@ def test_coverage_asks_for_what_any_crossing_makes_felt() -> None:
     """Across the left half B0 is pulled, across the right half pushed; one vehicle keeps to where nothing pushes."""
     across = Across(np.array([0.0, 1.0, 2.0]), np.array([1.0, 0.0, -1.0]))
     part = part_of("truss", {"B0": [0.0, 1.0, 0.0]}, [0.0, 4.0, 8.0], across)
-    solved = solved_by_hand([part], strength=[(100e3, NAN)])
-    pulls, pushes = (Crossing(Loading.of(AXLE), f"z = {z:g} m", z) for z in (0.0, 2.0))
+    solved = solved_by_hand([part], strength=[(100e3, NAN)], roadway=Roadway(0.0, 2.0, clearance=0.0))
+    pulls, pushes = (Crossing(Loading.of(AXLE), "offset", z) for z in (0.25, 1.75))
     assert judge(solved, [pulls]).passes
     assert judge(solved, [pulls, pushes]).coverage.partly == ("B0",)
     assert judge(solved, [pushes]).coverage.none == ("B0",)
@@ -49,12 +50,12 @@ def test_coverage_asks_for_what_any_crossing_makes_felt() -> None:
 def test_a_bar_that_carries_nothing_needs_no_strength() -> None:
     """Joint U0 stands on two bars not in line: without a weight of their own they carry exactly nothing."""
     plain = brook_truss()
-    permits = {member.name: Permitted(400e3, 300e3) for member in plain.members}
+    permits = {member.name: permitted(400e3, 300e3) for member in plain.members}
     stub = {"U0-L0", "U0-U1"}
     for density, key in ((0.0, "full"), (7850.0, "none")):
         members = [*plain.members, *(Member("U0", end, 5e-3, 200e9, density=density) for end in ("L0", "U1"))]
         truss = Truss({**plain.joints, "U0": (0.3, 3.9)}, members, simple_span(4))
-        ratings = rate(brook(truss=truss, permits=permits), [CART])
+        ratings = rate(brook(truss=truss, strengths=permits), [CART])
         assert stub <= set(getattr(ratings.coverage, key))
         assert ratings.passes is (density == 0.0)
 

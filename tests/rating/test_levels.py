@@ -33,7 +33,7 @@ def test_margins_by_class_and_kind_by_hand() -> None:
     met = set()
     for rating in ratings.rows(0):
         sign = 1 if rating.sense == "tension" else -1
-        components, settlement = sign * solved.permanent[:, rating.row]
+        components, settlement = sign * solved.permanent[[0, -1], rating.row]
         pushed = components * (1.25 if components > 0 else 0.9) + settlement * (1.5 if settlement > 0 else 0.0)
         # where the two cancel, round-off is that of the larger: 1e5 N or so
         assert_allclose(rating.pushed, pushed, rtol=HAND, atol=1e-7)

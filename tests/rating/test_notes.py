@@ -5,10 +5,11 @@ from __future__ import annotations
 from dataclasses import replace
 
 import pytest
-from rating.bridges import CART, brook, brook_truss
+from rating.bridges import CART, brook, brook_truss, deck_weight
 
 from movload import Case, Crossing, Loading, Support, Truss, Vehicle, judge, rate, solve
-from movload.bridge.bridge import Permitted
+from movload.bridge.permanent import PermanentItems
+from movload.bridge.strengths import permitted
 
 
 def of_vehicles(*asked: Loading | Vehicle) -> list[tuple[str, str, str]]:
@@ -64,9 +65,15 @@ def test_one_way_is_rated_that_way_only() -> None:
         assert live == pytest.approx((50e3 + 30e3 * (1 - 2.1 / panel)) * 0.6 * 1.3, rel=1e-12)  # all digits by hand
 
 
-def test_the_shares_note_says_the_impact() -> None:
-    (note,) = solve(brook(impact=0.25)).notes
-    assert note.text.endswith("wherever the vehicle keeps across the deck. Impact 0.25 is on every live effect.")
+def test_the_impact_is_said() -> None:
+    assert solve(brook(impact=0.25)).impact.statement == "Impact 0.25 as typed."
+
+
+def test_an_allowance_for_details_silences_its_note() -> None:
+    weight = deck_weight(9e3, 0.5)
+    codes = [[note.code for note in solve(brook(permanent=one)).notes] for one in
+             (weight, PermanentItems(weight.items, 0.15))]  # fmt: skip
+    assert codes == [["shares-typed", "detail-allowance"], ["shares-typed"]]
 
 
 @pytest.mark.parametrize(
@@ -81,14 +88,14 @@ def test_the_shares_note_says_the_impact() -> None:
 def test_a_bearing_that_moved_is_noted(bearing: Support, others: list[str]) -> None:
     truss = brook_truss()
     notes = solve(brook(truss=Truss(truss.joints, truss.members, [Support("L0"), bearing]))).notes
-    assert [note.code for note in notes] == ["shares-typed", *others, "settlement"]
+    assert [note.code for note in notes] == ["shares-typed", "detail-allowance", *others, "settlement"]
     assert notes[-1].text == "Settlements and imposed movements of bearings are in the permanent effects."
 
 
 def test_bars_that_permit_no_compression_are_noted() -> None:
-    permits = {member.name: Permitted(400e3, 300e3) for member in brook_truss().members}
-    eyebar = solve(brook(permits=permits | {"U1-L2": Permitted(400e3, 0.0)})).notes
-    assert [note.code for note in eyebar] == ["shares-typed", "no-compression"]
-    assert "a counter must act, and none is modelled" in eyebar[1].text
-    unknown = solve(brook(permits=permits | {"U1-L2": Permitted(400e3)})).notes
-    assert [note.code for note in unknown] == ["shares-typed"]
+    permits = {member.name: permitted(400e3, 300e3) for member in brook_truss().members}
+    eyebar = solve(brook(strengths=permits | {"U1-L2": permitted(400e3, 0.0)})).notes
+    assert [note.code for note in eyebar] == ["shares-typed", "detail-allowance", "no-compression"]
+    assert "a counter must act, and none is modelled" in eyebar[2].text
+    unknown = solve(brook(strengths=permits | {"U1-L2": permitted(400e3)})).notes
+    assert [note.code for note in unknown] == ["shares-typed", "detail-allowance"]

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 import pytest
 from numpy.testing import assert_allclose
-from rating.bridges import CART, brook, one_bar, part_of, rated, solved_by_hand
+from rating.bridges import CART, TWO_TRUSSES, brook, one_bar, part_of, rated, solved_by_hand
 
 from movload import Case, Crossing, Loading, Vehicle, judge, rate
 from movload.bridge.across import Across
@@ -23,7 +23,7 @@ def test_the_envelope_of_two_cases_names_the_case() -> None:
         assert_allclose(rating.live, load, rtol=HAND)
         assert_allclose(rating.factor, 80e3 / load, rtol=HAND)
         assert rating.peak.case == case
-        assert_allclose(rating.peak.placement.share, 2.0 if case == "empty" else 1.0)
+        assert_allclose(rating.peak.placement.factor, 2.0 if case == "empty" else 1.0)
 
 
 @pytest.mark.parametrize("first", ["laden", "empty"])
@@ -57,10 +57,10 @@ def test_two_parts_are_stacked_row_by_row() -> None:
     ]
     solved = solved_by_hand(
         parts, permanent=[10e3, -20e3, 5e3], strength=[(100e3, 1e3), (1e3, 80e3), (60e3, 1e3)],
-        impact=[(0.1, 0.9), (0.9, 0.2), (0.3, 0.9)],
+        impact=[(0.1, 0.9), (0.9, 0.2), (0.3, 0.9)], roadway=TWO_TRUSSES,
     )  # fmt: skip
-    axle = Loading.of(Vehicle("axle", [40e3], []))
-    ratings = judge(solved, [Crossing(axle, "off centre", 1.0), Crossing(axle, "centre", 0.0)])
+    axle = Loading.of(Vehicle("axle", [40e3], [], gauges=(0.6,)))
+    ratings = judge(solved, [Crossing(axle, "offset", 1.0), Crossing(axle, "offset", 0.0)])
     peaks = ratings.peaks[0]
     assert [effect.key for effect in solved.effects] == [("left", "tie"), ("left", "strut"), ("right", "tie")]
     assert_allclose(peaks.highest, [49.5e3, 0.0, 26e3], rtol=HAND)
@@ -83,15 +83,17 @@ def test_of_several_parts_coverage_names_each_rows_own() -> None:
     """Two trusses have a "tie" each; only the left one's strength is known."""
     across = Across(np.array([-2.0, 2.0]), np.array([0.0, 1.0]))
     parts = [part_of(title, {"tie": [0.0, 1.0, 0.0]}, [0.0, 4.0, 8.0], across) for title in ("left", "right")]
-    solved = solved_by_hand(parts, strength=[(100e3, 1e3), (float("nan"), 1e3)])
-    coverage = judge(solved, [Crossing(Loading.of(CART), "centre")]).coverage
+    solved = solved_by_hand(parts, strength=[(100e3, 1e3), (float("nan"), 1e3)], roadway=TWO_TRUSSES)
+    coverage = judge(solved, [Crossing(Loading.of(CART), "offset")]).coverage
     assert (coverage.full, coverage.partly, coverage.none) == (("left tie",), (), ("right tie",))
-    assert judge(solved_by_hand(parts[:1]), [Crossing(Loading.of(CART), "centre")]).coverage.full == ("tie",)
+    assert judge(
+        solved_by_hand(parts[:1], roadway=TWO_TRUSSES), [Crossing(Loading.of(CART), "offset")]
+    ).coverage.full == ("tie",)
 
 
-def test_a_wheel_beside_the_deck_is_refused() -> None:
+def test_a_wheel_beside_the_kerb_is_refused() -> None:
     part = part_of(
         "left", {"tie": [0.0, 1.0, 0.0]}, [0.0, 4.0, 8.0], Across(np.array([-2.0, 2.0]), np.array([0.0, 1.0]))
     )
-    with pytest.raises(InputError, match=r"a wheel at z = 2\.5 m stands outside -2 to 2 m"):
-        judge(solved_by_hand([part]), [Crossing(Loading.of(CART), "beside", 2.5)])
+    with pytest.raises(InputError, match=r"offset: its middle keeps between -1\.75 and 1\.75 m here, got 2\.5 m"):
+        judge(solved_by_hand([part], roadway=TWO_TRUSSES), [Crossing(Loading.of(CART), "offset", 2.5)])

@@ -13,7 +13,7 @@ from oracles.trusses import bottom, pratt, simple_span
 from rating.bridges import AREA, CART, DENSITY, DEPTH, IMPACT, PANELS, SHARE, brook, brook_truss
 
 from movload import Deck, Member, Support, Truss, judge, solve
-from movload.bridge.bridge import Permitted
+from movload.bridge.strengths import permitted
 from movload.errors import MissingDataError, UnstableError
 from movload.rating.factor_sets import FactorSet, Level
 from movload.statics.permanent import PERMANENT_CLASSES
@@ -32,6 +32,9 @@ def asked(bridge: Bridge) -> list[str]:
     return caught.value.rule.partition(": ")[2].split("; ")
 
 
+PERMITS = 'permits of at least one member group for method "permitted forces": { tension = ..., compression = ... }'
+
+
 def test_rows_are_members_then_reactions_then_deflections() -> None:
     solved = solve(brook())
     names = [effect.name for effect in solved.effects]
@@ -41,7 +44,7 @@ def test_rows_are_members_then_reactions_then_deflections() -> None:
     rows = len(names)
     assert solved.permanent.shape == (len(PERMANENT_CLASSES), rows)
     assert solved.strength.shape == (1, rows, 2)
-    assert_array_equal(solved.impact, np.full((rows, 2), IMPACT))
+    assert_array_equal(solved.impact.of("farm", None), np.full((rows, 2), IMPACT))
     assert solved.classes == PERMANENT_CLASSES
     assert solved.sources == ("brook.toml",)
 
@@ -61,8 +64,8 @@ def test_only_members_have_strengths() -> None:
 def test_a_permit_finds_its_bar_by_its_joints_in_either_order() -> None:
     truss = brook_truss()
     members = [replace(m, name="tie") if m.name == "L1-L2" else m for m in truss.members]
-    permits = {"U1-L0": Permitted(1e3, 2e3), "L2-L1": Permitted(tension=3e3)}
-    solved = solve(brook(truss=Truss(truss.joints, members, truss.supports), permits=permits))
+    permits = {"U1-L0": permitted(1e3, 2e3), "L2-L1": permitted(tension=3e3)}
+    solved = solve(brook(truss=Truss(truss.joints, members, truss.supports), strengths=permits))
     rows = {effect.name: row for row, effect in enumerate(solved.effects)}
     assert_array_equal(solved.strength[0, rows["L0-U1"]], [1e3, 2e3])
     assert_array_equal(solved.strength[0, rows["tie"]], [3e3, np.nan])
@@ -78,7 +81,7 @@ def test_typed_strengths_hold_at_every_level() -> None:
 
 def test_nothing_in_it_can_be_changed() -> None:
     solved = solve(brook())
-    for array in (solved.permanent, solved.strength, solved.impact):
+    for array in (solved.permanent, solved.strength, solved.impact.of("farm", None)):
         with pytest.raises(ValueError, match="read-only"):
             array[0] = 1.0
 
@@ -96,14 +99,14 @@ def test_it_travels_between_processes() -> None:
             {"permanent": None},
             "permanent.deck and permanent.truss_share (weight per length of the whole deck, 0 if none)",
         ),
-        ({"deck": Deck(tuple(bottom(4)))}, "deck.truss_share (share of a whole axle that reaches one truss)"),
+        (
+            {"deck": Deck(tuple(bottom(4)))},
+            "deck.truss_share (share of a whole axle that reaches one truss), or deck.truss_spacing and deck.kerbs",
+        ),
         ({"impact": None}, "rating.impact (dynamic allowance, e.g. 0.30, and 0 only if a rule allows it)"),
         ({"truss": brook_truss(None)}, "density of L0-L1, L1-L2, L2-L3 ... (0 if in deck weight)"),
-        ({"permits": {}}, "permits of at least one member group: { tension = ..., compression = ... }"),
-        (
-            {"permits": {"L0-L1": Permitted()}},
-            "permits of at least one member group: { tension = ..., compression = ... }",
-        ),
+        ({"strengths": {}}, PERMITS),
+        ({"strengths": {"L0-L1": permitted()}}, PERMITS),
     ],
     ids=["permanent", "share", "impact", "density", "permits", "permits without a force"],
 )
@@ -113,7 +116,7 @@ def test_what_is_not_typed_is_asked_for_by_its_place(changes: dict[str, object],
 
 def test_everything_that_is_not_typed_is_asked_for_at_once() -> None:
     bare = brook(
-        permanent=None, impact=None, permits={}, deck=Deck(tuple(bottom(4))), truss=brook_truss(None),
+        permanent=None, impact=None, strengths={}, deck=Deck(tuple(bottom(4))), truss=brook_truss(None),
         missing=('members."end posts".area', "layout.middle"),
     )  # fmt: skip
     places = [words.split(" ")[0] for words in asked(bare)]
@@ -136,7 +139,7 @@ def test_what_still_holds_a_question_mark_is_named_once() -> None:
     )  # fmt: skip
     bare = brook(
         truss=Truss(joints, members, simple_span(4)),
-        permanent=None, impact=None, permits={}, deck=Deck(tuple(bottom(4))), missing=places,
+        permanent=None, impact=None, strengths={}, deck=Deck(tuple(bottom(4))), missing=places,
     )  # fmt: skip
     assert asked(bare) == [
         *(f'{place} (still holds "?")' for place in places), "density of L3-L4, U3-L4 (0 if in deck weight)",
@@ -156,20 +159,20 @@ def test_a_question_mark_hides_only_what_it_stands_for(place: str) -> None:
 
 def test_zero_is_an_answer() -> None:
     """No deck weight, no impact, no density and a strength of 0 are typed values, not missing ones."""
-    bridge = brook(truss=brook_truss(0.0), impact=0.0, permits={"L0-L1": Permitted(compression=0.0)})
+    bridge = brook(truss=brook_truss(0.0), impact=0.0, strengths={"L0-L1": permitted(compression=0.0)})
     assert solve(bridge).strength[0, 0, 1] == 0.0
 
 
 def test_a_mechanism_is_named() -> None:
     truss = brook_truss()
     loose = Truss(truss.joints, [m for m in truss.members if m.name != "U1-L2"], truss.supports)
-    permits = {"L0-L1": Permitted(1.0)}
+    permits = {"L0-L1": permitted(1.0)}
     with pytest.raises(UnstableError, match="is a mechanism"):
-        solve(brook(truss=loose, permits=permits))
+        solve(brook(truss=loose, strengths=permits))
 
 
 def test_the_note_says_the_typed_shares() -> None:
-    (note,) = solve(brook()).notes
+    note = solve(brook()).notes[0]
     assert (note.code, note.subject) == ("shares-typed", "truss")
     assert "0.6 of a whole axle and 0.5 of the deck's weight reach it" in note.text
 
@@ -178,8 +181,8 @@ def test_a_redundant_truss_says_so() -> None:
     truss = brook_truss()
     propped = Truss(truss.joints, truss.members, [*truss.supports, Support("L2", 0)])
     notes = solve(brook(truss=propped)).notes
-    assert [note.code for note in notes] == ["shares-typed", "redundant"]
-    assert notes[1].text.startswith("1 member(s) or reaction(s) beyond what equilibrium can find")
+    assert [note.code for note in notes] == ["shares-typed", "detail-allowance", "redundant"]
+    assert notes[2].text.startswith("1 member(s) or reaction(s) beyond what equilibrium can find")
 
 
 def test_settlement_is_a_class_of_its_own() -> None:

@@ -61,7 +61,7 @@ def test_a_span_that_lifts_does_not_pass_though_every_bar_does() -> None:
     assert lifted.worst.factor > 1
     assert lifted.coverage.complete
     said = [verdict_text(one.worst.factor, one.coverage, one.uplifts) for one in (held, lifted)]
-    assert said == ["adequate, for the members rated", "adequate only if L0 is held down"]
+    assert said == ["adequate, for the parts rated", "adequate only if L0 is held down"]
 
 
 def test_a_bearing_that_is_only_pushed_along_does_not_lift() -> None:

@@ -9,6 +9,7 @@ import itertools
 import re
 import subprocess
 import sys
+from dataclasses import replace
 from functools import lru_cache
 from typing import TYPE_CHECKING, Any
 
@@ -555,7 +556,7 @@ def test_forces_must_be_one_finite_number_a_member(forces: Any) -> None:
 def test_share_and_impact_are_told() -> None:
     truss, _, lines = standing("pratt", 6)
     peak = sweep(lines, TANKER)["U2-L3"].highest
-    placement = type(peak.placement)(peak.placement.x, peak.placement.load, np.full(4, 0.62), np.full(4, 0.3))
+    placement = replace(peak.placement, share=np.full(4, 0.62), impact=np.full(4, 0.3))
     shared = type(peak)(
         peak.value, peak.position, peak.heading, peak.spacings, peak.axle, peak.station, peak.case, placement
     )

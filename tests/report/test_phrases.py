@@ -221,21 +221,21 @@ def test_an_axle_that_has_just_left_is_not_said_to_stand_there() -> None:
     [
         (
             Coverage(("a", "b"), (), (), ("floor", "deck")),
-            "2 of 2 members rated in every sense they feel; floor, deck not rated.",
-            "adequate, for the members rated",
+            "2 of 2 members and beams rated in every sense they feel; floor, deck not rated.",
+            "adequate, for the parts rated",
         ),
         (
             Coverage(("a",), ("b",), (), ("floor",)),
-            "1 of 2 members rated in every sense they feel; 1 in one sense only (b); floor not rated.",
-            "adequate only if the member not fully rated is",
+            "1 of 2 members and beams rated in every sense they feel; 1 in one sense only (b); floor not rated.",
+            "adequate only if the part not fully rated is",
         ),
         (
             Coverage((), ("a",), tuple("bcdefgh"), ("floor", "deck")),
             (
-                "0 of 8 members rated in every sense they feel; 1 in one sense only (a); "
+                "0 of 8 members and beams rated in every sense they feel; 1 in one sense only (a); "
                 "7 not rated (b, c, d, e, f, g ...); floor, deck not rated."
             ),
-            "adequate only if the 8 members not fully rated are",
+            "adequate only if the 8 parts not fully rated are",
         ),
     ],
 )
@@ -253,8 +253,8 @@ def test_what_an_answer_covers(coverage: Coverage, text: str, verdict: str) -> N
     [
         ((), {"L0 y": 5e3}, "adequate only if L0 is held down"),
         ((), {"L0 y": 5e3, "L9 normal": 2e3}, "adequate only if L0, L9 are held down"),
-        (("a",), {"L0 y": 5e3}, "adequate only if the member not fully rated is and L0 is held down"),
-        (("a", "b"), {"L0 y": 1.0}, "adequate only if the 2 members not fully rated are and L0 is held down"),
+        (("a",), {"L0 y": 5e3}, "adequate only if the part not fully rated is and L0 is held down"),
+        (("a", "b"), {"L0 y": 1.0}, "adequate only if the 2 parts not fully rated are and L0 is held down"),
     ],
 )
 def test_a_bearing_that_lifts_makes_a_condition(

@@ -13,16 +13,18 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 import pytest
 from numpy.testing import assert_allclose
-from rating.bridges import CART, bars, brook, brook_truss, one_bar, part_of, solved_by_hand
+from rating.bridges import CART, bars, brook, brook_truss, deck_weight, one_bar, part_of, solved_by_hand
 
 from movload import Crossing, Loading, Support, Truss, Vehicle, judge, rate, solve
 from movload.bridge.across import Across
-from movload.bridge.bridge import PermanentLoads, Permitted
+from movload.bridge.strengths import permitted
 from movload.files.read import bridge_from
 from movload.files.schema.published import RatingsDocument
 from movload.rating.factor_sets import FactorSet, Level
+from movload.report.explain_report import sum_table
 from movload.report.phrases import CAUTIONS
-from movload.report.ratings_report import COLUMNS, closing, detail, ratings_csv, ratings_json, sum_table, summary
+from movload.report.rating_text import closing
+from movload.report.ratings_report import COLUMNS, detail, ratings_csv, ratings_json, summary
 from movload.report.table import rendered
 from movload.review.hand import terms
 from movload.statics.part import row_of
@@ -57,7 +59,8 @@ def lines_of(*parts: Any) -> list[str]:
 def sum_lines(rating: Rating, units: UnitSystem | None = None) -> list[str]:
     """Return the sum that anyone can add again, line by line."""
     shown = units or UnitSystem()
-    return lines_of(*sum_table(rating, terms(rating.peaks, rating.row, rating.side), POINTS, shown))
+    found = terms(rating.peaks, rating.row, rating.side)
+    return lines_of(*sum_table(rating, found, POINTS, shown, margin=rating.live_factor))
 
 
 def row(ratings: Ratings, name: str, side: int) -> Rating:
@@ -133,19 +136,19 @@ def test_csv_has_the_columns_of_the_list_with_the_files_units() -> None:
 
 def test_the_summary_has_one_line_a_crossing_with_its_answer() -> None:
     ratings = judge(one_bar(permanent=20e3), [AXLE, Vehicle("lorry", [90e3, 10e3], [9.0])])
-    head, _, axle, lorry = lines_of(summary(ratings))
+    head, _, axle, lorry = lines_of(summary(ratings, range(len(ratings.levels))))
     assert re.split(r"\s{2,}", head.strip()) == [
         "crossing", "weighs", "RF", "answer", "governed by", "safe weight", "worst with",
     ]  # fmt: skip
     assert re.split(r"\s{2,}", axle) == [
-        "axle", "40.0 kN", "2.00", "adequate, for the members rated", "L0-L1 tension", "8.1 t (8.9 short tons)",
+        "axle", "40.0 kN", "2.00", "adequate, for the parts rated", "L0-L1 tension", "8.1 t (8.9 short tons)",
         "4.00 m →",
     ]  # fmt: skip
     assert re.split(r"\s{2,}", lorry)[2:4] == ["0.88", "not adequate"]
 
 
 def test_the_summary_in_us_units() -> None:
-    line = lines_of(summary(judge(one_bar(permanent=20e3, units=US), [AXLE])))[2]
+    line = lines_of(summary(judge(one_bar(permanent=20e3, units=US), [AXLE]), [0]))[2]
     cells = re.split(r"\s{2,}", line)
     assert cells[1] == "9.0 kip"
     assert cells[5:] == ["8.9 short tons (8.1 t)", "13.12 ft →"]
@@ -163,14 +166,14 @@ def test_permanent_load_that_uses_all_is_said_in_place_of_a_position(
     permanent: float, strength: float, said: str
 ) -> None:
     ratings = judge(one_bar(permanent=permanent, strength=(strength, 1e9)), [AXLE])
-    cells = re.split(r"\s{2,}", lines_of(summary(ratings))[2])
+    cells = re.split(r"\s{2,}", lines_of(summary(ratings, range(len(ratings.levels))))[2])
     assert cells[2:4] == ["0.00", "not adequate"]
     assert cells[5:] == ["0.0 t (0.0 short tons)", said]
     assert lines_of(detail(ratings.rows(0), UnitSystem()))[2].endswith(said)
 
 
 def test_the_detail_puts_letters_beside_signs_and_the_worst_first() -> None:
-    ratings = rate(brook(permanent=PermanentLoads(0.0, 0.5), permits={"U1-L2": Permitted(60e3, 15e3)}), [CART])
+    ratings = rate(brook(permanent=deck_weight(0.0, 0.5), strengths={"U1-L2": permitted(60e3, 15e3)}), [CART])
     _, _, worst, other = lines_of(detail(ratings.rows(0), UnitSystem()))
     compression, tension = row(ratings, "U1-L2", 1), row(ratings, "U1-L2", 0)
     assert compression.factor < tension.factor
@@ -264,7 +267,7 @@ def test_what_closes_every_answer() -> None:
     notes = rate(brook(), [Loading.of(CART, source="invented")])
     said = closing(notes)
     assert said[0] == notes.solved.method.statement
-    assert said[1] == "Covers: 13 of 13 members rated in every sense they feel; floor, deck not rated."
+    assert said[1] == "Covers: 13 of 13 members and beams rated in every sense they feel; floor, deck not rated."
     assert said[2].startswith("Note: One truss is rated with typed shares")
     assert said[3] == "Note, cart: axles and spacings: invented"
     assert said[4:] == [f"Caution: {caution}" for caution in CAUTIONS]
@@ -295,17 +298,21 @@ def test_uplift_is_said_and_is_in_the_document() -> None:
     assert list(read["uplifts"]) == ["L0 y"]
     line = "Uplift: L0 y is pulled up with 5.8 kN (permanent and live); whether anything holds it down is not checked."
     assert closing(ratings)[2] == line
-    assert re.split(r"\s{2,}", lines_of(summary(ratings))[2])[3] == "adequate only if L0 is held down"
+    assert (
+        re.split(r"\s{2,}", lines_of(summary(ratings, range(len(ratings.levels))))[2])[3]
+        == "adequate only if L0 is held down"
+    )
 
 
 def test_what_is_not_rated_is_said() -> None:
-    ratings = rate(brook(permits={"U1-L2": Permitted(400e3), "L0-L1": Permitted(400e3)}), [CART])
+    ratings = rate(brook(strengths={"U1-L2": permitted(400e3), "L0-L1": permitted(400e3)}), [CART])
     assert closing(ratings)[1].startswith(
-        "Covers: 1 of 13 members rated in every sense they feel; 1 in one sense only (U1-L2); "
+        "Covers: 1 of 13 members and beams rated in every sense they feel; 1 in one sense only (U1-L2); "
         "11 not rated (L1-L2, L2-L3, L3-L4, U1-U2, U2-U3, L0-U1 ...)"
     )
     assert (
-        re.split(r"\s{2,}", lines_of(summary(ratings))[2])[3] == "adequate only if the 12 members not fully rated are"
+        re.split(r"\s{2,}", lines_of(summary(ratings, range(len(ratings.levels))))[2])[3]
+        == "adequate only if the 12 parts not fully rated are"
     )
     coverage = document(ratings)["coverage"]
     assert (coverage["full"], coverage["partly"]) == (["L0-L1"], ["U1-L2"])
@@ -353,10 +360,10 @@ def test_the_same_bridge_written_in_si_and_in_us_units() -> None:
         for key in ("factor", "strength", "permanent", "live", "safe_weight", "position"):
             assert (one[key] is None) == (other[key] is None)
             assert_allclose(one[key] or 0.0, other[key] or 0.0, rtol=1e-12)
-    assert lines_of(summary(metric))[2].split()[1:3] == ["80.0", "kN"]
-    assert lines_of(summary(us))[2].split()[1:3] == ["18.0", "kip"]
-    weights = [re.search(r"([\d.]+) t \(([\d.]+) short tons\)", lines_of(summary(metric))[2]),
-               re.search(r"([\d.]+) short tons \(([\d.]+) t\)", lines_of(summary(us))[2])]  # fmt: skip
+    assert lines_of(summary(metric, [0]))[2].split()[1:3] == ["80.0", "kN"]
+    assert lines_of(summary(us, [0]))[2].split()[1:3] == ["18.0", "kip"]
+    weights = [re.search(r"([\d.]+) t \(([\d.]+) short tons\)", lines_of(summary(metric, [0]))[2]),
+               re.search(r"([\d.]+) short tons \(([\d.]+) t\)", lines_of(summary(us, [0]))[2])]  # fmt: skip
     assert weights[0] is not None
     assert weights[1] is not None
     assert weights[0].groups() == weights[1].groups()[::-1]

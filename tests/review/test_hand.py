@@ -7,7 +7,7 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
-from rating.bridges import CART, IMPACT, SHARE, brook, part_of, solved_by_hand
+from rating.bridges import CART, IMPACT, SHARE, TWO_TRUSSES, brook, part_of, solved_by_hand
 from strategies import Laid, laid, vehicles
 
 from movload import Crossing, Loading, Vehicle, influence_lines, judge, rate, sweep
@@ -27,7 +27,7 @@ def test_terms_add_up_to_every_peak(bridge: Laid, vehicle: Vehicle, impact: floa
     lines = influence_lines(bridge.truss, bridge.panel_points)
     allowance = np.outer(np.linspace(1.0, 0.3, len(lines.effects)), [impact, 0.5 * impact])
     train = Train("drawn", vehicle, np.full(vehicle.loads.size, share))
-    (part,) = part_peaks(lines, [(train,)], allowance[None])
+    (part,) = part_peaks(lines, [((train,),)], allowance[None])
     peaks = stacked("drawn", [part])
     for row in range(len(lines.effects)):
         for side in (0, 1):
@@ -50,7 +50,7 @@ def test_each_term_is_a_product_read_off_the_line(bridge: Laid, vehicle: Vehicle
             for number, term in enumerate(terms(peaks, row, side), start=1):
                 assert term.axle == number
                 assert (term.load, term.share, term.impact) == (vehicle.loads[number - 1], 1.0, 0.0)
-                assert term.effect == term.load * term.share * (1.0 + term.impact) * term.ordinate
+                assert term.effect == term.load * term.share * term.factor * (1.0 + term.impact) * term.ordinate
                 beside_an_end = min(abs(term.x - first), abs(term.x - last)) < 1e-9
                 if first < term.x < last and not beside_an_end:
                     expected = lines[effect.key].at(term.x)
@@ -102,8 +102,8 @@ def test_each_part_is_added_on_its_own_lines(row: int, share: float, impact: flo
         part_of("right", {"tie": [0.0, 0.5, 2.0, 0.0]}, [-1.0, 3.0, 7.0, 12.0],
                 Across(np.array([-2.0, 2.0]), np.array([1.0, 0.0]))),
     ]  # fmt: skip
-    solved = solved_by_hand(parts, impact=[(0.1, 0.1), (0.2, 0.2), (0.3, 0.3)])
-    ratings = judge(solved, [Crossing(Loading.of(Vehicle("axle", [40e3], [])), "off centre", 1.0)])
+    solved = solved_by_hand(parts, impact=[(0.1, 0.1), (0.2, 0.2), (0.3, 0.3)], roadway=TWO_TRUSSES)
+    ratings = judge(solved, [Crossing(Loading.of(Vehicle("axle", [40e3], [], gauges=(0.6,))), "offset", 1.0)])
     side = 1 if row == 1 else 0
     (term,) = terms(ratings.peaks[0], row, side)
     assert_allclose([term.x, term.load, term.share, term.impact], [x, 40e3, share, impact], rtol=1e-12)

@@ -12,14 +12,18 @@ from hypothesis import given
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose, assert_array_equal
 from oracles.lagrange import holds_of, solved
-from rating.bridges import AREA, DENSITY, DEPTH, PANELS, brook_truss
+from rating.bridges import AREA, DENSITY, DEPTH, PANELS, brook_truss, deck_weight
 from strategies import Laid, laid
 
 from movload import Member, Support, Truss, influence_lines
-from movload.bridge.bridge import PermanentLoads
-from movload.bridge.deck import stations_of
+from movload.bridge.across import Across
+from movload.bridge.bridge import Bridge
+from movload.bridge.deck import Deck, deck_lengths, stations_of
+from movload.bridge.permanent import PermanentItems
 from movload.errors import MissingDataError
-from movload.statics.permanent import PERMANENT_CLASSES, deck_lengths, member_weights, permanent_effects
+from movload.statics.influence import lines_of
+from movload.statics.part import Part
+from movload.statics.permanent import PERMANENT_CLASSES, member_weights, permanent_effects
 from movload.statics.stiffness import factored
 
 if TYPE_CHECKING:
@@ -42,12 +46,14 @@ def heavy(truss: Truss, density: float) -> Truss:
     return Truss(truss.joints, [replace(member, density=density) for member in truss.members], truss.supports)
 
 
-def effects(truss: Truss, points: Sequence[str | float], loads: PermanentLoads) -> Floats:
+def effects(truss: Truss, points: Sequence[str | float], loads: PermanentItems) -> Floats:
     """Return every row's permanent effect by class."""
-    return np.asarray(permanent_effects(factored(truss), points, loads))
+    bridge, solver = Bridge("it", truss, Deck(tuple(points)), permanent=loads), factored(truss)
+    part = Part("truss", lines_of(solver, points), Across.typed(0.5))
+    return np.asarray(permanent_effects(bridge, solver, [part], loads))
 
 
-def joint_weights(truss: Truss, points: Sequence[str | float], loads: PermanentLoads) -> dict[str, float]:
+def joint_weights(truss: Truss, points: Sequence[str | float], loads: PermanentItems) -> dict[str, float]:
     """Return what stands on each joint [N], bar by bar and panel by panel."""
     down = dict.fromkeys(truss.joints, 0.0)
     for member in truss.members:
@@ -59,7 +65,7 @@ def joint_weights(truss: Truss, points: Sequence[str | float], loads: PermanentL
     for panel in range(len(points) - 1):
         for point in points[panel : panel + 2]:
             if isinstance(point, str):
-                down[point] += loads.deck * loads.truss_share * (x[panel + 1] - x[panel]) / 2
+                down[point] += loads.items[0].line * (loads.items[0].share or 0.0) * (x[panel + 1] - x[panel]) / 2
     return down
 
 
@@ -67,7 +73,7 @@ def joint_weights(truss: Truss, points: Sequence[str | float], loads: PermanentL
 def test_permanent_effects_are_those_of_an_independent_solution(
     bridge: Laid, density: float, deck: float, share: float
 ) -> None:
-    truss, loads = heavy(bridge.truss, density), PermanentLoads(deck, share)
+    truss, loads = heavy(bridge.truss, density), deck_weight(deck, share)
     down = joint_weights(truss, bridge.panel_points, loads)
     answer = solved(truss, np.array([[[0.0], [-weight]] for weight in down.values()]))
     found = effects(truss, bridge.panel_points, loads)[COMPONENTS]
@@ -82,7 +88,7 @@ def test_permanent_effects_are_those_of_an_independent_solution(
 @given(laid(), densities, decks, st.floats(0.0, 1.0))
 def test_bearings_push_back_the_whole_permanent_load(bridge: Laid, density: float, deck: float, share: float) -> None:
     """Area x density x length x g of every bar, and all of the deck but half an end panel that bears on an abutment."""
-    truss, loads = heavy(bridge.truss, density), PermanentLoads(deck, share)
+    truss, loads = heavy(bridge.truss, density), deck_weight(deck, share)
     x = stations_of(truss, bridge.panel_points)
     on_truss = float(x[-1] - x[0])
     if not isinstance(bridge.panel_points[0], str):
@@ -107,7 +113,7 @@ def test_a_weight_on_a_bearing_reaches_it_and_strains_no_bar() -> None:
     truss, points = brook_truss(), ["L0", "L1", "L2", "L3", "L4"]
     on_bearing = 4.5e3 * PANELS[0] / 2 + AREA * DENSITY * GRAVITY * (PANELS[0] + math.hypot(PANELS[0], DEPTH)) / 2
     rows = {effect.name: row for row, effect in enumerate(influence_lines(truss, points).effects)}
-    found = effects(truss, points, PermanentLoads(9e3, 0.5))[COMPONENTS]
+    found = effects(truss, points, deck_weight(9e3, 0.5))[COMPONENTS]
     end_post = -found[rows["L0-U1"]] * DEPTH / math.hypot(PANELS[0], DEPTH)
     assert_allclose(found[rows["L0 y"]] - end_post, on_bearing, rtol=1e-11)
 
@@ -117,7 +123,7 @@ def test_upper_joints_carry_their_bars() -> None:
     truss = brook_truss()
     on_top = AREA * DENSITY * GRAVITY * (PANELS[1] + PANELS[2] + DEPTH) / 2
     assert_allclose(member_weights(truss)[truss.joint_index["U2"]], on_top, rtol=1e-14)
-    found = effects(truss, ["L0", "L1", "L2", "L3", "L4"], PermanentLoads(0.0, 0.5))[COMPONENTS]
+    found = effects(truss, ["L0", "L1", "L2", "L3", "L4"], deck_weight(0.0, 0.5))[COMPONENTS]
     post = [member.name for member in truss.members].index("U2-L2")
     assert_allclose(found[post], -on_top, rtol=1e-12)
 
@@ -157,7 +163,7 @@ def test_settlements_are_those_of_an_independent_solution(bridge: Laid, movement
         for i, support in enumerate(bridge.truss.supports)
     ]
     truss = heavy(Truss(bridge.truss.joints, bridge.truss.members, supports), 0.0)
-    found = effects(truss, bridge.panel_points, PermanentLoads(0.0, 0.5))
+    found = effects(truss, bridge.panel_points, deck_weight(0.0, 0.5))
     assert not found[COMPONENTS].any()
     answer = solved(truss, np.zeros((len(truss.joints), 2, 1)), settled=True)
     forces = np.concatenate((answer.forces, answer.reactions))[:, 0]
@@ -177,7 +183,7 @@ def test_a_settlement_moves_a_determinate_truss_and_strains_nothing() -> None:
     sunk = Truss(truss.joints, truss.members, [Support("L0"), Support("L4", 0, settlement=0.02)])
     points = ["L0", "L1", "L2", "L3", "L4"]
     rows = influence_lines(sunk, points).effects
-    found = effects(sunk, points, PermanentLoads(9e3, 0.5))[SETTLEMENT]
+    found = effects(sunk, points, deck_weight(9e3, 0.5))[SETTLEMENT]
     assert_array_equal(found[[row.kind != "down" for row in rows]], 0.0)
     assert_allclose(found[[row.kind == "down" for row in rows]], 0.02 * np.array([0.0, 4.1, 7.8, 12.1, 16.0]) / 16,
                     rtol=1e-9, atol=1e-15)  # fmt: skip
@@ -189,9 +195,9 @@ def test_settlement_and_weight_do_not_touch_each_other() -> None:
     propped, sunk = (
         Truss(truss.joints, truss.members, [*truss.supports, Support("L2", 0, settlement=by)]) for by in (0.0, 0.01)
     )
-    loads = PermanentLoads(9e3, 0.5)
+    loads = deck_weight(9e3, 0.5)
     assert_array_equal(effects(propped, points, loads)[COMPONENTS], effects(sunk, points, loads)[COMPONENTS])
-    weightless = effects(heavy(sunk, 0.0), points, PermanentLoads(0.0, 0.5))
+    weightless = effects(heavy(sunk, 0.0), points, deck_weight(0.0, 0.5))
     assert_allclose(weightless[SETTLEMENT], effects(sunk, points, loads)[SETTLEMENT], rtol=1e-12)
     assert not effects(propped, points, loads)[SETTLEMENT].any()
     prop = [row.name for row in influence_lines(sunk, points).effects].index("L2 normal")
@@ -204,13 +210,16 @@ def test_a_bar_that_permanent_load_does_not_reach_feels_exactly_nothing() -> Non
     bars = [("L0", "U1"), ("U1", "L2"), ("L0", "L1"), ("L1", "L2"), ("U1", "L1")]
     members = [Member(start, end, AREA, 2e11, density=0.0) for start, end in bars]
     truss = Truss(joints, members, [Support("L0"), Support("L2", 0)])
-    found = effects(truss, ["L0", "L2"], PermanentLoads(9e3, 0.5))
+    found = effects(truss, ["L0", "L2"], deck_weight(9e3, 0.5))
     assert_array_equal(found[COMPONENTS, :5], 0.0)
     assert_allclose(found[COMPONENTS, 6:8], 9e3 * 0.5 * 7.0 / 2, rtol=1e-14)
 
 
 def test_the_result_cannot_be_changed() -> None:
-    found = permanent_effects(factored(brook_truss()), ["L0", "L4"], PermanentLoads(9e3, 0.5))
-    assert found.shape == (2, 13 + 3 + 2)
+    truss, loads = brook_truss(), deck_weight(9e3, 0.5)
+    bridge, solver = Bridge("it", truss, Deck(("L0", "L4")), permanent=loads), factored(truss)
+    part = Part("truss", lines_of(solver, ("L0", "L4")), Across.typed(0.5))
+    found = permanent_effects(bridge, solver, [part], loads)
+    assert found.shape == (len(PERMANENT_CLASSES), 13 + 3 + 2)
     with pytest.raises(ValueError, match="read-only"):
         found[0] = 0.0

@@ -2,11 +2,13 @@
 
 from __future__ import annotations
 
-from typing import Annotated, Literal
+import math
+from collections.abc import Callable
+from typing import Annotated, Any, Final, Literal
 
-from pydantic import Field, model_validator
+from pydantic import BeforeValidator, Field, ValidationInfo, WithJsonSchema, model_validator
 
-from movload.errors import InputError
+from movload.errors import InputError, nearest_name
 from movload.files.schema.quantities import (
     STILL_HELD,
     Area,
@@ -15,14 +17,66 @@ from movload.files.schema.quantities import (
     Fraction,
     Length,
     LineLoad,
+    Moment,
+    Pressure,
+    Section,
     Stiffness,
     Stress,
     Table,
     Text,
     Units,
+    number,
     shown,
+    units_in,
 )
 from movload.files.toml import PLACEHOLDER, written_key
+
+
+def _place_across(value: object, info: ValidationInfo) -> str | tuple[float, float]:
+    """Return a name, or the two z between which something lies [m]; one z is a line."""
+    if isinstance(value, str) and value in _NAMED:
+        return value
+    units = units_in(info)
+    both = value if isinstance(value, list) else [value, value]
+    if len(both) != 2:
+        raise InputError(f"a place across is one z or two, got {shown(value)}")
+    try:
+        right, left = (number(one, "length", units) for one in both)
+    except InputError as error:
+        near = nearest_name(value, _NAMED) if isinstance(value, str) else ""
+        raise InputError(f"{error.rule}; or one of {', '.join(_NAMED)}", nearest=near) from None
+    return right, left
+
+
+def _impact(value: object, info: ValidationInfo) -> float | str:
+    """Return a fraction, or the name of a rule."""
+    if isinstance(value, str) and not any(sign.isdigit() for sign in value):
+        return value
+    return number(value, "fraction", units_in(info))
+
+
+def _traffic(value: object, info: ValidationInfo) -> float:
+    """Return trucks a day, infinite for unknown."""
+    return math.inf if value == "unknown" else number(value, "fraction", units_in(info))
+
+
+def _count(value: object, info: ValidationInfo) -> float:
+    """Return n of a limit span / n."""
+    if isinstance(value, bool) or not isinstance(value, (int, float)):
+        raise InputError(f"n of a limit span / n is asked for, got {shown(value)}")
+    return number(value, "fraction", units_in(info))
+
+
+def _read_by(reader: Callable[[object, ValidationInfo], object], kinds: list[str]) -> Any:  # parts of Annotated
+    """Return the annotation's two parts for a value that may be a name or a quantity."""
+    return BeforeValidator(reader), WithJsonSchema({"type": kinds})
+
+
+_NAMED: Final = ("full width", "left", "right")
+Across = Annotated[str | tuple[float, float], *_read_by(_place_across, ["string", "number", "array"])]
+Impact = Annotated[float | str, *_read_by(_impact, ["number", "string"])]
+Traffic = Annotated[float, *_read_by(_traffic, ["number", "string"])]
+Count = Annotated[float, *_read_by(_count, ["number"])]
 
 
 class LayoutTable(Table):
@@ -53,30 +107,118 @@ class SupportTable(Table):
         return self
 
 
-class PermitsTable(Table):
-    """Permitted axial forces, margin included, both as magnitudes."""
+class AxialTable(Table):
+    """Axial strengths of a bar, as magnitudes."""
 
     tension: Force | None = None
     compression: Force | None = None
 
 
-class MemberGroup(Table):
+class BendingTable(Table):
+    """Strengths of a beam of the floor, as magnitudes."""
+
+    moment: Moment | None = Field(None, description="sagging")
+    hogging: Moment | None = Field(None, description="over a truss that carries a bracket")
+    shear: Force | None = None
+
+
+class StrengthKeys(Table):
+    """What a factor set asks about a part beside its strength."""
+
+    condition: Text | None = Field(None, description="good, fair or poor")
+    measured: Annotated[bool, Field(strict=True)] = Field(False, description="whether the loss of metal was measured")
+    system: Text | None = Field(None, description='kind of system, e.g. "riveted members"')
+    timber: Annotated[bool, Field(strict=True)] = Field(False, description="timber takes no impact")
+
+
+class MemberGroup(StrengthKeys):
     """Bars that share one section and material."""
 
     area: Area
     modulus: Stress
     density: Density | None = None
     bars: list[Text] | None = None
-    permits: PermitsTable | None = None
+    permits: AxialTable | None = Field(None, description="margin included")
+    nominal: AxialTable | None = Field(None, description="every factor of the method applies")
+    reduced: AxialTable | None = Field(None, description="phi is in it already")
 
 
 class DeckTable(Table):
-    """The loaded chord and how much of an axle reaches one truss."""
+    """The loaded chord, the trusses and the kerbs; or how much of an axle reaches one truss."""
 
     panel_points: list[Text] | None = None
     left_abutment: Length | None = Field(None, description="x of an abutment that carries the first end stringer")
     right_abutment: Length | None = Field(None, description="x of an abutment that carries the last end stringer")
     truss_share: Fraction | None = None
+    truss_spacing: Length | None = Field(None, description="between the trusses' middle planes")
+    kerbs: tuple[Length, Length] | None = Field(
+        None, description="z of the right and the left kerb from the bridge's centre line, looking toward +x; + is left"
+    )
+    clearance: Length | None = Field(None, description="from a kerb to the outermost wheel's centre")
+    between: Length | None = Field(None, description="between the nearest wheels of vehicles side by side")
+    keeps: Text | None = Field(None, description="side on which traffic keeps: right or left")
+    kind: Text | None = Field(None, description="through, pony or deck, where no layout says it")
+    bears_on: Text | None = Field(None, description="floorbeams, or chord")
+    chord_bending: Text | None = Field(None, description="who checked a deck that bears on the chord, and the result")
+
+
+class PartTable(StrengthKeys):
+    """A part of the floor."""
+
+    permits: BendingTable | None = None
+    nominal: BendingTable | None = None
+    reduced: BendingTable | None = None
+
+
+class StringersTable(PartTable):
+    """Stringers, simple spans between floorbeams."""
+
+    z: list[Length] = Field(description="their places across, from the right looking toward +x")
+    fraction: Fraction | None = Field(None, description="of a whole axle on one stringer; the lever rule when left out")
+    weight: LineLoad | None = Field(None, description="of one stringer")
+    continuous: Annotated[bool, Field(strict=True)] = False
+
+    @model_validator(mode="after")
+    def _simple(self) -> StringersTable:
+        if self.continuous:
+            raise InputError("stringers that run on over floorbeams cannot be rated as simple spans, got true",
+                             place="continuous")  # fmt: skip
+        return self
+
+
+class FloorbeamsTable(PartTable):
+    """Floorbeams, one at each panel point."""
+
+    brackets: tuple[Length, Length] | None = Field(None, description="reach beyond the right and the left truss")
+    weight: LineLoad | None = Field(None, description="per length of beam")
+
+
+class PlanksTable(PartTable):
+    """Planks from stringer to stringer."""
+
+    contact: Length = Field(description="length of a wheel's contact along the plank")
+    sharing: Fraction = Field(description="part of a wheel that one plank takes")
+
+
+class FloorTable(Table):
+    """The floor."""
+
+    stringers: StringersTable | None = None
+    floorbeams: FloorbeamsTable | None = None
+    planks: PlanksTable | None = None
+
+
+class ItemTable(Table):
+    """One thing that stands on the bridge for good: its weight in one way, and where across it lies."""
+
+    title: Text
+    kind: Text = Field(description="components, surfacing or other")
+    line: LineLoad | None = Field(None, description="per length along the bridge, all of it")
+    per_area: Pressure | None = Field(None, description="per area of the width it covers")
+    thickness: Section | None = Field(None, description="of a layer, with its density")
+    density: Density | None = None
+    points: dict[Text, Force] | None = Field(None, description="weights at panel points")
+    across: Across = Field(description='"full width", "left", "right", one z, or [z, z] from the right')
 
 
 class PermanentTable(Table):
@@ -84,12 +226,17 @@ class PermanentTable(Table):
 
     deck: LineLoad | None = Field(None, description="whole bridge: deck, floor and surfacing per length along it")
     truss_share: Fraction | None = None
+    detail_allowance: Fraction | None = Field(None, description="of the members' weight: lacing, rivets, pins, gussets")
+    items: list[ItemTable] = Field(default=[])
 
 
 class RatingTable(Table):
     """What a rating takes as given."""
 
-    impact: Fraction | None = None
+    impact: Impact | None = Field(None, description='a fraction, or "by loaded length", "by riding surface", "railway"')
+    surface: Text | None = Field(None, description="smooth, minor or severe")
+    traffic: Traffic | None = Field(None, description='trucks a day one way, or "unknown"')
+    deflection: Count | None = Field(None, description="n: live deflection at most span / n")
 
 
 class BridgeFile(Table):
@@ -102,6 +249,7 @@ class BridgeFile(Table):
     supports: dict[Text, SupportTable | Literal["pinned"]]
     members: dict[Text, MemberGroup]
     deck: DeckTable = Field(default_factory=lambda: DeckTable.model_validate({}))
+    floor: FloorTable = Field(default_factory=lambda: FloorTable.model_validate({}))
     permanent: PermanentTable | None = None
     rating: RatingTable = Field(default_factory=lambda: RatingTable.model_validate({}))
 

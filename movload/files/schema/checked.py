@@ -10,6 +10,7 @@ from pydantic import BaseModel, ValidationError
 from movload.errors import InputError, MovloadError
 from movload.files.schema.quantities import STILL_HELD, Table, Units, shown
 from movload.files.toml import PLACEHOLDER, Data, written_key
+from movload.units import SI_UNITS
 
 if TYPE_CHECKING:
     from movload.units import UnitSystem
@@ -42,15 +43,15 @@ def units_of(data: Data) -> UnitSystem:
     return _validated(Units, data["units"], "units").system()
 
 
-def checked(model: type[Model], data: Data) -> tuple[Model, UnitSystem]:
-    """Return data checked against a file's model, and the file's units.
+def checked(model: type[Model], data: Data, *, own_units: bool = True) -> tuple[Model, UnitSystem]:
+    """Return data checked against a file's model, and the file's units (SI for a file that has none of its own).
 
     Raises
     ------
     InputError
         A key or value is wrong; its place is named.
     """
-    units = units_of(data)
+    units = units_of(data) if own_units else SI_UNITS
     return _validated(model, data, "", units=units), units
 
 

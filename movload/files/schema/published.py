@@ -23,6 +23,11 @@ class PlacementDocument(Document):
     load: list[float] = Field(description="whole axle [N]")
     share: list[float] = Field(description="part of a whole axle that reaches the part")
     impact: list[float] = Field(description="dynamic allowance of each axle; its effect counts 1 + impact times")
+    factor: list[float] = Field(description="what its case and multiple presence multiply it by")
+    z: list[float | None] = Field(
+        description="where its vehicle's middle keeps across [m]; null where a share is typed"
+    )
+    vehicle: list[int] = Field(description="which of the vehicles abreast it belongs to, counted from 1")
 
 
 class RatingDocument(Document):
@@ -34,9 +39,9 @@ class RatingDocument(Document):
     row: str
     sense: str = Field(description="tension or compression")
     factor: float | None = Field(description="RF; null when there is strength to spare and no live effect")
-    strength: float = Field(description="magnitude [N]")
-    permanent: float = Field(description="permanent effect [N], tension positive")
-    live: float = Field(description="live effect with share and impact [N], tension positive")
+    strength: float = Field(description="magnitude [N, N m]")
+    permanent: float = Field(description="permanent effect [N, N m], tension and sagging positive")
+    live: float = Field(description="live effect with share and impact [N, N m], tension and sagging positive")
     impact: float
     safe_weight: float | None = Field(description="factor x the vehicle's weight [N]; null with factor")
     position: float | None = Field(description="x of the front axle [m]; null when the vehicle is off the bridge")
@@ -45,6 +50,12 @@ class RatingDocument(Document):
     station: int | None = Field(description="that station's number, counted from 0")
     permanent_use: float | None = Field(description="part of the strength that permanent load alone uses")
     placement: PlacementDocument | None
+    kind: str = Field(description="axial, moment or shear")
+    stands_for: str = Field(description="the part as a person says it: either truss where both are alike")
+    crossing_number: int = Field(description="number in crossings, counted from 0")
+    abreast: int = Field(description="how many vehicles stand side by side; 0 when off the bridge")
+    live_factor: float = Field(description="margin on the live effect")
+    permanent_used: float = Field(description="what permanent load uses of the strength, margins included [N, N m]")
 
 
 class CrossingDocument(Document):
@@ -55,6 +66,9 @@ class CrossingDocument(Document):
     weight: float = Field(description="[N]")
     place: str
     source: str
+    z: float | None = Field(description="the offset asked for [m]; null where the place has a name")
+    speed: float | None = Field(description="[m/s]; null where none is meant")
+    most_abreast: int = Field(description="how many of it stand side by side at most")
 
 
 class CoverageDocument(Document):
@@ -64,6 +78,18 @@ class CoverageDocument(Document):
     partly: list[str]
     none: list[str]
     not_rated: list[str]
+
+
+class DeflectionDocument(Document):
+    """The live deflection of a panel point under a crossing."""
+
+    part: str
+    point: str
+    crossing: str
+    crossing_number: int
+    down: float = Field(description="[m], impact included")
+    ratio: float | None = Field(description="span / down; null where nothing deflects")
+    limit: float | None = Field(description="n of a limit span / n; null where none is asked")
 
 
 class NoteDocument(Document):
@@ -86,6 +112,7 @@ class RatingsDocument(Document):
     crossings: list[CrossingDocument]
     coverage: CoverageDocument
     notes: list[NoteDocument]
+    deflections: list[DeflectionDocument]
     uplifts: dict[str, float] = Field(description="bearings that are pulled up and by how much [N]")
     cautions: list[str]
     sources: list[str]

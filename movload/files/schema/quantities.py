@@ -109,6 +109,11 @@ Density = Annotated[
     float, *_typed("density", "mass per volume; bare numbers in kg/m3 beside metres, lb/ft3 beside feet")
 ]
 Stiffness = Annotated[float, *_typed("stiffness", "a force per length; bare numbers in units.force per units.section")]
+Pressure = Annotated[
+    float, *_typed("pressure", "a weight per area; bare numbers in units.force per units.length squared")
+]
+Moment = Annotated[float, *_typed("moment", "a moment; bare numbers in units.force times units.length")]
+Section = Annotated[float, *_typed("section", "a small length; bare numbers in units.section")]
 Fraction = Annotated[float, *_typed("fraction", 'a fraction, 0.3 or "30 %"')]
 
 

@@ -44,4 +44,7 @@ class VehicleFile(Table):
     notes: tuple[Text, ...] = Field(default=(), description="what every rating of it must say")
     units: Units
     axles: list[AxleTable]
+    impact: Literal["added", "included", "none"] = Field(
+        "added", description="included: the load model holds it already; none: its rule asks for none"
+    )
     headings: tuple[Literal["+x", "-x"], ...] = ("+x", "-x")

@@ -1,0 +1,149 @@
+"""Deck, floor and permanent loads of a bridge file: where things lie across, and what they weigh."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from movload.bridge.deck import Deck
+from movload.bridge.floor import Floor, Floorbeams, Planks, Stringers
+from movload.bridge.permanent import Item, PermanentItems
+from movload.bridge.roadway import BETWEEN, Roadway
+from movload.errors import InputError, MissingDataError, MovloadError
+from movload.files.bars import strength_of
+
+if TYPE_CHECKING:
+    from movload.bridge.deck import PanelPoint
+    from movload.files.schema.bridge import BridgeFile, DeckTable, FloorTable, ItemTable, PermanentTable
+
+_WEIGHTS = ("line", "per_area", "thickness", "points")
+
+
+def deck_of(table: BridgeFile, panel_points: tuple[PanelPoint, ...]) -> Deck:
+    """Return the deck with its kerbs."""
+    deck = table.deck
+    by_layout = table.layout.deck if table.layout else ""
+    if deck.kind and by_layout and deck.kind != by_layout:
+        raise InputError(f'"{deck.kind}" contradicts layout.deck = "{by_layout}"', place="deck.kind")
+    return Deck(
+        panel_points,
+        truss_share=deck.truss_share,
+        truss_spacing=deck.truss_spacing,
+        roadway=_roadway(deck),
+        kind=deck.kind or by_layout,
+        bears_on=deck.bears_on or "floorbeams",
+        chord_bending=deck.chord_bending or "",
+    )
+
+
+def _roadway(deck: DeckTable) -> Roadway | None:
+    """Return the kerbs, with all that must be said beside them."""
+    if deck.kerbs is None:
+        for word in ("clearance", "between", "keeps"):
+            if getattr(deck, word) is not None:
+                raise MissingDataError(f"is needed beside deck.{word}", place="deck.kerbs")
+        return None
+    if deck.clearance is None:
+        raise MissingDataError(
+            "is needed beside deck.kerbs: the least distance from a kerb to the outermost wheel's centre",
+            place="deck.clearance",
+        )
+    right, left = deck.kerbs
+    between = BETWEEN if deck.between is None else deck.between
+    return Roadway(right, left, clearance=deck.clearance, between=between, keeps=deck.keeps or "right")
+
+
+def floor_of(table: FloorTable) -> Floor:
+    """Return stringers, floorbeams and planks, as far as they were typed."""
+    stringers, beams, planks = table.stringers, table.floorbeams, table.planks
+    return Floor(
+        None
+        if stringers is None
+        else Stringers(
+            tuple(stringers.z),
+            fraction=stringers.fraction,
+            weight=stringers.weight or 0.0,
+            strength=strength_of(stringers, "floor.stringers"),
+        ),
+        None
+        if beams is None
+        else Floorbeams(
+            beams.brackets or (0.0, 0.0),
+            weight=beams.weight or 0.0,
+            strength=strength_of(beams, "floor.floorbeams"),
+        ),
+        None
+        if planks is None
+        else Planks(planks.contact, planks.sharing, strength=strength_of(planks, "floor.planks")),
+    )
+
+
+def permanent_of(table: BridgeFile, deck: Deck) -> PermanentItems | None:
+    """Return what stands on the bridge for good; None while nobody has typed it."""
+    permanent = table.permanent
+    if permanent is None:
+        return None
+    across = deck.truss_spacing is not None
+    if across and permanent.truss_share is not None:
+        raise InputError("the share is given twice: typed, and by deck.truss_spacing", place="permanent.truss_share")
+    if permanent.items and not across:
+        raise MissingDataError("is needed to take permanent.items to the trusses", place="deck.truss_spacing")
+    if not permanent.items and (permanent.deck is None or not (across or permanent.truss_share is not None)):
+        return None
+    items = [_item(item, deck, f"permanent.items[{number}]") for number, item in enumerate(permanent.items)]
+    if permanent.deck is not None:
+        items.insert(0, _whole_deck(permanent, deck))
+    try:
+        return PermanentItems(tuple(items), detail_allowance=permanent.detail_allowance or 0.0)
+    except MovloadError as error:
+        raise error.at("permanent") from None
+
+
+def _whole_deck(permanent: PermanentTable, deck: Deck) -> Item:
+    """Return the deck's weight per metre as one item."""
+    weight = permanent.deck or 0.0
+    try:
+        if deck.truss_spacing is None:
+            return Item("deck", "components", line=weight, share=permanent.truss_share)
+        low, high = _full_width(deck, "permanent.deck")
+        return Item("deck", "components", line=weight, low=low, high=high)
+    except MovloadError as error:
+        own = error.place if error.place in {"truss_share", "deck.kerbs"} else "deck"
+        place = own if own == "deck.kerbs" else f"permanent.{own}"
+        raise type(error)(error.rule, place=place, nearest=error.nearest) from None
+
+
+def _item(table: ItemTable, deck: Deck, place: str) -> Item:
+    """Return one item, its weight written in exactly one way."""
+    said = [word for word in _WEIGHTS if getattr(table, word) is not None]
+    if len(said) != 1:
+        told = f"got {' and '.join(said)}" if said else "got none"
+        raise InputError(f"its weight is one of {', '.join(_WEIGHTS)}; {told}", place=place)
+    low, high = _lies(table, deck, place)
+    try:
+        if table.per_area is not None:
+            return Item.per_area(table.title, table.kind, table.per_area, (low, high))
+        if table.thickness is not None:
+            if table.density is None:
+                raise MissingDataError("is needed beside thickness", place="density")
+            return Item.layer(
+                table.title, table.kind, thickness=table.thickness, density=table.density, across=(low, high)
+            )
+        points = tuple((table.points or {}).items())
+        return Item(table.title, table.kind, line=table.line or 0.0, points=points, low=low, high=high)
+    except MovloadError as error:
+        raise error.at(place) from None
+
+
+def _lies(table: ItemTable, deck: Deck, place: str) -> tuple[float, float]:
+    """Return the z between which an item lies [m]."""
+    if not isinstance(table.across, str):
+        return table.across
+    right, left = _full_width(deck, f"{place}.across")
+    return {"full width": (right, left), "left": (left, left), "right": (right, right)}[table.across]
+
+
+def _full_width(deck: Deck, place: str) -> tuple[float, float]:
+    """Return the kerbs' z [m]."""
+    if deck.roadway is None:
+        raise MissingDataError(f"is needed to know how wide {place} lies", place="deck.kerbs")
+    return deck.roadway.right, deck.roadway.left

@@ -1,0 +1,158 @@
+"""Peaks of simple spans: the second producer, for sections that move with the load."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING, NamedTuple
+
+import numpy as np
+
+from movload.arrays import Floats, held
+from movload.peaks.extremes import unit_of
+from movload.peaks.peaks import NO_PEAK, Peak, standing_train
+from movload.peaks.placement import Placement, joined
+from movload.peaks.span_maxima import span_maxima, span_values
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from movload.statics.part import Effect
+    from movload.statics.spans import SimpleSpans
+    from movload.traffic.crossing import Formation, Train
+    from movload.traffic.vehicle import Vehicle
+
+
+class _Stand(NamedTuple):
+    """Where a train stands in one span: front axle and section from its left end [m], heading, governing axle."""
+
+    position: float
+    heading: int
+    axle: int
+    section: float
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class SpanPeaks:
+    """The peaks of one stringer's spans under the formations of one crossing; rows moment and shear, span by span.
+
+    Attributes
+    ----------
+    response
+        The spans.
+    formations
+        Those that the stringer feels.
+    highest, lowest
+        (R,) with impact; the lowest is 0, a simple span is never bent the other way.
+    impact
+        (R, 2) dynamic allowance.
+    governing
+        (R,) the formation that gives each row's highest.
+    """
+
+    response: SimpleSpans
+    formations: tuple[Formation, ...]
+    highest: Floats
+    lowest: Floats
+    impact: Floats
+    governing: np.ndarray[tuple[int, ...], np.dtype[np.intp]]
+
+    @property
+    def effects(self) -> tuple[Effect, ...]:
+        """The rows (R)."""
+        return self.response.effects
+
+    def vehicle(self, row: int, side: int) -> Vehicle:
+        """Return the vehicle that gives a row's peak (abreast they are all alike)."""
+        return self._formation(row, side)[0].vehicle
+
+    def _formation(self, row: int, side: int) -> Formation:
+        """Return the formation that gives a row's highest; nothing is felt on the other side."""
+        return self.formations[int(self.governing[row]) if side == 0 else 0]
+
+    def peak(self, row: int, side: int) -> Peak:
+        """Return one row's highest (side 0) peak; the lowest is always 0."""
+        value = float((self.highest, self.lowest)[side][row])
+        if value == 0.0:
+            return NO_PEAK
+        felt = [train for train in self._formation(row, side) if train.felt.any()]
+        stands = [self._stands(train, row) for train in felt]
+        first, span, where = felt[0], row // 2, stands[0]
+        return Peak(
+            value,
+            float(self.response.stations[span]) + where.position,
+            where.heading,
+            tuple(map(float, np.diff(first.vehicle.distances))),
+            where.axle,
+            span + int(where.section > 0.0) if row % 2 else -1,
+            first.case,
+            joined([self._placed(train, one, row) for train, one in zip(felt, stands, strict=True)]),
+        )
+
+    def _stands(self, train: Train, row: int) -> _Stand:
+        """Return where a train is worst for a row, from its span's left end."""
+        length = self.response.lengths[row // 2 : row // 2 + 1]
+        maxima = span_maxima(length, train.vehicle.distances, train.felt, train.headings)
+        found = maxima.shear_stands if row % 2 else maxima.moment_stands
+        return _Stand(float(found.position[0]), int(found.heading[0]), int(found.axle[0]), float(found.section[0]))
+
+    def _placed(self, train: Train, one: _Stand, row: int) -> Placement:
+        """Return a train as it stands, the axle that governs exactly on its section."""
+        distances = train.vehicle.distances
+        along = one.section + one.heading * (distances[one.axle] - distances)
+        return standing_train(train, self.response.stations[row // 2] + along, self.impact[row, 0])
+
+    def ordinates(self, row: int, side: int, x: Floats) -> Floats:
+        """Return the row's effect per unit load at each x (A,), at the section where its peak stands.
+
+        Moment at s: x (L - s)/L left of it, s (L - x)/L right of it. Shear inside the left end: 1 - x/L.
+        """
+        span = row // 2
+        length = float(self.response.lengths[span])
+        section = self._stands(self._formation(row, side)[0], row).section
+        along = x - self.response.stations[span]
+        along = np.where(np.abs(along) <= _EDGE * length, 0.0, along)
+        along = np.where(np.abs(along - length) <= _EDGE * length, length, along)
+        if row % 2:
+            line = 1.0 - along / length if section == 0.0 else along / length
+        else:
+            line = np.minimum(along * (length - section), section * (length - along)) / length
+        ordinates: Floats = np.where((along >= 0.0) & (along <= length), line, 0.0)
+        return ordinates
+
+
+_EDGE = 1e-12  # of the span: an axle no further outside an end stands on it
+
+
+def spans_peaks(
+    responses: Sequence[SimpleSpans], crossings: Sequence[tuple[Formation, ...]], impact: Floats
+) -> list[SpanPeaks]:
+    """Return the peaks of stringers that answer alike, each under one crossing's formations (see `swept_parts`)."""
+    lengths, of_span = np.unique(responses[0].lengths, return_inverse=True)
+    trains = dict.fromkeys(train for formations in crossings for formation in formations for train in formation)
+    units = {train: unit_of(train) for train in trains}
+    values = _values(lengths, list(dict.fromkeys(unit for unit, _ in units.values())))
+    peaks = []
+    for response, formations, allowance in zip(responses, crossings, impact, strict=True):
+        felt = np.array([
+            sum(
+                units[train][1] * values[units[train][0]][:, of_span].T.reshape(-1)
+                * (1.0 + allowance[:, 0] if train.dynamic else 1.0)
+                for train in formation
+            )
+            for formation in formations
+        ])  # fmt: skip
+        highest = held(felt.max(axis=0))
+        lowest = held(np.zeros(highest.size))
+        peaks.append(SpanPeaks(response, formations, highest, lowest, allowance, felt.argmax(axis=0)))
+    return peaks
+
+
+def _values(lengths: Floats, units: list[Train]) -> dict[Train, Floats]:
+    """Return moment and shear (2, L) of every train, worked out in one batch."""
+    widest = max(train.felt.size for train in units)
+    distances, felt = np.zeros((2, len(units), widest))
+    for number, train in enumerate(units):
+        distances[number, : train.felt.size] = train.vehicle.distances
+        felt[number, : train.felt.size] = train.felt
+    moment, shear = span_values(lengths, distances, felt)
+    return {train: np.stack((moment[number], shear[number])) for number, train in enumerate(units)}

@@ -1,0 +1,101 @@
+"""From a typed strength to what a level of a method lets a part carry, step by step."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING, Final
+
+from movload.errors import MissingDataError, UnknownNameError, nearest_name
+from movload.rating.factor_sets import capacity_factor, condition_factor
+from movload.strength.strength import Step, Strength
+
+if TYPE_CHECKING:
+    from movload.bridge.strengths import TypedStrength
+    from movload.rating.factor_sets import FactorSet, Level
+
+SENSES: Final = {
+    "axial": ("tension", "compression"),
+    "moment": ("moment", "hogging"),
+    "shear": ("shear", "shear"),
+}
+"""The sense of a row's positive and of its negative side, by the row's kind; other kinds have no strength."""
+UNRATED: Final = Strength(math.nan, ())
+_UNITS: Final = {"tension": "N", "compression": "N", "shear": "N", "moment": "N m", "hogging": "N m"}
+
+
+def resistance(typed: TypedStrength, sense: str, method: FactorSet, level: Level, *, subject: str) -> Strength:
+    """Return what a part may carry in one sense at one level; nan where nothing was typed that the method can use.
+
+    C = max(phi_c phi_s, 0.85) phi Rn for a nominal strength at a strength limit state, with phi_s = 1 in shear;
+    C = phi Rn at other levels; a reduced strength holds phi already and a permitted one its whole margin.
+
+    Parameters
+    ----------
+    subject
+        What errors call the part.
+
+    Raises
+    ------
+    MissingDataError, UnknownNameError
+        The level asks for a condition or a system that nobody has typed, or that the method does not know.
+    """
+    unit = _UNITS[sense]
+    for footing in method.strengths:
+        value = typed.on("permits" if footing == "permitted" else footing).get(sense)
+        if value is None:
+            continue
+        if footing == "permitted":
+            return Strength(value, (Step("R", f"permitted {sense}, as typed", value, unit, "bridge file"),))
+        if footing == "reduced":
+            return Strength(value, (Step("C", f"phi Rn in {sense}, reduced as typed", value, unit, "bridge file"),))
+        return _from_nominal(typed, sense, method, level, subject)
+    return UNRATED
+
+
+def _from_nominal(typed: TypedStrength, sense: str, method: FactorSet, level: Level, subject: str) -> Strength:
+    """Return a nominal strength with the level's factors on it."""
+    nominal, unit = typed.nominal[sense], _UNITS[sense]
+    phi = level.resistance.get(sense, 1.0)
+    steps = [
+        Step("Rn", f"nominal {sense}, as typed", nominal, unit, "bridge file"),
+        Step("phi", f"resistance factor, {sense}", phi, "-", method.title),
+    ]
+    if not level.condition_factors:
+        value = phi * nominal
+        return Strength(value, (*steps, Step("C", "phi Rn", value, unit, method.title)))
+    of_condition = _of_condition(typed, method, subject)
+    of_system = 1.0 if sense == "shear" else _of_system(typed, method, subject)
+    both = capacity_factor(of_condition, of_system)
+    value = both * phi * nominal
+    said = ", loss measured" if typed.measured else ""
+    system = "1 in shear" if sense == "shear" else f'system "{typed.system}"'
+    steps += [
+        Step("phi_c", f'condition "{typed.condition}"{said}', of_condition, "-", method.title),
+        Step("phi_s", system, of_system, "-", method.title),
+        Step("k", "max(phi_c phi_s, 0.85)", both, "-", method.title),
+        Step("C", "k phi Rn", value, unit, method.title),
+    ]
+    return Strength(value, tuple(steps))
+
+
+def _of_condition(typed: TypedStrength, method: FactorSet, subject: str) -> float:
+    """Return phi_c of a part."""
+    if not typed.condition:
+        raise MissingDataError(
+            f'the condition of {subject} is needed ({", ".join(method.condition)}) by "{method.title}"',
+            place="condition",
+        )
+    return condition_factor(method, typed.condition, measured=typed.measured)
+
+
+def _of_system(typed: TypedStrength, method: FactorSet, subject: str) -> float:
+    """Return phi_s of a part."""
+    known = ", ".join(f'"{name}"' for name in method.system)
+    if not typed.system:
+        raise MissingDataError(
+            f'the kind of system of {subject} is needed ({known}) by "{method.title}"', place="system"
+        )
+    if typed.system not in method.system:
+        near = nearest_name(typed.system, method.system)
+        raise UnknownNameError(f'"{typed.system}" of {subject} is not one of {known}', place="system", nearest=near)
+    return method.system[typed.system]

@@ -1,0 +1,143 @@
+"""One rating from its inputs, line by line, to be added again with a pocket calculator."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING
+
+from movload.report.phrases import (
+    factor_text,
+    number_text,
+    place_text,
+    quantity_of,
+    standing_text,
+    unsigned_zero,
+    use_text,
+)
+from movload.report.ratings_report import governed_text
+from movload.report.table import grid
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from rich.console import RenderableType
+
+    from movload.rating.ratings import Rating
+    from movload.review.hand import Explanation, Term
+    from movload.strength.strength import Step
+    from movload.units import Quantity, UnitSystem
+
+
+def explanation_parts(
+    explanation: Explanation, stations: tuple[str, ...], units: UnitSystem
+) -> list[RenderableType | str]:
+    """Return strength, permanent load, live load and RF of one rating, each as its own sum."""
+    rating = explanation.rating
+    return [
+        f"{governed_text(rating)} under {rating.crossing}, level {rating.level}",
+        "",
+        "Strength",
+        "",
+        _steps_table(explanation.strength.steps, rating, units),
+        "",
+        "Permanent load, what it uses of the strength",
+        "",
+        _permanent_table(explanation, units),
+        "",
+        *sum_table(rating, explanation.terms, stations, units, margin=explanation.live_margin),
+    ]
+
+
+def _steps_table(steps: Sequence[Step], rating: Rating, units: UnitSystem) -> RenderableType:
+    """Return a strength equation by equation."""
+    quantity = quantity_of(rating.effect)
+    lines = [
+        [
+            step.symbol,
+            step.equation,
+            _step_text(step, quantity, units),
+            step.source,
+        ]
+        for step in steps
+    ]
+    return grid(["", "equation", "value", "source"], lines, right=[False, False, True, False])
+
+
+def _step_text(step: Step, quantity: Quantity, units: UnitSystem) -> str:
+    """Return a step's value with its unit."""
+    if step.unit == "-":
+        return f"{step.value:.4g}"
+    return f"{number_text(step.value, quantity, units, more=1)} {units.symbol(quantity)}"
+
+
+def _permanent_table(explanation: Explanation, units: UnitSystem) -> RenderableType:
+    """Return permanent load class by class with its margins, and the sum."""
+    quantity = quantity_of(explanation.rating.effect)
+    symbol = units.symbol(quantity)
+    lines = [
+        [
+            term.title, number_text(term.effect, quantity, units, more=1, sign="+"),
+            "pushes" if term.pushed > 0 else "relieves", f"{term.margin:.4g}",
+            number_text(term.used, quantity, units, more=1, sign="+"),
+        ]
+        for term in explanation.permanent
+    ]  # fmt: skip
+    lines.append(["", "", "", "sum", number_text(explanation.used, quantity, units, more=1, sign="+")])
+    heads = ["class", f"effect [{symbol}]", "", "x margin", f"= uses [{symbol}]"]
+    return grid(heads, lines, right=[False, True, False, True, True])
+
+
+def sum_table(
+    rating: Rating, terms: Sequence[Term], stations: tuple[str, ...], units: UnitSystem, *, margin: float
+) -> list[RenderableType | str]:
+    """Return a live effect as its sum and its rating."""
+    force, length, quantity = units.symbol("force"), units.symbol("length"), quantity_of(rating.effect)
+    factored = any(term.factor != 1.0 for term in terms)
+    placed = any(not math.isnan(term.z) for term in terms)
+    abreast = any(term.vehicle > 1 for term in terms)
+    scale = units.factor("length") if quantity == "moment" else 1.0
+    lines = []
+    for term in terms:
+        line = [
+            str(term.axle), number_text(term.x, "length", units, more=1),
+            number_text(term.load, "force", units, more=1), f"{term.share:.4f}", f"{1 + term.impact:.3f}",
+            unsigned_zero(f"{term.ordinate / scale:+.5f}"),
+            number_text(term.effect, quantity, units, more=1, sign="+"),
+        ]  # fmt: skip
+        if factored:
+            line.insert(3, f"{term.factor:.3f}")
+        if placed:
+            line.insert(2, number_text(term.z, "length", units, more=1, sign="+"))
+        if abreast:
+            line.insert(0, str(term.vehicle))
+        lines.append(line)
+    heads = ["axle", f"x [{length}]", f"load [{force}]", "x share", "x (1 + I)"]
+    heads += ["x ordinate" if quantity != "moment" else f"x ordinate [{length}]", f"= [{units.symbol(quantity)}]"]
+    if factored:
+        heads.insert(3, "x presence")
+    if placed:
+        heads.insert(2, f"z [{length}]")
+    if abreast:
+        heads.insert(0, "vehicle")
+    lines.append([""] * (len(heads) - 2) + ["sum", number_text(rating.live, quantity, units, more=1, sign="+")])
+    peak = rating.peak
+    where = ", ".join(filter(None, (standing_text(peak, stations), place_text(peak, units))))
+    title = f"{governed_text(rating)} under {rating.crossing}: {where}"
+    return [title, "", grid(heads, lines, right=[True] * len(heads)), "", _equation(rating, units, margin=margin)]
+
+
+def _equation(rating: Rating, units: UnitSystem, *, margin: float) -> str:
+    """Return RF = (R - a D) / (b L) with its numbers, what permanent load uses with its margins."""
+    quantity = quantity_of(rating.effect)
+    strength, live = (number_text(value, quantity, units, more=1) for value in (rating.strength, abs(rating.live)))
+    pushed = rating.permanent if rating.side == 0 else -rating.permanent
+    factored = "" if math.isclose(rating.pushed, pushed, rel_tol=1e-12) else "factored "
+    sign = "-" if rating.side == 0 else "+"
+    used = rating.pushed if rating.side == 0 else -rating.pushed
+    permanent = number_text(used, quantity, units, more=1, sign="+")
+    below = f"live {live}" if margin == 1 else f"({margin:g} x live {live})"
+    why = use_text(rating)
+    return (
+        f"RF = (strength {strength} {sign} {factored}permanent ({permanent})) / {below} "
+        f"{units.symbol(quantity)} = {factor_text(rating.factor)}{f': {why}' if why else ''}"
+    )
