@@ -21,7 +21,8 @@ if TYPE_CHECKING:
     from movload.peaks.peaks import Peak, Peaks
     from movload.peaks.sweep import effects_with_front_at, sweep
     from movload.rating.judge import judge, rate
-    from movload.rating.ratings import Rating, Ratings
+    from movload.rating.rating import Rating
+    from movload.rating.ratings import Ratings
     from movload.rating.solved import SolvedBridge, solve
     from movload.statics.influence import InfluenceLines, influence_lines
     from movload.statics.state import TrussState, state_under
@@ -40,7 +41,7 @@ _HOMES = {
     "Member": "movload.bridge.truss",
     "Peak": "movload.peaks.peaks",
     "Peaks": "movload.peaks.peaks",
-    "Rating": "movload.rating.ratings",
+    "Rating": "movload.rating.rating",
     "Ratings": "movload.rating.ratings",
     "SolvedBridge": "movload.rating.solved",
     "Support": "movload.bridge.truss",

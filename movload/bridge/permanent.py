@@ -10,7 +10,8 @@ from movload.bridge.deck import MOST_SHARE
 from movload.errors import InputError, MissingDataError, UnknownNameError, nearest_name
 from movload.units import GRAVITY
 
-CLASSES: Final = ("components", "surfacing", "other")
+REMOVABLE: Final = "removable surfacing"
+CLASSES: Final = ("components", "surfacing", REMOVABLE, "other")
 """Classes whose margins a method sets apart: what is part of the bridge, what lies on it, and the rest."""
 
 

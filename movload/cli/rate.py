@@ -24,7 +24,8 @@ if TYPE_CHECKING:
     from collections.abc import Callable
 
     from movload.bridge.bridge import Bridge
-    from movload.rating.ratings import Rating, Ratings
+    from movload.rating.rating import Rating
+    from movload.rating.ratings import Ratings
     from movload.traffic.crossing import Crossing
 
 Method = Annotated[

@@ -5,6 +5,7 @@ from __future__ import annotations
 from pathlib import Path
 from typing import TYPE_CHECKING, Final
 
+from movload.bridge.permanent import REMOVABLE
 from movload.bridge.strengths import SENSES
 from movload.errors import InputError, MovloadError, UnknownNameError, nearest_name
 from movload.files.library import folded, is_file_name
@@ -153,7 +154,7 @@ def _check_level(table: LevelTable, place: str) -> None:
     _known(table.resistance, SENSES, f"{place}.resistance")
     _known([table.posting], _POSTING, f"{place}.posting")
     _known(table.permanent, PERMANENT_CLASSES, f"{place}.permanent")
-    _named(table.permanent, PERMANENT_CLASSES, f"{place}.permanent")
+    _named(table.permanent, [name for name in PERMANENT_CLASSES if name != REMOVABLE], f"{place}.permanent")
     for name, (pushing, relieving) in table.permanent.items():
         if relieving > pushing:
             raise InputError(

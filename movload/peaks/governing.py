@@ -15,7 +15,8 @@ if TYPE_CHECKING:
 
     from movload.arrays import Floats, Ints
     from movload.statics.part import AtStations
-    from movload.traffic.crossing import Formation, Train
+    from movload.traffic.crossing import Train
+    from movload.traffic.formations import Formation
 
 _TIE: Final = 1e-12  # of the row's largest value: positions whose effects differ by less are equally bad
 _SAME_PLACE: Final = 9  # decimals of a metre to which positions count as equal when ties are broken

@@ -9,7 +9,8 @@ import numpy as np
 
 from movload.arrays import Floats, held
 from movload.peaks.extremes import unit_of
-from movload.peaks.peaks import NO_PEAK, Peak, standing_train
+from movload.peaks.part_peaks import standing_train
+from movload.peaks.peaks import NO_PEAK, Peak
 from movload.peaks.placement import Placement, joined
 from movload.peaks.span_maxima import span_maxima, span_values
 
@@ -18,7 +19,8 @@ if TYPE_CHECKING:
 
     from movload.statics.part import Effect
     from movload.statics.spans import SimpleSpans
-    from movload.traffic.crossing import Formation, Train
+    from movload.traffic.crossing import Train
+    from movload.traffic.formations import Formation
     from movload.traffic.vehicle import Vehicle
 
 

@@ -9,7 +9,8 @@ import numpy as np
 
 from movload.arrays import Floats, held
 from movload.peaks.governing import formation_extremes
-from movload.peaks.peaks import PartPeaks, Peaks, Swept, effects_at, stacked
+from movload.peaks.part_peaks import PartPeaks
+from movload.peaks.peaks import Peaks, Swept, effects_at, stacked
 from movload.peaks.span_peaks import spans_peaks
 from movload.peaks.wheel_peaks import wheels_peaks
 from movload.statics.spans import PlankSpan, SimpleSpans
@@ -21,7 +22,7 @@ if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from movload.statics.part import AtStations, Response
-    from movload.traffic.crossing import Formation
+    from movload.traffic.formations import Formation
 
 
 @overload

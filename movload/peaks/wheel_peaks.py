@@ -16,7 +16,8 @@ if TYPE_CHECKING:
 
     from movload.statics.part import Effect
     from movload.statics.spans import PlankSpan
-    from movload.traffic.crossing import Formation, Train
+    from movload.traffic.crossing import Train
+    from movload.traffic.formations import Formation
     from movload.traffic.vehicle import Vehicle
 
 

@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
+from movload.bridge.permanent import REMOVABLE
 from movload.errors import InputError, UnknownNameError, nearest_name
 
 if TYPE_CHECKING:
@@ -86,9 +87,18 @@ class Level:
         return not self.kinds or kind in self.kinds
 
     def permanent_margins(self, classes: Sequence[str]) -> Floats:
-        """Return the margins (K, 2), pushing and relieving, of permanent classes."""
-        both = [self.by_class.get(name, (self.permanent, self.relieving)) for name in classes]
+        """Return the margins (K, 2), pushing and relieving, of permanent classes.
+
+        Surfacing that may be removed pushes as other surfacing does and relieves nothing.
+        """
+        both = [self._margins(name) for name in classes]
         return np.array(both, dtype=np.float64).reshape(-1, 2)
+
+    def _margins(self, name: str) -> tuple[float, float]:
+        """Return the margins of one class."""
+        if name == REMOVABLE and name not in self.by_class:
+            return self._margins("surfacing")[0], 0.0
+        return self.by_class.get(name, (self.permanent, self.relieving))
 
     def live_margin(self, kind: str, traffic: float | None = None) -> float:
         """Return the margin on a loading of a kind; unknown traffic (None) takes the greatest."""

@@ -16,7 +16,8 @@ from movload.rating.factor_sets import PERMITTED, FactorSet
 from movload.rating.kernel import SIGNS, pushed_by_permanent, rating_factors
 from movload.rating.ratings import Ratings
 from movload.rating.solved import SolvedBridge, solve
-from movload.traffic.crossing import Crossing, formations_on
+from movload.traffic.crossing import Crossing
+from movload.traffic.formations import formations_on
 from movload.traffic.loading import Loading
 from movload.traffic.vehicle import Vehicle
 

@@ -1,8 +1,8 @@
 """The one rating equation, as arrays.
 
-RF = (R - sum of a D, s as pushed) / (b L), with s = +1 for tension and -1 for compression, D the permanent effect of
-each class (tension positive), a its margin and b the live one, and L the live effect's magnitude in that sense, impact
-included.
+RF = (R - sum of a D - F) / (b L), each as it pushes in the rated sense: D the permanent effect of each class and a its
+margin, F what live load that is held fixed takes (other traffic, its own margin and impact on it), b the margin on the
+live effect L that scales, impact included. b L may be a sum over loads with margins of their own.
 """
 
 from __future__ import annotations
@@ -34,7 +34,7 @@ def pushed_by_permanent(permanent: Floats, margins: Floats) -> Floats:
     return used
 
 
-def rating_factors(strength: Floats, pushed: Floats, live: Floats) -> Floats:
+def rating_factors(strength: Floats, pushed: Floats, live: Floats, fixed: Floats | float = 0.0) -> Floats:
     """Return RF, shape of ``live``.
 
     0 where permanent load alone uses all strength, even where the live effect is zero; infinite where there is
@@ -49,11 +49,13 @@ def rating_factors(strength: Floats, pushed: Floats, live: Floats) -> Floats:
         What permanent load uses of it (R, 2) [N], margins included (see `pushed_by_permanent`).
     live
         b L (..., R, 2) [N], magnitudes with impact and margin; leading axes are crossings.
+    fixed
+        F (..., R, 2) [N], what live load that does not scale takes; it never relieves.
     """
-    spare = strength - pushed
+    spare = strength - pushed - np.maximum(fixed, 0.0)
     felt = live > 0
     factors = np.full(live.shape, np.inf)
     np.divide(spare, live, out=factors, where=felt)
-    factors[(spare <= 0) & (felt | (pushed > 0))] = 0.0
+    factors[(spare <= 0) & (felt | (pushed + np.maximum(fixed, 0.0) > 0))] = 0.0
     factors[..., np.isnan(spare)] = np.nan
     return held(factors)

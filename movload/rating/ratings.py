@@ -11,12 +11,13 @@ import numpy as np
 
 from movload.errors import MissingDataError
 from movload.rating.kernel import SIGNS, pushed_by_permanent
+from movload.rating.rating import DIGITS, Coverage, Rating, sense_of, worst_first
 from movload.rating.resistance import SENSES
 
 if TYPE_CHECKING:
     from movload.arrays import Bools, Floats
     from movload.errors import Note
-    from movload.peaks.peaks import Peak, Peaks
+    from movload.peaks.peaks import Peaks
     from movload.rating.solved import SolvedBridge
     from movload.statics.part import Effect
     from movload.traffic.crossing import Crossing
@@ -25,109 +26,6 @@ EITHER: Final = "either truss"
 _TRUSSES: Final = ("left truss", "right truss")
 _SAME: Final = 1e-9  # relative: two trusses alike but for round-off
 _NO_PULL: Final = 1e-9  # of the largest permanent effect: an upward pull below it is round-off
-_DIGITS: Final = 10  # to which ratings are compared: bars alike but for round-off keep the order of their rows
-
-
-@dataclass(frozen=True, eq=False)
-class Rating:
-    """One row under one crossing at one level.
-
-    Attributes
-    ----------
-    effect, part, sense
-        What, of which part as a person says it ("either truss" where both are alike), and in which sense.
-    crossing, number, level
-        The crossing's title and number, and the level's title.
-    factor
-        RF [-]; 0 when permanent load alone uses the strength, infinite when there is no live effect.
-    strength
-        R, magnitude [N].
-    permanent
-        D summed over classes [N], tension positive.
-    live
-        L with impact [N], tension positive.
-    impact
-        I [-].
-    pushed
-        What permanent load uses of R [N], the level's margins included; negative relieves.
-    live_factor
-        The level's margin on L [-].
-    peaks, row, side
-        Where the placement is found.
-    """
-
-    effect: Effect
-    part: str
-    sense: str
-    crossing: str
-    number: int
-    level: str
-    factor: float
-    strength: float
-    permanent: float
-    live: float
-    impact: float
-    pushed: float
-    live_factor: float
-    peaks: Peaks
-    row: int
-    side: int
-
-    @cached_property
-    def peak(self) -> Peak:
-        """The live peak with its placement."""
-        return self.peaks.peak(self.row, self.side)
-
-    @cached_property
-    def safe_weight(self) -> float:
-        """RF x the weight of the vehicle that governs [N]: what it could weigh, its axles in the same proportions."""
-        return self.factor * self.gross
-
-    @property
-    def gross(self) -> float:
-        """Weight of the vehicle that governs [N]."""
-        return self.peaks.vehicle(self.row, self.side).gross
-
-    @property
-    def abreast(self) -> int:
-        """How many vehicles stand side by side then; 0 when off the bridge."""
-        vehicle = self.peak.placement.vehicle
-        return int(vehicle.max(initial=-1)) + 1
-
-    @property
-    def permanent_use(self) -> float:
-        """Part of the strength that permanent load alone uses, the level's margin on it included [-].
-
-        0 when permanent load relieves; infinite when it acts and there is no strength at all.
-        """
-        if self.pushed <= 0:
-            return 0.0
-        return self.pushed / self.strength if self.strength > 0 else float("inf")
-
-
-@dataclass(frozen=True, slots=True, eq=False)
-class Coverage:
-    """What an answer covers.
-
-    A member feels a sense when a crossing's live effect or the permanent effect has it; only then is a strength needed.
-
-    Attributes
-    ----------
-    full, partly, none
-        Members rated in every sense they feel, in some of them, and in none.
-    not_rated
-        Parts of the bridge that no row stands for.
-    """
-
-    full: tuple[str, ...]
-    partly: tuple[str, ...]
-    none: tuple[str, ...]
-    not_rated: tuple[str, ...]
-
-    @property
-    def complete(self) -> bool:
-        """Whether every member is rated in every sense it feels (what no row stands for is said, not counted)."""
-        return not (self.partly or self.none)
 
 
 @dataclass(frozen=True, eq=False)
@@ -229,7 +127,7 @@ class Ratings:
 
         A row whose strength permanent load alone uses comes before all others, the most overused first.
         """
-        return sorted(self._among(crossing, np.inf, level), key=_order)
+        return sorted(self._among(crossing, np.inf, level), key=worst_first)
 
     def of_row(self, crossing: int, row: int) -> list[Rating]:
         """Return a row's ratings under a crossing, at every level and in every sense that has a strength."""
@@ -247,8 +145,8 @@ class Ratings:
         factors = self.factor[self._asked(level), crossing]
         if np.isnan(factors).all():
             raise MissingDataError("no row has a strength, so nothing can be rated", place=self.solved.title)
-        as_bad = np.nanmin(factors) * (1.0 + 10.0 ** (1 - _DIGITS))
-        return min(self._among(crossing, as_bad, level), key=_order)
+        as_bad = np.nanmin(factors) * (1.0 + 10.0 ** (1 - DIGITS))
+        return min(self._among(crossing, as_bad, level), key=worst_first)
 
     def _asked(self, level: int | None) -> list[int]:
         """Return the numbers of the levels that are asked for."""
@@ -305,7 +203,7 @@ class Ratings:
     @property
     def worst(self) -> Rating:
         """Return the worst row of the worst crossing; of equally bad crossings the first."""
-        return min((self.governing(number) for number in range(len(self.crossings))), key=_order)
+        return min((self.governing(number) for number in range(len(self.crossings))), key=worst_first)
 
     @property
     def worst_member(self) -> Rating:
@@ -313,21 +211,10 @@ class Ratings:
         members = [
             one for number in range(len(self.crossings)) for one in self.rows(number) if one.effect.kind == "axial"
         ]
-        return min(members, key=_order) if members else self.worst
+        return min(members, key=worst_first) if members else self.worst
 
     @property
     def passes(self) -> bool:
         """Whether every unrounded rating is 1 or more, every member rated in what it feels, and no bearing lifted."""
         rated = self.factor[~np.isnan(self.factor)]
         return bool((rated >= 1.0).all()) and self.coverage.complete and not self.uplifts
-
-
-def sense_of(effect: Effect, side: int) -> str:
-    """Return what a row's positive (0) or negative (1) side is called."""
-    return SENSES.get(effect.kind, ("positive", "negative"))[side]
-
-
-def _order(rating: Rating) -> tuple[bool, float, float]:
-    """Return what ratings are sorted by: those below 1 first, then the worst, then the most used by permanent load."""
-    factor, use = (float(f"{value:.{_DIGITS}g}") for value in (rating.factor, rating.permanent_use))
-    return (rating.factor >= 1.0, factor, -use)

@@ -10,9 +10,9 @@ import numpy as np
 
 from movload.arrays import Floats, held
 from movload.bridge.across import Across
-from movload.errors import Note
 from movload.rating.factor_sets import PERMITTED, FactorSet
 from movload.rating.impact_table import ImpactTable, impact_table
+from movload.rating.notes import bridge_notes
 from movload.rating.required import require_data
 from movload.rating.resistance import SENSES, UNRATED, resistance
 from movload.statics.floor import floor_parts, truss_lines
@@ -27,6 +27,7 @@ if TYPE_CHECKING:
     from movload.bridge.bridge import Bridge
     from movload.bridge.roadway import Roadway
     from movload.bridge.strengths import TypedStrength
+    from movload.errors import Note
     from movload.rating.factor_sets import Level
     from movload.strength.strength import Strength
     from movload.units import UnitSystem
@@ -128,7 +129,7 @@ def solve(bridge: Bridge, method: FactorSet = PERMITTED) -> SolvedBridge:
         parts,
         permanent_effects(bridge, solver, parts, permanent),
         held(np.array([one.value for one in strengths])[which]),
-        _notes(bridge, method),
+        bridge_notes(bridge, method),
         bridge.sources,
         classes=PERMANENT_CLASSES,
         method=method,
@@ -192,55 +193,3 @@ def _not_rated(bridge: Bridge) -> tuple[str, ...]:
     }
     absent = tuple(name for name, part in named.items() if part is None)
     return ("floor", "deck") if len(absent) == len(named) else (*absent, "deck") if floor.planks is None else absent
-
-
-def _notes(bridge: Bridge, method: FactorSet) -> tuple[Note, ...]:
-    """Return what a reader of any rating of this bridge must know."""
-    truss, supports, deck = bridge.truss, bridge.truss.supports, bridge.deck
-    texts: dict[str, str] = {}
-    if deck.truss_spacing is None:
-        shares = (
-            sorted({item.share for item in bridge.permanent.items if item.share is not None})
-            if bridge.permanent
-            else []
-        )
-        of_deck = " and ".join(f"{share:g}" for share in shares) or "0"
-        texts["shares-typed"] = _SHARES.format(share=deck.truss_share, permanent=of_deck)
-    if bridge.permanent is not None and bridge.permanent.detail_allowance == 0.0:
-        texts["detail-allowance"] = (
-            "Members weigh area x density x length: nothing is added for lacing, rivets or plates."
-        )
-    if truss.redundancy > 0:
-        texts["redundant"] = _REDUNDANT.format(count=truss.redundancy)
-    if any(support.settlement or support.movement for support in supports):
-        texts["settlement"] = "Settlements and imposed movements of bearings are in the permanent effects."
-    if any(typed.permits.get("compression", 1.0) == 0.0 for typed in bridge.strengths.values()):
-        texts["no-compression"] = (
-            "Some bars permit no compression: where live load pushes one a counter must act, and none is modelled."
-        )
-    if deck.bears_on == "chord":
-        texts["chord-bending"] = f"The deck bears on the chord between joints; its bending: {deck.chord_bending}"
-    if bridge.floor.stringers is not None:
-        texts["stringer-permanent"] = (
-            "A stringer's permanent moment is that at midspan, added to the live one wherever that is greatest."
-        )
-    notes = [Note(code, "truss", text) for code, text in texts.items()]
-    if method.from_memory:
-        some = ", ".join(method.from_memory[:4]) + (" ..." if len(method.from_memory) > 4 else "")
-        notes.append(
-            Note(
-                "factors-from-memory", method.title,
-                f"factors from memory, to be checked against the edition in force: {some}", method.source,
-            )
-        )  # fmt: skip
-    return tuple(notes)
-
-
-_SHARES = (
-    "One truss is rated with typed shares: {share:g} of a whole axle and {permanent} of the deck's weight reach it, "
-    "wherever the vehicle keeps across the deck."
-)
-_REDUNDANT = (
-    "{count} member(s) or reaction(s) beyond what equilibrium can find: forces depend on the areas and on a fit "
-    "without initial stress."
-)

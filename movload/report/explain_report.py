@@ -22,7 +22,7 @@ if TYPE_CHECKING:
 
     from rich.console import RenderableType
 
-    from movload.rating.ratings import Rating
+    from movload.rating.rating import Rating
     from movload.review.hand import Explanation, Term
     from movload.strength.strength import Step
     from movload.units import Quantity, UnitSystem

@@ -11,7 +11,7 @@ if TYPE_CHECKING:
     from collections.abc import Mapping
 
     from movload.peaks.peaks import Peak
-    from movload.rating.ratings import Coverage, Rating
+    from movload.rating.rating import Coverage, Rating
     from movload.statics.part import Effect
     from movload.traffic.crossing import Crossing
     from movload.units import Quantity, UnitSystem

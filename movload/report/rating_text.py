@@ -20,14 +20,15 @@ from movload.report.phrases import (
 from movload.report.ratings_report import detail, governed_text, summary
 from movload.report.table import grid
 from movload.review.hand import explained, terms
-from movload.traffic.crossing import fitting
+from movload.traffic.formations import fitting
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from rich.console import RenderableType
 
-    from movload.rating.ratings import Rating, Ratings
+    from movload.rating.rating import Rating
+    from movload.rating.ratings import Ratings
 
 _SHOWN: Final = 8  # rows of a single crossing that are printed without --all
 

@@ -21,14 +21,15 @@ from movload.report.phrases import (
 )
 from movload.report.sweep_report import placement_json
 from movload.report.table import grid, table_of
-from movload.traffic.crossing import fitting
+from movload.traffic.formations import fitting
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from rich.console import RenderableType
 
-    from movload.rating.ratings import Rating, Ratings
+    from movload.rating.rating import Rating
+    from movload.rating.ratings import Ratings
     from movload.units import UnitSystem
 
 FORMAT: Final = "movload.ratings/1"

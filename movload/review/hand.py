@@ -14,7 +14,8 @@ from movload.rating.kernel import SIGNS
 
 if TYPE_CHECKING:
     from movload.peaks.peaks import Peaks
-    from movload.rating.ratings import Rating, Ratings
+    from movload.rating.rating import Rating
+    from movload.rating.ratings import Ratings
     from movload.strength.strength import Strength
 
 

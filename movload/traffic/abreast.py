@@ -106,10 +106,9 @@ def candidate_places(
 
 @lru_cache(maxsize=1024)  # every vehicle asks every part
 def _bends_of(across: Across) -> tuple[float, ...]:
-    """Return the z of a line's bends and ends [m]."""
-    if across.z.size == 1:
-        return ()
-    return tuple(across.z[_bends(across.z, across.ordinate[:, None])].tolist())
+    """Return the z of a line's bends [m]; beyond its ends nothing is known and no wheel stands."""
+    bends = _bends(across.z, across.ordinate[:, None])[1:-1]
+    return tuple(across.z[1:-1][bends].tolist())
 
 
 def worst_groups(shares: Floats, z: Floats, apart: float, count: int) -> list[tuple[int, ...]]:

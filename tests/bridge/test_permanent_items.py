@@ -18,7 +18,7 @@ EXACT = 1e-14  # a handful of products
 
 
 def test_the_classes_are_these_in_this_order() -> None:
-    assert CLASSES == ("components", "surfacing", "other")
+    assert CLASSES == ("components", "surfacing", "removable surfacing", "other")
 
 
 def test_a_layer_weighs_thickness_density_and_gravity_over_its_width() -> None:
@@ -64,10 +64,10 @@ REFUSED: dict[str, tuple[dict[str, Any], type[InputError], str]] = {
     "class mistyped": (
         {"kind": "surfaceing"},
         UnknownNameError,
-        'kind: "surfaceing" is not one of components, surfacing, other (nearest: "surfacing")',
+        'kind: "surfaceing" is not one of components, surfacing, removable surfacing, other (nearest: "surfacing")',
     ),
     "class of another world": (
-        {"kind": "wind"}, UnknownNameError, 'kind: "wind" is not one of components, surfacing, other'
+        {"kind": "wind"}, UnknownNameError, 'kind: "wind" is not one of components, surfacing, removable surfacing, other'
     ),
     "line below 0": ({"line": -1.5}, InputError, "line: must be 0 or more, got -1.5 N/m"),
     "line without end": ({"line": math.inf}, InputError, "line: must be a finite number, got inf N/m"),

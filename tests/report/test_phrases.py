@@ -12,7 +12,7 @@ from rating.bridges import CART, brook, one_bar, part_of
 
 from movload import Vehicle, influence_lines, judge, rate, sweep
 from movload.bridge.across import Across
-from movload.rating.ratings import Coverage
+from movload.rating.rating import Coverage
 from movload.report.phrases import (
     CAUTIONS,
     coverage_text,

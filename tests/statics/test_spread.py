@@ -37,7 +37,7 @@ SPAN = sum(PANELS)
 POINTS = bottom(4)
 EDGES = (-0.5 * SPACING, 0.5 * SPACING)
 LEFT, RIGHT = truss_lines(SPACING, EDGES)
-COMPONENTS, SURFACING, OTHER = range(3)
+COMPONENTS, SURFACING, OTHER = (CLASSES.index(kind) for kind in ("components", "surfacing", "other"))
 EXACT = 1e-13  # a few sums and products of numbers near 1
 SOLVED = 1e-12  # and a small truss's solution
 WHERE: dict[str, Any] = {"low": -1.6, "high": 1.6}
@@ -194,7 +194,7 @@ def test_classes_stay_apart() -> None:
 
 def test_nothing_on_the_bridge_does_nothing() -> None:
     part = truss_part()
-    assert_array_equal(effects(part), np.zeros((3, len(part.response.effects))))
+    assert_array_equal(effects(part), np.zeros((len(CLASSES), len(part.response.effects))))
 
 
 def test_a_panel_point_that_is_not_there_is_named_with_the_nearest() -> None:

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-import time
-
 import numpy as np
 import pytest
 from numpy.testing import assert_allclose, assert_array_equal
@@ -126,12 +124,10 @@ def test_two_abreast_against_the_near_kerb() -> None:
 
 
 def test_two_abreast_may_pull_both_ways() -> None:
-    """Beside OVERHANG, 3 m apart: both on the left (0.536 + 1.179), one on each side, and both on the right.
+    """3 m apart on OVERHANG, 1/2 + z/4.667: both near the left end, or one at each end; no others.
 
-    With z/4.667 + 1/2 the shares of (0.167, 3.167) m are 0.536 and 1.179, together 1.714; of (-2.667, 3.167) m they are
-    -0.071 and 1.179; of (-3.167, -0.167) m -0.179 and 0.464. Only the second and third have something negative, the
-    first most of what is positive. So has any pair between, more of one for less of the other, but only with somebody
-    on an end.
+    (0.167, 3.167) m share 0.536 + 1.179 = 1.714. (-3.167, 3.167) m share 1.179, less, and -0.179, which lifts.
+    (-3.167, -0.167) m share 0.464 and -0.179: no more of either.
     """
     pairs = worst(OVERHANG, (-3.167, 3.167), [0.6], apart=3.0, count=2)
     assert_allclose(pairs, [(-3.167, 3.167), (0.167, 3.167)], atol=ROUND_OFF)
@@ -152,7 +148,7 @@ def test_vehicles_that_fit_exactly_stand_in_one_way(gauges: list[float]) -> None
 
 
 def test_axles_of_two_gauges_are_worst_at_corners_of_what_they_share() -> None:
-    """Shares (1, 0), (0, 1) and (0.6, 0.6) each may be the worst; (0.4, 0.4) lies within, (0.5, 0) between 0 and one."""
+    """(1, 0), (0, 1) and (0.6, 0.6) may each be the worst; (0.4, 0.4) and (0.5, 0) lie between them and 0."""
     shares = np.array([[1.0, 0.0], [0.5, 0.0], [0.4, 0.4], [0.6, 0.6], [0.0, 1.0], [0.6, 0.6]])
     assert worst_groups(shares, np.arange(6.0), 1.0, 1) == [(0,), (3,), (4,)]
 
@@ -176,14 +172,13 @@ def test_a_vehicle_that_loads_nothing_may_stand_anywhere() -> None:
 
 
 def test_many_abreast_on_a_wide_floor_stay_few_sets() -> None:
-    """Sixteen stringers, axles of two gauges, four abreast: of some million sets that fit, those that may be worst.
+    """Sixteen stringers, axles of two gauges, four abreast: of the millions of sets that keep apart a handful.
 
-    Looking at all of them took minutes; half a second is a hundred times what it takes.
+    One vehicle or two reach the stringer, and where the others stand does not matter.
     """
     stringers = np.linspace(-7.1, 7.1, 16)
     line = Across(stringers, (np.arange(16) == 5).astype(np.float64))
     roadway = Roadway(-7.0, 7.0, clearance=0.3)
-    start = time.perf_counter()
     sets = worst(line, roadway.room(2.1), [2.1, 1.86], apart=3.3, count=roadway.abreast(2.1))
-    assert time.perf_counter() - start < 0.5
-    assert 1 <= len(sets) <= 20
+    assert 4 <= len(sets) <= 10
+    assert {len(group) for group in sets} == {4}

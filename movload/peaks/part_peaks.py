@@ -1,0 +1,136 @@
+"""The peaks of one part whose worst positions stand with an axle on a station, and on request each one's placement."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+from functools import cached_property
+from typing import TYPE_CHECKING, Final
+
+import numpy as np
+
+from movload.peaks.candidates import LOST
+from movload.peaks.governing import governing_formation, worst_candidates
+from movload.peaks.peaks import NO_PEAK, Peak
+from movload.peaks.placement import Placement, edge, joined, on_the_ends, panel_loads
+
+if TYPE_CHECKING:
+    from movload.arrays import Floats, Ints
+    from movload.statics.part import AtStations, Effect
+    from movload.traffic.crossing import Train
+    from movload.traffic.formations import Formation
+    from movload.traffic.vehicle import Vehicle
+
+_ROUNDINGS: Final = 16  # last places by which summed spacings may be off
+
+
+@dataclass(frozen=True, eq=False)
+class PartPeaks:
+    """The peaks of one part on straight lines, under the formations of one crossing.
+
+    Attributes
+    ----------
+    response
+        How the part answers.
+    formations
+        The formations swept; their envelope gives the peaks.
+    highest, lowest
+        (R,) with impact, both including 0.
+    impact
+        (R, 2) dynamic allowance on the highest and the lowest.
+    """
+
+    response: AtStations
+    formations: tuple[Formation, ...]
+    highest: Floats
+    lowest: Floats
+    impact: Floats
+
+    @property
+    def effects(self) -> tuple[Effect, ...]:
+        """The rows (R)."""
+        return self.response.effects
+
+    @cached_property
+    def _governing(self) -> Ints:
+        """Formation of every row's highest and lowest (2, R)."""
+        return governing_formation(self.response, self.formations, self.impact)
+
+    def formation(self, row: int, side: int) -> Formation:
+        """Return the formation that gives one row's highest (side 0) or lowest (side 1) peak."""
+        return self.formations[int(self._governing[side, row]) if len(self.formations) > 1 else 0]
+
+    def vehicle(self, row: int, side: int) -> Vehicle:
+        """Return the vehicle that gives it (abreast they are all alike)."""
+        return self.formation(row, side)[0].vehicle
+
+    def ordinates(self, row: int, side: int, x: Floats) -> Floats:  # noqa: ARG002  # the line serves both sides
+        """Return the row's effect per unit load at each x (A,)."""
+        unit = panel_loads(self.response.stations, x[:, None], np.ones(1))
+        ordinates: Floats = self.response.under(unit.T)[row]
+        return ordinates
+
+    def peak(self, row: int, side: int) -> Peak:
+        """Return one row's highest (side 0) or lowest (side 1) peak."""
+        value = float((self.highest, self.lowest)[side][row])
+        if value == 0.0:
+            return NO_PEAK
+        abreast = [self._standing(train, row, side) for train in self.formation(row, side)]
+        felt = [one for one in abreast if one.value != 0.0]
+        return replace(felt[0], value=value, placement=joined([one.placement for one in felt]))
+
+    def _standing(self, train: Train, row: int, side: int) -> Peak:
+        """Return one train where it is worst for a row, impact left out of the value; nothing where it is not felt."""
+        candidates, worst = worst_candidates(self.response, train)
+        stop, run = divmod(int(worst[side, row]), candidates.runs.train.size)
+        stations, count = self.response.stations, self.response.stations.size
+        x = on_the_ends(stations, candidates.standing(run, run + 1)[stop])
+        heading = int(candidates.runs.heading[run])
+        placement = standing_train(train, x, self.impact[row, side])
+        static = float(self.ordinates(row, side, x) @ train.felt)
+        if static * (1, -1)[side] <= 0.0:
+            return NO_PEAK
+        return Peak(
+            static,
+            _front(stations, x, heading * train.vehicle.distances, lost=stop - count),
+            heading,
+            tuple(map(float, np.diff(train.vehicle.distances))),
+            int(candidates.runs.axle[run]),
+            stop if stop < count else (0, count - 1)[stop - count],
+            train.case,
+            placement,
+            lost=stop >= count,
+        )
+
+
+def standing_train(train: Train, x: Floats, impact: float) -> Placement:
+    """Return a train's axles standing at x (A,) [m] with an impact that counts where the train is dynamic."""
+    axles = np.ones(x.size)
+    return Placement(
+        x, train.vehicle.loads, train.shares, (impact if train.dynamic else 0.0) * axles,
+        train.factor * axles, train.z * axles, np.zeros(x.size, dtype=np.intp),
+    )  # fmt: skip
+
+
+def _front(stations: Floats, x: Floats, behind: Floats, *, lost: int) -> float:
+    """Return the front axle's x, so that every axle found from it again is on the same side of an end station.
+
+    Subtracting a distance again may round an axle that stands on an end station to just outside it.
+
+    Parameters
+    ----------
+    x, behind
+        Where the axles stand and heading times their distances (A,) [m].
+    lost
+        0 when an axle is just outside the first station, 1 the last, negative when none is.
+    """
+    front = float(x[0])
+    if lost >= 0:
+        return front + (1.0 if lost else -1.0) * LOST * edge(stations)
+    on_first, on_last = x == stations[0], x == stations[-1]
+    for _ in range(_ROUNDINGS):
+        again = front - behind
+        short, beyond = (again[on_first] < stations[0]).any(), (again[on_last] > stations[-1]).any()
+        if short == beyond:  # neither; or both, when a vehicle is exactly as long as the deck but for round-off
+            break
+        front = float(np.nextafter(front, np.inf if short else -np.inf))
+    return front

@@ -1,0 +1,198 @@
+"""The formations of a crossing on one part: vehicles abreast, in the few places across that may be worst for it."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import lru_cache
+from typing import TYPE_CHECKING, TypeAlias
+
+import numpy as np
+
+from movload.arrays import Floats, Ints, held
+from movload.bridge.roadway import span_of_place
+from movload.errors import InputError, MissingDataError
+from movload.traffic.abreast import candidate_places, shares_at, worst_groups
+from movload.traffic.crossing import ANYWHERE, MOST_ABREAST, TYPED_SHARE, Train, axles_only, even_train
+
+if TYPE_CHECKING:
+    from movload.bridge.across import Across
+    from movload.bridge.roadway import Roadway
+    from movload.traffic.crossing import Crossing
+    from movload.traffic.loading import Case
+    from movload.traffic.vehicle import Vehicle
+
+Formation: TypeAlias = "tuple[Train, ...]"
+"""Vehicles abreast, each where it is worst along the bridge: their effects add."""
+
+
+def formations_on(
+    across: Across, crossing: Crossing, roadway: Roadway | None = None, presence: tuple[float, ...] = (1.0,)
+) -> tuple[Formation, ...]:
+    """Return the formations of a crossing that may be the worst for a part, all cases of its loading.
+
+    Parameters
+    ----------
+    across
+        The part's share of a wheel by its place across.
+    roadway
+        The kerbs; None where a share is typed.
+    presence
+        Multiple presence [-] by number abreast: one, two ...; the last repeats.
+
+    Raises
+    ------
+    InputError
+        The vehicle does not fit the place, or what it is made of cannot be swept yet.
+    MissingDataError
+        An axle's gauge is not known.
+    """
+    if roadway is None:
+        _require_no_place(crossing)
+    if roadway is None or across.z.size == 1:
+        return _by_typed_share(across, crossing)
+    dynamic = crossing.loading.dynamic
+    return tuple(
+        formation for way in _ways(crossing, roadway, presence) for formation in _abreast(across, way, dynamic=dynamic)
+    )
+
+
+def fitting(crossing: Crossing, roadway: Roadway | None) -> int:
+    """Return how many vehicles stand abreast at most in a crossing."""
+    if roadway is None:
+        return 1
+    widths = [max(_gauges(case.moving)) for case in crossing.loading.cases if case.moving is not None]
+    return max((_most(crossing, roadway, width) for width in widths), default=1)
+
+
+def _require_no_place(crossing: Crossing) -> None:
+    """Refuse a place or a number abreast where only one share is known."""
+    asked = "" if crossing.lanes <= 1 else f"{crossing.lanes} abreast"
+    if crossing.place not in {ANYWHERE, TYPED_SHARE} or crossing.z != 0.0:
+        asked = f'"{crossing.place}" at {crossing.z:g} m'
+    if asked:
+        raise MissingDataError(
+            f"{asked} cannot be rated from one typed share; type deck.truss_spacing and deck.kerbs instead",
+            place=crossing.title,
+        )
+
+
+def _by_typed_share(across: Across, crossing: Crossing) -> tuple[Formation, ...]:
+    """Return one train a case, with the share that is typed wherever it keeps and however many stand abreast."""
+    share, loading = float(across.at(0.0)), crossing.loading
+    return tuple(
+        (even_train(case.title, vehicle, share, factor=case.factor, dynamic=loading.dynamic),)
+        for case in loading.cases
+        for vehicle in (axles_only(case),)
+    )
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class _Way:
+    """One way a case may cross, whatever part feels it: one or both headings, so many abreast, in one range of z.
+
+    ``kinds`` are the axles' (gauge, left share), ``of_kind`` says which each is, ``apart`` is what neighbours keep.
+    """
+
+    case: str
+    vehicle: Vehicle
+    headings: tuple[int, ...]
+    kinds: tuple[tuple[float, float], ...]
+    of_kind: Ints
+    room: tuple[float, float]
+    apart: float
+    count: int
+    factor: float
+
+
+@lru_cache(maxsize=256)  # every part of the bridge asks
+def _ways(crossing: Crossing, roadway: Roadway, presence: tuple[float, ...]) -> tuple[_Way, ...]:
+    """Return the ways of a crossing: by case, by heading where shares depend on it, by number abreast."""
+    found: list[_Way] = []
+    for case in crossing.loading.cases:
+        vehicle = axles_only(case)
+        gauges = _gauges(vehicle)
+        axles = tuple(zip(gauges, vehicle.left_shares or (0.5,) * len(gauges), strict=True))
+        kinds = tuple(dict.fromkeys(axles))
+        of_kind = np.array([kinds.index(axle) for axle in axles], dtype=np.intp)
+        for headings in _headings(vehicle, crossing):
+            room = span_of_place(
+                roadway, crossing.place, gauge=max(gauges), heading=headings[0], z=crossing.z, wander=crossing.wander
+            )
+            found += [
+                _Way(
+                    case.title, vehicle, headings, kinds, of_kind, room, max(gauges) + roadway.between, count,
+                    case.factor * presence[min(count, len(presence)) - 1],
+                )
+                for count in _counts(crossing, case, roadway, max(gauges))
+            ]  # fmt: skip
+    return tuple(found)
+
+
+def _counts(crossing: Crossing, case: Case, roadway: Roadway, width: float) -> range:
+    """Return how many of a case's vehicle may stand abreast."""
+    most = _most(crossing, roadway, width)
+    least = crossing.lanes or case.lanes or 1
+    if least > most:
+        raise InputError(f"{least} abreast do not fit there; {most} may stand abreast", place=crossing.title)
+    return range(least, (crossing.lanes or case.lanes or most) + 1)
+
+
+def _abreast(across: Across, way: _Way, *, dynamic: bool) -> list[Formation]:
+    """Return a way's formations on one part: each worst set of places."""
+    where = _Where(across, way.kinds, way.room, way.headings[0], way.apart)
+    return [
+        tuple(
+            Train(
+                way.case, way.vehicle, held(shares[way.of_kind]), headings=way.headings, z=z, factor=way.factor,
+                dynamic=dynamic,
+            )
+            for z, shares in group
+        )
+        for group in _groups(where, way.count)
+    ]  # fmt: skip
+
+
+@dataclass(frozen=True, slots=True)
+class _Where:
+    """All that the worst places across depend on: kinds of axles by (gauge, left share), not their loads."""
+
+    across: Across
+    kinds: tuple[tuple[float, float], ...]
+    room: tuple[float, float]
+    heading: int
+    apart: float
+
+
+@lru_cache(maxsize=4096)  # vehicles with the same gauges meet the same places
+def _groups(where: _Where, count: int) -> tuple[tuple[tuple[float, Floats], ...], ...]:
+    """Return the sets of places that may be worst, each place with its z [m] and the share of each kind of axle."""
+    gauges, lefts = (np.array(one) for one in zip(*where.kinds, strict=True))
+    z = candidate_places(where.across, where.room, gauges, apart=where.apart, most=count)
+    shares = shares_at(where.across, z, gauges, lefts, where.heading)
+    groups = worst_groups(shares, z, where.apart, count)
+    return tuple(tuple((float(z[one]), shares[one]) for one in group) for group in groups)
+
+
+def _headings(vehicle: Vehicle, crossing: Crossing) -> tuple[tuple[int, ...], ...]:
+    """Return the vehicle's headings, apart where shares depend on them."""
+    lopsided = any(share != 0.5 for share in vehicle.left_shares)
+    if lopsided or crossing.place == "own lane":
+        return tuple((heading,) for heading in vehicle.headings)
+    return (vehicle.headings,)
+
+
+def _most(crossing: Crossing, roadway: Roadway, width: float) -> int:
+    """Return how many of a vehicle stand abreast at most."""
+    if crossing.place != ANYWHERE:
+        return 1
+    return min(roadway.abreast(width), MOST_ABREAST)
+
+
+def _gauges(vehicle: Vehicle) -> tuple[float, ...]:
+    """Return every axle's gauge [m], which a place across needs."""
+    if not vehicle.gauges:
+        raise MissingDataError(
+            "is needed to place it across the deck: type gauge (between wheel centres) on every axle of its file",
+            place=f"{vehicle.title}: axles[0].gauge",
+        )
+    return vehicle.gauges
