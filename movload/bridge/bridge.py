@@ -89,7 +89,7 @@ class Bridge:
         """Refuse a floor without the trusses' spacing, and kerbs beyond trusses that reach above the deck."""
         deck, floor = self.deck, self.floor
         if deck.truss_spacing is None:
-            if floor.stringers is not None:
+            if floor.stringers is not None and "deck.truss_spacing" not in self.missing:
                 raise MissingDataError("a floor is rated across the trusses: type it", place="deck.truss_spacing")
             return
         half = 0.5 * deck.truss_spacing

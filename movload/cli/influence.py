@@ -38,11 +38,12 @@ def influence(
         raise InputError(f"name 1 to {_MOST_DRAWN} rows to draw, got {len(rows or ())}", place="--plot")
     from movload.files.read import read_bridge
     from movload.report.lines_report import lines_csv, lines_json, lines_tables, station_names
+    from movload.statics.floor import with_floorbeams
     from movload.statics.influence import influence_lines
 
     stands = read_bridge(bridge)
     with naming(bridge):
-        lines = influence_lines(stands.truss, stands.deck.panel_points)
+        lines = with_floorbeams(stands, influence_lines(stands.truss, stands.deck.panel_points))
         asked = [lines[name] for name in rows or [effect.name for effect in lines.effects]]
     names = station_names(stands.deck.panel_points)
     deliver(

@@ -15,11 +15,12 @@ if TYPE_CHECKING:
     from movload.bridge.deck import PanelPoint
     from movload.files.schema.bridge import BridgeFile, DeckTable, FloorTable, ItemTable, PermanentTable
 
+_WAITING = {"deck.truss_spacing", "deck.kerbs", "deck.clearance"}
 _WEIGHTS = ("line", "per_area", "thickness", "points")
 
 
-def deck_of(table: BridgeFile, panel_points: tuple[PanelPoint, ...]) -> Deck:
-    """Return the deck with its kerbs."""
+def deck_of(table: BridgeFile, panel_points: tuple[PanelPoint, ...], missing: tuple[str, ...]) -> Deck:
+    """Return the deck with its kerbs; without them while any of what places them still holds "?"."""
     deck = table.deck
     by_layout = table.layout.deck if table.layout else ""
     if deck.kind and by_layout and deck.kind != by_layout:
@@ -28,7 +29,7 @@ def deck_of(table: BridgeFile, panel_points: tuple[PanelPoint, ...]) -> Deck:
         panel_points,
         truss_share=deck.truss_share,
         truss_spacing=deck.truss_spacing,
-        roadway=_roadway(deck),
+        roadway=None if _WAITING & set(missing) else _roadway(deck),
         kind=deck.kind or by_layout,
         bears_on=deck.bears_on or "floorbeams",
         chord_bending=deck.chord_bending or "",
@@ -77,10 +78,10 @@ def floor_of(table: FloorTable) -> Floor:
     )
 
 
-def permanent_of(table: BridgeFile, deck: Deck) -> PermanentItems | None:
-    """Return what stands on the bridge for good; None while nobody has typed it."""
+def permanent_of(table: BridgeFile, deck: Deck, missing: tuple[str, ...]) -> PermanentItems | None:
+    """Return what stands on the bridge for good; None while nobody has typed it, or where across it lies."""
     permanent = table.permanent
-    if permanent is None:
+    if permanent is None or _WAITING & set(missing):
         return None
     across = deck.truss_spacing is not None
     if across and permanent.truss_share is not None:

@@ -58,14 +58,14 @@ def _bridge(table: BridgeFile, units: UnitSystem, missing: tuple[str, ...], sour
     supports = [_support(joint, support) for joint, support in table.supports.items()]
     members = members_of(table, laid_out, joints)
     truss = Truss(joints, list(members.values()), supports)
-    deck = deck_of(table, _panel_points(table.deck, laid_out))
+    deck = deck_of(table, _panel_points(table.deck, laid_out), missing)
     rating = table.rating
     with _placed(lambda place: _deck_place(place, deck, table.deck)):
         return Bridge(
             table.title,
             truss,
             deck,
-            permanent=permanent_of(table, deck),
+            permanent=permanent_of(table, deck, missing),
             strengths=strengths_of(table, laid_out),
             floor=floor_of(table.floor),
             impact=None if isinstance(rating.impact, str) else rating.impact,

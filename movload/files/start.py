@@ -76,6 +76,8 @@ def starter_text(title: str, layout: Layout, units: UnitSystem) -> str:
     area, modulus, density = _STAND_IN_US if units.is_us else _STAND_IN
     first, last = laid_out.panel_points[0], laid_out.panel_points[-1]
     roles = dict.fromkeys(bar.role for bar in laid_out.bars)
+    left, out = ("6", "5, -2.5, 0, 2.5, 5") if units.is_us else ("1.9", "1.6, -0.8, 0, 0.8, 1.6")
+    right, stringers = f"-{left}", f"-{out}"
     groups = "\n".join(_group(role, area, modulus) for role in roles)
     middle = f"middle = {_quoted(layout.middle)}\n" if layout.middle else ""
     return f"""# {_comment(title)}: begun with "movload start". Fill every "?"; "movload rate" asks until none is left.
@@ -100,15 +102,26 @@ depths = {_numbers(layout.depths, units)}
 # area: a stand-in, put the measured one. modulus: that of steel. density: "{density}" is common for steel.
 # permits: the axial force each bar may carry, margin included, in {units.symbol("force")}.
 {groups}
-[deck]
-truss_share = "?"           # share of a whole axle that reaches one truss: 0.5 on the centre line, more beside a kerb
+[deck]                      # looking toward +x, z across from the bridge's centre line, + to the left
+truss_spacing = "?"         # between the trusses' middle planes
+kerbs = "?"                 # [right, left], e.g. [{right}, {left}]
+clearance = "?"             # from a kerb to the outermost wheel's centre
+
+# The floor: take the # away from what was measured; what is left out is said to be unrated.
+# [floor.stringers]
+# z = [{stringers}]      # from the right
+# weight = 0                # of one stringer, {units.symbol("line load")}
+# permits = {{ moment = "?", shear = "?" }}   # {units.symbol("moment")}, {units.symbol("force")}
+# [floor.floorbeams]
+# weight = 0                # per length of beam
+# permits = {{ moment = "?", shear = "?" }}
 
 [permanent]
-deck = "?"                  # deck, floor and surfacing of the whole bridge, {units.symbol("line load")}
-truss_share = "?"           # 0.5 when it lies symmetrically
+deck = "?"                  # deck, floor and surfacing of the whole bridge, {units.symbol("line load")}, kerb to kerb
+detail_allowance = "?"      # of the members' weight, for lacing, rivets, pins and gussets, e.g. "15 %"
 
 [rating]
-impact = "?"                # dynamic allowance, e.g. 0.30
+impact = "?"                # a fraction, e.g. 0.30, or "by loaded length"
 """
 
 

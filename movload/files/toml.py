@@ -16,8 +16,9 @@ Data = dict[str, object]
 PLACEHOLDER: Final = "?"
 # What only a rating needs may wait for its value. A "?" elsewhere would change a truss or a line without a word.
 _MAY_WAIT: Final = re.compile(
-    r"members\..+\.(density|permits|permits\.(tension|compression))"
-    r"|deck\.truss_share|permanent|permanent\.(deck|truss_share)|rating|rating\.impact"
+    r"(members\..+|floor\.\w+)\.(condition|system|(permits|nominal|reduced)(\.\w+)?)|members\..+\.density"
+    r"|deck\.(truss_share|truss_spacing|kerbs|clearance|chord_bending)"
+    r"|permanent|permanent\.(deck|truss_share|detail_allowance)|rating|rating\.(impact|surface|traffic)"
 )
 _DEEPEST: Final = 20  # tables within tables; a bridge file has four
 _LONGEST: Final = 60  # signs of a line or a value that an error shows

@@ -9,18 +9,14 @@ memory): percentages by length, plus the rocking effect.
 
 from __future__ import annotations
 
-import math
-from dataclasses import dataclass, field
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
-from movload.errors import InputError, MissingDataError, UnknownNameError, nearest_name
+from movload.errors import InputError, MissingDataError
 from movload.units import unit_factor
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping
-
     from movload.arrays import Bools, Floats
 
 RULES: Final = ("typed", "by riding surface", "by loaded length", "railway")
@@ -29,102 +25,6 @@ SURFACES: Final = ("smooth", "minor", "severe")
 _FOOT: Final = unit_factor("ft", "length")  # m
 _NOISE: Final = 1e-9  # of a row's largest ordinate: round-off would else stretch or break a line, and is no rival peak
 _TINY: Final = np.finfo(np.float64).tiny  # two zeros side by side: no change of sign there, and no 0 / 0
-
-
-@dataclass(frozen=True, slots=True)
-class ImpactRule:
-    """Which rule gives the allowance.
-
-    Parameters
-    ----------
-    name
-        One of RULES.
-    value
-        The allowance [-], 0 or more, for "typed".
-    surface
-        One of SURFACES, for "by riding surface"; "" when nobody has said.
-
-    Raises
-    ------
-    UnknownNameError
-        A rule or a surface that is not known; the nearest is named.
-    InputError
-        A value below 0.
-    """
-
-    name: str
-    value: float = field(default=0.0, kw_only=True)
-    surface: str = field(default="", kw_only=True)
-
-    def __post_init__(self) -> None:
-        """Refuse unknown names and a negative value."""
-        _require_known(self.name, RULES, "rating.impact")
-        if self.surface:
-            _require_known(self.surface, SURFACES, "rating.surface")
-        if not (math.isfinite(self.value) and self.value >= 0):
-            raise InputError(f"impact must be 0 or more (30 % is 0.3), got {self.value}", place="rating.impact")
-
-
-@dataclass(frozen=True, slots=True, eq=False)
-class ImpactRows:
-    """What the rules ask of a part's rows.
-
-    Attributes
-    ----------
-    stations
-        (B,) [m], increasing, at least 2.
-    ordinates
-        (R, B) per unit load; only signs and proportions count.
-    timber
-        (R,) whether a row is timber, which takes no impact; steel rods and hangers of a timber truss are not.
-    span
-        Span of the main members [m].
-    spacing
-        Distance between the trusses (stringers) [m]; None when nobody has said.
-    own_length
-        (R,) a floorbeam's span across [m], nan for rows along the bridge; None where all are along it.
-    """
-
-    stations: Floats
-    ordinates: Floats
-    timber: Bools = field(kw_only=True)
-    span: float = field(kw_only=True)
-    spacing: float | None = field(default=None, kw_only=True)
-    own_length: Floats | None = field(default=None, kw_only=True)
-
-    def __post_init__(self) -> None:
-        """Check that there is one of each a row: a single one would else be spread over all without a word."""
-        rows = self.ordinates.shape[:1]
-        for name, given in (("timber", self.timber), ("own_length", self.own_length)):
-            if given is not None and given.shape != rows:
-                raise InputError(f"{name} {given.shape} does not fit {rows[0]} rows", place="impact")
-
-
-def impact_of(rule: ImpactRule, rows: ImpactRows, *, surface_values: Mapping[str, float]) -> Floats:
-    """Return the allowance (R, 2) [-] of every row, on its positive and on its negative side; 0 on timber.
-
-    Parameters
-    ----------
-    rule, rows
-        Which rule, and what it asks of the rows.
-    surface_values
-        Allowance by riding surface [-], data of a factor set.
-
-    Raises
-    ------
-    MissingDataError
-        No surface (place ``rating.surface``), no value for it, or no spacing for the rocking effect.
-    """
-    if rule.name == "typed":
-        impact: Floats = np.full((rows.timber.size, 2), rule.value)
-    elif rule.name == "by riding surface":
-        impact = np.full((rows.timber.size, 2), _of_surface(rule.surface, surface_values))
-    elif rule.name == "by loaded length":
-        impact = by_loaded_length(_own_or_loaded(rows))
-    else:
-        lengths = railway_lengths(rows.stations, rows.ordinates, span=rows.span)
-        impact = railway(np.stack((lengths, lengths), axis=1), spacing=rows.spacing)
-    return np.where(rows.timber[:, None], 0.0, impact)
 
 
 def loaded_lengths(stations: Floats, ordinates: Floats) -> Floats:
@@ -249,32 +149,6 @@ def longest_adjacent_panel(stations: Floats, ordinates: Floats) -> Floats:
     touched = _touched(stations, ordinates)
     longest = np.where(touched, np.diff(stations), 0.0).max(axis=1)
     return np.where(longest > 0.0, longest, np.nan)
-
-
-def _require_known(name: str, known: tuple[str, ...], place: str) -> None:
-    """Refuse a name that is not known; the nearest is named."""
-    if name not in known:
-        raise UnknownNameError(
-            f'"{name}" is not one of {", ".join(known)}', place=place, nearest=nearest_name(name, known)
-        )
-
-
-def _of_surface(surface: str, values: Mapping[str, float]) -> float:
-    """Return the allowance of a riding surface."""
-    if not surface:
-        raise MissingDataError(f"is needed by impact by riding surface: {', '.join(SURFACES)}", place="rating.surface")
-    if surface not in values:
-        raise MissingDataError(f'no allowance is given for riding surface "{surface}"', place="impact_values")
-    return values[surface]
-
-
-def _own_or_loaded(rows: ImpactRows) -> Floats:
-    """Return each row's loaded lengths (R, 2) [m]; a floorbeam's own span on both sides, as it bends both ways."""
-    lengths = loaded_lengths(rows.stations, rows.ordinates)
-    if rows.own_length is None:
-        return lengths
-    own = rows.own_length[:, None]
-    return np.where(np.isnan(own), lengths, own)
 
 
 def _at_largest(line: Floats, lengths: Floats) -> Floats:

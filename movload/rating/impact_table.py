@@ -14,10 +14,9 @@ from movload.rating.impact import (
     RULES,
     SURFACES,
     by_loaded_length,
-    is_short_loaded,
     loaded_lengths,
-    longest_adjacent_panel,
     railway,
+    railway_lengths,
 )
 from movload.statics.influence import InfluenceLines
 from movload.statics.spans import PlankSpan, SimpleSpans
@@ -158,6 +157,5 @@ def _by_length(bridge: Bridge, part: Part, rule: str) -> Floats:
         own = np.full_like(lengths, spacing or 0.0)  # a floorbeam: its own span across
         return by_loaded_length(own if across else lengths)
     span = float(response.stations[-1] - response.stations[0])
-    short = is_short_loaded(response.stations, response.ordinates)
-    lengths = np.where(short, longest_adjacent_panel(response.stations, response.ordinates), span)
+    lengths = railway_lengths(response.stations, response.ordinates, span=span)
     return railway(lengths[:, None] * np.ones(2), spacing=spacing)

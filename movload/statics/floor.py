@@ -45,6 +45,17 @@ def floor_parts(bridge: Bridge) -> tuple[Part, ...]:
     return (*_stringer_parts(bridge, stringers), *_floorbeam_parts(bridge, stringers), *_planks(bridge, stringers))
 
 
+def with_floorbeams(bridge: Bridge, lines: InfluenceLines) -> InfluenceLines:
+    """Return a truss's lines and, after them, what each floorbeam gets of a whole axle, where there are floorbeams."""
+    if bridge.floor.floorbeams is None:
+        return lines
+    points = bridge.deck.panel_points
+    standing = [number for number, point in enumerate(points) if isinstance(point, str)]
+    effects = [Effect(f"floorbeam {points[number]}", f"{points[number]} load", "reaction", "N") for number in standing]
+    hats = np.eye(lines.stations.size)[standing]
+    return InfluenceLines((*lines.effects, *effects), lines.stations, held(np.concatenate((lines.ordinates, hats))))
+
+
 def _stringer_parts(bridge: Bridge, stringers: Stringers) -> tuple[Part, ...]:
     """Return a part for each stringer: its spans and its share of a wheel, which cannot be negative."""
     stations = stations_of(bridge.truss, bridge.deck.panel_points)

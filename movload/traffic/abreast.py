@@ -33,7 +33,7 @@ _HAIR: Final = 1e-9  # m: vehicles that near to their distance keep it, wheels t
 _ALIKE: Final = 1e-12  # of the largest: places that are one, shares in one ratio, but for round-off
 _STRAIGHT: Final = 1e-14  # of the largest: how far round-off takes a point off a straight line
 _TOO_NEAR: Final = 1e-6  # m: nearer to its neighbour than this a bend is hard to tell from round-off, and counts as one
-_GRAIN: Final = 2.0**-44  # of the largest share: shares are compared in whole grains, so that sums and ties are exact
+_GRAINS: Final = 2.0**44  # in the largest share: shares are compared in whole grains, so that sums and ties are exact
 
 
 def shares_at(across: Across, z: Floats, gauges: Floats, left_shares: Floats, heading: int) -> Floats:
@@ -135,7 +135,7 @@ def worst_groups(shares: Floats, z: Floats, apart: float, count: int) -> list[tu
         where ``count`` do not fit.
     """
     most = float(np.abs(shares).max())
-    grains = np.rint(shares * (1.0 / (_GRAIN * (most or 1.0)))).astype(np.int64)
+    grains = np.rint(shares / (most or 1.0) * _GRAINS).astype(np.int64)
     worth = _worth(shares, grains)
     if worth is not None:
         return _single(worth) if count == 1 else _front(worth, z, apart, count)

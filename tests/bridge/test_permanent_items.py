@@ -67,7 +67,8 @@ REFUSED: dict[str, tuple[dict[str, Any], type[InputError], str]] = {
         'kind: "surfaceing" is not one of components, surfacing, removable surfacing, other (nearest: "surfacing")',
     ),
     "class of another world": (
-        {"kind": "wind"}, UnknownNameError, 'kind: "wind" is not one of components, surfacing, removable surfacing, other'
+        {"kind": "wind"}, UnknownNameError,
+        'kind: "wind" is not one of components, surfacing, removable surfacing, other'
     ),
     "line below 0": ({"line": -1.5}, InputError, "line: must be 0 or more, got -1.5 N/m"),
     "line without end": ({"line": math.inf}, InputError, "line: must be a finite number, got inf N/m"),

@@ -61,14 +61,15 @@ def test_the_centre_line_ends_where_the_wheels_would_touch_the_kerb() -> None:
     assert span_of_place(NARROW, "centre line", gauge=1.8, heading=1, wander=0.0) == (0.0, 0.0)
 
 
-def test_a_vehicle_that_fits_exactly_has_one_place() -> None:
-    """2.3 + 2 x 0.1 m in 2.5 m, which round-off leaves either side of each other: one place, and it is in order."""
-    for right in (-1.25, 0.1, 0.7, 7.7):
-        roadway = Roadway(right, right + 2.5, clearance=0.1)
-        for place in ("anywhere", "centre line"):
-            low, high = span_of_place(roadway, place, gauge=2.3, heading=1, wander=0.0)
+@pytest.mark.parametrize("right", [-1.2, -2.3, 5.7, -1.5, -4.0])
+def test_a_vehicle_that_fits_exactly_has_one_place(right: float) -> None:
+    """1.8 + 2 x 0.3 m in 2.4 m: by round-off the greatest z comes out below the least, or the middle beside both."""
+    roadway = Roadway(right, round(right + 2.4, 1), clearance=0.3)
+    for place in PLACES:
+        if place != "own lane":
+            low, high = span_of_place(roadway, place, gauge=1.8, heading=1, z=right + 1.2, wander=0.0)
             assert low <= high
-            assert_allclose((low, high), right + 1.25, atol=1e-14)  # sums of numbers near 10 m
+            assert_allclose((low, high), right + 1.2, atol=1e-14)  # sums of numbers near 10 m
 
 
 def test_own_lane_changes_sides_with_heading_and_custom() -> None:
@@ -80,13 +81,14 @@ def test_own_lane_changes_sides_with_heading_and_custom() -> None:
         assert_allclose(span_of_place(wide[keeps], "own lane", gauge=2.0, heading=heading), span, atol=ROUND_OFF)
 
 
-def test_a_lane_may_fit_exactly() -> None:
-    """Half of 6.2 m less 0.3 and 0.6 m is 2.2 m: one place on either side."""
-    roadway = Roadway(-3.1, 3.1, clearance=0.3)
+@pytest.mark.parametrize("right", [-5.6, -5.1, -3.1])
+def test_a_lane_may_fit_exactly(right: float) -> None:
+    """Half of 6.2 m less 0.3 and 0.6 m is 2.2 m: one place a side, whatever round-off makes of it."""
+    roadway = Roadway(right, round(right + 6.2, 1), clearance=0.3)
     for heading in (1, -1):
         low, high = span_of_place(roadway, "own lane", gauge=2.2, heading=heading)
         assert low <= high
-        assert_allclose((low, high), -heading * 1.7, atol=ROUND_OFF)
+        assert_allclose((low, high), right + 3.1 - heading * 1.7, atol=1e-14)  # sums of numbers near 10 m
 
 
 def test_half_a_roadway_too_narrow_is_refused_with_what_it_leaves() -> None:

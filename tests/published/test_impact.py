@@ -21,28 +21,10 @@ from numpy.testing import assert_allclose
 from oracles.trusses import bottom, pratt, simple_span, truss_of
 
 from movload import influence_lines
-from movload.rating.impact import ImpactRows, ImpactRule, by_loaded_length, impact_of, loaded_lengths, railway
+from movload.rating.impact import by_loaded_length, loaded_lengths, railway
 
 FOOT = 0.3048  # m
 ROUNDED = 1e-12  # relative: a closed formula of a few operations on solved ordinates
-
-
-def test_a_diagonal_has_one_impact_for_each_sense() -> None:
-    """Hicks p. 1.70: neutral point 72 ft from the right support of 120 ft. READ; AASHTO 3.8.2 FROM MEMORY.
-
-    Tension is loaded over 72 ft, 50/197 = 0.2538; compression over 48 ft, 50/173 = 0.2890. A bottom chord's 120 ft give
-    50/245 = 0.2041, which the diagonal must not take.
-    """
-    feet = truss_of(pratt([20.0 * FOOT] * 6, [25.0 * FOOT] * 5), simple_span(6))
-    lines = influence_lines(feet, bottom(6))
-    found = np.stack([lines["U2-L3"].ordinates, lines["L2-L3"].ordinates])
-    lengths = loaded_lengths(lines.stations, found)
-    assert_allclose(lengths[0] / FOOT, [72.0, 48.0], rtol=ROUNDED)
-    assert_allclose(lengths[1, 0] / FOOT, 120.0, rtol=ROUNDED)
-    rows = ImpactRows(lines.stations, found, timber=np.zeros(2, dtype=bool), span=120.0 * FOOT)
-    impact = impact_of(ImpactRule("by loaded length"), rows, surface_values={})
-    assert_allclose(impact[0], [50.0 / 197.0, 50.0 / 173.0], rtol=ROUNDED)
-    assert_allclose(impact[1, 0], 50.0 / 245.0, rtol=ROUNDED)
 
 
 def test_a_zero_inside_a_panel_from_printed_ordinates() -> None:

@@ -13,12 +13,9 @@ from numpy.testing import assert_allclose, assert_array_equal
 from oracles.trusses import bottom, pratt, simple_span, truss_of
 from strategies import panel_lengths
 
-from movload.errors import InputError, MissingDataError, UnknownNameError
+from movload.errors import InputError, MissingDataError
 from movload.rating.impact import (
-    ImpactRows,
-    ImpactRule,
     by_loaded_length,
-    impact_of,
     is_short_loaded,
     loaded_lengths,
     longest_adjacent_panel,
@@ -272,91 +269,3 @@ def test_short_loaded_members_of_subdivided_panels() -> None:
 # ------------------------------------------------------------------------------------------------- the rules
 
 VALUES = {"smooth": 0.12, "minor": 0.23, "severe": 0.34}  # invented: the values are data of a factor set
-
-
-def rows(timber: tuple[bool, ...] = (False, False), **given: object) -> ImpactRows:
-    """Return a hanger of two panels and a diagonal on 16 m."""
-    ordinates = np.array([[0.0, 1.0, 0.0, 0.0, 0.0], [0.0, -0.3, 0.5, 0.25, 0.0]])
-    known: dict[str, object] = {"span": 16.0, "spacing": 5.0} | given
-    return ImpactRows(PANELS, ordinates, timber=np.array(timber), **known)  # type: ignore[arg-type]  # by the test
-
-
-def test_a_typed_fraction_holds_everywhere() -> None:
-    found = impact_of(ImpactRule("typed", value=0.25), rows(), surface_values={})
-    assert_array_equal(found, [[0.25, 0.25], [0.25, 0.25]])
-
-
-def test_the_surface_picks_its_value() -> None:
-    found = impact_of(ImpactRule("by riding surface", surface="minor"), rows(), surface_values=VALUES)
-    assert_array_equal(found, [[0.23, 0.23], [0.23, 0.23]])
-
-
-def test_each_row_and_side_has_its_own_loaded_length() -> None:
-    """8 m is under the cap; 10.5 m and 5.5 m are too: on 160 m they are not."""
-    found = impact_of(ImpactRule("by loaded length"), rows(), surface_values={})
-    assert_allclose(found, 0.30, rtol=ROUNDED)
-    long = ImpactRows(10.0 * PANELS, rows().ordinates, timber=rows().timber, span=160.0)
-    expected = [[50 / (80 / FOOT + 125), 0.30], [50 / (105 / FOOT + 125), 50 / (55 / FOOT + 125)]]
-    assert_allclose(impact_of(ImpactRule("by loaded length"), long, surface_values={}), expected, rtol=ROUNDED)
-
-
-def test_a_floorbeam_takes_its_own_span_across_on_both_sides() -> None:
-    """Its line along the bridge has one sign, but brackets bend it both ways."""
-    across = rows(own_length=np.array([30.0, NAN]))
-    found = impact_of(ImpactRule("by loaded length"), across, surface_values={})
-    assert_allclose(found[0], 50 / (30.0 / FOOT + 125), rtol=ROUNDED)
-    assert_allclose(found[1], 0.30, rtol=ROUNDED)
-
-
-def test_railway_takes_the_span_or_the_longer_stringer() -> None:
-    """A hanger: 4 m = 13.123 ft; the diagonal: 16 m = 52.493 ft; a floorbeam's own span is not asked for."""
-    across = rows(own_length=np.array([30.0, NAN]))
-    found = impact_of(ImpactRule("railway"), across, surface_values={})
-    expected = [0.40 - 0.03 * (metres / FOOT) ** 2 / 1600 + FOOT / 5.0 for metres in (4.0, 16.0)]
-    assert_allclose(found, np.array(expected)[:, None] * np.ones(2), rtol=ROUNDED)
-
-
-@pytest.mark.parametrize(
-    "rule",
-    [
-        ImpactRule("typed", value=0.25), ImpactRule("by riding surface", surface="severe"),
-        ImpactRule("by loaded length"), ImpactRule("railway"),
-    ],
-    ids=lambda rule: rule.name,
-)  # fmt: skip
-def test_timber_takes_none_and_its_steel_rods_keep_theirs(rule: ImpactRule) -> None:
-    plain = impact_of(rule, rows(), surface_values=VALUES)
-    timber = impact_of(rule, rows((False, True)), surface_values=VALUES)
-    assert (plain > 0.0).all()
-    assert_array_equal(timber[0], plain[0])  # the rod
-    assert_array_equal(timber[1], (0.0, 0.0))
-
-
-def test_a_surface_that_nobody_said_is_asked_for() -> None:
-    with pytest.raises(MissingDataError, match=r"^rating\.surface: is needed .*: smooth, minor, severe$"):
-        impact_of(ImpactRule("by riding surface"), rows(), surface_values=VALUES)
-
-
-def test_a_surface_without_a_value_is_named() -> None:
-    with pytest.raises(MissingDataError, match='no allowance is given for riding surface "severe"'):
-        impact_of(ImpactRule("by riding surface", surface="severe"), rows(), surface_values={"smooth": 0.1})
-
-
-def test_unknown_names_come_with_the_nearest() -> None:
-    with pytest.raises(UnknownNameError, match=r'^rating\.impact: "railways" is not one of .*\(nearest: "railway"\)$'):
-        ImpactRule("railways")
-    with pytest.raises(UnknownNameError, match=r'^rating\.surface: "smoth" is not .*\(nearest: "smooth"\)$'):
-        ImpactRule("by riding surface", surface="smoth")
-
-
-@pytest.mark.parametrize("value", [-0.1, NAN, math.inf])
-def test_a_fraction_that_is_none_is_refused(value: float) -> None:
-    with pytest.raises(InputError, match=rf"^rating\.impact: impact must be 0 or more .*, got {value}$"):
-        ImpactRule("typed", value=value)
-
-
-def test_one_flag_is_not_spread_over_all_rows() -> None:
-    with pytest.raises(InputError, match=r"impact: timber \(1,\) does not fit 2 rows"):
-        rows((True,))
-    with pytest.raises(InputError, match=r"impact: own_length \(3,\) does not fit 2 rows"):
-        rows(own_length=np.full(3, NAN))

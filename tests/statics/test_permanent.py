@@ -19,7 +19,6 @@ from movload import Member, Support, Truss, influence_lines
 from movload.bridge.across import Across
 from movload.bridge.bridge import Bridge
 from movload.bridge.deck import Deck, deck_lengths, stations_of
-from movload.bridge.permanent import PermanentItems
 from movload.errors import MissingDataError
 from movload.statics.influence import lines_of
 from movload.statics.part import Part
@@ -30,6 +29,8 @@ if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from numpy.typing import NDArray
+
+    from movload.bridge.permanent import PermanentItems
 
     Floats = NDArray[np.float64]
 

@@ -86,6 +86,8 @@ def test_places_that_coincide_are_one() -> None:
     found = candidate_places(STRINGER, (-0.9, 0.9), np.array([1.8, 1.8]))
     assert_allclose(found, [-0.9, 0.0, 0.9], atol=ROUND_OFF)
     assert_array_equal(candidate_places(STRINGER, (0.2, 0.2), GAUGE), [0.2])
+    thirds = Across(np.array([-1.0, 0.1, 0.3, 1.0]), np.array([0.0, 1.0, 0.5, 0.0]))  # 0.1 + 0.1 and 0.3 - 0.1 differ
+    assert_allclose(candidate_places(thirds, (-0.8, 0.8), np.array([0.2])), [-0.8, 0.0, 0.2, 0.4, 0.8], atol=ROUND_OFF)
 
 
 def test_neighbours_stand_apart_from_bends_and_ends() -> None:
@@ -96,6 +98,37 @@ def test_neighbours_stand_apart_from_bends_and_ends() -> None:
 def test_a_truss_is_worst_loaded_from_the_near_kerb() -> None:
     assert worst(LEFT, (-0.9, 0.9), [1.8, 2.0]) == [(0.9,)]
     assert worst(RIGHT, (-0.9, 0.9), [1.8, 2.0]) == [(-0.9,)]
+
+
+@pytest.mark.parametrize("count", [1, 2, 3])
+def test_a_truss_needs_one_set_whatever_the_gauges(count: int) -> None:
+    """1/2 + z/S whatever the gauge, but for round-off: the near kerb, and neighbours as near as they may come."""
+    near = Across(np.array([-6.1, 6.1]), np.array([0.0, 1.0]))
+    for room in ((-4.3, 4.7), (-4.1, 3.9)):
+        (places,) = worst(near, room, [1.8, 2.1, 1.37], apart=3.3, count=count)
+        assert_allclose(places, room[1] - 3.3 * np.arange(count)[::-1], atol=ROUND_OFF)
+
+
+def test_the_slightly_worse_place_is_found() -> None:
+    """A part in 10^12 is more than round-off."""
+    slightly = np.array([[1.0], [1.0 + 1e-12], [1.0]])
+    assert worst_groups(slightly, np.arange(3.0), 1.0, 1) == [(1,)]
+    assert worst_groups(slightly, np.arange(3.0), 1.0, 2) == [(0, 1)]
+
+
+@pytest.mark.parametrize("least", [5e-324, 1e-310, 1e-200])
+def test_shares_next_to_nothing_divide_nothing_by_zero(least: float) -> None:
+    for shares in (np.array([[0.0], [least]]), np.array([[0.0, least], [least, 0.0]])):
+        assert worst_groups(shares, np.arange(2.0), 1.0, 1)[-1] == (1,)
+        assert worst_groups(shares, np.arange(2.0), 1.0, 2) == [(0, 1)]
+
+
+def test_a_bend_next_to_another_place_is_not_taken_for_round_off() -> None:
+    """Two places 2e-12 m apart, between them a bend by 0.002/m: over that distance it is less than round-off."""
+    z = np.array([0.0, 1.0, 1.0 + 2e-12, 2.0])
+    shares = np.stack((0.001 * np.minimum(z, 2.0 - z), 0.5 * z, np.ones(4)), axis=1)
+    groups = worst_groups(shares, z, 0.5, 1)
+    assert (1,) in groups or (2,) in groups
 
 
 def test_an_overhang_can_lift_the_far_truss() -> None:

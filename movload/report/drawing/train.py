@@ -45,6 +45,8 @@ class Train:
         What crosses.
     room
         How far beyond the bridge's ends anything is drawn [m].
+    abreast
+        How many of it stand side by side.
     """
 
     x: Floats
@@ -54,15 +56,21 @@ class Train:
     heading: int
     title: str
     room: float
+    abreast: int
 
     @classmethod
     def of(cls, peak: Peak, stations: Floats) -> Train:
-        """Return the train of a peak's placement."""
-        x, margin = peak.placement.x, edge(stations)
+        """Return the train of a peak's placement; of vehicles that stand side by side at the same x one is drawn."""
+        stands, margin = peak.placement, edge(stations)
+        abreast = int(stands.vehicle.max(initial=0)) + 1
+        first = stands.vehicle == 0
+        alike = first.sum() * abreast == first.size and bool((stands.x == np.tile(stands.x[first], abreast)).all())
+        drawn = first if alike else np.ones(first.size, dtype=np.bool_)
+        x, loads = stands.x[drawn], stands.load[drawn]
         on = (x >= stations[0] - margin) & (x <= stations[-1] + margin)
         room = _ROOM * (stations[-1] - stations[0])
         shown = (x >= stations[0] - room) & (x <= stations[-1] + room)
-        return cls(x, peak.placement.load, on, shown, peak.heading, peak.case, float(room))
+        return cls(x, loads, on, shown, peak.heading, peak.case, float(room), abreast if alike else 1)
 
     def extent(self, first: float, last: float) -> tuple[float, float]:
         """Return the x of the bridge's ends, widened so that the drawn axles fit [m]."""
@@ -91,7 +99,8 @@ class Train:
     def gross(self, units: UnitSystem) -> str:
         """Return the weight of the whole vehicle with its unit."""
         weight = units.shown(float(self.loads.sum()), "force")
-        return f"{plain(weight, min(figures(weight, 4), 1)).removesuffix('.0')} {units.force}"
+        each = f" each, {self.abreast} side by side" if self.abreast > 1 else ""
+        return f"{plain(weight, min(figures(weight, 4), 1)).removesuffix('.0')} {units.force}{each}"
 
 
 def load_levels(places: Sequence[float], widths: Sequence[float]) -> list[int]:

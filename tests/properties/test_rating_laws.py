@@ -1,0 +1,219 @@
+"""Laws that every rating keeps, whatever the bridge: trusses, stringers, floorbeams and planks in one.
+
+Ratings are compared as what they use of the strength, 1 / RF: 0 where nothing is felt, however round-off puts it.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+from typing import TYPE_CHECKING, Final
+
+import numpy as np
+from hypothesis import assume, given, settings
+from hypothesis import strategies as st
+from numpy.testing import assert_allclose
+from oracles.trusses import bottom, pratt, scaled, simple_span
+from strategies import heights, panel_lengths
+
+from movload import Bridge, Crossing, Deck, Loading, Member, Truss, Vehicle, rate
+from movload.bridge.floor import Floor, Floorbeams, Planks, Stringers
+from movload.bridge.permanent import CLASSES, Item, PermanentItems
+from movload.bridge.roadway import Roadway, span_of_place
+from movload.bridge.strengths import TypedStrength
+from movload.files.factor_sets import read_factor_set
+
+if TYPE_CHECKING:
+    from movload import Ratings
+    from movload.arrays import Floats
+    from movload.rating.factor_sets import FactorSet
+
+CLOSE: Final = 1e-9  # relative to the most used part: statics keep about 1e-12 of the largest ordinate
+METHODS: Final = tuple(read_factor_set(name) for name in ("permitted", "lrfr", "load factor", "en"))
+some = settings(max_examples=15)  # a bridge and two ratings each
+
+
+@dataclass(frozen=True)
+class Case:
+    """A bridge, a vehicle and a method."""
+
+    bridge: Bridge
+    vehicle: Vehicle
+    method: FactorSet
+
+    def rated(self, place: str = "anywhere", z: float = 0.0, **changes: object) -> Ratings:
+        """Return the ratings of the vehicle in a place."""
+        return rate(self.bridge, [Crossing(Loading.of(self.vehicle, "legal"), place, z, **changes)], self.method)
+
+
+def use(ratings: Ratings) -> Floats:
+    """Return 1 / RF (S, R, 2): infinite where permanent load uses all strength, nan where none is known."""
+    with np.errstate(divide="ignore"):
+        return 1.0 / ratings.factor[:, 0]
+
+
+def assert_no_better(worse: Ratings, better: Ratings) -> None:
+    """Check that no row of the first rates higher than in the second, round-off aside."""
+    most, least = use(worse), use(better)
+    assert (np.isnan(most) == np.isnan(least)).all()
+    felt = np.isfinite(least)
+    assert (most[felt] >= least[felt] - CLOSE * least[felt].max(initial=0.0)).all()
+    assert np.isinf(most[np.isinf(least)]).all()
+
+
+def assert_alike(found: Floats, expected: Floats) -> None:
+    """Check that the same is used of every strength."""
+    assert_allclose(found, expected, rtol=CLOSE, atol=CLOSE * expected[np.isfinite(expected)].max(initial=0.0))
+
+
+def both(low: float, high: float) -> st.SearchStrategy[tuple[float, float]]:
+    """Draw two numbers."""
+    return st.tuples(st.floats(low, high), st.floats(low, high))
+
+
+@st.composite
+def strengths(draw: st.DrawFn) -> TypedStrength:
+    """Draw the strengths of one part in every sense, on two footings [N, N m]."""
+    values = dict(zip(("tension", "compression", "moment", "hogging", "shear"),
+                      draw(st.lists(st.floats(150e3, 900e3), min_size=5, max_size=5)), strict=True))  # fmt: skip
+    condition = draw(st.sampled_from(["good", "fair", "poor"]))
+    return TypedStrength(values, values, condition=condition, measured=draw(st.booleans()), system="other")
+
+
+@st.composite
+def items(draw: st.DrawFn, half: float) -> Item:
+    """Draw what lies somewhere between the trusses."""
+    low, high = sorted(half * (1.0 - 2.0 * part) for part in draw(both(0.0, 1.0)))
+    line = draw(st.floats(0.2e3, 6e3))
+    return Item("drawn", draw(st.sampled_from(CLASSES)), line=line, low=low, high=high)
+
+
+@st.composite
+def floors(draw: st.DrawFn, half: float, brackets: tuple[float, float]) -> Floor:
+    """Draw a floor: 2 to 5 stringers between the trusses, the outer ones within a quarter of them."""
+    bays = np.cumsum([0.0, *draw(st.lists(st.floats(0.4, 1.0), min_size=1, max_size=4))])
+    first, last = (half * (0.75 + 0.25 * part) for part in draw(both(0.0, 1.0)))
+    z = tuple(-first + (first + last) * bays / bays[-1])
+    beams = Floorbeams(brackets, weight=draw(st.floats(0.0, 1e3)), strength=draw(strengths()))
+    stringers = Stringers(z, weight=draw(st.floats(0.0, 0.5e3)), strength=draw(strengths()))
+    return Floor(stringers, beams, Planks(0.2, 0.7, strength=draw(strengths())))
+
+
+@st.composite
+def cases(draw: st.DrawFn) -> Case:
+    """Draw a bridge of 3 or 4 panels with a floor, kerbs off the middle, and a lopsided vehicle that fits."""
+    panels = draw(st.lists(panel_lengths, min_size=3, max_size=4))
+    joints, ends = pratt(panels, draw(st.lists(heights, min_size=len(panels) - 1, max_size=len(panels) - 1)))
+    density = draw(st.sampled_from([0.0, 7850.0]))
+    members = [Member(start, end, 5e-3, 200e9, density=density) for start, end in ends]
+    truss = Truss(joints, members, simple_span(len(panels)))
+    half = draw(st.floats(2.2, 3.6))
+    brackets = draw(st.sampled_from([(0.0, 0.0), (0.0, 0.0), (0.7, 0.4)]))
+    right, left = (half - inset for inset in draw(both(0.0, 0.4)))
+    reach = draw(st.booleans())
+    kerbs = (-right - reach * brackets[0], left + reach * brackets[1])
+    roadway = Roadway(*kerbs, clearance=draw(st.floats(0.0, 0.3)), keeps=draw(st.sampled_from(["right", "left"])))
+    typed = draw(st.lists(strengths(), min_size=3, max_size=3))
+    bridge = Bridge(
+        "drawn",
+        truss,
+        Deck(tuple(bottom(len(panels))), truss_spacing=2.0 * half, roadway=roadway),
+        permanent=PermanentItems(tuple(draw(st.lists(items(half), max_size=3)))),
+        strengths={member.name: typed[number % 3] for number, member in enumerate(members)},
+        floor=draw(floors(half, brackets)),
+        impact=draw(st.sampled_from([0.0, 0.25])),
+        traffic=draw(st.sampled_from([np.inf, 2500.0])),
+    )
+    return Case(bridge, draw(machines()), draw(st.sampled_from(METHODS)))
+
+
+@st.composite
+def machines(draw: st.DrawFn) -> Vehicle:
+    """Draw a vehicle of 1 to 3 axles, each with its gauge and its left wheels' part."""
+    loads = draw(st.lists(st.floats(10e3, 160e3), min_size=1, max_size=3))
+    count = len(loads)
+    spacings = draw(st.lists(st.floats(0.8, 6.0), min_size=count - 1, max_size=count - 1))
+    gauges = draw(st.lists(st.floats(0.7, 1.9), min_size=count, max_size=count))
+    lefts = draw(st.just([0.5] * count) | st.lists(st.floats(0.35, 0.65), min_size=count, max_size=count))
+    headings = draw(st.sampled_from([(1, -1), (1,), (-1,)]))
+    return Vehicle("drawn", loads, spacings, gauges=tuple(gauges), left_shares=tuple(lefts), headings=headings)
+
+
+@some
+@given(cases())
+def test_a_vehicle_times_its_rating_rates_one(case: Case) -> None:
+    """Every row's rating is divided by the same, so the row that governs now has 1."""
+    before = case.rated()
+    governing = before.governing(0)
+    assume(0.0 < governing.factor < np.inf)
+    loads = case.vehicle.loads * governing.factor
+    after = replace(case, vehicle=replace(case.vehicle, loads=loads)).rated()
+    assert_alike(use(after), governing.factor * use(before))
+    level = after.levels.index(governing.level)
+    assert_allclose(after.factor[level, 0, governing.row, governing.side], 1.0, rtol=CLOSE)
+    assert_allclose(after.governing(0).factor, 1.0, rtol=CLOSE)
+
+
+@some
+@given(cases(), st.data())
+def test_permanent_load_that_pushes_lowers_a_rating_and_such_as_relieves_raises_it(case: Case, data: st.DataObject) -> None:
+    bridge = case.bridge
+    more = data.draw(items(0.5 * bridge.deck.truss_spacing))
+    assert bridge.permanent is not None
+    heavier = replace(bridge, permanent=PermanentItems((*bridge.permanent.items, more)))
+    before, after = case.rated(), replace(case, bridge=heavier).rated()
+    added = (after.solved.permanent - before.solved.permanent).sum(axis=0)
+    noise = CLOSE * max(np.abs(one.solved.permanent).max() for one in (before, after))
+    used, now = use(before), use(after)
+    for side, pushed in ((0, added), (1, -added)):
+        of_side, then = now[:, :, side], used[:, :, side]
+        felt = np.isfinite(then) & (then > CLOSE)  # 0: no live load there, so no weight matters unless it uses all
+        assert (of_side[felt & (pushed > noise)] > then[felt & (pushed > noise)]).all()
+        assert (of_side[felt & (pushed < -noise)] < then[felt & (pushed < -noise)]).all()
+        rest = felt & (np.abs(pushed) <= noise)
+        assert_allclose(of_side[rest], then[rest], rtol=1e-6)
+
+
+def mirrored_bridge(bridge: Bridge) -> Bridge:
+    """Return the bridge with its left and its right swapped."""
+    deck, floor = bridge.deck, bridge.floor
+    assert deck.roadway is not None and floor.stringers is not None and floor.floorbeams is not None
+    way = deck.roadway
+    keeps = {"right": "left", "left": "right"}[way.keeps]
+    return replace(
+        bridge,
+        deck=replace(deck, roadway=replace(way, right=-way.left, left=-way.right, keeps=keeps)),
+        permanent=PermanentItems(tuple(replace(one, low=-one.high, high=-one.low) for one in bridge.permanent.items)),
+        floor=replace(
+            floor,
+            stringers=replace(floor.stringers, z=tuple(-z for z in reversed(floor.stringers.z))),
+            floorbeams=replace(floor.floorbeams, brackets=floor.floorbeams.brackets[::-1]),
+        ),
+    )
+
+
+def mirrored_key(key: tuple[str, str], stringers: int) -> tuple[str, str]:
+    """Return what a row is called on the other side."""
+    swap = {"left": "right", "right": "left"} | {f"S{n}": f"S{stringers + 1 - n}" for n in range(1, stringers + 1)}
+    part, name = (" ".join(swap.get(word, word) for word in words.split(" ")) for words in key)
+    return part, name
+
+
+@some
+@given(cases(), st.sampled_from([("anywhere", "anywhere"), ("left kerb", "right kerb"), ("own lane", "own lane")]))
+def test_a_bridge_mirrored_across_swaps_left_and_right(case: Case, places: tuple[str, str]) -> None:
+    """Own lane too, where traffic then keeps to the other side; a vehicle's heavy wheels change sides with it."""
+    vehicle = replace(case.vehicle, left_shares=tuple(1.0 - share for share in case.vehicle.left_shares))
+    other = replace(case, bridge=mirrored_bridge(case.bridge), vehicle=vehicle)
+    assume(places[0] != "own lane" or fits_own_lane(case))
+    here, there = case.rated(places[0]), other.rated(places[1])
+    rows = {effect.key: row for row, effect in enumerate(there.solved.effects)}
+    stringers = len(case.bridge.floor.stringers.z)
+    swapped = [rows[mirrored_key(effect.key, stringers)] for effect in here.solved.effects]
+    assert sorted(swapped) == list(range(len(rows)))
+    assert_alike(use(there)[:, swapped], use(here))
+
+
+def fits_own_lane(case: Case) -> bool:
+    """Return whether half of the roadway is wide enough."""
+    way = case.bridge.deck.roadway
+    return 0.5 * (way.left - way.right) - way.clearance - 0.5 * way.between >= max(case.vehicle.gauges)
