@@ -41,6 +41,21 @@ class Across:
         if (np.diff(self.z) <= 0).any():
             raise InputError("places must increase from right to left", place="across")
 
+    def __eq__(self, other: object) -> bool:
+        """Return whether another line is the same: what was found for one is then true of the other."""
+        if not isinstance(other, Across):
+            return NotImplemented
+        return self._bytes == other._bytes
+
+    def __hash__(self) -> int:
+        """By value."""
+        return hash(self._bytes)
+
+    @property
+    def _bytes(self) -> tuple[bytes, bytes]:
+        """The line as bytes."""
+        return self.z.tobytes(), self.ordinate.tobytes()
+
     @classmethod
     def typed(cls, share: float) -> Across:
         """Return the across line of a share that was typed, the same wherever the wheel stands."""

@@ -42,7 +42,8 @@ class Stringers:
         if len(self.z) < 2:
             raise InputError(f"at least 2 stringers carry a floor, got {len(self.z)}", place=f"{place}.z")
         if not (np.isfinite(self.z).all() and (np.diff(self.z) > 0).all()):
-            raise InputError("stringers stand from right to left, z increasing", place=f"{place}.z")
+            said = ", ".join(f"{z:g}" for z in self.z)
+            raise InputError(f"stringers stand from right to left, z increasing, got {said} m", place=f"{place}.z")
         if self.fraction is not None and not 0 < self.fraction <= _MOST_FRACTION:
             raise InputError(
                 f"must be above 0 and at most {_MOST_FRACTION:g} of a whole axle, got {self.fraction}",

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from contextlib import contextmanager
 from dataclasses import replace
 from typing import TYPE_CHECKING, Annotated
 
@@ -21,11 +22,13 @@ from movload.cli.options import (
 )
 
 if TYPE_CHECKING:
-    from collections.abc import Callable
+    from collections.abc import Callable, Iterator
+    from pathlib import Path
 
     from movload.bridge.bridge import Bridge
     from movload.rating.rating import Rating
     from movload.rating.ratings import Ratings
+    from movload.rating.solved import SolvedBridge
     from movload.traffic.crossing import Crossing
 
 Method = Annotated[
@@ -84,7 +87,6 @@ def rate(
     check_outputs(csv, plot, force=force, inputs=[bridge, *vehicle])
     from movload.files.factor_sets import read_factor_set
     from movload.files.read import read_bridge
-    from movload.rating.judge import judge
     from movload.rating.solved import solve
     from movload.report.rating_text import rating_text
     from movload.report.ratings_report import ratings_csv, ratings_json
@@ -95,8 +97,9 @@ def rate(
     factors = read_factor_set(method)
     with naming(bridge):
         solved = solve(stands, factors)
-    ratings = judge(solved, _crossings(vehicle, at, speed, abreast=abreast, wander=wander))
-    wanted = [_asked(ratings, row) for row in explain or []]
+    ratings = _judged(solved, _crossings(vehicle, at, speed, abreast=abreast, wander=wander), bridge)
+    with naming(bridge):
+        wanted = [_asked(ratings, row) for row in explain or []]
     rows = [row for number in range(len(ratings.crossings)) for row in ratings.rows(number)]
     deliver(
         text=lambda: rating_text(ratings, _station_names(stands), every=every, explain=wanted),
@@ -113,19 +116,33 @@ def rate(
 
 def _crossings(
     vehicles: list[str], places: list[str] | None, speeds: list[str] | None, *, abreast: int, wander: str | None
-) -> list[Crossing]:
-    """Return every vehicle in every place at every speed."""
+) -> list[tuple[str, Crossing]]:
+    """Return every vehicle in every place at every speed, with the name it was asked for by."""
     from movload.traffic.crossing import WANDER, Crossing
 
     stray = WANDER if wander is None else _quantity(wander, "length", "--wander")
     where = [_place(one) for one in places or ["anywhere"]]
     rates: list[float | None] = [_quantity(one, "speed", "--speed") for one in speeds or []]
     return [
-        Crossing(loading, place, z, lanes=abreast, speed=rate, wander=stray)
-        for loading in read_loadings(vehicles)
+        (name, Crossing(loading, place, z, lanes=abreast, speed=rate, wander=stray))
+        for name, loading in zip(vehicles, read_loadings(vehicles), strict=True)
         for place, z in where
         for rate in rates or [None]
     ]
+
+
+def _judged(solved: SolvedBridge, crossings: list[tuple[str, Crossing]], bridge: Path) -> Ratings:
+    """Return the ratings; where one cannot cross, the error says who and where."""
+    from movload.errors import MovloadError
+    from movload.rating.judge import judge
+
+    try:
+        return judge(solved, [one for _, one in crossings])
+    except MovloadError:
+        for name, one in crossings:
+            with naming(f"{name} on {bridge}"):
+                judge(solved, [one])
+        raise
 
 
 def _place(said: str) -> tuple[str, float]:
@@ -147,22 +164,40 @@ def _place(said: str) -> tuple[str, float]:
 
 def _quantity(text: str, quantity: str, option: str) -> float:
     """Return a typed option in SI; errors name the option."""
-    from movload.errors import InputError
     from movload.units import to_si
 
-    try:
+    with _naming_option(option):
         return to_si(text, quantity)  # type: ignore[arg-type]  # one of the quantities
+
+
+@contextmanager
+def _naming_option(option: str) -> Iterator[None]:
+    """Say which option is wrong, whatever the domain calls its place."""
+    from movload.errors import InputError
+
+    try:
+        yield
     except InputError as error:
         raise type(error)(error.rule, place=option, nearest=error.nearest) from None
 
 
 def _asked(ratings: Ratings, row: str) -> Rating:
-    """Return the worst rating of a row that was asked about, over crossings, levels and senses."""
+    """Return the worst rating of a row that was asked about, over crossings, levels, senses and parts that share it."""
     from movload.errors import MissingDataError
+    from movload.rating.ratings import EITHER
     from movload.statics.part import row_of
 
-    number = row_of(ratings.solved.effects, row)
-    found = [one for crossing in range(len(ratings.crossings)) for one in ratings.of_row(crossing, number)]
+    said = row.replace(", ", " ").removeprefix(f"{EITHER} ")  # as the answer writes it
+    effects = ratings.solved.effects
+    first = effects[row_of(effects, said)]
+    parts = {first.part} if said.startswith(f"{first.part} ") else {effect.part for effect in effects}
+    found = [
+        one
+        for number, effect in enumerate(effects)
+        if effect.name == first.name and effect.part in parts
+        for crossing in range(len(ratings.crossings))
+        for one in ratings.of_row(crossing, number)
+    ]
     if not found:
         raise MissingDataError("has no strength, so it is not rated", place=f"--explain {row}")
     return min(found, key=lambda one: one.factor)
@@ -183,7 +218,8 @@ def _with_impact(stands: Bridge, impact: str) -> Bridge:
     missing = tuple(place for place in stands.missing if place != "rating.impact")
     if any(sign.isdigit() for sign in impact):
         typed = _quantity(impact, "fraction", "--impact")
-        return replace(stands, impact=typed, impact_rule="", missing=missing)
+        with _naming_option("--impact"):
+            return replace(stands, impact=typed, impact_rule="", missing=missing)
     if impact not in RULES[1:]:
         raise UnknownNameError(
             f'"{impact}" is no fraction and none of {", ".join(RULES[1:])}',

@@ -4,12 +4,13 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from movload.bridge.deck import Deck
+from movload.bridge.deck import KINDS, Deck
 from movload.bridge.floor import Floor, Floorbeams, Planks, Stringers
 from movload.bridge.permanent import Item, PermanentItems
 from movload.bridge.roadway import BETWEEN, Roadway
-from movload.errors import InputError, MissingDataError, MovloadError
+from movload.errors import InputError, MissingDataError, MovloadError, UnknownNameError, nearest_name
 from movload.files.bars import strength_of
+from movload.files.toml import written_key
 
 if TYPE_CHECKING:
     from movload.bridge.deck import PanelPoint
@@ -23,7 +24,7 @@ def deck_of(table: BridgeFile, panel_points: tuple[PanelPoint, ...], missing: tu
     """Return the deck with its kerbs; without them while any of what places them still holds "?"."""
     deck = table.deck
     by_layout = table.layout.deck if table.layout else ""
-    if deck.kind and by_layout and deck.kind != by_layout:
+    if deck.kind in KINDS and by_layout and deck.kind != by_layout:
         raise InputError(f'"{deck.kind}" contradicts layout.deck = "{by_layout}"', place="deck.kind")
     return Deck(
         panel_points,
@@ -96,7 +97,7 @@ def permanent_of(table: BridgeFile, deck: Deck, missing: tuple[str, ...]) -> Per
     try:
         return PermanentItems(tuple(items), detail_allowance=permanent.detail_allowance or 0.0)
     except MovloadError as error:
-        raise error.at("permanent") from None
+        raise _within("permanent", error) from None
 
 
 def _whole_deck(permanent: PermanentTable, deck: Deck) -> Item:
@@ -119,6 +120,8 @@ def _item(table: ItemTable, deck: Deck, place: str) -> Item:
     if len(said) != 1:
         told = f"got {' and '.join(said)}" if said else "got none"
         raise InputError(f"its weight is one of {', '.join(_WEIGHTS)}; {told}", place=place)
+    if table.density is not None and table.thickness is None:
+        raise InputError(f"goes with thickness; the weight is said by {said[0]}", place=f"{place}.density")
     low, high = _lies(table, deck, place)
     try:
         if table.per_area is not None:
@@ -129,10 +132,29 @@ def _item(table: ItemTable, deck: Deck, place: str) -> Item:
             return Item.layer(
                 table.title, table.kind, thickness=table.thickness, density=table.density, across=(low, high)
             )
-        points = tuple((table.points or {}).items())
+        points = _points(table, deck)
         return Item(table.title, table.kind, line=table.line or 0.0, points=points, low=low, high=high)
     except MovloadError as error:
-        raise error.at(place) from None
+        raise _within(place, error) from None
+
+
+def _points(table: ItemTable, deck: Deck) -> tuple[tuple[str, float], ...]:
+    """Return an item's weights at panel points [N]."""
+    if table.points is None:
+        return ()
+    if not table.points:
+        raise InputError("no panel point is named", place="points")
+    known = [point for point in deck.panel_points if isinstance(point, str)]
+    for name in table.points:
+        if name not in known:
+            near = nearest_name(name, known)
+            raise UnknownNameError(f'"{name}" is no panel point', place=f"points.{written_key(name)}", nearest=near)
+    return tuple(table.points.items())
+
+
+def _within(place: str, error: MovloadError) -> MovloadError:
+    """Return an error with its key put within the table at a place of the file."""
+    return type(error)(error.rule, place=f"{place}.{error.place}", nearest=error.nearest)
 
 
 def _lies(table: ItemTable, deck: Deck, place: str) -> tuple[float, float]:

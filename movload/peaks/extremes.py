@@ -63,7 +63,7 @@ def _units(trains: Sequence[Train]) -> tuple[list[Train], Ints, Floats]:
 def unit_of(train: Train) -> tuple[Train, float]:
     """Return the train of whole axles that a train is so many times, where all its axles have one share; or itself."""
     share = float(train.shares[0])
-    if train.shares.size > 1 and (train.shares != share).any():
+    if not train.even and (train.shares != share).any():
         return train, 1.0
     (whole,) = whole_trains(train.vehicle)
     return _heading_like(whole, train.headings), share * train.factor

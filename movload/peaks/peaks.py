@@ -168,14 +168,14 @@ def effects_at(response: Response, train: Train, position: float, heading: int) 
     return values
 
 
-def stacked(title: str, parts: Sequence[Swept]) -> Peaks:
-    """Return the peaks of all parts as one, rows in the order of the parts."""
+def stacked(title: str, parts: Sequence[Swept], effects: tuple[Effect, ...] = ()) -> Peaks:
+    """Return the peaks of all parts as one, rows in the order of the parts (their effects, where known already)."""
     if len(parts) == 1:
         (part,) = parts
         return Peaks(title, part.effects, part.highest, part.lowest, (part,))
     return Peaks(
         title,
-        tuple(effect for part in parts for effect in part.effects),
+        effects or tuple(effect for part in parts for effect in part.effects),
         held(np.concatenate([part.highest for part in parts])),
         held(np.concatenate([part.lowest for part in parts])),
         tuple(parts),

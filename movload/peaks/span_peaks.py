@@ -17,6 +17,7 @@ from movload.peaks.span_maxima import span_maxima, span_values
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
+    from movload.arrays import Ints
     from movload.statics.part import Effect
     from movload.statics.spans import SimpleSpans
     from movload.traffic.crossing import Train
@@ -47,8 +48,8 @@ class SpanPeaks:
         (R,) with impact; the lowest is 0, a simple span is never bent the other way.
     impact
         (R, 2) dynamic allowance.
-    governing
-        (R,) the formation that gives each row's highest.
+    by_formation
+        (F, R) what each formation gives at most.
     """
 
     response: SimpleSpans
@@ -56,7 +57,7 @@ class SpanPeaks:
     highest: Floats
     lowest: Floats
     impact: Floats
-    governing: np.ndarray[tuple[int, ...], np.dtype[np.intp]]
+    by_formation: Floats
 
     @property
     def effects(self) -> tuple[Effect, ...]:
@@ -69,7 +70,7 @@ class SpanPeaks:
 
     def _formation(self, row: int, side: int) -> Formation:
         """Return the formation that gives a row's highest; nothing is felt on the other side."""
-        return self.formations[int(self.governing[row]) if side == 0 else 0]
+        return self.formations[int(self.by_formation[:, row].argmax()) if side == 0 else 0]
 
     def peak(self, row: int, side: int) -> Peak:
         """Return one row's highest (side 0) peak; the lowest is always 0."""
@@ -130,31 +131,39 @@ def spans_peaks(
 ) -> list[SpanPeaks]:
     """Return the peaks of stringers that answer alike, each under one crossing's formations (see `swept_parts`)."""
     lengths, of_span = np.unique(responses[0].lengths, return_inverse=True)
-    trains = dict.fromkeys(train for formations in crossings for formation in formations for train in formation)
-    units = {train: unit_of(train) for train in trains}
-    values = _values(lengths, list(dict.fromkeys(unit for unit, _ in units.values())))
-    peaks = []
-    for response, formations, allowance in zip(responses, crossings, impact, strict=True):
-        felt = np.array([
-            sum(
-                units[train][1] * values[units[train][0]][:, of_span].T.reshape(-1)
-                * (1.0 + allowance[:, 0] if train.dynamic else 1.0)
-                for train in formation
-            )
-            for formation in formations
-        ])  # fmt: skip
-        highest = held(felt.max(axis=0))
-        lowest = held(np.zeros(highest.size))
-        peaks.append(SpanPeaks(response, formations, highest, lowest, allowance, felt.argmax(axis=0)))
-    return peaks
+    felt = _felt(lengths, of_span, [one for formations in crossings for formation in formations for one in formation])
+    sizes = [len(formation) for formations in crossings for formation in formations]
+    of_formation = np.repeat(impact[:, :, 0], [len(formations) for formations in crossings], axis=0)
+    dynamic = np.array([formation[0].dynamic for formations in crossings for formation in formations])
+    by_formation = np.add.reduceat(felt, np.cumsum([0, *sizes[:-1]]), axis=0)
+    by_formation *= 1.0 + dynamic[:, None] * of_formation
+    first = np.cumsum([0, *(len(formations) for formations in crossings)])
+    highest = held(np.maximum.reduceat(by_formation, first[:-1], axis=0))
+    lowest = held(np.zeros(highest.shape[1]))
+    return [
+        SpanPeaks(response, formations, highest[number], lowest, impact[number], by_formation[start:end])
+        for number, (response, formations, start, end) in enumerate(
+            zip(responses, crossings, first[:-1], first[1:], strict=True)
+        )
+    ]
 
 
-def _values(lengths: Floats, units: list[Train]) -> dict[Train, Floats]:
-    """Return moment and shear (2, L) of every train, worked out in one batch."""
+def _felt(lengths: Floats, of_span: Ints, trains: list[Train]) -> Floats:
+    """Return every train's static moment and shear in every span (T, R), trains alike but for a share worked out once."""
+    units: dict[Train, int] = {}
+    unit, times = np.empty(len(trains), dtype=np.intp), np.empty(len(trains))
+    for number, train in enumerate(trains):
+        whole, share = unit_of(train)
+        unit[number], times[number] = units.setdefault(whole, len(units)), share
+    rows: Floats = _values(lengths, list(units))[:, of_span].reshape(len(units), -1)
+    return rows[unit] * times[:, None]
+
+
+def _values(lengths: Floats, units: list[Train]) -> Floats:
+    """Return moment and shear (U, L, 2) of every train, worked out in one batch."""
     widest = max(train.felt.size for train in units)
     distances, felt = np.zeros((2, len(units), widest))
     for number, train in enumerate(units):
         distances[number, : train.felt.size] = train.vehicle.distances
         felt[number, : train.felt.size] = train.felt
-    moment, shear = span_values(lengths, distances, felt)
-    return {train: np.stack((moment[number], shear[number])) for number, train in enumerate(units)}
+    return np.stack(span_values(lengths, distances, felt), axis=2)

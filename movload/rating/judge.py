@@ -94,8 +94,9 @@ def _peaks(solved: SolvedBridge, crossings: Sequence[Crossing], impact: Floats) 
         responses = [solved.parts[number].response for number in group for _ in crossings]
         keys = [(number, crossing) for number in group for crossing in range(len(crossings))]
         found |= zip(keys, swept_parts(responses, formations, of_rows), strict=True)
+    effects = solved.effects
     return tuple(
-        stacked(one.title, [found[number, crossing] for number in range(len(solved.parts))])
+        stacked(one.title, [found[number, crossing] for number in range(len(solved.parts))], effects)
         for crossing, one in enumerate(crossings)
     )
 

@@ -68,7 +68,9 @@ def _of_floor(bridge: Bridge) -> dict[str, str]:
                 f"A stringer takes {floor.stringers.fraction:g} of a whole axle, as typed, however many stand abreast."
             )
     if floor.planks is not None:
-        texts["planks"] = "A plank is rated for the heaviest single wheel alone, its own weight left out."
+        texts["planks"] = (
+            "A plank is rated for the heaviest single wheel alone: no multiple presence, its own weight left out."
+        )
     return texts
 
 

@@ -13,8 +13,8 @@ if TYPE_CHECKING:
 class Deflection:
     """The greatest live deflection of one panel point under one crossing, impact included.
 
-    ``part``, ``point`` and ``crossing`` by name; ``down`` [m]; ``span`` [m] between the end stations; ``ratio`` =
-    span / down; ``limit`` = n of a limit span / n, None when none is asked.
+    ``part``, ``point`` and ``crossing`` by name; ``down`` [m]; ``span`` [m] between the bearings beside the point, or from
+    the last bearing to the end where it overhangs; ``ratio`` = span / down; ``limit`` = n of a limit span / n, None when none is asked.
     """
 
     part: str
@@ -42,12 +42,11 @@ def deflections(ratings: Ratings) -> list[Deflection]:
     for number, crossing in enumerate(ratings.crossings):
         first = 0
         for part in solved.parts:
-            stations = part.response.stations
-            span = float(stations[-1] - stations[0])
             for row, effect in enumerate(part.response.effects, start=first):
                 if effect.kind == "down" and ratings.counted(row):
                     down = float(ratings.peaks[number].highest[row])
                     point = effect.name.removesuffix(" down")
+                    span = solved.spans.get(point, 0.0)
                     said = ratings.said(effect)
                     limit = solved.deflection_limit
                     found.append(Deflection(said, point, crossing.title, number, down, span, limit))

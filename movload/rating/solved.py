@@ -22,7 +22,7 @@ from movload.statics.permanent import PERMANENT_CLASSES, permanent_effects
 from movload.statics.stiffness import factored
 
 if TYPE_CHECKING:
-    from collections.abc import Sequence
+    from collections.abc import Mapping, Sequence
 
     from movload.bridge.bridge import Bridge
     from movload.bridge.roadway import Roadway
@@ -67,6 +67,8 @@ class SolvedBridge:
         (levels, R, 2) number of each row's strength among those.
     traffic
         Trucks a day one way; None when nobody has said, infinite when unknown.
+    spans
+        Length of the span that each panel point stands in [m], by its name.
     deflection_limit
         n of a limit span / n on the live deflection; None when none is asked.
     not_rated
@@ -87,6 +89,7 @@ class SolvedBridge:
     strengths: tuple[Strength, ...] = field(default=(), kw_only=True)
     which: np.ndarray[tuple[int, ...], np.dtype[np.intp]] | None = field(default=None, kw_only=True)
     traffic: float | None = field(default=None, kw_only=True)
+    spans: Mapping[str, float] = field(default_factory=dict, kw_only=True)
     deflection_limit: float | None = field(default=None, kw_only=True)
     not_rated: tuple[str, ...] = field(default=("floor", "deck"), kw_only=True)
 
@@ -139,6 +142,7 @@ def solve(bridge: Bridge, method: FactorSet = PERMITTED) -> SolvedBridge:
         strengths=strengths,
         which=which,
         traffic=bridge.traffic,
+        spans=_spans(bridge),
         deflection_limit=bridge.deflection_limit,
         not_rated=_not_rated(bridge),
     )
@@ -181,6 +185,18 @@ def _typed(bridge: Bridge, of_members: dict[str, TypedStrength], effect: Effect)
     beams = {"stringer": floor.stringers, "floorbeam": floor.floorbeams, "planks": floor.planks}
     part = beams.get(effect.part.partition(" ")[0])
     return part.strength if part is not None and effect.kind in SENSES else None
+
+
+def _spans(bridge: Bridge) -> dict[str, float]:
+    """Return the length [m] between the bearings beside each panel point, or from the last one to an overhanging end."""
+    x = {point: bridge.truss.joints[point][0] for point in bridge.deck.panel_points if isinstance(point, str)}
+    bearings = np.unique([bridge.truss.joints[support.joint][0] for support in bridge.truss.supports])
+    ends = np.unique([*bearings, *(place for place, _ in bridge.truss.joints.values())])[[0, -1]]
+    walls = np.unique([*bearings, *ends])
+    last = np.clip(np.searchsorted(walls, list(x.values()), side="right"), 1, walls.size - 1)
+    beside = np.clip(np.searchsorted(walls, list(x.values()), side="left"), 1, walls.size - 1)
+    longer = np.maximum(walls[last] - walls[last - 1], walls[beside] - walls[beside - 1])
+    return dict(zip(x, map(float, longer), strict=True))
 
 
 def _not_rated(bridge: Bridge) -> tuple[str, ...]:

@@ -96,6 +96,8 @@ class Train:
         Where its middle keeps across [m]; nan where a share was typed.
     factor
         What the case and the number abreast multiply it by [-].
+    even
+        Whether all shares are known to be one number.
     """
 
     case: str
@@ -106,6 +108,7 @@ class Train:
     dynamic: bool = field(default=True, kw_only=True)
     z: float = field(default=math.nan, kw_only=True)
     factor: float = field(default=1.0, kw_only=True)
+    even: bool = field(default=False, kw_only=True)
 
     @property
     def felt(self) -> Floats:
@@ -148,4 +151,4 @@ def even_train(case: str, vehicle: Vehicle, share: float, *, factor: float = 1.0
     if vehicle.strips or vehicle.tail is not None:
         raise InputError("uniform loads that move with a vehicle cannot be swept yet", place=vehicle.title)
     shares = held(np.full(vehicle.loads.size, share))
-    return Train(case, vehicle, shares, headings=vehicle.headings, factor=factor, dynamic=dynamic)
+    return Train(case, vehicle, shares, headings=vehicle.headings, factor=factor, dynamic=dynamic, even=True)

@@ -10,7 +10,7 @@ import numpy as np
 
 from movload.arrays import Floats, Ints, held
 from movload.bridge.roadway import span_of_place
-from movload.errors import InputError, MissingDataError
+from movload.errors import InputError, MissingDataError, MovloadError
 from movload.traffic.abreast import candidate_places, shares_at, worst_groups
 from movload.traffic.crossing import ANYWHERE, MOST_ABREAST, TYPED_SHARE, Train, axles_only, even_train
 
@@ -115,9 +115,7 @@ def _ways(crossing: Crossing, roadway: Roadway, presence: tuple[float, ...]) -> 
         kinds = tuple(dict.fromkeys(axles))
         of_kind = np.array([kinds.index(axle) for axle in axles], dtype=np.intp)
         for headings in _headings(vehicle, crossing):
-            room = span_of_place(
-                roadway, crossing.place, gauge=max(gauges), heading=headings[0], z=crossing.z, wander=crossing.wander
-            )
+            room = _room(crossing, roadway, max(gauges), headings[0])
             found += [
                 _Way(
                     case.title, vehicle, headings, kinds, of_kind, room, max(gauges) + roadway.between, count,
@@ -126,6 +124,16 @@ def _ways(crossing: Crossing, roadway: Roadway, presence: tuple[float, ...]) -> 
                 for count in _counts(crossing, case, roadway, max(gauges))
             ]  # fmt: skip
     return tuple(found)
+
+
+def _room(crossing: Crossing, roadway: Roadway, width: float, heading: int) -> tuple[float, float]:
+    """Return the range of the vehicle's middle [m]; errors name what crosses."""
+    try:
+        return span_of_place(
+            roadway, crossing.place, gauge=width, heading=heading, z=crossing.z, wander=crossing.wander
+        )
+    except MovloadError as error:
+        raise error.at(crossing.title) from None
 
 
 def _counts(crossing: Crossing, case: Case, roadway: Roadway, width: float) -> range:
@@ -144,7 +152,7 @@ def _abreast(across: Across, way: _Way, *, dynamic: bool) -> list[Formation]:
         tuple(
             Train(
                 way.case, way.vehicle, held(shares[way.of_kind]), headings=way.headings, z=z, factor=way.factor,
-                dynamic=dynamic,
+                dynamic=dynamic, even=len(way.kinds) == 1,
             )
             for z, shares in group
         )

@@ -6,9 +6,9 @@ import math
 from collections.abc import Callable
 from typing import Annotated, Any, Final, Literal
 
-from pydantic import BeforeValidator, Field, ValidationInfo, WithJsonSchema, model_validator
+from pydantic import AfterValidator, BeforeValidator, Field, ValidationInfo, WithJsonSchema, model_validator
 
-from movload.errors import InputError, nearest_name
+from movload.errors import InputError, UnknownNameError, nearest_name
 from movload.files.schema.quantities import (
     STILL_HELD,
     Area,
@@ -29,7 +29,8 @@ from movload.files.schema.quantities import (
     shown,
     units_in,
 )
-from movload.files.toml import PLACEHOLDER, written_key
+from movload.files.toml import PLACEHOLDER, short, written_key
+from movload.rating.impact import RULES, SURFACES
 
 
 def _place_across(value: object, info: ValidationInfo) -> str | tuple[float, float]:
@@ -51,19 +52,38 @@ def _place_across(value: object, info: ValidationInfo) -> str | tuple[float, flo
 def _impact(value: object, info: ValidationInfo) -> float | str:
     """Return a fraction, or the name of a rule."""
     if isinstance(value, str) and not any(sign.isdigit() for sign in value):
-        return value
+        return _known(value, RULES[1:], "no fraction and none")
     return number(value, "fraction", units_in(info))
+
+
+def _surface(value: str) -> str:
+    """Return the name of a riding surface."""
+    return _known(value, SURFACES, "not one")
+
+
+def _known(value: str, known: tuple[str, ...], what: str) -> str:
+    """Return a name that is one of those known."""
+    if value not in known:
+        said = STILL_HELD if value == PLACEHOLDER else f'"{short(value)}" is {what} of {", ".join(known)}'
+        raise UnknownNameError(said, nearest=nearest_name(value, known))
+    return value
 
 
 def _traffic(value: object, info: ValidationInfo) -> float:
     """Return trucks a day, infinite for unknown."""
+    if isinstance(value, str) and value != "unknown":
+        said = STILL_HELD if value == PLACEHOLDER else f'trucks a day or "unknown" is asked for, got {shown(value)}'
+        raise InputError(said)
     return math.inf if value == "unknown" else number(value, "fraction", units_in(info))
 
 
 def _count(value: object, info: ValidationInfo) -> float:
     """Return n of a limit span / n."""
-    if isinstance(value, bool) or not isinstance(value, (int, float)):
-        raise InputError(f"n of a limit span / n is asked for, got {shown(value)}")
+    if isinstance(value, bool) or not isinstance(value, (int, float)) or value <= 0:
+        said = (
+            STILL_HELD if value == PLACEHOLDER else f"n of a limit span / n is asked for, above 0, got {shown(value)}"
+        )
+        raise InputError(said)
     return number(value, "fraction", units_in(info))
 
 
@@ -77,6 +97,7 @@ Across = Annotated[str | tuple[float, float], *_read_by(_place_across, ["string"
 Impact = Annotated[float | str, *_read_by(_impact, ["number", "string"])]
 Traffic = Annotated[float, *_read_by(_traffic, ["number", "string"])]
 Count = Annotated[float, *_read_by(_count, ["number"])]
+Surface = Annotated[Text, AfterValidator(_surface)]
 
 
 class LayoutTable(Table):
@@ -234,7 +255,7 @@ class RatingTable(Table):
     """What a rating takes as given."""
 
     impact: Impact | None = Field(None, description='a fraction, or "by loaded length", "by riding surface", "railway"')
-    surface: Text | None = Field(None, description="smooth, minor or severe")
+    surface: Surface | None = Field(None, description="smooth, minor or severe")
     traffic: Traffic | None = Field(None, description='trucks a day one way, or "unknown"')
     deflection: Count | None = Field(None, description="n: live deflection at most span / n")
 
