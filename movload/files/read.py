@@ -164,12 +164,14 @@ def _loading(table: VehicleFile) -> Loading:
     if gauges and len(gauges) != len(table.axles):
         bare = next(number for number, axle in enumerate(table.axles) if axle.gauge is None)
         raise InputError("some axles have a gauge and this one has none", place=f"axles[{bare}].gauge")
+    lefts = tuple(0.5 if axle.left is None else axle.left for axle in table.axles)
     with _placed(_axle_place):
         vehicle = Vehicle(
             table.title,
             np.array([axle.load for axle in table.axles]),
             [axle.after for axle in table.axles if axle.after is not None],
             gauges=gauges,
+            left_shares=lefts if any(axle.left is not None for axle in table.axles) else (),
             headings=tuple({"+x": 1, "-x": -1}[heading] for heading in table.headings),
         )
     of_impact = {
@@ -183,8 +185,9 @@ def _loading(table: VehicleFile) -> Loading:
 
 def _axle_place(place: str) -> str:
     """Return where the file has a gap or a gauge: with the axle that follows the gap, or that has the gauge."""
-    counted = re.fullmatch(r"(spacings|gauges)\[(\d+)\]", place)
+    counted = re.fullmatch(r"(spacings|gauges|left_shares)\[(\d+)\]", place)
     if not counted:
         return place
     number = int(counted[2])
-    return f"axles[{number + 1}].after" if counted[1] == "spacings" else f"axles[{number}].gauge"
+    words = {"spacings": f"axles[{number + 1}].after", "gauges": f"axles[{number}].gauge"}
+    return words.get(counted[1], f"axles[{number}].left")

@@ -149,7 +149,7 @@ def spans_peaks(
 
 
 def _felt(lengths: Floats, of_span: Ints, trains: list[Train]) -> Floats:
-    """Return every train's static moment and shear in every span (T, R), trains alike but for a share worked out once."""
+    """Return every train's static moment and shear in every span (T, R), each distinct train worked out once."""
     units: dict[Train, int] = {}
     unit, times = np.empty(len(trains), dtype=np.intp), np.empty(len(trains))
     for number, train in enumerate(trains):

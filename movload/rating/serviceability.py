@@ -13,8 +13,9 @@ if TYPE_CHECKING:
 class Deflection:
     """The greatest live deflection of one panel point under one crossing, impact included.
 
-    ``part``, ``point`` and ``crossing`` by name; ``down`` [m]; ``span`` [m] between the bearings beside the point, or from
-    the last bearing to the end where it overhangs; ``ratio`` = span / down; ``limit`` = n of a limit span / n, None when none is asked.
+    ``part``, ``point`` and ``crossing`` by name; ``down`` [m]; ``span`` [m] between the bearings beside the point, or
+    from the last bearing to the end where it overhangs; ``ratio`` = span / down; ``limit`` = n of a limit span / n,
+    None when none is asked.
     """
 
     part: str

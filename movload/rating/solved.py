@@ -188,7 +188,7 @@ def _typed(bridge: Bridge, of_members: dict[str, TypedStrength], effect: Effect)
 
 
 def _spans(bridge: Bridge) -> dict[str, float]:
-    """Return the length [m] between the bearings beside each panel point, or from the last one to an overhanging end."""
+    """Return the length [m] between the bearings beside each panel point, or from the last to an overhanging end."""
     x = {point: bridge.truss.joints[point][0] for point in bridge.deck.panel_points if isinstance(point, str)}
     bearings = np.unique([bridge.truss.joints[support.joint][0] for support in bridge.truss.supports])
     ends = np.unique([*bearings, *(place for place, _ in bridge.truss.joints.values())])[[0, -1]]

@@ -106,7 +106,7 @@ class _Way:
 
 @lru_cache(maxsize=256)  # every part of the bridge asks
 def _ways(crossing: Crossing, roadway: Roadway, presence: tuple[float, ...]) -> tuple[_Way, ...]:
-    """Return the ways of a crossing: by case, by heading where shares depend on it, by number abreast."""
+    """Return the ways of a crossing: by case, by heading where the room depends on it, by number abreast."""
     found: list[_Way] = []
     for case in crossing.loading.cases:
         vehicle = axles_only(case)
@@ -147,14 +147,15 @@ def _counts(crossing: Crossing, case: Case, roadway: Roadway, width: float) -> r
 
 def _abreast(across: Across, way: _Way, *, dynamic: bool) -> list[Formation]:
     """Return a way's formations on one part: each worst set of places."""
-    where = _Where(across, way.kinds, way.room, way.headings[0], way.apart)
+    lopsided = any(left != 0.5 for _, left in way.kinds)
+    where = _Where(across, way.kinds, way.room, way.headings if lopsided else way.headings[:1], way.apart)
     return [
         tuple(
             Train(
-                way.case, way.vehicle, held(shares[way.of_kind]), headings=way.headings, z=z, factor=way.factor,
-                dynamic=dynamic, even=len(way.kinds) == 1,
+                way.case, way.vehicle, held(shares[way.of_kind]), headings=(heading,) if lopsided else way.headings,
+                z=z, factor=way.factor, dynamic=dynamic, even=len(way.kinds) == 1,
             )
-            for z, shares in group
+            for z, heading, shares in group
         )
         for group in _groups(where, way.count)
     ]  # fmt: skip
@@ -167,24 +168,29 @@ class _Where:
     across: Across
     kinds: tuple[tuple[float, float], ...]
     room: tuple[float, float]
-    heading: int
+    headings: tuple[int, ...]
     apart: float
 
 
 @lru_cache(maxsize=4096)  # vehicles with the same gauges meet the same places
-def _groups(where: _Where, count: int) -> tuple[tuple[tuple[float, Floats], ...], ...]:
-    """Return the sets of places that may be worst, each place with its z [m] and the share of each kind of axle."""
+def _groups(where: _Where, count: int) -> tuple[tuple[tuple[float, int, Floats], ...], ...]:
+    """Return the sets of places that may be worst: of each its z [m], heading, and the share of each kind of axle.
+
+    Of vehicles abreast each may head its own way, which matters where left and right wheels differ.
+    """
     gauges, lefts = (np.array(one) for one in zip(*where.kinds, strict=True))
     z = candidate_places(where.across, where.room, gauges, apart=where.apart, most=count)
-    shares = shares_at(where.across, z, gauges, lefts, where.heading)
-    groups = worst_groups(shares, z, where.apart, count)
-    return tuple(tuple((float(z[one]), shares[one]) for one in group) for group in groups)
+    each = [shares_at(where.across, z, gauges, lefts, heading) for heading in where.headings]
+    place = np.repeat(np.arange(z.size), len(each))
+    heading = np.tile(where.headings, z.size)
+    shares = np.stack(each, axis=1).reshape(place.size, -1)
+    groups = worst_groups(shares, z[place], where.apart, count)
+    return tuple(tuple((float(z[place[one]]), int(heading[one]), shares[one]) for one in group) for group in groups)
 
 
 def _headings(vehicle: Vehicle, crossing: Crossing) -> tuple[tuple[int, ...], ...]:
-    """Return the vehicle's headings, apart where shares depend on them."""
-    lopsided = any(share != 0.5 for share in vehicle.left_shares)
-    if lopsided or crossing.place == "own lane":
+    """Return the vehicle's headings, apart where its room depends on them."""
+    if crossing.place == "own lane":
         return tuple((heading,) for heading in vehicle.headings)
     return (vehicle.headings,)
 

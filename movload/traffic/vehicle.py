@@ -80,8 +80,9 @@ class Vehicle:
         object.__setattr__(self, "_distances", held(np.cumsum([0.0, *fixed])))
         if sorted(self.headings) not in ([-1], [1], [-1, 1]):
             raise InputError(f"headings are +1, -1 or both, got {self.headings}", place="headings")
-        if not all(0.0 <= share <= 1.0 for share in self.left_shares):
-            raise InputError(f"a left share is 0 to 1, got {self.left_shares}", place="left_shares")
+        for number, share in enumerate(self.left_shares):
+            if not 0.0 <= share <= 1.0:
+                raise InputError(f"a left share is 0 to 1, got {share}", place=f"left_shares[{number}]")
         for word, values in (("gauges", self.gauges), ("left_shares", self.left_shares)):
             if values and len(values) != self.loads.size:
                 raise InputError(f"one for each of {self.loads.size} axles, got {len(values)}", place=word)

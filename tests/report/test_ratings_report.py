@@ -10,10 +10,11 @@ import re
 from dataclasses import replace
 from typing import TYPE_CHECKING, Any
 
-import numpy as np
 import pytest
 from numpy.testing import assert_allclose
 from rating.bridges import CART, bars, brook, brook_truss, deck_weight, one_bar, part_of, solved_by_hand
+from rating.floors import CART as FITTED
+from rating.floors import fitted
 
 from movload import Crossing, Loading, Support, Truss, Vehicle, judge, rate, solve
 from movload.bridge.across import Across
@@ -63,6 +64,17 @@ def sum_lines(rating: Rating, units: UnitSystem | None = None) -> list[str]:
     return lines_of(*sum_table(rating, found, POINTS, shown, margin=rating.live_factor))
 
 
+def cells_of(line: str) -> list[str]:
+    """Return the cells of a printed line."""
+    return re.split(r"\s{2,}", line.strip())
+
+
+def verdict_in(ratings: Ratings) -> str:
+    """Return the answer of the first line of a summary."""
+    head, _, line, *_ = lines_of(summary(ratings, range(len(ratings.levels))))
+    return cells_of(line)[cells_of(head).index("answer")]
+
+
 def row(ratings: Ratings, name: str, side: int) -> Rating:
     """Return one row's rating by name."""
     return ratings.rating(0, row_of(ratings.solved.effects, name), side)
@@ -74,16 +86,18 @@ def test_json_is_the_published_document() -> None:
     RatingsDocument.model_validate(read)
     assert (read["format"], read["title"]) == ("movload.ratings/1", "Brook bridge")
     assert list(read) == [
-        "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "uplifts", "cautions",
-        "sources", "rows",
+        "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "deflections", "uplifts",
+        "cautions", "sources", "rows",
     ]  # fmt: skip
     assert list(read["rows"][0]) == [
         "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "safe_weight",
-        "position", "heading", "axle", "station", "permanent_use", "placement",
+        "position", "heading", "axle", "station", "kind", "crossing_number", "abreast", "permanent_use",
+        "permanent_used", "live_factor", "stands_for", "placement",
     ]  # fmt: skip
-    assert list(read["rows"][0]["placement"]) == ["x", "load", "share", "impact"]
-    assert list(read["crossings"][0]) == ["title", "kind", "weight", "place", "source"]
-    assert read["units"] == {"force": "N", "length": "m"}
+    assert list(read["rows"][0]["placement"]) == ["x", "load", "share", "impact", "factor", "z", "vehicle"]
+    assert list(read["crossings"][0]) == ["title", "kind", "weight", "place", "source", "z", "speed", "most_abreast"]
+    assert list(read["deflections"][0]) == ["part", "point", "crossing", "crossing_number", "down", "ratio", "limit"]
+    assert read["units"] == {"force": "N", "length": "m", "moment": "N m", "speed": "m/s"}
     assert read["sources"] == ["brook.toml"]
     assert read["uplifts"] == {}
     assert read["cautions"] == list(CAUTIONS)
@@ -93,12 +107,16 @@ def test_json_rows_are_the_ratings_to_the_last_bit() -> None:
     ratings = rate(brook(units=US), [CART])
     for said, rating in zip(document(ratings)["rows"], ratings.rows(0), strict=True):
         assert (said["row"], said["sense"], said["level"]) == (rating.effect.name, rating.sense, "permitted")
+        assert (said["kind"], said["stands_for"], said["crossing_number"]) == ("axial", "truss", 0)
+        assert (said["permanent_used"], said["live_factor"]) == (rating.pushed, 1.0)
+        assert said["abreast"] == (1 if rating.peak.heading else 0)
         assert (said["strength"], said["permanent"], said["live"]) == (rating.strength, rating.permanent, rating.live)
         assert said["factor"] == (rating.factor if math.isfinite(rating.factor) else None)
         if said["placement"] is not None:
             placed = said["placement"]
             assert placed["x"] == rating.peak.placement.x.tolist()
             assert (placed["load"], placed["share"], placed["impact"]) == ([30e3, 50e3], [0.6, 0.6], [0.3, 0.3])
+            assert (placed["factor"], placed["z"], placed["vehicle"]) == ([1.0, 1.0], [None, None], [1, 1])
             assert (said["axle"], said["station"]) == (rating.peak.axle + 1, rating.peak.station)
 
 
@@ -121,37 +139,50 @@ def test_the_same_answer_is_the_same_bytes() -> None:
 def test_csv_has_the_columns_of_the_list_with_the_files_units() -> None:
     ratings = rate(brook(units=US), [CART])
     lines = sheet(ratings_csv(ratings.rows(0), US))
-    assert [re.sub(r" \[.*", "", head) for head in lines[0]] == [column.name for column in COLUMNS]
-    assert [head for head in lines[0] if "[" in head] == [
-        "strength [kip]", "permanent [kip]", "live [kip]", "safe_weight [kip]", "position [ft]",
-    ]  # fmt: skip
+    assert [re.sub(r" \[.*", "", head) for head in lines[0]] == [*(column.name for column in COLUMNS), "unit"]
+    assert [head for head in lines[0] if "[" in head] == ["safe_weight [kip]", "position [ft]"]
     for line, rating in zip(lines, ratings.rows(0), strict=True):
         assert float(line["factor"]) == rating.factor
-        assert_allclose(float(line["live [kip]"]) * KIP, rating.live, rtol=1e-15)
+        assert line["unit"] == "kip"
+        for name in ("strength", "permanent", "live"):
+            assert_allclose(float(line[name]) * KIP, getattr(rating, name), rtol=1e-15)
         if rating.peak.heading:
             assert_allclose(float(line["position [ft]"]) * FOOT, rating.peak.position, rtol=1e-15)
         else:
             assert (line["position [ft]"], line["axle"], line["station"]) == ("", "", "")
 
 
+def test_csv_says_row_by_row_what_forces_and_moments_are_in() -> None:
+    """Floor and trusses share the columns of strength, permanent and live, so a unit stands in each line."""
+    ratings = rate(fitted(units=US), [FITTED])
+    lines = sheet(ratings_csv(ratings.rows(0), US))
+    assert {(line["kind"], line["unit"]) for line in lines} == {
+        ("axial", "kip"), ("shear", "kip"), ("moment", "kip ft"),
+    }  # fmt: skip
+    for line, rating in zip(lines, ratings.rows(0), strict=True):
+        newtons = KIP * FOOT if line["kind"] == "moment" else KIP
+        for name in ("strength", "permanent", "live"):
+            assert_allclose(float(line[name]) * newtons, getattr(rating, name), rtol=1e-14)
+
+
 def test_the_summary_has_one_line_a_crossing_with_its_answer() -> None:
     ratings = judge(one_bar(permanent=20e3), [AXLE, Vehicle("lorry", [90e3, 10e3], [9.0])])
     head, _, axle, lorry = lines_of(summary(ratings, range(len(ratings.levels))))
-    assert re.split(r"\s{2,}", head.strip()) == [
-        "crossing", "weighs", "RF", "answer", "governed by", "safe weight", "worst with",
+    assert cells_of(head) == [
+        "crossing", "weighs", "keeps", "abreast", "RF", "answer", "governed by", "safe weight", "worst with",
     ]  # fmt: skip
-    assert re.split(r"\s{2,}", axle) == [
-        "axle", "40.0 kN", "2.00", "adequate, for the parts rated", "L0-L1 tension", "8.1 t (8.9 short tons)",
-        "4.00 m →",
+    assert cells_of(axle) == [
+        "axle", "40.0 kN", "typed share", "1", "2.00", "adequate, for the parts rated", "L0-L1 tension",
+        "8.1 t (8.9 short tons)", "4.00 m →",
     ]  # fmt: skip
-    assert re.split(r"\s{2,}", lorry)[2:4] == ["0.88", "not adequate"]
+    assert cells_of(lorry)[4:6] == ["0.88", "not adequate"]
 
 
 def test_the_summary_in_us_units() -> None:
     line = lines_of(summary(judge(one_bar(permanent=20e3, units=US), [AXLE]), [0]))[2]
-    cells = re.split(r"\s{2,}", line)
+    cells = cells_of(line)
     assert cells[1] == "9.0 kip"
-    assert cells[5:] == ["8.9 short tons (8.1 t)", "13.12 ft →"]
+    assert cells[7:] == ["8.9 short tons (8.1 t)", "13.12 ft →"]
 
 
 @pytest.mark.parametrize(
@@ -167,8 +198,8 @@ def test_permanent_load_that_uses_all_is_said_in_place_of_a_position(
 ) -> None:
     ratings = judge(one_bar(permanent=permanent, strength=(strength, 1e9)), [AXLE])
     cells = re.split(r"\s{2,}", lines_of(summary(ratings, range(len(ratings.levels))))[2])
-    assert cells[2:4] == ["0.00", "not adequate"]
-    assert cells[5:] == ["0.0 t (0.0 short tons)", said]
+    assert cells[4:6] == ["0.00", "not adequate"]
+    assert cells[7:] == ["0.0 t (0.0 short tons)", said]
     assert lines_of(detail(ratings.rows(0), UnitSystem()))[2].endswith(said)
 
 
@@ -177,11 +208,11 @@ def test_the_detail_puts_letters_beside_signs_and_the_worst_first() -> None:
     _, _, worst, other = lines_of(detail(ratings.rows(0), UnitSystem()))
     compression, tension = row(ratings, "U1-L2", 1), row(ratings, "U1-L2", 0)
     assert compression.factor < tension.factor
-    assert re.split(r"\s{2,}", worst) == [
+    assert cells_of(worst) == [
         "U1-L2", "compression", f"{math.floor(compression.factor * 100) / 100:.2f}", "15.0 C",
         f"{compression.permanent / 1e3:.1f} T", f"{compression.live / 1e3:.1f} C", "2.00 m ←",
     ]  # fmt: skip
-    assert re.split(r"\s{2,}", other)[3:6] == [
+    assert cells_of(other)[3:6] == [
         "60.0 T", f"{compression.permanent / 1e3:.1f} T", f"{tension.live / 1e3:.1f} T"
     ]  # fmt: skip
 
@@ -217,7 +248,9 @@ def test_the_equation_shows_the_levels_margins() -> None:
     method = FactorSet("lf", (Level("inventory", 1.3, 2.17),), "One level.", "from memory")
     solved = replace(one_bar(permanent=20e3, strength=(100e3, 1.0)), method=method)
     equation = sum_lines(judge(solved, [AXLE]).governing(0))[-1]
-    assert equation == "RF = (strength 100.00 - factored permanent (+26.00)) / 2.17 x live 40.00 kN = 0.85"  # 74 / 86.8
+    assert (
+        equation == "RF = (strength 100.00 - factored permanent (+26.00)) / (2.17 x live 40.00) kN = 0.85"
+    )  # 74 / 86.8
 
 
 def test_the_equation_shows_relief_as_it_counts() -> None:
@@ -266,11 +299,17 @@ def test_the_sum_in_us_units() -> None:
 def test_what_closes_every_answer() -> None:
     notes = rate(brook(), [Loading.of(CART, source="invented")])
     said = closing(notes)
-    assert said[0] == notes.solved.method.statement
-    assert said[1] == "Covers: 13 of 13 members and beams rated in every sense they feel; floor, deck not rated."
-    assert said[2].startswith("Note: One truss is rated with typed shares")
-    assert said[3] == "Note, cart: axles and spacings: invented"
-    assert said[4:] == [f"Caution: {caution}" for caution in CAUTIONS]
+    assert said[:5] == [
+        notes.solved.method.statement,
+        "Impact 0.3 as typed.",
+        "One vehicle on the bridge at a time.",
+        "Covers: 13 of 13 members and beams rated in every sense they feel; floor, deck not rated.",
+        "A safe weight holds for that vehicle's own axles in proportion: no sign weight follows from one vehicle.",
+    ]
+    assert said[5].startswith("Note: One truss is rated with typed shares")
+    assert said[6].startswith("Note: Members weigh area x density x length: nothing is added for lacing")
+    assert said[7] == "Note, cart: axles and spacings: invented"
+    assert said[8:] == [f"Caution: {caution}" for caution in CAUTIONS]
 
 
 def test_relief_that_a_rating_leans_on_is_said_once() -> None:
@@ -297,23 +336,20 @@ def test_uplift_is_said_and_is_in_the_document() -> None:
     assert read["uplifts"] == ratings.uplifts
     assert list(read["uplifts"]) == ["L0 y"]
     line = "Uplift: L0 y is pulled up with 5.8 kN (permanent and live); whether anything holds it down is not checked."
-    assert closing(ratings)[2] == line
-    assert (
-        re.split(r"\s{2,}", lines_of(summary(ratings, range(len(ratings.levels))))[2])[3]
-        == "adequate only if L0 is held down"
-    )
+    said = closing(ratings)
+    assert [one for one in said if one.startswith("Uplift")] == [line]
+    assert said[said.index(line) - 1].startswith("Covers: ")
+    assert verdict_in(ratings) == "adequate only if L0 is held down"
 
 
 def test_what_is_not_rated_is_said() -> None:
     ratings = rate(brook(strengths={"U1-L2": permitted(400e3), "L0-L1": permitted(400e3)}), [CART])
-    assert closing(ratings)[1].startswith(
+    (line,) = (one for one in closing(ratings) if one.startswith("Covers"))
+    assert line == (
         "Covers: 1 of 13 members and beams rated in every sense they feel; 1 in one sense only (U1-L2); "
-        "11 not rated (L1-L2, L2-L3, L3-L4, U1-U2, U2-U3, L0-U1 ...)"
+        "11 not rated (L1-L2, L2-L3, L3-L4, U1-U2, U2-U3, L0-U1 ...); floor, deck not rated."
     )
-    assert (
-        re.split(r"\s{2,}", lines_of(summary(ratings, range(len(ratings.levels))))[2])[3]
-        == "adequate only if the 12 parts not fully rated are"
-    )
+    assert verdict_in(ratings) == "adequate only if the 12 parts not fully rated are"
     coverage = document(ratings)["coverage"]
     assert (coverage["full"], coverage["partly"]) == (["L0-L1"], ["U1-L2"])
     assert coverage["not_rated"] == ["floor", "deck"]
@@ -367,7 +403,9 @@ def test_the_same_bridge_written_in_si_and_in_us_units() -> None:
     assert weights[0] is not None
     assert weights[1] is not None
     assert weights[0].groups() == weights[1].groups()[::-1]
-    assert "permanent [kip]" in ratings_csv(us.rows(0), us.solved.units)
+    one, other = (sheet(ratings_csv(ratings.rows(0), ratings.solved.units))[0] for ratings in (metric, us))
+    assert (one["unit"], other["unit"]) == ("kN", "kip")
+    assert_allclose(float(one["permanent"]) * 1e3, float(other["permanent"]) * KIP, rtol=1e-12)
 
 
 def test_every_crossing_is_in_the_document() -> None:
@@ -377,10 +415,11 @@ def test_every_crossing_is_in_the_document() -> None:
     assert [one["title"] for one in read["crossings"]] == ["cart", "lorry"]
     assert read["crossings"][1] == {
         "title": "lorry", "kind": "farm", "weight": 90e3, "place": "typed share", "source": "invented",
+        "z": None, "speed": None, "most_abreast": 1,
     }  # fmt: skip
-    assert np.unique([one["crossing"] for one in read["rows"]]).tolist() == ["cart", "lorry"]
+    assert {(one["crossing"], one["crossing_number"]) for one in read["rows"]} == {("cart", 0), ("lorry", 1)}
     assert [note["code"] for note in read["notes"]] == [
-        "shares-typed", "vehicle-source", "vehicle-source", "vehicle",
+        "shares-typed", "detail-allowance", "vehicle-source", "vehicle-source", "vehicle",
     ]  # fmt: skip
     assert read["notes"][-1] == {"code": "vehicle", "subject": "lorry", "text": "One axle.", "source": ""}
     assert "Note, lorry: One axle." in closing(ratings)

@@ -80,9 +80,9 @@ REFUSED: list[tuple[dict[str, Any], str]] = [
     ({"gauges": (1.9, 0.0)}, "gauges[1]: a gauge must be above 0, got 0.0 m"),
     ({"gauges": (math.nan, 1.9)}, "gauges[0]: a gauge must be above 0, got nan m"),
     ({"left_shares": (0.5, 0.5, 0.5)}, "left_shares: one for each of 2 axles, got 3"),
-    ({"left_shares": (0.5, 1.01)}, "left_shares: a left share is 0 to 1, got (0.5, 1.01)"),
-    ({"left_shares": (-0.01, 0.5)}, "left_shares: a left share is 0 to 1, got (-0.01, 0.5)"),
-    ({"left_shares": (math.nan, 0.5)}, "left_shares: a left share is 0 to 1, got (nan, 0.5)"),
+    ({"left_shares": (0.5, 1.01)}, "left_shares[1]: a left share is 0 to 1, got 1.01"),
+    ({"left_shares": (-0.01, 0.5)}, "left_shares[0]: a left share is 0 to 1, got -0.01"),
+    ({"left_shares": (math.nan, 0.5)}, "left_shares[0]: a left share is 0 to 1, got nan"),
 ]  # fmt: skip
 
 

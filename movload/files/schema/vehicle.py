@@ -7,7 +7,7 @@ from typing import Annotated, Literal
 from pydantic import BeforeValidator, Field, ValidationInfo, WithJsonSchema
 
 from movload.errors import InputError
-from movload.files.schema.quantities import Force, Length, Table, Text, Units, number, shown, units_in
+from movload.files.schema.quantities import Force, Fraction, Length, Table, Text, Units, number, shown, units_in
 
 
 def _gap(value: object, info: ValidationInfo) -> float | tuple[float, float]:
@@ -32,7 +32,8 @@ class AxleTable(Table):
 
     load: Force
     after: Gap | None = Field(None, description="distance behind the axle before")
-    gauge: Length | None = Field(None, description="distance between its wheels' centres")
+    gauge: Length | None = Field(None, description="distance between its outermost wheels' centres")
+    left: Fraction | None = Field(None, description="part of the load that its left wheels carry; half when left out")
 
 
 class VehicleFile(Table):
