@@ -91,7 +91,7 @@ def _deflected(ratings: Ratings, *, every: bool) -> list[RenderableType | str]:
         found = [first[number] for number in sorted(first)]
     lines = [
         [
-            one.crossing, one.part, one.point,
+            _crossing_text(ratings, one.number), one.part, one.point,
             f"{number_text(one.down, 'section', units)} {units.symbol('section')}", span_ratio_text(one.ratio),
             "-" if one.limit is None else f"1/{one.limit:g}", "" if one.passes else "exceeded",
         ]
@@ -99,6 +99,13 @@ def _deflected(ratings: Ratings, *, every: bool) -> list[RenderableType | str]:
     ]  # fmt: skip
     heads = ["live deflection", "part", "at", "down", "of span", "limit", ""]
     return [grid(heads, lines, right=[False, False, False, True, True, True, False]), ""]
+
+
+def _crossing_text(ratings: Ratings, number: int) -> str:
+    """Return a crossing's title, with its way where the same vehicle crosses in several."""
+    crossing = ratings.crossings[number]
+    again = sum(one.title == crossing.title for one in ratings.crossings) > 1
+    return f"{crossing.title}, {way_text(crossing, ratings.solved.units)}" if again else crossing.title
 
 
 def closing(ratings: Ratings) -> list[str]:

@@ -21,6 +21,7 @@ from movload.report.phrases import (
 )
 from movload.report.sweep_report import placement_json
 from movload.report.table import grid, table_of
+from movload.traffic.crossing import ANYWHERE
 from movload.traffic.formations import fitting
 
 if TYPE_CHECKING:
@@ -89,40 +90,45 @@ _JSON_ONLY: Final[list[Column[Rating]]] = [
 
 
 def summary(ratings: Ratings, levels: Sequence[int]) -> RenderableType:
-    """Return one line a crossing and level: weight, place, RF, verdict, what governs, safe weight, worst position."""
-    several = len(ratings.levels) > 1
+    """Return one line a crossing and level: weight, place, RF, verdict, what governs, safe weight, worst position.
+
+    Columns that would say the same in every line (anywhere, one vehicle, the only level) are left to the text below.
+    """
     lines = [
-        _summary_line(ratings, ratings.governing(number, level=level), level, several=several)
+        _summary_line(ratings, ratings.governing(number, level=level), level)
         for number in range(len(ratings.crossings))
         for level in levels
         if ratings.rates(number, level)
     ]
-    heads = ["crossing", "weighs", "keeps", "abreast", "RF", "answer", "governed by", "safe weight", "worst with"]
-    right = [False, True, False, True, True, False, False, False, False]
-    if several:
-        heads.insert(4, "level")
-        right.insert(4, False)
-    return grid(heads, lines, right=right)
+    heads = ["crossing", "weighs", "keeps", "abreast", "level", "RF", "answer", "governed by", "safe weight",
+             "worst with"]  # fmt: skip
+    right = {"weighs", "abreast", "RF"}
+    placed = any(crossing.place != ANYWHERE or crossing.speed for crossing in ratings.crossings)
+    shown = {"keeps": placed, "abreast": any(line[3] != "1" for line in lines), "level": len(ratings.levels) > 1}
+    kept = [number for number, head in enumerate(heads) if shown.get(head, True)]
+    return grid(
+        [heads[one] for one in kept],
+        [[line[one] for one in kept] for line in lines],
+        right=[heads[one] in right for one in kept],
+    )
 
 
-def _summary_line(ratings: Ratings, worst: Rating, level: int, *, several: bool) -> list[str]:
+def _summary_line(ratings: Ratings, worst: Rating, level: int) -> list[str]:
     """Return one crossing at one level as a line."""
     units, crossing = ratings.solved.units, ratings.crossings[worst.number]
     weight = sign_weight(ratings.solved.method.levels[level], worst.factor, worst.gross)
-    line = [
+    return [
         crossing.title,
         f"{number_text(crossing.loading.gross, 'force', units)} {units.symbol('force')}",
-        way_text(crossing, units) if ratings.solved.roadway else "typed share",
+        way_text(crossing, units),
         str(fitting(crossing, ratings.solved.roadway)),
+        ratings.levels[level],
         factor_text(worst.factor),
         verdict_text(worst.factor, ratings.coverage, ratings.uplifts),
         governed_text(worst),
         weight_text(weight, units) + (" *" if crossing.controlled else ""),
         use_text(worst) or place_text(worst.peak, units),
     ]
-    if several:
-        line.insert(4, ratings.levels[level])
-    return line
 
 
 def governed_text(rating: Rating) -> str:

@@ -13,7 +13,7 @@ from hypothesis import assume, given, settings
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
 from oracles.trusses import bottom, pratt, scaled, simple_span
-from strategies import heights, panel_lengths
+from strategies import directions, heights, panel_lengths
 
 from movload import Bridge, Crossing, Deck, Loading, Member, Truss, Vehicle, rate
 from movload.bridge.floor import Floor, Floorbeams, Planks, Stringers
@@ -29,6 +29,10 @@ if TYPE_CHECKING:
 
 CLOSE: Final = 1e-9  # relative to the most used part: statics keep about 1e-12 of the largest ordinate
 METHODS: Final = tuple(read_factor_set(name) for name in ("permitted", "lrfr", "load factor", "en"))
+LENGTHS: Final = ("truss_spacing", "right", "left", "clearance", "between", "z", "brackets", "contact", "low", "high",
+                  "spacings", "gauges")  # fmt: skip
+PER_LENGTH: Final = ("line", "weight", "density")  # the density's areas stay
+pairs = st.tuples(st.floats(0.0, 1.0), st.floats(0.0, 1.0))
 some = settings(max_examples=15)  # a bridge and two ratings each
 
 
@@ -64,11 +68,6 @@ def assert_alike(found: Floats, expected: Floats) -> None:
     assert_allclose(found, expected, rtol=CLOSE, atol=CLOSE * expected[np.isfinite(expected)].max(initial=0.0))
 
 
-def both(low: float, high: float) -> st.SearchStrategy[tuple[float, float]]:
-    """Draw two numbers."""
-    return st.tuples(st.floats(low, high), st.floats(low, high))
-
-
 @st.composite
 def strengths(draw: st.DrawFn) -> TypedStrength:
     """Draw the strengths of one part in every sense, on two footings [N, N m]."""
@@ -80,16 +79,15 @@ def strengths(draw: st.DrawFn) -> TypedStrength:
 @st.composite
 def items(draw: st.DrawFn, half: float) -> Item:
     """Draw what lies somewhere between the trusses."""
-    low, high = sorted(half * (1.0 - 2.0 * part) for part in draw(both(0.0, 1.0)))
-    line = draw(st.floats(0.2e3, 6e3))
-    return Item("drawn", draw(st.sampled_from(CLASSES)), line=line, low=low, high=high)
+    low, high = sorted(half * (1.0 - 2.0 * part) for part in draw(pairs))
+    return Item("drawn", draw(st.sampled_from(CLASSES)), line=draw(st.floats(0.2e3, 6e3)), low=low, high=high)
 
 
 @st.composite
 def floors(draw: st.DrawFn, half: float, brackets: tuple[float, float]) -> Floor:
     """Draw a floor: 2 to 5 stringers between the trusses, the outer ones within a quarter of them."""
     bays = np.cumsum([0.0, *draw(st.lists(st.floats(0.4, 1.0), min_size=1, max_size=4))])
-    first, last = (half * (0.75 + 0.25 * part) for part in draw(both(0.0, 1.0)))
+    first, last = (half * (0.75 + 0.25 * part) for part in draw(pairs))
     z = tuple(-first + (first + last) * bays / bays[-1])
     beams = Floorbeams(brackets, weight=draw(st.floats(0.0, 1e3)), strength=draw(strengths()))
     stringers = Stringers(z, weight=draw(st.floats(0.0, 0.5e3)), strength=draw(strengths()))
@@ -101,19 +99,18 @@ def cases(draw: st.DrawFn) -> Case:
     """Draw a bridge of 3 or 4 panels with a floor, kerbs off the middle, and a lopsided vehicle that fits."""
     panels = draw(st.lists(panel_lengths, min_size=3, max_size=4))
     joints, ends = pratt(panels, draw(st.lists(heights, min_size=len(panels) - 1, max_size=len(panels) - 1)))
-    members = [Member(start, end, 5e-3, 200e9, density=7850.0) for start, end in ends]
     half = draw(st.floats(2.2, 3.6))
     brackets = draw(st.sampled_from([(0.0, 0.0), (0.0, 0.0), (0.7, 0.4)]))
-    right, left = (half - inset for inset in draw(both(0.0, 0.4)))
+    right, left = (half - 0.4 * part for part in draw(pairs))
     clearance, keeps = draw(st.floats(0.0, 0.3)), draw(st.sampled_from(["right", "left"]))
     roadway = Roadway(-right - brackets[0], left + brackets[1], clearance=clearance, keeps=keeps)
     typed = draw(st.lists(strengths(), min_size=3, max_size=3))
     bridge = Bridge(
         "drawn",
-        Truss(joints, members, simple_span(len(panels))),
+        Truss(joints, [Member(*bar, 5e-3, 200e9, density=7850.0) for bar in ends], simple_span(len(panels))),
         Deck(tuple(bottom(len(panels))), truss_spacing=2.0 * half, roadway=roadway),
         permanent=PermanentItems(tuple(draw(st.lists(items(half), max_size=3)))),
-        strengths={member.name: typed[number % 3] for number, member in enumerate(members)},
+        strengths={"-".join(bar): typed[number % 3] for number, bar in enumerate(ends)},
         floor=draw(floors(half, brackets)),
         impact=draw(st.sampled_from([0.0, 0.25])),
         traffic=draw(st.sampled_from([np.inf, 2500.0])),
@@ -127,8 +124,7 @@ def machines(draw: st.DrawFn) -> Vehicle:
     left = draw(st.sampled_from([st.just(0.5), st.floats(0.35, 0.65)]))
     axle = st.tuples(st.floats(10e3, 160e3), st.floats(0.8, 6.0), st.floats(0.7, 1.9), left)
     loads, gaps, gauges, lefts = zip(*draw(st.lists(axle, min_size=1, max_size=3)), strict=True)
-    headings = draw(st.sampled_from([(1, -1), (1,), (-1,)]))
-    return Vehicle("drawn", loads, gaps[1:], gauges=gauges, left_shares=lefts, headings=headings)
+    return Vehicle("drawn", loads, gaps[1:], gauges=gauges, left_shares=lefts, headings=draw(directions))
 
 
 @some
@@ -158,7 +154,7 @@ def test_weight_that_pushes_lowers_ratings_and_weight_that_relieves_raises(case:
         pushes, relieves = felt & (pushed > noise), felt & (pushed < -noise)
         assert (now[pushes] > used[pushes]).all()
         assert ((now[relieves] < used[relieves]) | ((more.kind == REMOVABLE) & (now[relieves] == used[relieves]))).all()
-        rest = felt & (np.abs(pushed) <= noise)
+        rest = felt & ~pushes & ~relieves
         assert_allclose(now[rest], used[rest], rtol=1e-6)
 
 
@@ -187,14 +183,12 @@ def mirrored_key(key: tuple[str, str], stringers: int) -> tuple[str, str]:
 @given(cases(), st.sampled_from([("anywhere", "anywhere"), ("left kerb", "right kerb"), ("own lane", "own lane")]))
 def test_a_bridge_mirrored_across_swaps_left_and_right(case: Case, places: tuple[str, str]) -> None:
     """Own lane too, where traffic then keeps to the other side; a vehicle's heavy wheels change sides with it."""
-    way, width = case.bridge.deck.roadway, max(case.vehicle.gauges)
-    assume(places[0] != "own lane" or 0.5 * (way.left - way.right) - way.clearance - 0.5 * way.between >= width)
+    assume(places[0] != "own lane" or case.bridge.deck.roadway.abreast(max(case.vehicle.gauges)) > 1)
     vehicle = replace(case.vehicle, left_shares=tuple(1.0 - share for share in case.vehicle.left_shares))
     here = case.rated(places[0])
     there = replace(case, bridge=mirrored_bridge(case.bridge), vehicle=vehicle).rated(places[1])
     rows, stringers = [effect.key for effect in there.solved.effects], len(case.bridge.floor.stringers.z)
     swapped = [rows.index(mirrored_key(effect.key, stringers)) for effect in here.solved.effects]
-    assert sorted(swapped) == list(range(len(rows)))
     assert_alike(use(there)[:, swapped], use(here))
 
 
@@ -205,50 +199,51 @@ def resized(typed: TypedStrength, force: float, length: float) -> TypedStrength:
     return replace(typed, permits=values, nominal=values)
 
 
-def bridge_in_other_units(bridge: Bridge, force: float, length: float) -> Bridge:
-    """Return the bridge with every force times ``force`` and every length times ``length``; areas stay."""
-    deck, floor, way = bridge.deck, bridge.floor, bridge.deck.roadway
-    truss, line = scaled(bridge.truss, length), force / length  # of weights per metre, and of densities
-    road = {name: length * getattr(way, name) for name in ("right", "left", "clearance", "between")}
-    beams = (in_other_units(one, force, length) for one in (floor.stringers, floor.floorbeams, floor.planks))
-    on = tuple(in_other_units(one, force, length) for one in bridge.permanent.items)
-    return replace(
-        bridge,
-        truss=replace(truss, members=[replace(member, density=member.density * line) for member in truss.members]),
-        deck=replace(deck, truss_spacing=deck.truss_spacing * length, roadway=replace(way, **road)),
-        permanent=PermanentItems(on),
-        strengths={name: resized(typed, force, length) for name, typed in bridge.strengths.items()},
-        floor=Floor(*beams),
-    )
+def in_other_units(thing: object, force: float, length: float) -> object:
+    """Return a vehicle, or a part of a bridge, with every force and every length times a number; areas stay."""
+    times = {"loads": force} | dict.fromkeys(LENGTHS, length) | dict.fromkeys(PER_LENGTH, force / length)
+    there = {name: getattr(thing, name) for name in times if hasattr(thing, name)}
+    changed = {name: times[name] * np.array(value) for name, value in there.items()}
+    changed = {name: tuple(value) if isinstance(there[name], tuple) else value for name, value in changed.items()}
+    strength = {"strength": resized(thing.strength, force, length)} if hasattr(thing, "strength") else {}
+    return replace(thing, **changed, **strength)
 
 
 @some
 @given(cases(), st.floats(0.1, 10.0), st.floats(0.3, 3.3))
 def test_units_do_not_matter(case: Case, force: float, length: float) -> None:
-    old = case.vehicle
-    spacings, gauges = ([length * one for one in ones] for ones in (old.spacings, old.gauges))
-    vehicle = replace(old, loads=old.loads * force, spacings=spacings, gauges=tuple(gauges))
-    other = replace(case, bridge=bridge_in_other_units(case.bridge, force, length), vehicle=vehicle)
-    assert_alike(use(other.rated()), use(case.rated()))
+    bridge, floor, truss = case.bridge, case.bridge.floor, scaled(case.bridge.truss, length)
+    vehicle, deck, roadway, *parts = (
+        in_other_units(one, force, length)
+        for one in (case.vehicle, bridge.deck, bridge.deck.roadway, floor.stringers, floor.floorbeams, floor.planks)
+    )
+    other = replace(
+        bridge,
+        truss=replace(truss, members=[in_other_units(one, force, length) for one in truss.members]),
+        deck=replace(deck, roadway=roadway),
+        permanent=PermanentItems(tuple(in_other_units(one, force, length) for one in bridge.permanent.items)),
+        strengths={name: resized(typed, force, length) for name, typed in bridge.strengths.items()},
+        floor=Floor(*parts),
+    )
+    assert_alike(use(replace(case, bridge=other, vehicle=vehicle).rated()), use(case.rated()))
 
 
 @some
 @given(cases(), st.floats(0.0, 1.0))
 def test_anywhere_is_never_better_than_one_place(case: Case, part: float) -> None:
     low, high = case.bridge.deck.roadway.room(max(case.vehicle.gauges))
-    anywhere = case.rated()
-    for place in ("offset", "left kerb", "right kerb", "centre line"):
-        assert_no_better(anywhere, case.rated(place, low + part * (high - low) if place == "offset" else 0.0))
+    anywhere, offset = case.rated(), case.rated("offset", low + part * (high - low))
+    for one in (offset, *(case.rated(place) for place in ("left kerb", "right kerb", "centre line"))):
+        assert_no_better(anywhere, one)
 
 
 @some
-@given(cases(), both(0.0, 0.9))
+@given(cases(), pairs)
 def test_more_places_never_raise_a_rating(case: Case, wanders: tuple[float, float]) -> None:
     """More abreast, a wider stray from the centre line, wheels nearer to the kerbs."""
-    less, more = (case.rated("centre line", wander=wander) for wander in sorted(wanders))
-    assert_no_better(more, less)
+    assert_no_better(*(case.rated("centre line", wander=wander) for wander in sorted(wanders, reverse=True)))
     anywhere = case.rated()
     assert_no_better(anywhere, case.rated(lanes=1))
-    deck, way = case.bridge.deck, case.bridge.deck.roadway
-    wider = replace(case.bridge, deck=replace(deck, roadway=replace(way, clearance=0.5 * way.clearance)))
-    assert_no_better(replace(case, bridge=wider).rated(), anywhere)
+    deck = case.bridge.deck
+    wider = replace(deck, roadway=replace(deck.roadway, clearance=0.0))
+    assert_no_better(replace(case, bridge=replace(case.bridge, deck=wider)).rated(), anywhere)

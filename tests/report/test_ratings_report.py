@@ -197,7 +197,7 @@ def test_permanent_load_that_uses_all_is_said_in_place_of_a_position(
     permanent: float, strength: float, said: str
 ) -> None:
     ratings = judge(one_bar(permanent=permanent, strength=(strength, 1e9)), [AXLE])
-    cells = re.split(r"\s{2,}", lines_of(summary(ratings, range(len(ratings.levels))))[2])
+    cells = cells_of(lines_of(summary(ratings, range(len(ratings.levels))))[2])
     assert cells[4:6] == ["0.00", "not adequate"]
     assert cells[7:] == ["0.0 t (0.0 short tons)", said]
     assert lines_of(detail(ratings.rows(0), UnitSystem()))[2].endswith(said)
