@@ -6,6 +6,7 @@ member unrated in a sense it feels.
 
 from __future__ import annotations
 
+import os
 import sys
 from contextlib import suppress
 
@@ -45,6 +46,7 @@ def movload(
 def run() -> None:
     """Run the program: an error that a person can act on becomes one line on stderr and exit code 1."""
     readied()
+    os.environ["MPLBACKEND"] = "agg"  # nothing is ever shown in a window, whatever the environment asks for
     sys.exit(_ended())
 
 

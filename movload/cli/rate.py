@@ -90,6 +90,7 @@ def rate(
     from movload.rating.solved import solve
     from movload.report.rating_text import rating_text
     from movload.report.ratings_report import ratings_csv, ratings_json
+    from movload.review.hand import explained
 
     stands = read_bridge(bridge)
     if impact is not None:
@@ -99,11 +100,11 @@ def rate(
         solved = solve(stands, factors)
     ratings = _judged(solved, _crossings(vehicle, at, speed, abreast=abreast, wander=wander), bridge)
     with naming(bridge):
-        wanted = [_asked(ratings, row) for row in explain or []]
+        wanted = [explained(ratings, _asked(ratings, row)) for row in explain or []]
     rows = [row for number in range(len(ratings.crossings)) for row in ratings.rows(number)]
     deliver(
         text=lambda: rating_text(ratings, _station_names(stands), every=every, explain=wanted),
-        json=(lambda: ratings_json(ratings, rows)) if json else None,
+        json=(lambda: ratings_json(ratings, rows, wanted)) if json else None,
         files={
             csv: lambda: ratings_csv(rows, stands.units).encode(),
             plot: _drawing(stands, ratings, plot.suffix.lower() if plot else ""),

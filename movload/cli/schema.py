@@ -15,10 +15,11 @@ class Subject(StrEnum):
     bridge = "bridge"
     vehicle = "vehicle"
     ratings = "ratings"
+    factor_set = "factor_set"
 
 
 def schema(subject: Annotated[Subject, typer.Argument(help="Whose schema.")]) -> None:
-    """Print the JSON Schema of a bridge file, a vehicle file or the ratings document."""
+    """Print the JSON Schema of a bridge file, a vehicle file, a factor set or the ratings document."""
     from movload.files.schema.published import schema_of
     from movload.report.columns import json_text
 

@@ -19,7 +19,7 @@ from movload.report.phrases import (
 )
 from movload.report.ratings_report import detail, governed_text, summary
 from movload.report.table import grid
-from movload.review.hand import explained, terms
+from movload.review.hand import terms
 from movload.traffic.formations import fitting
 
 if TYPE_CHECKING:
@@ -27,14 +27,14 @@ if TYPE_CHECKING:
 
     from rich.console import RenderableType
 
-    from movload.rating.rating import Rating
     from movload.rating.ratings import Ratings
+    from movload.review.hand import Explanation
 
 _SHOWN: Final = 8  # rows of a single crossing that are printed without --all
 
 
 def rating_text(
-    ratings: Ratings, stations: tuple[str, ...], *, every: bool = False, explain: Sequence[Rating] = ()
+    ratings: Ratings, stations: tuple[str, ...], *, every: bool = False, explain: Sequence[Explanation] = ()
 ) -> list[RenderableType | str]:
     """Return what a person reads.
 
@@ -45,7 +45,7 @@ def rating_text(
     every
         Print every rated row of every crossing.
     explain
-        Ratings to be taken apart.
+        Ratings taken apart.
     """
     solved = ratings.solved
     levels = range(len(ratings.levels))
@@ -59,8 +59,8 @@ def rating_text(
             found = terms(worst.peaks, worst.row, worst.side)
             parts += [*sum_table(worst, found, stations, solved.units, margin=worst.live_factor), ""]
         del crossing
-    for rating in explain:
-        parts += [*explanation_parts(explained(ratings, rating), stations, solved.units), ""]
+    for one in explain:
+        parts += [*explanation_parts(one, stations, solved.units), ""]
     return [*parts, *_deflected(ratings, every=every), *closing(ratings)]
 
 
@@ -117,6 +117,7 @@ def closing(ratings: Ratings) -> list[str]:
     return [
         ratings.solved.method.statement,
         ratings.solved.impact.statement,
+        *_speed_texts(ratings),
         *_abreast_texts(ratings),
         "Covers: " + coverage_text(ratings.coverage),
         *uplift_texts(ratings.uplifts, ratings.solved.units),
@@ -125,6 +126,15 @@ def closing(ratings: Ratings) -> list[str]:
         *notes,
         *(f"Caution: {caution}" for caution in CAUTIONS),
     ]
+
+
+def _speed_texts(ratings: Ratings) -> list[str]:
+    """Return what a speed that was asked for does to impact."""
+    limit, kinds = ratings.solved.impact.crawl
+    slow = [one for one in ratings.crossings if one.speed is not None]
+    kept = [one.title for one in slow if (one.speed or 0.0) > limit or one.loading.kind not in kinds]
+    named = ", ".join(dict.fromkeys(kept))
+    return [f"No rule of this method drops impact at the speed asked for {named}: it stays."] if kept else []
 
 
 def _abreast_texts(ratings: Ratings) -> list[str]:

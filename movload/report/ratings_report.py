@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import asdict
 from typing import TYPE_CHECKING, Final
 
 from movload.rating.factor_sets import sign_weight
@@ -31,6 +32,7 @@ if TYPE_CHECKING:
 
     from movload.rating.rating import Rating
     from movload.rating.ratings import Ratings
+    from movload.review.hand import Explanation
     from movload.units import UnitSystem
 
 FORMAT: Final = "movload.ratings/1"
@@ -155,7 +157,23 @@ def ratings_csv(rows: Sequence[Rating], units: UnitSystem) -> str:
     return csv_text([*COLUMNS, unit], rows, units)
 
 
-def ratings_json(ratings: Ratings, rows: Sequence[Rating]) -> str:
+def explanation_json(one: Explanation) -> dict[str, object]:
+    """Return one rating taken apart."""
+    rating = one.rating
+    return {
+        "crossing_number": rating.number, "level": rating.level, "part": rating.effect.part,
+        "row": rating.effect.name, "sense": rating.sense,
+        "strength": [asdict(step) for step in one.strength.steps],
+        "permanent": [
+            {"title": term.title, "effect": term.effect, "margin": term.margin, "used": term.used}
+            for term in one.permanent
+        ],
+        "terms": [asdict(term) for term in one.terms],
+        "spare": one.spare, "live": one.live, "live_factor": one.live_margin, "factor": rating.factor,
+    }  # fmt: skip
+
+
+def ratings_json(ratings: Ratings, rows: Sequence[Rating], explanations: Sequence[Explanation] = ()) -> str:
     """Return the document movload.ratings/1."""
     coverage = ratings.coverage
     return json_text(
@@ -194,5 +212,6 @@ def ratings_json(ratings: Ratings, rows: Sequence[Rating]) -> str:
             "cautions": CAUTIONS,
             "sources": ratings.solved.sources,
             "rows": json_rows([*COLUMNS, *_JSON_ONLY], rows),
+            "explanations": [explanation_json(one) for one in explanations],
         }
     )  # fmt: skip

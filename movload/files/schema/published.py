@@ -7,6 +7,7 @@ from typing import Any
 from pydantic import BaseModel, ConfigDict, Field
 
 from movload.files.schema.bridge import BridgeFile
+from movload.files.schema.factor_set import FactorSetFile
 from movload.files.schema.vehicle import VehicleFile
 
 
@@ -101,6 +102,57 @@ class NoteDocument(Document):
     source: str
 
 
+class StepDocument(Document):
+    """One line of a strength's derivation."""
+
+    symbol: str
+    equation: str
+    value: float = Field(description="SI")
+    unit: str
+    source: str
+
+
+class PermanentTermDocument(Document):
+    """One class's part of what permanent load uses of a strength."""
+
+    title: str
+    effect: float = Field(description="as it acts, tension and sagging positive [N, N m]")
+    margin: float
+    used: float = Field(description="in the rated sense, negative where it relieves [N, N m]")
+
+
+class TermDocument(Document):
+    """One axle's part of a live effect: load x factor x share x (1 + impact) x ordinate."""
+
+    vehicle: int
+    axle: int
+    x: float
+    z: float | None
+    load: float
+    factor: float
+    share: float
+    impact: float
+    ordinate: float
+    effect: float
+
+
+class ExplanationDocument(Document):
+    """One rating taken apart."""
+
+    crossing_number: int
+    level: str
+    part: str
+    row: str
+    sense: str
+    strength: list[StepDocument]
+    permanent: list[PermanentTermDocument]
+    terms: list[TermDocument]
+    spare: float = Field(description="strength less what permanent load uses [N, N m]")
+    live: float = Field(description="magnitude [N, N m]")
+    live_factor: float
+    factor: float | None
+
+
 class RatingsDocument(Document):
     """The document movload.ratings/1: SI, unrounded; rows worst first by crossing."""
 
@@ -117,11 +169,14 @@ class RatingsDocument(Document):
     cautions: list[str]
     sources: list[str]
     rows: list[RatingDocument]
+    explanations: list[ExplanationDocument] = Field(description="rows that were asked to be taken apart")
 
 
-_MODELS: dict[str, type[BaseModel]] = {"bridge": BridgeFile, "vehicle": VehicleFile, "ratings": RatingsDocument}
+_MODELS: dict[str, type[BaseModel]] = {
+    "bridge": BridgeFile, "vehicle": VehicleFile, "ratings": RatingsDocument, "factor_set": FactorSetFile,
+}  # fmt: skip
 
 
 def schema_of(subject: str) -> dict[str, Any]:
-    """Return the JSON Schema of "bridge", "vehicle" or "ratings"."""
+    """Return the JSON Schema of "bridge", "vehicle", "factor_set" or "ratings"."""
     return {"$schema": "https://json-schema.org/draft/2020-12/schema", **_MODELS[subject].model_json_schema()}
