@@ -184,7 +184,10 @@ def _groups(where: _Where, count: int) -> tuple[tuple[tuple[float, int, Floats],
     place = np.repeat(np.arange(z.size), len(each))
     heading = np.tile(where.headings, z.size)
     shares = np.stack(each, axis=1).reshape(place.size, -1)
-    groups = worst_groups(shares, z[place], where.apart, count)
+    # what a heading does along the bridge is its own: one heading's shares say nothing of the other's
+    apart = np.zeros((place.size, len(each), shares.shape[1]))
+    apart[np.arange(place.size), np.tile(np.arange(len(each)), z.size)] = shares
+    groups = worst_groups(apart.reshape(place.size, -1), z[place], where.apart, count)
     return tuple(tuple((float(z[place[one]]), int(heading[one]), shares[one]) for one in group) for group in groups)
 
 

@@ -97,7 +97,7 @@ DECK = [
         "permit",
         "compression = 150",
         "compression = -1",
-        (f"{CHORD}: permits.compression: ", "0 or more, got -1000.0 N"),
+        (f"{CHORD}: permits.compression: ", "0 or more, got -1000 N"),
     ),
 ]
 

@@ -110,7 +110,8 @@ def assert_decent(done: Done, path: Path, text: str) -> None:
         return
     assert done.code == 1, text
     assert done.out == ""
-    assert re.fullmatch(rf"movload: {re.escape(str(path))}: [^\n]+\n", done.err), (done.err, text)
+    on_bridge = r"( on [^\n]+\.toml)?"  # a vehicle that is right but does not fit between the kerbs
+    assert re.fullmatch(rf"movload: {re.escape(str(path))}{on_bridge}: [^\n]+\n", done.err), (done.err, text)
     assert "nan degrees" not in done.err, text
 
 

@@ -1,4 +1,4 @@
-"""``movload schema``: JSON Schemas of the two files and of the ratings document."""
+"""``movload schema``: JSON Schemas of the three files and of the ratings document."""
 
 from __future__ import annotations
 
@@ -9,17 +9,24 @@ from cli_run import movload
 
 SUBJECTS = {
     "bridge": (
-        ["title", "units", "layout", "joints", "supports", "members", "deck", "permanent", "rating"],
+        ["title", "units", "layout", "joints", "supports", "members", "deck", "floor", "permanent", "rating"],
         ["title", "units", "supports", "members"],
     ),
     "vehicle": (["title", "kind", "source", "units", "axles", "headings"], ["title", "kind", "units", "axles"]),
     "ratings": (
         [
-            "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "uplifts", "cautions",
-            "sources", "rows",
+            "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "deflections",
+            "uplifts", "cautions", "sources", "rows", "explanations",
         ],
     )
     * 2,
+    "factor_set": (
+        [
+            "title", "edition", "statement", "sources", "multiple_presence", "presence_by_kind", "condition",
+            "measured_gain", "system", "impact", "impact_values", "crawl_speed", "crawl_kinds", "closure", "levels",
+        ],
+        ["title", "edition", "statement", "sources", "levels"],
+    ),
 }  # fmt: skip
 
 

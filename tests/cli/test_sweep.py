@@ -19,7 +19,7 @@ ROW = [
     "lowest", "lowest_position", "lowest_heading", "lowest_axle", "lowest_station_name",
     "highest_placement", "lowest_placement",
 ]  # fmt: skip
-PLACEMENT = ["x", "load", "share", "impact"]
+PLACEMENT = ["x", "load", "share", "impact", "factor", "z", "vehicle"]
 HEADS = [
     "vehicle", "part", "row", "kind", "unit",
     "highest", "highest_position [m]", "highest_heading", "highest_axle", "highest_station_name",
@@ -44,6 +44,9 @@ def test_json_has_these_fields_of_every_row(asked: list[object]) -> None:
     assert all(placement is None or list(placement) == PLACEMENT for placement in placements)
     assert {number for placement in placements if placement for number in placement["share"]} == {1.0}
     assert {number for placement in placements if placement for number in placement["impact"]} == {0.0}
+    assert {number for placement in placements if placement for number in placement["factor"]} == {1.0}
+    assert {number for placement in placements if placement for number in placement["z"]} == {None}
+    assert {number for placement in placements if placement for number in placement["vehicle"]} == {1}
 
 
 def test_a_hanger_takes_the_axle_over_it_and_what_its_panels_bring(asked: list[object]) -> None:

@@ -19,8 +19,9 @@ from movload.units import UnitSystem
 METRIC, US = UnitSystem("m", "kN", "mm"), UnitSystem("ft", "kip", "in")
 COUNTS = {"pratt": 5, "howe": 4, "warren": 5, "warren with verticals": 4, "k": 6, "baltimore": 8}
 ANSWERS = {
-    "density": "7850 kg/m3", "tension": "400 kN", "compression": "300 kN", "truss_share": "60 %", "deck": "4 kN/m",
-    "impact": "30 %",
+    "density": '"7850 kg/m3"', "tension": '"400 kN"', "compression": '"300 kN"', "truss_spacing": '"4.6 m"',
+    "kerbs": '["-1.9 m", "1.9 m"]', "clearance": '"0.35 m"', "deck": '"4 kN/m"', "detail_allowance": '"15 %"',
+    "impact": '"30 %"',
 }  # fmt: skip
 
 
@@ -38,7 +39,7 @@ def layout(form: str, deck: str) -> Layout:
 def filled(text: str) -> str:
     """Return a starter with every "?" outside comments answered."""
     for name, answer in ANSWERS.items():
-        text = re.sub(rf'(?m)^([^#\n]*\b{name} = )"\?"', rf'\g<1>"{answer}"', text)
+        text = re.sub(rf'(?m)^([^#\n]*\b{name} = )"\?"', rf"\g<1>{answer}", text)
     return text
 
 
@@ -68,7 +69,8 @@ def test_a_rating_names_every_open_place_until_it_is_filled(form: str) -> None:
     roles = dict.fromkeys(bar.role for bar in lay_out(begun).bars)
     named = [f'members."{role}"' if " " in role else f"members.{role}" for role in roles]
     places = [f"{role}.{key}" for role in named for key in ("density", "permits.tension", "permits.compression")]
-    places += ["deck.truss_share", "permanent.deck", "permanent.truss_share", "rating.impact"]
+    places += ["deck.truss_spacing", "deck.kerbs", "deck.clearance"]
+    places += ["permanent.deck", "permanent.detail_allowance", "rating.impact"]
     assert bridge.missing == tuple(places)
     with pytest.raises(MissingDataError, match="a rating needs data that is not there yet") as caught:
         movload.solve(bridge)
@@ -82,16 +84,34 @@ def test_filled_it_rates(form: str) -> None:
     assert bridge.missing == ()
     ratings = movload.rate(bridge, [movload.read_vehicle("h5")])
     assert ratings.coverage.complete
+    assert ratings.coverage.not_rated == ("floor", "deck")
     assert ratings.worst.factor > 0
 
 
-@pytest.mark.parametrize("number", range(7))
+@pytest.mark.parametrize("units", [METRIC, US], ids=["metric", "US"])
+def test_the_floor_is_there_to_be_uncommented(units: UnitSystem) -> None:
+    """Its "?" wait for their values like all others, and filled it is rated with the trusses."""
+    text = starter_text("A bridge", layout("pratt", "through"), units)
+    with_floor = re.sub(r"(?m)^# (\[floor\.|z = |weight = |permits = \{)", r"\1", text)
+    assert with_floor.count("\n[floor.") == 2
+    bridge = bridge_from(with_floor, "begun.toml")
+    asked = [place for place in bridge.missing if place.startswith("floor.")]
+    assert asked == [
+        f"floor.{part}.permits.{sense}" for part in ("stringers", "floorbeams") for sense in ("moment", "shear")
+    ]
+    with_strengths = re.sub(r'moment = "\?", shear = "\?"', 'moment = "90 kN m", shear = "200 kN"', with_floor)
+    ratings = movload.rate(bridge_from(filled(with_strengths), "filled.toml"), [movload.read_vehicle("h5")])
+    assert ratings.coverage.complete
+    assert ratings.coverage.not_rated == ("deck planks", "deck")
+
+
+@pytest.mark.parametrize("number", range(21))
 def test_one_open_place_is_enough_to_refuse(number: int) -> None:
     text = filled(starter_text("A bridge", layout("howe", "through"), METRIC))
-    answers = [
-        match.span() for match in re.finditer("|".join(f'(?<== )"{answer}"' for answer in ANSWERS.values()), text)
-    ]
-    start, end = answers[number * len(answers) // 7]
+    written = "|".join(f"(?<== ){re.escape(answer)}" for answer in ANSWERS.values())
+    answers = [match.span() for match in re.finditer(written, text)]
+    assert len(answers) == 21  # three of each of 5 groups, three of the deck, two permanent, one impact
+    start, end = answers[number]
     bridge = bridge_from(f'{text[:start]}"?"{text[end:]}', "begun.toml")
     assert len(bridge.missing) == 1
     with pytest.raises(MissingDataError, match=re.escape(f'yet: {bridge.missing[0]} (still holds "?")')):

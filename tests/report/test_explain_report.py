@@ -5,6 +5,7 @@ The bridge is the invented one of tests/rating/floors.py with two lanes, trusses
 
 from __future__ import annotations
 
+import json
 import math
 import re
 from dataclasses import replace
@@ -13,6 +14,8 @@ from typing import TYPE_CHECKING, Final
 import pytest
 from numpy.testing import assert_allclose
 from oracles.trusses import bottom
+from rating.bridges import CART as ROAD_CART
+from rating.bridges import brook
 from rating.floors import CART, fitted
 
 from movload import Crossing, Deck, Loading, rate
@@ -20,8 +23,10 @@ from movload.bridge.floor import Floor, Floorbeams, Stringers
 from movload.bridge.permanent import Item, PermanentItems
 from movload.bridge.roadway import Roadway
 from movload.bridge.strengths import TypedStrength
+from movload.files.schema.published import RatingsDocument
 from movload.rating.factor_sets import FactorSet, Level
 from movload.report.explain_report import explanation_parts
+from movload.report.ratings_report import ratings_json
 from movload.report.table import rendered
 from movload.review.hand import explained
 from movload.statics.part import row_of
@@ -31,10 +36,12 @@ if TYPE_CHECKING:
     from movload import Ratings
     from movload.rating.rating import Rating
 
+ROUND_OFF: Final = 1e-12  # relative, of a few sums and products
 POINTS: Final = ("L0", "L1", "L2", "L3", "L4")
 SI: Final = UnitSystem()
 US: Final = UnitSystem("ft", "kip", "in")
-STATE: Final = {"condition": "fair", "system": "riveted"}
+BAR: Final = TypedStrength({}, {"tension": 500e3, "compression": 400e3}, condition="fair", system="riveted")
+BEAM: Final = TypedStrength({}, {"moment": 300e3, "shear": 300e3}, condition="fair", system="riveted")
 LEVEL: Final = Level(
     "legal", live=1.45, by_class={"components": (1.25, 0.9), "surfacing": (1.5, 0.65), "settlement": (1.0, 1.0)},
     resistance={"tension": 0.95, "compression": 0.95, "moment": 0.9, "shear": 0.8}, condition_factors=True,
@@ -47,11 +54,9 @@ METHOD: Final = FactorSet(
 
 def rated(*crossings: Crossing | Loading, units: UnitSystem = SI) -> Ratings:
     """Return the ratings of the bridge with two lanes by the rules above."""
-    bar = TypedStrength({}, {"tension": 500e3, "compression": 400e3}, **STATE)
-    beam = TypedStrength({}, {"moment": 300e3, "shear": 300e3}, **STATE)
     bridge = fitted(
         deck=Deck(tuple(bottom(4)), truss_spacing=6.4, roadway=Roadway(-3.0, 3.0, clearance=0.4), kind="pony"),
-        floor=Floor(Stringers((-2.4, -0.8, 0.8, 2.4), strength=beam), Floorbeams(weight=900.0, strength=beam)),
+        floor=Floor(Stringers((-2.4, -0.8, 0.8, 2.4), strength=BEAM), Floorbeams(weight=900.0, strength=BEAM)),
         permanent=PermanentItems(
             (
                 Item("planks", "components", line=4e3, low=-3.0, high=3.0),
@@ -61,8 +66,7 @@ def rated(*crossings: Crossing | Loading, units: UnitSystem = SI) -> Ratings:
         ),
         units=units,
     )
-    strengths = dict.fromkeys(bridge.strengths, bar)
-    return rate(replace(bridge, strengths=strengths), crossings, METHOD)
+    return rate(replace(bridge, strengths=dict.fromkeys(bridge.strengths, BAR)), crossings, METHOD)
 
 
 def found(ratings: Ratings, key: str, side: int) -> Rating:
@@ -228,3 +232,43 @@ def test_a_permitted_strength_is_one_line() -> None:
     assert cells(lines[3]) == ["R", "permitted tension, as typed", "400.00 kN", "bridge file"]
     assert lines[4] == HEADS[1]
     assert "margin" in lines[5]
+
+
+def test_the_document_holds_every_line_of_it() -> None:
+    """SI, unrounded: C = k phi Rn, and each axle's product, to round-off; sums and RF follow."""
+    ratings = rated(Loading.of(CART, "farm"))
+    asked = [explained(ratings, found(ratings, key, 0)) for key in ("L1-L2", "floorbeam L2 moment at S2")]
+    read = json.loads(ratings_json(ratings, [], asked))
+    RatingsDocument.model_validate(read)
+    one, other = read["explanations"]
+    assert list(one) == [
+        "crossing_number", "level", "part", "row", "sense", "strength", "permanent", "terms", "spare", "live",
+        "live_factor", "factor",
+    ]  # fmt: skip
+    assert [one[key] for key in ("crossing_number", "level", "part", "row", "sense")] == [
+        0, "legal", "left truss", "L1-L2", "tension",
+    ]  # fmt: skip
+    assert [list(step) for step in one["strength"]] == [["symbol", "equation", "value", "unit", "source"]] * 6
+    assert list(one["permanent"][0]) == ["title", "effect", "margin", "used"]
+    assert list(one["terms"][0]) == [
+        "vehicle", "axle", "x", "z", "load", "factor", "share", "impact", "ordinate", "effect",
+    ]  # fmt: skip
+    assert (other["part"], other["row"], other["sense"]) == ("floorbeam L2", "moment at S2", "moment")
+    for said, nominal in ((one, 500e3 * 0.95), (other, 300e3 * 0.9)):
+        capacity = said["strength"][-1]["value"]
+        assert_allclose(capacity, 0.95 * 0.95 * nominal, rtol=ROUND_OFF)
+        for term in said["terms"]:
+            shared = term["load"] * term["factor"] * term["share"]
+            assert_allclose(shared * (1 + term["impact"]) * term["ordinate"], term["effect"], rtol=ROUND_OFF)
+        used = [term["effect"] * term["margin"] for term in said["permanent"]]
+        assert_allclose([term["used"] for term in said["permanent"]], used, rtol=ROUND_OFF)
+        assert_allclose(said["spare"], capacity - sum(used), rtol=ROUND_OFF)
+        assert_allclose(said["live"], sum(term["effect"] for term in said["terms"]), rtol=ROUND_OFF)
+        assert_allclose(said["factor"], said["spare"] / (1.45 * said["live"]), rtol=ROUND_OFF)
+
+
+def test_a_typed_share_has_no_place_across_in_the_document() -> None:
+    ratings = rate(brook(), [ROAD_CART])
+    (one,) = json.loads(ratings_json(ratings, [], [explained(ratings, found(ratings, "L1-L2", 0))]))["explanations"]
+    assert [term["z"] for term in one["terms"]] == [None, None]
+    assert [term["share"] for term in one["terms"]] == [0.6, 0.6]

@@ -22,6 +22,7 @@ from movload.report.phrases import (
     place_text,
     quantity_of,
     rounded_down,
+    span_ratio_text,
     standing_text,
     uplift_texts,
     use_text,
@@ -36,6 +37,8 @@ US = UnitSystem("ft", "kip", "in")
 BAR = Effect("truss", "U1-L2", "axial", "N")
 REACTION = Effect("truss", "L0 y", "reaction", "N")
 DOWN = Effect("truss", "L3 down", "down", "m")
+MOMENT = Effect("stringer S1", "L0-L1 moment", "moment", "N m")
+SHEAR = Effect("stringer S1", "L0-L1 shear", "shear", "N")
 KIP = 4448.2216152605  # N, exact (NIST SP 811, B.8, from memory)
 TONNE = 9806.65  # N
 SHORT_TON = 2000 * 4.4482216152605  # N
@@ -58,6 +61,11 @@ SHORT_TON = 2000 * 4.4482216152605  # N
         (DOWN, 12.345e-3, SI, "12.35"),
         (DOWN, -4e-6, SI, "0"),
         (DOWN, 0.5 * 0.0254, US, "0.50"),
+        (MOMENT, 82.36e3, SI, "82.4 kN m"),
+        (MOMENT, -82.36e3, SI, "-82.4 kN m"),  # hogging: moments have no letters
+        (MOMENT, 100 * KIP * 0.3048, US, "100.0 kip ft"),
+        (MOMENT, -1.0, SI, "0"),
+        (SHEAR, 120e3, SI, "120.0"),
     ],
 )
 def test_a_bars_force_has_its_letter_and_zero_has_nothing(
@@ -93,7 +101,8 @@ def test_a_number_shown_as_zero_has_no_sign(value: float, sign: str, text: str) 
 
 
 def test_what_an_effect_is_measured_in() -> None:
-    assert [quantity_of(effect) for effect in (BAR, REACTION, DOWN)] == ["force", "force", "section"]
+    effects = (BAR, REACTION, DOWN, MOMENT, SHEAR)
+    assert [quantity_of(effect) for effect in effects] == ["force", "force", "section", "moment", "force"]
 
 
 @pytest.mark.parametrize(
@@ -197,8 +206,17 @@ def test_where_a_vehicle_stands() -> None:
     assert place_text(never, SI) == "off the bridge"
     assert standing_text(never, tuple(points)) == ""
     assert standing_text(replace(hanger, lost=True), tuple(points)) == "axle 2 just off L1"
+    assert standing_text(replace(hanger, station=-1), tuple(points)) == "moment under axle 2"  # a stringer's
     assert place_text(replace(hanger, heading=1), SI) == "2.00 m →"
     assert place_text(replace(hanger, position=-3.2e-11), SI) == "0.00 m ←"
+
+
+@pytest.mark.parametrize(
+    ("ratio", "text"),
+    [(500.0, "1/500"), (799.9, "1/799"), (800.0 * (1 - 1e-12), "1/800"), (0.5, "1/0"), (math.inf, "-")],
+)
+def test_span_over_deflection_is_rounded_down(ratio: float, text: str) -> None:
+    assert span_ratio_text(ratio) == text
 
 
 def test_an_axle_that_has_just_left_is_not_said_to_stand_there() -> None:

@@ -87,7 +87,7 @@ def test_json_is_the_published_document() -> None:
     assert (read["format"], read["title"]) == ("movload.ratings/1", "Brook bridge")
     assert list(read) == [
         "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "deflections", "uplifts",
-        "cautions", "sources", "rows",
+        "cautions", "sources", "rows", "explanations",
     ]  # fmt: skip
     assert list(read["rows"][0]) == [
         "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "safe_weight",
@@ -99,7 +99,7 @@ def test_json_is_the_published_document() -> None:
     assert list(read["deflections"][0]) == ["part", "point", "crossing", "crossing_number", "down", "ratio", "limit"]
     assert read["units"] == {"force": "N", "length": "m", "moment": "N m", "speed": "m/s"}
     assert read["sources"] == ["brook.toml"]
-    assert read["uplifts"] == {}
+    assert (read["uplifts"], read["explanations"]) == ({}, [])
     assert read["cautions"] == list(CAUTIONS)
 
 
