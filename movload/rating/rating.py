@@ -6,10 +6,12 @@ from dataclasses import dataclass
 from functools import cached_property
 from typing import TYPE_CHECKING, Final
 
+from movload.rating.factor_sets import sign_weight
 from movload.rating.resistance import SENSES
 
 if TYPE_CHECKING:
     from movload.peaks.peaks import Peak, Peaks
+    from movload.rating.factor_sets import Level
     from movload.statics.part import Effect
 
 DIGITS: Final = 10  # to which ratings are compared: bars alike but for round-off keep the order of their rows
@@ -39,6 +41,8 @@ class Rating:
         What permanent load uses of R [N], the level's margins included; negative relieves.
     live_factor
         The level's margin on L [-].
+    margins
+        The level itself.
     peaks, row, side
         Where the placement is found.
     """
@@ -56,6 +60,7 @@ class Rating:
     impact: float
     pushed: float
     live_factor: float
+    margins: Level
     peaks: Peaks
     row: int
     side: int
@@ -67,8 +72,8 @@ class Rating:
 
     @cached_property
     def safe_weight(self) -> float:
-        """RF x the weight of the vehicle that governs [N]: what it could weigh, its axles in the same proportions."""
-        return self.factor * self.gross
+        """What the vehicle that governs could weigh by the level's rule [N], its axles in the same proportions."""
+        return sign_weight(self.margins, self.factor, self.gross)
 
     @property
     def gross(self) -> float:

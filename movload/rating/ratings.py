@@ -72,6 +72,7 @@ class Ratings:
             impact=float(self.impact[crossing, row, side]),
             pushed=float(self._pushed[level][row, side]),
             live_factor=margins.live_margin(loading.kind, self._traffic),
+            margins=margins,
             peaks=peaks,
             row=row,
             side=side,

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Final
 
-from movload.rating.factor_sets import sign_weight
 from movload.rating.serviceability import deflections
 from movload.report.explain_report import explanation_parts, sum_table
 from movload.report.phrases import (
@@ -155,7 +154,7 @@ def _sign_texts(ratings: Ratings) -> list[str]:
     if method.closure:
         worst = min(
             (
-                sign_weight(method.levels[level], rating.factor, rating.gross)
+                rating.safe_weight
                 for number, crossing in enumerate(ratings.crossings)
                 for level in range(len(ratings.levels))
                 if ratings.rates(number, level) and method.levels[level].posting and not crossing.controlled

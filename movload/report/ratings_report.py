@@ -5,7 +5,6 @@ from __future__ import annotations
 from dataclasses import asdict
 from typing import TYPE_CHECKING, Final
 
-from movload.rating.factor_sets import sign_weight
 from movload.rating.serviceability import deflections
 from movload.report.columns import Column, csv_text, json_rows, json_text
 from movload.report.phrases import (
@@ -118,7 +117,6 @@ def summary(ratings: Ratings, levels: Sequence[int]) -> RenderableType:
 def _summary_line(ratings: Ratings, worst: Rating, level: int) -> list[str]:
     """Return one crossing at one level as a line."""
     units, crossing = ratings.solved.units, ratings.crossings[worst.number]
-    weight = sign_weight(ratings.solved.method.levels[level], worst.factor, worst.gross)
     return [
         crossing.title,
         f"{number_text(crossing.loading.gross, 'force', units)} {units.symbol('force')}",
@@ -128,7 +126,7 @@ def _summary_line(ratings: Ratings, worst: Rating, level: int) -> list[str]:
         factor_text(worst.factor),
         verdict_text(worst.factor, ratings.coverage, ratings.uplifts),
         governed_text(worst),
-        weight_text(weight, units) + (" *" if crossing.controlled else ""),
+        weight_text(worst.safe_weight, units) + (" *" if crossing.controlled else ""),
         use_text(worst) or place_text(worst.peak, units),
     ]
 
