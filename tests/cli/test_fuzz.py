@@ -26,8 +26,15 @@ VALUES: list[object] = [
     float("inf"), True, False, "", " ", "?", "pinned", "L0", "U1", "L0-U1", "U1-L1", "12'-6 1/2\"", "3 m", "5 kN",
     "1e300 kip", "2 ton", "9.5 t", "30 %", "1/0 in", "ünï", "a\nb", "\x1b[2J", "x" * 5000, [], [0], [1, 2],
     ["L0", "L1"], [[1, 2]], {}, {"a": 1}, {"slides": 0}, {"slides": 90.0}, {"load": 5, "after": 2},
-    {"pinned": True, "slide_stiffness": 1e-9},
+    {"pinned": True, "slide_stiffness": 1e-9}, "full width", "left", "chord", "deck", "poor", "severe", "surfacing",
+    "riveted members", "by riding surface", "by loaded length", "railway", "unknown", [-1.5, 1.5], [2, -2], ["-1 m", 1],
+    {"moment": 1}, {"L1": 3}, {"L1": -3}, "2 kN/m", "3 kPa", "1 kN m", 80,
 ]  # fmt: skip
+OPTIONS = (
+    [], ["--method", "lrfr"], ["--method", "load_factor", "--at", "centre line"], ["--method", "allowable_stress"],
+    ["--method", "en", "--at", "left kerb"], ["--at", "own lane"], ["--at", "0.1 m", "--speed", "5 mph"],
+    ["--abreast", "1"], ["--impact", "railway"], ["--impact", "by loaded length"],
+)  # fmt: skip
 SIGNS = "[]{}=\"'#,.-0eE\n\t\\x\x00\x7fé"
 
 
@@ -110,8 +117,9 @@ def assert_decent(done: Done, path: Path, text: str) -> None:
         return
     assert done.code == 1, text
     assert done.out == ""
-    on_bridge = r"( on [^\n]+\.toml)?"  # a vehicle that is right but does not fit between the kerbs
-    assert re.fullmatch(rf"movload: {re.escape(str(path))}{on_bridge}: [^\n]+\n", done.err), (done.err, text)
+    file = re.escape(str(path))
+    named = rf"({file}|[^\n]+ on {file}|{file} on [^\n]+)"  # a vehicle that does not fit is named with the bridge
+    assert re.fullmatch(rf"movload: {named}: [^\n]+\n", done.err), (done.err, text)
     assert "nan degrees" not in done.err, text
 
 
@@ -123,7 +131,8 @@ def test_spoiled_bridges(tmp_path: Path, example: Path, way: Any) -> None:
     for _ in range(TRIALS):
         spoiled = way(whole, dice)
         path = written(tmp_path, spoiled)
-        words = dice.choice((["draw", path], ["influence", path], ["sweep", path, "hs20"], ["rate", path, "ev3", "h5"]))
+        rate = ["rate", path, "ev3", "h5", *dice.choice(OPTIONS)]
+        words = dice.choice((["draw", path], ["influence", path], ["sweep", path, "hs20"], rate, rate))
         assert_decent(movload(*words, "--json"), path, spoiled)
     assert {entry.name for entry in tmp_path.iterdir()} == {"bridge.toml"}
 
@@ -136,14 +145,16 @@ def test_spoiled_vehicles(tmp_path: Path, vehicle: Path, way: Any) -> None:
     for _ in range(TRIALS):
         spoiled = way(whole, dice)
         path = written(tmp_path, spoiled, "vehicle.toml")
-        words = dice.choice((["vehicles", path], ["sweep", BRIDGES[0], path], ["rate", BRIDGES[0], path]))
+        rate = ["rate", BRIDGES[0], path, *dice.choice(OPTIONS)]
+        words = dice.choice((["vehicles", path], ["sweep", BRIDGES[0], path], rate, rate))
         assert_decent(movload(*words, "--json"), path, spoiled)
 
 
 WORDS = [
     "", "?", "h5", "hs20", "U1-L2", "L3 down", "--json", "--all", "--gate", "--force", "--impact", "--row", "--csv",
     "--plot", "x.png", "x.csv", "/dev/null", "--", "-", "-x", "--no-such", "0.3", "30 %", "-1", "nan", "é", "a b",
-    "--form", "pratt",
+    "--form", "pratt", "--at", "left kerb", "0.4 m", "--speed", "5 mph", "--method", "lrfr", "--explain", "--abreast",
+    "--wander", "by loaded length",
 ]  # fmt: skip
 
 

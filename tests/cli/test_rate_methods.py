@@ -1,4 +1,4 @@
-"""``movload rate`` by every factor set and rule of impact, and its rows taken apart. Numbers by hand, as in across.py."""
+"""``movload rate`` by each factor set and rule of impact, and rows taken apart. Numbers by hand, as in across.py."""
 
 from __future__ import annotations
 

@@ -150,7 +150,7 @@ def test_keys_that_may_be_left_out_leave_nothing_behind() -> None:
         ("measured_gain", "mesured_gain", 'key "mesured_gain" is not known (nearest: "measured_gain")'),
         ("posting =", "postng =", 'levels[0]: key "postng" is not known (nearest: "posting")'),
         ("surfacing =", "surfaceing =", ('levels[0].permanent: "surfaceing" is not one of components, surfacing, '
-         'other, settlement (nearest: "surfacing")')),
+         'removable surfacing, other, settlement (nearest: "surfacing")')),
         ("{ tension", "{ tensile", ('levels[0].resistance: "tensile" is not one of tension, compression, moment, '
          'hogging, shear (nearest: "tension")')),
         ('"crowd"]', '"crowds"]', 'levels[0].kinds: "crowds" is not one of routine, '),

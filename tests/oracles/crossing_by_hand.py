@@ -7,8 +7,8 @@ found by cutting it and adding up what stands to the right of the cut. Only the 
 ``oracles.lagrange`` solves the plane truss.
 
 Wheels are taken one by one; arrays run over K positions at once. x along the bridge, z across it to the left looking
-toward +x, from the middle between the trusses. Loads down; sagging moments, and shears of a part that is pressed up on
-the cut's right, are positive.
+toward +x, from the middle between the trusses. Loads act down, a moment that sags is positive, and the shear beside a
+truss is what that truss pushes up less what stands on its bracket.
 """
 
 from __future__ import annotations
@@ -36,7 +36,7 @@ ON_THE_END = 3e-13  # of the largest x: summed spacings round; a tenth of a nano
 
 @dataclass(frozen=True, slots=True, eq=False)
 class Wheel:
-    """One wheel, or any point load: where it stands (K,) [m] (nan: nowhere) and its load (K,) [N]."""
+    """One wheel, or any point load: where it stands (K,) [m] (x nan: nowhere) and its load (K,) [N]."""
 
     x: Floats
     z: Floats
@@ -52,30 +52,29 @@ def axles_at(vehicle: Vehicle, front: Floats, heading: Floats) -> Floats:
     return np.array(places)
 
 
-def wheels_of(vehicle: Vehicle, x: Floats, middle: Floats, heading: Floats, times: Floats) -> Iterator[Wheel]:
+def wheels_of(vehicle: Vehicle, x: Floats, middle: Floats, heading: Floats, times: Floats | float) -> Iterator[Wheel]:
     """Yield the wheels of a vehicle whose axles stand at x (A, K) and whose middle at z = ``middle`` (K,) [m].
 
-    Its own left is toward +z when it heads toward +x, and toward -z when it comes back. ``times`` (K,) multiplies.
+    Its own left is toward +z when it heads toward +x, and toward -z when it comes back. ``times`` multiplies loads.
     """
     for number, load in enumerate(vehicle.loads):
         on_left = vehicle.left_shares[number] if vehicle.left_shares else 0.5
-        out = 0.5 * vehicle.gauges[number] * heading
-        yield Wheel(x[number], middle + out, on_left * load * times)
-        yield Wheel(x[number], middle - out, (1.0 - on_left) * load * times)
+        out, whole = 0.5 * vehicle.gauges[number] * heading, load * times * np.ones(middle.size)
+        yield Wheel(x[number], middle + out, on_left * whole)
+        yield Wheel(x[number], middle - out, (1.0 - on_left) * whole)
 
 
 @dataclass(frozen=True, slots=True, eq=False)
 class Standing:
     """A bridge with loads on it.
 
-    ``x`` (B,) of the stringers' ends, ``beams`` which of them are floorbeams (others are abutments), ``stringers``
-    (N,) their z, ``half`` the trusses' distance from the middle, ``ordinates`` (R, B) of one truss; ``on_beams``
-    (B, N, K) what the stringers bring to each floorbeam, ``on_stringers`` (W, N, K) what each load at ``along`` (W, K)
-    brings to each stringer.
+    ``x`` (B,) of the stringers' ends, ``beams`` which of them are floorbeams (others are abutments), ``stringers`` (N,)
+    their z, ``half`` the trusses' distance from the middle, ``ordinates`` (R, B) of one truss; ``on_beams`` (B, N, K)
+    what stringers bring to floorbeams, ``on_stringers`` (W, N, K) what each load at ``along`` (W, K) brings to them.
     """
 
     x: Floats
-    beams: tuple[int, ...]
+    beams: list[int]
     stringers: Floats
     half: float
     ordinates: Floats
@@ -90,22 +89,20 @@ class Standing:
         left = (self.on_beams * arms).sum(axis=1) / (2.0 * self.half)
         return left, self.on_beams.sum(axis=1) - left
 
-    @property
-    def trusses(self) -> dict[str, Floats]:
-        """Every row (R, K) of both trusses under what the floorbeams bring."""
-        left, right = self.reactions
-        return {"left truss": self.ordinates @ left, "right truss": self.ordinates @ right}
-
-    def beam(self, section: str) -> Floats:
-        """Return a section's moment or shear (beams, K), the section named as a table names it."""
-        kind, _, where = section.partition(" ")
+    def rows(self, title: str, *, at_midspan: bool = False) -> Floats:
+        """Return a part's rows (R, K), the part named as a table names it; ``at_midspan``: see `stringer`."""
+        if title.endswith("truss") and "," not in title:
+            return self.ordinates @ self.reactions[0 if title == "left truss" else 1]
+        if title.startswith("stringer S"):
+            return self.stringer(int(title.removeprefix("stringer S")) - 1, at_midspan=at_midspan)
+        kind, _, where = title.removeprefix("floorbeams, ").partition(" ")
         if kind == "moment" and where.startswith("at S"):
             return self.moment(float(self.stringers[int(where.removeprefix("at S")) - 1]))
         side = -1.0 if "right" in where else 1.0
         if kind == "moment":
             return self.moment(side * self.half)
-        beyond = self._beyond(side)
-        return beyond if where.endswith("bracket") else self.reactions[0 if side > 0.0 else 1][[*self.beams]] - beyond
+        bracket = self.on_beams[:, side * self.stringers > self.half].sum(axis=1)
+        return (bracket if "bracket" in where else self.reactions[0 if side > 0.0 else 1] - bracket)[self.beams]
 
     def moment(self, s: float) -> Floats:
         """Return each floorbeam's moment (beams, K) at z = s: reactions and loads to the right of the cut, times arms.
@@ -115,68 +112,55 @@ class Standing:
         left, right = self.reactions
         up = right * max(s + self.half, 0.0) + left * max(s - self.half, 0.0)
         arms = np.maximum(s - self.stringers, 0.0)[None, :, None]
-        return (up - (self.on_beams * arms).sum(axis=1))[[*self.beams]]
+        return (up - (self.on_beams * arms).sum(axis=1))[self.beams]
 
-    def _beyond(self, side: float) -> Floats:
-        """Return what stands on each floorbeam's bracket (beams, K) beyond the left (+1) or the right (-1) truss."""
-        out = side * self.stringers > self.half
-        return self.on_beams[[*self.beams]][:, out].sum(axis=1)
-
-    def stringer(self, number: int, *, middle: bool = False) -> Floats:
+    def stringer(self, number: int, *, at_midspan: bool = False) -> Floats:
         """Return a stringer's moment and end shear, span by span (2 P, K); loads that would lift it are left out.
 
         The moment is the greatest under any load, or that at midspan.
         """
         loads = np.maximum(self.on_stringers[:, number], 0.0)
-        return np.concatenate([self._span(loads, *ends, middle=middle) for ends in pairwise(self.x.tolist())])
+        return np.concatenate([self._span(loads, *ends, at_midspan=at_midspan) for ends in pairwise(self.x.tolist())])
 
-    def _span(self, loads: Floats, begin: float, end: float, *, middle: bool) -> Floats:
+    def _span(self, loads: Floats, begin: float, end: float, *, at_midspan: bool) -> Floats:
         """Return one simple span's moment and greater end shear (2, K) under loads (W, K)."""
         near, length = ON_THE_END * float(np.abs(self.x).max()), end - begin
         inside = (self.along >= begin - near) & (self.along <= end + near)
         at, load = np.where(inside, self.along - begin, 0.0), np.where(inside, loads, 0.0)
         right = (load * at).sum(axis=0) / length
         left = load.sum(axis=0) - right
-        sections = [np.full(left.shape, 0.5 * length)] if middle else np.unique(at, axis=0)
+        sections = [np.full(left.shape, 0.5 * length)] if at_midspan else np.unique(at, axis=0)
         moments = [left * s - (load * np.maximum(s - at, 0.0)).sum(axis=0) for s in sections]
         return np.array([np.max(moments, axis=0), np.maximum(left, right)])
 
 
 def standing(bridge: Bridge, loads: Sequence[Wheel]) -> Standing:
     """Return a bridge with loads on it, each brought to the stringers and by them to the floorbeams."""
-    points, stringers = bridge.deck.panel_points, bridge.floor.stringers
-    x = np.array([bridge.truss.joints[one][0] if isinstance(one, str) else one for one in points])
-    beams = tuple(number for number, point in enumerate(points) if isinstance(point, str))
-    z = np.array(stringers.z if stringers else ())
-    positions = np.arange(loads[0].x.size)
-    on_beams, on_stringers = np.zeros((x.size, z.size, positions.size)), []
+    x, z = _measured(bridge)
+    on_beams, on_stringers = np.zeros((x.size, z.size, loads[0].x.size)), []
     near = ON_THE_END * float(np.abs(x).max())
     for one in loads:
         on = (one.x >= x[0] - near) & (one.x <= x[-1] + near)
-        across = _on_two(z, one.z, np.where(on, one.load, 0.0))
-        on_stringers.append(across)
-        panel, onward = _bay(x, np.where(on, one.x, x[0]))
-        on_beams[panel, :, positions] += (across * (1.0 - onward)).T
-        on_beams[panel + 1, :, positions] += (across * onward).T
-    ordinates = line_ordinates(bridge.truss, points)
+        on_stringers.append(_on_supports(z, one.z) * np.where(on, one.load, 0.0))
+        on_beams += _on_supports(x, np.where(on, one.x, x[0]))[:, None] * on_stringers[-1][None]
+    points, half = bridge.deck.panel_points, 0.5 * (bridge.deck.truss_spacing or 0.0)
+    beams = [number for number, point in enumerate(points) if isinstance(point, str)]
     along = np.array([one.x for one in loads])
-    half = 0.5 * (bridge.deck.truss_spacing or 0.0)
-    return Standing(x, beams, z, half, ordinates, along, np.array(on_stringers), on_beams)
+    return Standing(x, beams, z, half, line_ordinates(bridge.truss, points), along, np.array(on_stringers), on_beams)
 
 
-def _bay(supports: Floats, place: Floats) -> tuple[NDArray[np.intp], Floats]:
-    """Return the bay that holds each place, the outermost for one beyond, and how far along it stands [-]."""
+def _measured(bridge: Bridge) -> tuple[Floats, Floats]:
+    """Return the x of the stringers' ends and the z of the stringers [m]."""
+    x = [bridge.truss.joints[one][0] if isinstance(one, str) else one for one in bridge.deck.panel_points]
+    return np.array(x), np.array(bridge.floor.stringers.z if bridge.floor.stringers else ())
+
+
+def _on_supports(supports: Floats, place: Floats) -> Floats:
+    """Return what simple spans, overhanging beyond the outermost supports, bring of 1 N to each support (N, K)."""
     bay = np.clip(np.searchsorted(supports, place, side="right") - 1, 0, supports.size - 2)
-    return bay, (place - supports[bay]) / (supports[bay + 1] - supports[bay])
-
-
-def _on_two(supports: Floats, place: Floats, load: Floats) -> Floats:
-    """Return what simple spans, overhanging beyond the outermost supports, bring of a load to each support (N, K)."""
-    bay, onward = _bay(supports, place)
-    reactions = np.zeros((supports.size, place.size))
-    positions = np.arange(place.size)
-    reactions[bay, positions] = load * (1.0 - onward)
-    reactions[bay + 1, positions] = load * onward
+    onward = (place - supports[bay]) / (supports[bay + 1] - supports[bay])
+    numbers = np.arange(supports.size)[:, None]
+    reactions: Floats = np.where(numbers == bay, 1.0 - onward, 0.0) + np.where(numbers == bay + 1, onward, 0.0)
     return reactions
 
 
@@ -191,12 +175,8 @@ def room_of(roadway: Roadway, place: str, width: float, heading: int, offset: fl
     if place == "own lane":
         on_bridge_left = (roadway.keeps == "left") == (heading == 1)
         return (middle + inner, high) if on_bridge_left else (low, middle - inner)
-    named = {
-        "left kerb": (high, high),
-        "right kerb": (low, low),
-        "offset": (offset, offset),
-        "centre line": (max(low, middle - 0.3), min(high, middle + 0.3)),
-    }
+    straying = (max(low, middle - 0.3), min(high, middle + 0.3))
+    named = {"left kerb": (high, high), "right kerb": (low, low), "offset": (offset, offset), "centre line": straying}
     return named.get(place, (low, high))
 
 
@@ -210,27 +190,45 @@ def how_many(roadway: Roadway, width: float) -> int:
 
 def fitting_beside(room: tuple[float, float], middles: Sequence[float], apart: float) -> int:
     """Return how many vehicles stand there at most when some stand at ``middles`` and all keep ``apart`` [m]."""
-    low, high = room
-    walls = [low - apart, *sorted(middles), high + apart]
+    walls = [room[0] - apart, *sorted(middles), room[1] + apart]
     return len(middles) + sum(int((b - a + 1e-8) // apart) - 1 for a, b in pairwise(walls))
 
 
-def points_of(bridge: Bridge, weight: float, across: tuple[float, float], cells: int = 5) -> list[Wheel]:
-    """Return ``weight`` [N/m along the bridge], spread evenly between two z, as a grid of small point loads.
+def tried_along(bridge: Bridge, vehicle: Vehicle, heading: Floats, random: np.random.Generator) -> Floats:
+    """Return front axles' x (K,): four of five times some axle stands at a floorbeam, else anywhere."""
+    x, size = _measured(bridge)[0], heading.size
+    behind = -axles_at(vehicle, np.zeros(1), np.ones(1))[:, 0]
+    on = random.choice(x, size) + heading * random.choice(behind, size)
+    return np.where(random.random(size) < 0.8, on, random.uniform(x[0] - behind[-1], x[-1] + behind[-1], size))
 
-    Cells end at floorbeams, midspans and stringers, so that in each of them everything is straight and its middle
-    stands for it.
+
+def tried_across(
+    bridge: Bridge, gauges: Sequence[float], rooms: Floats, apart: Sequence[float], random: np.random.Generator
+) -> Floats:
+    """Return the middles' z (V, K) of vehicles within ``rooms`` (2, K), the next ``apart`` further left than the last.
+
+    Half of the rows touch; half are then moved as one until a wheel of one stands on a stringer or a truss, if it may.
     """
-    points = bridge.deck.panel_points
-    ends = [bridge.truss.joints[one][0] if isinstance(one, str) else one for one in points]
-    middles = [(a + b) / 2 for a, b in pairwise(ends)]
-    x = np.unique([*ends, *middles, *np.linspace(ends[0], ends[-1], cells)])
-    low, high = across
-    inner = [z for z in (bridge.floor.stringers.z if bridge.floor.stringers else ()) if low < z < high]
-    z = np.unique([low, *inner, *np.linspace(low, high, cells), high])
-    rows = [((a + b) / 2, (b - a) / (high - low)) for a, b in pairwise(z)] if high > low else [(low, 1.0)]
-    return [
-        Wheel(np.array([(a + b) / 2]), np.array([place]), np.array([weight * (b - a) * part]))
-        for a, b in pairwise(x)
-        for place, part in rows
-    ]
+    low, free = rooms[0], np.maximum(rooms[1] - rooms[0] - apart[-1], 0.0)
+    shifts = np.sort(random.choice([0.0, 1.0, *random.random(6)], (len(apart), low.size)), axis=0)
+    z = low + free * np.where(random.random(low.size) < 0.5, shifts[0], shifts) + np.array(apart)[:, None]
+    half = 0.5 * (bridge.deck.truss_spacing or 0.0)
+    on = random.choice([half, -half, *_measured(bridge)[1]], low.size)
+    on += 0.5 * random.choice(np.array(gauges), low.size) * random.choice([1.0, -1.0], low.size)
+    moved = z + on - z[random.integers(len(apart), size=low.size), np.arange(low.size)]
+    may = (moved[0] >= rooms[0]) & (moved[-1] <= rooms[1]) & (random.random(low.size) < 0.5)
+    tried: Floats = np.where(may, moved, z)
+    return tried
+
+
+def points_of(bridge: Bridge, weight: float, low: float, high: float, cells: int = 5) -> list[Wheel]:
+    """Return ``weight`` [N/m along the bridge], spread evenly from z = low to high, as a grid of small point loads.
+
+    Cells end at floorbeams, midspans and stringers: within one everything is straight, its middle stands for it.
+    """
+    ends, stringers = _measured(bridge)
+    x = np.unique([*ends, *((a + b) / 2 for a, b in pairwise(ends)), *np.linspace(ends[0], ends[-1], cells)])
+    z = np.unique([*np.linspace(low, high, cells), *stringers[(stringers > low) & (stringers < high)]])
+    rows = [((a + b) / 2, (b - a) / (high - low)) for a, b in pairwise(z)] or [(low, 1.0)]
+    places = [((a + b) / 2, b - a, place, part) for a, b in pairwise(x) for place, part in rows]
+    return [Wheel(np.array([at]), np.array([y]), np.array([weight * long * part])) for at, long, y, part in places]

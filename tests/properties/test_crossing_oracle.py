@@ -1,8 +1,8 @@
 """movload's answer against a crossing followed wheel by wheel (``oracles.crossing_by_hand``) on invented bridges.
 
-The bridges are any determinate trusses twice, with stringers anywhere, decks that overhang, brackets, kerbs outside the
-trusses; the vehicles have unequal wheels and gauges. Two things are asked of every row: that the placement movload names
-may be taken and gives the value it names, and that no position tried gives more.
+Any determinate truss twice, stringers anywhere, overhanging decks, brackets, kerbs outside the trusses, unequal wheels
+and gauges. The placement movload names must be allowed and give the value it names; no position tried may give more.
+Deflections are left out. The last tests are single disagreements, worked by hand.
 """
 
 from __future__ import annotations
@@ -11,237 +11,266 @@ from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
+import pytest
 from hypothesis import assume, given, settings
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
-from oracles.crossing_by_hand import Wheel, axles_at, fitting_beside, how_many, room_of, standing, wheels_of
-from oracles.lagrange import line_ordinates
+from oracles import crossing_by_hand as hand
+from oracles.trusses import bottom, pratt, simple_span, truss_of
 from strategies import determinate, vehicles
 
-from movload import Bridge, Case, Crossing, Deck, Loading, Truss, Vehicle, rate
+from movload import Bridge, Case, Crossing, Deck, Loading, Truss, Vehicle, rate, solve
 from movload.bridge.floor import Floor, Floorbeams, Stringers
-from movload.bridge.permanent import Item, PermanentItems
+from movload.bridge.permanent import CLASSES, Item, PermanentItems
 from movload.bridge.roadway import PLACES, Roadway
 from movload.bridge.strengths import TypedStrength, permitted
+from movload.errors import InputError
 from movload.rating.factor_sets import PERMITTED
+from movload.review.hand import terms
+from movload.statics.part import row_of
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray
-    from oracles.crossing_by_hand import Standing
 
     from movload import Ratings
-    from movload.statics.part import Part
+    from movload.rating.solved import SolvedBridge
 
     Floats = NDArray[np.float64]
 
 AGREED: Final = 1e-9  # of the most a row could feel: the dense oracle's forces are good to 1e-10 (test_oracles)
 METRES: Final = 1e-8  # m: sums of kerbs, clearances and gauges
 PRESENCE: Final = (1.2, 1.0, 0.85)
-METHOD: Final = replace(PERMITTED, multiple_presence=PRESENCE)
 ANY: Final = TypedStrength({"moment": 100e3, "shear": 100e3, "hogging": 100e3})
-SAMPLES: Final = 400  # positions tried for each number abreast
+TRIED: Final = 300  # positions for each number abreast
 
 
 def bridge_of(truss: Truss, deck: Deck, floor: Floor, *items: Item, impact: float = 0.0) -> Bridge:
     """Return a bridge whose members weigh nothing."""
     members = [replace(member, density=0.0) for member in truss.members]
-    some = {members[0].name: permitted(1e5, 1e5)}
-    truss = Truss(truss.joints, members, truss.supports)
+    some, truss = {members[0].name: permitted(1e5, 1e5)}, Truss(truss.joints, members, truss.supports)
     return Bridge("invented", truss, deck, permanent=PermanentItems(items), strengths=some, floor=floor, impact=impact)
 
 
 @st.composite
-def bridges(draw: st.DrawFn, roadway: Roadway, impact: float = 0.0) -> Bridge:
-    """Draw a bridge under a roadway: stringers under 0.5 to 1.2 of it, trusses 0.4 to 1.4 of it apart, off the middle."""
-    laid = draw(determinate())
-    steps = np.array(draw(st.lists(st.floats(0.3, 1.0), min_size=1, max_size=5)))
-    reach = roadway.width * draw(st.floats(0.5, 1.2))
+def roadways(draw: st.DrawFn, width: float = 1.5) -> Roadway:
+    """Draw a roadway on which one to three vehicles fit."""
+    clearance, right, between = draw(st.floats(0.0, 0.6)), draw(st.floats(-5.0, 0.5)), draw(st.floats(0.6, 1.5))
+    left = right + 2.0 * clearance + width + draw(st.floats(0.01, 5.0))
+    return Roadway(right, left, clearance=clearance, between=between, keeps=draw(st.sampled_from(["right", "left"])))
+
+
+@st.composite
+def bridges(draw: st.DrawFn, roadway: Roadway) -> Bridge:
+    """Draw a bridge: stringers under 0.5 to 1.2 of a roadway, trusses 0.4 to 1.4 of it apart, all off the middle."""
+    laid, steps = draw(determinate()), np.array(draw(st.lists(st.floats(0.3, 1.0), min_size=1, max_size=5)))
+    reach, spacing = (roadway.width * draw(st.floats(*some)) for some in ((0.5, 1.2), (0.4, 1.4)))
     z = roadway.middle + draw(st.floats(-0.4, 0.4)) + reach * (np.cumsum([0.0, *steps]) / steps.sum() - 0.5)
-    spacing = roadway.width * draw(st.floats(0.4, 1.4))
-    more = draw(st.sampled_from([0.0, 0.3]))
-    brackets = tuple(max(0.0, out - 0.5 * spacing) and out - 0.5 * spacing + more for out in (-z[0], z[-1]))
-    floor = Floor(Stringers(tuple(z.tolist()), strength=ANY), Floorbeams(brackets, strength=ANY))
+    more, out = draw(st.sampled_from([0.0, 0.3])), (float(-z[0] - spacing / 2), float(z[-1] - spacing / 2))
+    beams = Floorbeams((max(0.0, out[0]) and out[0] + more, max(0.0, out[1]) and out[1] + more), strength=ANY)
+    stringers = Stringers(tuple(z.tolist()), weight=draw(st.sampled_from([0.0, 900.0])), strength=ANY)
     deck = Deck(laid.panel_points, truss_spacing=spacing, roadway=roadway, kind="deck")
-    return bridge_of(laid.truss, deck, floor, impact=impact)
+    return bridge_of(laid.truss, deck, Floor(stringers, beams), impact=draw(st.sampled_from([0.0, 0.3])))
 
 
-@dataclass(frozen=True, eq=False, repr=False)
+@dataclass(frozen=True, eq=False)
 class Drawn:
     """A vehicle, its bridge, its place, and what movload says."""
 
     vehicle: Vehicle
+    roadway: Roadway
     bridge: Bridge
     crossing: Crossing
     ratings: Ratings
 
     def __repr__(self) -> str:
-        """What hypothesis shows of it."""
         return f"{self.vehicle}, {self.bridge.floor}, {self.bridge.deck}, {self.crossing.place} x {self.crossing.lanes}"
 
     @property
-    def width(self) -> float:
-        return max(self.vehicle.gauges)
-
-    @property
-    def roadway(self) -> Roadway:
-        roadway = self.bridge.deck.roadway
-        assert roadway is not None
-        return roadway
-
-    @property
     def apart(self) -> float:
-        return self.width + self.roadway.between
+        return max(self.vehicle.gauges) + self.roadway.between
 
     @property
     def counts(self) -> list[int]:
         """How many may stand abreast."""
-        most = how_many(self.roadway, self.width) if self.crossing.place == "anywhere" else 1
+        most = hand.how_many(self.roadway, max(self.vehicle.gauges)) if self.crossing.place == "anywhere" else 1
         return [self.crossing.lanes] if self.crossing.lanes else list(range(1, most + 1))
 
-    def room(self, heading: int) -> tuple[float, float]:
-        return room_of(self.roadway, self.crossing.place, self.width, heading, self.crossing.z)
+    def room(self, heading: float) -> tuple[float, float]:
+        width = max(self.vehicle.gauges)
+        return hand.room_of(self.roadway, self.crossing.place, width, int(heading), self.crossing.z)
 
     def times(self, count: int) -> float:
-        """What everything beside the loads multiplies them by when so many stand abreast."""
+        """Return what multiplies the loads when so many stand abreast."""
         presence = PRESENCE[min(count, len(PRESENCE)) - 1]
         return presence * self.crossing.loading.cases[0].factor * (1.0 + (self.bridge.impact or 0.0))
 
+    def by_hand(self, wheels: list[hand.Wheel]) -> list[Floats]:
+        """Return every part's rows (R, K)."""
+        stands = hand.standing(self.bridge, wheels)
+        return [stands.rows(part.title) for part in self.ratings.solved.parts]
+
+    @property
+    def margin(self) -> Floats:
+        """What the two may differ by (R,): of all axles where they count most; anything in a deflection."""
+        most = self.vehicle.gross * max(self.counts) * self.times(1)
+        return AGREED * most * most_felt(self.ratings.solved)
+
+
+def most_felt(solved: SolvedBridge) -> Floats:
+    """Return the most that 1 N makes any force or moment (R,) [-, m]; infinite for deflections."""
+    lines, down = solved.parts[0].response, np.array([effect.kind == "down" for effect in solved.effects])
+    forces = np.abs(lines.under(np.eye(lines.stations.size)))[~down[: len(lines.effects)]].max()
+    shares = max(np.abs(part.across.ordinate).max() for part in solved.parts)
+    return np.where(down, np.inf, max(1.0, shares) * max(1.0, forces, np.diff(lines.stations).max()))
+
+
+def of_axles(count: int, low: float, high: float) -> st.SearchStrategy[list[float]]:
+    """Draw a number for every axle, often the same."""
+    one = st.floats(low, high)
+    return one.map(lambda value: [value] * count) | st.lists(one, min_size=count, max_size=count)
+
 
 @st.composite
-def crossings(draw: st.DrawFn) -> Drawn:
-    """Draw a vehicle on a roadway where one to three fit, and rate it."""
-    vehicle = draw(vehicles())
-    axles, lopsided = vehicle.loads.size, draw(st.booleans())
-    one_gauge = draw(st.floats(0.7, 2.2))
-    gauges = draw(st.just([one_gauge] * axles) | st.lists(st.floats(0.7, 2.2), min_size=axles, max_size=axles))
-    lefts = draw(st.lists(st.floats(0.0, 1.0), min_size=axles, max_size=axles)) if lopsided else ()
-    # a vehicle without length does not show its heading
-    assume(not lopsided or float(np.sum(np.asarray(vehicle.spacings))) > 0.1)
-    vehicle = replace(vehicle, gauges=tuple(gauges), left_shares=tuple(lefts))
-    clearance, right = draw(st.floats(0.0, 0.6)), draw(st.floats(-5.0, 0.5))
-    left = right + 2.0 * clearance + max(gauges) + draw(st.floats(0.01, 5.0))
-    keeps, between = draw(st.sampled_from(["right", "left"])), draw(st.floats(0.6, 1.5))
-    roadway = Roadway(right, left, clearance=clearance, between=between, keeps=keeps)
-    place = draw(st.sampled_from(["anywhere", "anywhere", *PLACES]))
-    low, high = room_of(roadway, "anywhere", max(gauges), 1)
+def crossings(draw: st.DrawFn, *, turned: bool) -> Drawn:
+    """Draw a crossing and rate it; ``turned``: left and right wheels differ, and it may cross either way."""
+    vehicle = draw(vehicles(headings=(1, -1) if turned else ()))
+    place = draw(st.sampled_from(["anywhere", "anywhere", *(one for one in PLACES if one != "own lane" or not turned)]))
+    gauges, lefts = (draw(of_axles(vehicle.loads.size, *ends)) for ends in ((0.7, 2.2), (0.0, 1.0)))
+    may = turned or place == "own lane" or len(vehicle.headings) == 1
+    assume(not may or sum(map(float, np.asarray(vehicle.spacings))) > 0.1)  # else its place does not show its heading
+    vehicle = replace(vehicle, gauges=tuple(gauges), left_shares=tuple(lefts) if may else ())
+    roadway, width = draw(roadways(max(gauges))), max(gauges)
+    low, high = hand.room_of(roadway, "anywhere", width, 1)
     z = low + draw(st.floats(0.0, 1.0)) * (high - low) if place == "offset" else 0.0
-    lanes = draw(st.integers(0, how_many(roadway, max(gauges)))) if place == "anywhere" else 0
-    rooms = [room_of(roadway, place, max(gauges), heading, z) for heading in vehicle.headings]
-    assume(all(low <= high for low, high in rooms))
+    assume(all(np.diff(hand.room_of(roadway, place, width, heading, z))[0] >= 0.0 for heading in vehicle.headings))
     loading = Loading("drawn", "routine", (Case("laden", vehicle, factor=draw(st.sampled_from([1.0, 1.3]))),))
-    bridge = draw(bridges(roadway, impact=draw(st.sampled_from([0.0, 0.3]))))
-    crossing = Crossing(loading, place, z, lanes=lanes)
-    return Drawn(vehicle, bridge, crossing, rate(bridge, [crossing], METHOD))
-
-
-def rows_of(part: Part, stands: Standing) -> Floats:
-    """Return a part's rows (R, K) by hand."""
-    if part.title in {"left truss", "right truss"}:
-        return stands.trusses[part.title]
-    if part.title.startswith("stringer S"):
-        return stands.stringer(int(part.title.removeprefix("stringer S")) - 1)
-    return stands.beam(part.title.removeprefix("floorbeams, "))
-
-
-def by_hand(drawn: Drawn, wheels: list[Wheel]) -> list[Floats]:
-    """Return every part's rows (R, K) by hand."""
-    stands = standing(drawn.bridge, wheels)
-    return [rows_of(part, stands) for part in drawn.ratings.solved.parts]
-
-
-def sizes_of(drawn: Drawn) -> Floats:
-    """Return the most that each row (R,) could feel: every axle where it counts most, several times over."""
-    solved, rows = drawn.ratings.solved, []
-    ordinates = line_ordinates(drawn.bridge.truss, drawn.bridge.deck.panel_points)
-    for part in solved.parts:
-        down = np.array([effect.kind == "down" for effect in part.response.effects])
-        line = np.abs(ordinates).max(axis=1) if "truss" in part.title[-5:] and down.size == len(ordinates) else None
-        of_kind = np.ones(down.size) if line is None else np.where(down, line[down].max(), line[~down].max())
-        rows.append(of_kind * max(1.0, float(np.abs(part.across.ordinate).max())))
-    spans = float(np.diff(solved.parts[0].response.stations).max())
-    return np.concatenate(rows) * drawn.vehicle.gross * max(drawn.counts) * drawn.times(1) * max(1.0, spans)
+    lanes = draw(st.integers(0, hand.how_many(roadway, width))) if place == "anywhere" else 0
+    crossing, bridge = Crossing(loading, place, z, lanes=lanes), draw(bridges(roadway))
+    ratings = rate(bridge, [crossing], replace(PERMITTED, multiple_presence=PRESENCE))
+    return Drawn(vehicle, roadway, bridge, crossing, ratings)
 
 
 @settings(max_examples=40)
-@given(crossings())
+@given(st.booleans().flatmap(lambda turned: crossings(turned=turned)))
 def test_the_placement_named_may_be_taken_and_gives_the_value_named(drawn: Drawn) -> None:
-    """All peaks at once, one a position; a stringer is asked about vehicle by vehicle (see the last tests)."""
+    """All peaks at once, one a position; every vehicle alone, as each is where it is worst on a stringer."""
     peaks, axles = drawn.ratings.peaks[0], drawn.vehicle.loads.size
-    keys = [(row, side) for row in range(len(peaks.effects)) for side in (0, 1)]
-    found = [peaks.peak(row, side) for row, side in keys]
-    shape = (max(drawn.counts), len(keys))
+    found = [peaks.peak(row, side) for row in range(len(peaks.effects)) for side in (0, 1)]
+    shape = (max(drawn.counts), len(found))
     x, z, heading, times = np.full((axles, *shape), np.nan), np.zeros(shape), np.ones(shape), np.zeros(shape)
     for position, peak in enumerate(found):
-        stands = peak.placement
-        for number in range(stands.x.size // axles):
-            own = stands.vehicle == number
-            x[:, number, position], z[number, position] = stands.x[own], stands.z[own][0]
-            heading[number, position] = -np.sign(stands.x[own][-1] - stands.x[own][0]) or peak.heading
-            times[number, position] = (stands.factor * (1.0 + stands.impact))[own][0]
-        if stands.x.size:
-            check_placement(drawn, z[: number + 1, position], heading[: number + 1, position], times[0, position])
-    straight = axles_at(drawn.vehicle, x[0].reshape(-1), heading.reshape(-1)).reshape(x.shape)
+        stands, count = peak.placement, peak.placement.x.size // axles
+        part = (slice(count), position)
+        x[:, *part], z[part] = stands.x.reshape(count, axles).T, stands.z[::axles]
+        heading[part] = np.sign(x[0, *part] - x[-1, *part])
+        heading[part] += (heading[part] == 0.0) * peak.heading
+        times[part] = (stands.factor * (1.0 + stands.impact))[::axles]
+        if count:
+            check_places(drawn, z[part], heading[part], times[part])
+    straight = hand.axles_at(drawn.vehicle, x[0].reshape(-1), heading.reshape(-1)).reshape(x.shape)
     assert_allclose(x, straight, rtol=0.0, atol=METRES)
-    each = [
-        by_hand(drawn, list(wheels_of(drawn.vehicle, x[:, one], z[one], heading[one], times[one])))
-        for one in range(shape[0])
-    ]
-    total = np.concatenate([np.sum(of_part, axis=0) for of_part in zip(*each, strict=True)])
-    values = np.array([total[row, position] for position, (row, _) in enumerate(keys)])
-    named = np.array([(peaks.highest, peaks.lowest)[side][row] for row, side in keys])
-    assert (np.abs(values - named) <= AGREED * np.repeat(sizes_of(drawn), 2)).all()
+    placed = [(x[:, one], z[one], heading[one], times[one]) for one in range(shape[0])]
+    alone = [np.concatenate(drawn.by_hand([*hand.wheels_of(drawn.vehicle, *one)])) for one in placed]
+    values = np.sum(alone, axis=0)[np.repeat(np.arange(len(peaks.effects)), 2), np.arange(len(found))]
+    named = np.stack((peaks.highest, peaks.lowest), axis=1).reshape(-1)
+    assert (np.abs(values - named) <= np.repeat(drawn.margin, 2)).all()
 
 
-def check_placement(drawn: Drawn, z: Floats, heading: Floats, times: float) -> None:
-    """Refuse vehicles that do not keep to their place, too near each other, or counted as none of those there may be."""
-    allowed = [count for count in drawn.counts if np.isclose(drawn.times(count), times, rtol=1e-12)]
-    assert allowed
-    for middle, way in zip(z, heading, strict=True):
-        assert way in drawn.vehicle.headings
-        low, high = drawn.room(int(way))
-        assert low - METRES <= middle <= high + METRES
+def check_places(drawn: Drawn, z: Floats, heading: Floats, times: Floats) -> None:
+    """Refuse vehicles out of their place, too near each other, or counted as no number that may stand there."""
+    allowed = [count for count in drawn.counts if np.allclose(drawn.times(count), times, rtol=1e-12, atol=0.0)]
+    rooms = np.array([drawn.room(way) for way in heading])
+    assert set(heading) <= set(drawn.vehicle.headings)
+    assert ((rooms[:, 0] - METRES <= z) & (z <= rooms[:, 1] + METRES)).all()
     assert (np.diff(np.sort(z)) >= drawn.apart - METRES).all()
-    assert len(z) <= max(allowed)
-    assert fitting_beside(drawn.room(int(heading[0])), z.tolist(), drawn.apart) >= min(allowed)
+    assert any(len(z) <= count <= hand.fitting_beside(drawn.room(heading[0]), [*z], drawn.apart) for count in allowed)
 
 
-@settings(max_examples=40)
-@given(crossings(), st.integers(0, 2**32 - 1))
+@settings(max_examples=60)
+@given(st.booleans().flatmap(lambda turned: crossings(turned=turned)), st.integers(0, 2**32 - 1))
 def test_no_position_tried_beats_the_value_named(drawn: Drawn, seed: int) -> None:
-    """Half of the positions at random; half with an axle at a floorbeam and a wheel on a stringer, truss or kerb."""
-    random, peaks, atol = np.random.default_rng(seed), drawn.ratings.peaks[0], AGREED * sizes_of(drawn)[:, None]
+    """Vehicles abreast, each anywhere along the bridge and in either heading."""
+    random, peaks, vehicle = np.random.default_rng(seed), drawn.ratings.peaks[0], drawn.vehicle
     for count in drawn.counts:
-        wheels: list[Wheel] = []
-        for z, heading in tried_across(drawn, count, random):
-            front = tried_along(drawn, heading, random)
-            x = axles_at(drawn.vehicle, front, heading)
-            wheels += wheels_of(drawn.vehicle, x, z, heading, np.full(SAMPLES, drawn.times(count)))
-        values = np.concatenate(by_hand(drawn, wheels))
-        assert (values <= peaks.highest[:, None] + atol).all()
-        assert (values >= peaks.lowest[:, None] - atol).all()
+        headings = random.choice(np.array(vehicle.headings, dtype=np.float64), (count, TRIED))
+        rooms = np.array([drawn.room(way) for way in headings[0]]).T
+        beside = [drawn.apart * number for number in range(count)]
+        middles = hand.tried_across(drawn.bridge, vehicle.gauges, rooms, beside, random)
+        wheels: list[hand.Wheel] = []
+        for z, heading in zip(middles, headings, strict=True):
+            x = hand.axles_at(vehicle, hand.tried_along(drawn.bridge, vehicle, heading, random), heading)
+            wheels += hand.wheels_of(vehicle, x, z, heading, drawn.times(count))
+        values = np.concatenate(drawn.by_hand(wheels))
+        assert (values.max(axis=1) <= peaks.highest + drawn.margin).all()
+        assert (values.min(axis=1) >= peaks.lowest - drawn.margin).all()
 
 
-def tried_across(drawn: Drawn, count: int, random: np.random.Generator) -> list[tuple[Floats, Floats]]:
-    """Return z and heading (K,) of each of ``count`` vehicles that keep apart."""
-    heading = random.choice(np.array(drawn.vehicle.headings, dtype=np.float64), (count, SAMPLES))
-    rooms = np.array([drawn.room(int(way)) for way in heading[0]]).T
-    free = np.maximum(rooms[1] - rooms[0] - (count - 1) * drawn.apart, 0.0)
-    shifts = np.sort(random.choice([0.0, 1.0, np.nan, np.nan], (count, SAMPLES)), axis=0)
-    shifts = np.sort(np.where(np.isnan(shifts), random.random(shifts.shape), shifts), axis=0)
-    z = rooms[0] + free * shifts + drawn.apart * np.arange(count)[:, None]
-    if count == 1:  # a wheel on a stringer or a truss
-        half = 0.5 * (drawn.bridge.deck.truss_spacing or 0.0)
-        stringers = drawn.bridge.floor.stringers
-        on = random.choice([half, -half, *(stringers.z if stringers else ())], SAMPLES)
-        on += 0.5 * random.choice(drawn.vehicle.gauges, SAMPLES) * random.choice([1.0, -1.0], SAMPLES)
-        z = np.where((on >= rooms[0]) & (on <= rooms[1]) & (random.random(SAMPLES) < 0.5), on, z)
-    return list(zip(z, heading, strict=True))
+@given(roadways().flatmap(bridges), st.lists(st.floats(0.0, 1.0), min_size=3, max_size=3), st.sampled_from(CLASSES))
+def test_an_item_is_as_many_small_loads(bridge: Bridge, places: list[float], kind: str) -> None:
+    """A layer between two z, a line at one, and each stringer's own weight at its place."""
+    right, left = bridge.edges
+    low, high, line = (right + (left - right) * one for one in (*sorted(places[:2]), places[2]))
+    items = (Item("layer", kind, line=9e3, low=low, high=high), Item("rail", kind, line=700.0, low=line, high=line))
+    solved, stringers = solve(replace(bridge, permanent=PermanentItems(items))), bridge.floor.stringers
+    own = [(stringers.weight, z, z) for z in stringers.z] if stringers else []
+    loads = [
+        point for spread in [(9e3, low, high), (700.0, line, line), *own] for point in hand.points_of(bridge, *spread)
+    ]
+    stands = hand.standing(bridge, loads)
+    values = np.concatenate([stands.rows(part.title, at_midspan=True)[:, 0] for part in solved.parts])
+    margin = AGREED * sum(float(one.load[0]) for one in loads) * most_felt(solved)
+    assert (np.abs(solved.permanent.sum(axis=0) - values) <= margin).all()
 
 
-def tried_along(drawn: Drawn, heading: Floats, random: np.random.Generator) -> Floats:
-    """Return the front axle's x (K,)."""
-    stations = drawn.ratings.solved.parts[0].response.stations
-    behind = -axles_at(drawn.vehicle, np.zeros(1), np.ones(1))[:, 0]
-    on = random.choice(stations, SAMPLES) + heading * random.choice(behind, SAMPLES)
-    anywhere = random.uniform(stations[0] - behind[-1], stations[-1] + behind[-1], SAMPLES)
-    return np.where(random.random(SAMPLES) < 0.8, on, anywhere)
+def two_panels(spacing: float, stringers: tuple[float, ...], beams: Floorbeams, kerb: float = 1.0) -> Bridge:
+    """Return a deck bridge of two panels of 4 m with kerbs at +- ``kerb``."""
+    truss = truss_of(pratt([4.0, 4.0], [3.0]), simple_span(2))
+    roadway = Roadway(-kerb, kerb, clearance=0.2, between=0.6)
+    deck = Deck(tuple(bottom(2)), truss_spacing=spacing, roadway=roadway, kind="deck")
+    return bridge_of(truss, deck, Floor(Stringers(stringers, strength=ANY), beams))
+
+
+def permanent(bridge: Bridge, name: str) -> float:
+    """Return what stands for good does to a row of the middle floorbeam or of a truss."""
+    solved = solve(bridge)
+    return float(solved.permanent[:, row_of(solved.effects, name)].sum())
+
+
+def test_a_floorbeams_own_weight() -> None:
+    """1 kN/m over S = 4.6 m: (S^2/4 - z^2)/2 kN m at inner stringers, S/2 kN beside a truss and on it.
+
+    At an outermost stringer, where the deck's line across runs on to the truss, more than the true 0.84 kN m.
+    """
+    bridge = two_panels(4.6, (-1.9, -0.4, 0.3, 1.9), Floorbeams(weight=1e3, strength=ANY))
+    for name, z in (("S2", 0.4), ("S3", 0.3)):
+        assert_allclose(permanent(bridge, f"floorbeam L1 moment at {name}"), 500.0 * (5.29 - z**2), rtol=1e-12)
+    assert permanent(bridge, "floorbeam L1 moment at S4") > 500.0 * (5.29 - 1.9**2)
+    assert_allclose([permanent(bridge, f"floorbeam L1 shear at {one} truss") for one in ("left", "right")], 2300.0)
+    assert_allclose([permanent(bridge, f"{one} truss U1-L1") for one in ("left", "right")], 2300.0)
+
+
+@pytest.mark.xfail(strict=True, reason="own weight goes by way of the stringers, of which none stands on the bracket")
+def test_a_brackets_own_weight() -> None:
+    """1 kN/m on a bracket of 1.5 m: -1.125 kN m over the truss, 1.5 kN beside it; -0.72 kN m 0.3 m inside it."""
+    bridge = two_panels(3.0, (-1.2, 0.0, 1.2), Floorbeams((1.5, 1.5), weight=1e3, strength=ANY))
+    names = ("moment over left truss", "shear of left bracket", "moment at S1")
+    assert_allclose([permanent(bridge, f"floorbeam L1 {name}") for name in names], [-1125.0, 1500.0, -720.0])
+
+
+@pytest.mark.xfail(strict=True, reason="unsafe: accepted, and the cantilevers have no rows, nor does any note say so")
+def test_stringers_beyond_the_trusses_need_brackets() -> None:
+    """Of 100 kN as far left as it may, 53.3 kN stand at 2.2 m, 0.7 m beyond the truss: -37.3 kN m that no row shows."""
+    with pytest.raises(InputError, match="bracket"):
+        two_panels(3.0, (-2.2, -0.7, 0.7, 2.2), Floorbeams(strength=ANY), kerb=2.5)
+
+
+@pytest.mark.xfail(strict=True, reason="each vehicle is put where it is worst, be that at another section or end")
+def test_vehicles_abreast_on_a_stringer_stand_as_the_peak_says() -> None:
+    """S4 feels 2/3 of one's front axle and 0.27083 of its rear one, and 0.020833 of the other's rear axle only.
+
+    40 + 16.25/4 + 1.25 = 45.3125 kN at the right end; but the second vehicle is shown at the left one.
+    """
+    bridge = two_panels(7.0, (-2.4, -1.2, 0.0, 1.2, 2.4), Floorbeams(strength=ANY), kerb=3.0)
+    peaks = rate(bridge, [Vehicle("cart", [60e3, 60e3], [3.0], gauges=(0.8, 1.9), headings=(1,))]).peaks[0]
+    row = row_of(peaks.effects, "stringer S4 L0-L1 shear")
+    assert_allclose(sum(term.effect for term in terms(peaks, row, 0)), 45312.5)

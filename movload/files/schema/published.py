@@ -45,7 +45,7 @@ class RatingDocument(Document):
     live: float = Field(description="live effect with share and impact [N, N m], tension and sagging positive")
     impact: float
     safe_weight: float | None = Field(
-        description="what the vehicle could weigh by the level's rule [N]: factor x weight, or the legal curve; null with factor"
+        description="what the vehicle could weigh by the level's rule [N]: factor x weight, or the legal curve"
     )
     position: float | None = Field(description="x of the front axle [m]; null when the vehicle is off the bridge")
     heading: int = Field(description="+1 toward +x, -1 the other way, 0 off the bridge")
