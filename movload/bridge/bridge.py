@@ -94,6 +94,14 @@ class Bridge:
             return
         half = 0.5 * deck.truss_spacing
         brackets = floor.floorbeams.brackets if floor.floorbeams else (0.0, 0.0)
+        if floor.stringers is not None and floor.floorbeams is not None:
+            for name, z in zip(floor.stringers.names, floor.stringers.z, strict=True):
+                if not -half - brackets[0] <= z <= half + brackets[1]:
+                    raise InputError(
+                        f"stringer {name} at {z:g} m stands beyond the trusses at {-half:g} and {half:g} m and what "
+                        f"brackets reach, {brackets[0]:g} and {brackets[1]:g} m",
+                        place="floor.floorbeams.brackets",
+                    )
         if deck.roadway is None:
             return
         outside = deck.roadway.right < -half or deck.roadway.left > half

@@ -51,6 +51,7 @@ class Item:
     low: float = field(default=math.nan, kw_only=True)
     high: float = field(default=math.nan, kw_only=True)
     share: float | None = field(default=None, kw_only=True)
+    on_floorbeams: bool = field(default=False, kw_only=True)
 
     def __post_init__(self) -> None:
         """Check title, class, weights and place."""

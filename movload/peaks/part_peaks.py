@@ -63,7 +63,11 @@ class PartPeaks:
         """Return the vehicle that gives it (abreast they are all alike)."""
         return self.formation(row, side)[0].vehicle
 
-    def ordinates(self, row: int, side: int, x: Floats) -> Floats:  # noqa: ARG002  # the line serves both sides
+    def ordinates(self, row: int, side: int, stands: Placement) -> Floats:  # noqa: ARG002  # the line serves both sides
+        """Return the row's effect per unit load at each axle (A,)."""
+        return self._line(row, stands.x)
+
+    def _line(self, row: int, x: Floats) -> Floats:
         """Return the row's effect per unit load at each x (A,)."""
         unit = panel_loads(self.response.stations, x[:, None], np.ones(1))
         ordinates: Floats = self.response.under(unit.T)[row]
@@ -86,7 +90,7 @@ class PartPeaks:
         x = on_the_ends(stations, candidates.standing(run, run + 1)[stop])
         heading = int(candidates.runs.heading[run])
         placement = standing_train(train, x, self.impact[row, side])
-        static = float(self.ordinates(row, side, x) @ train.felt)
+        static = float(self._line(row, x) @ train.felt)
         if static * (1, -1)[side] <= 0.0:
             return NO_PEAK
         return Peak(

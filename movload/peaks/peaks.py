@@ -97,8 +97,8 @@ class Swept(Protocol):
         """Return the vehicle that gives it; any of them where the row feels none."""
         ...
 
-    def ordinates(self, row: int, side: int, x: Floats) -> Floats:
-        """Return that peak's effect per unit load at each x (A,): added with the placement's loads they give it."""
+    def ordinates(self, row: int, side: int, stands: Placement) -> Floats:
+        """Return a peak's effect per unit load at each axle (A,) of its placement: with the loads they add up to it."""
         ...
 
 

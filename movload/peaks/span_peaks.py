@@ -104,21 +104,24 @@ class SpanPeaks:
         along = one.section + one.heading * (distances[one.axle] - distances)
         return standing_train(train, self.response.stations[row // 2] + along, self.impact[row, 0])
 
-    def ordinates(self, row: int, side: int, x: Floats) -> Floats:
-        """Return the row's effect per unit load at each x (A,), at the section where its peak stands.
+    def ordinates(self, row: int, side: int, stands: Placement) -> Floats:
+        """Return the row's effect per unit load at each axle (A,), at the section where its own vehicle is worst.
 
-        Moment at s: x (L - s)/L left of it, s (L - x)/L right of it. Shear inside the left end: 1 - x/L.
+        Vehicles abreast whose axles share unlike may be worst at different sections; their effects are added all the
+        same, which is safe. Moment at s: x (L - s)/L left of it, s (L - x)/L right of it. Shear inside the left end:
+        1 - x/L.
         """
+        felt = [train for train in self._formation(row, side) if train.felt.any()]
+        sections = np.array([self._stands(train, row).section for train in felt])[stands.vehicle]
         span = row // 2
         length = float(self.response.lengths[span])
-        section = self._stands(self._formation(row, side)[0], row).section
-        along = x - self.response.stations[span]
+        along = stands.x - self.response.stations[span]
         along = np.where(np.abs(along) <= _EDGE * length, 0.0, along)
         along = np.where(np.abs(along - length) <= _EDGE * length, length, along)
         if row % 2:
-            line = 1.0 - along / length if section == 0.0 else along / length
+            line = np.where(sections == 0.0, 1.0 - along / length, along / length)
         else:
-            line = np.minimum(along * (length - section), section * (length - along)) / length
+            line = np.minimum(along * (length - sections), sections * (length - along)) / length
         ordinates: Floats = np.where((along >= 0.0) & (along <= length), line, 0.0)
         return ordinates
 

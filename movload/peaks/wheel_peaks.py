@@ -69,9 +69,9 @@ class WheelPeaks:
         front = float(x[0] + heading * distances[axle])
         return Peak(value, front, heading, tuple(map(float, np.diff(distances))), axle, 0, train.case, placement)
 
-    def ordinates(self, row: int, side: int, x: Floats) -> Floats:  # noqa: ARG002  # the same on either side
-        """Return the row's effect per unit load at each x (A,)."""
-        return np.full(x.shape, self.response.per_wheel[row])
+    def ordinates(self, row: int, side: int, stands: Placement) -> Floats:  # noqa: ARG002  # the same on either side
+        """Return the row's effect per unit load at each axle (A,)."""
+        return np.full(stands.x.shape, self.response.per_wheel[row])
 
 
 def wheel_part(vehicle: Vehicle) -> Floats:

@@ -84,7 +84,7 @@ def terms(peaks: Peaks, row: int, side: int) -> tuple[Term, ...]:
     stands = peaks.peak(row, side).placement
     if not stands.x.size:
         return ()
-    ordinates = part.ordinates(inside, side, stands.x)
+    ordinates = part.ordinates(inside, side, stands)
     columns = (stands.x, stands.z, stands.load, stands.factor, stands.share, stands.impact, ordinates,
                stands.felt * ordinates)  # fmt: skip
     first = np.searchsorted(stands.vehicle, stands.vehicle)  # the number of each vehicle's front axle

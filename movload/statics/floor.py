@@ -7,7 +7,7 @@ trusses. So every line across is straight between stringers; beyond the outermos
 from __future__ import annotations
 
 from itertools import pairwise
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
@@ -89,11 +89,11 @@ def _floorbeam_parts(bridge: Bridge, stringers: Stringers) -> tuple[Part, ...]:
     standing = [number for number, point in enumerate(points) if isinstance(point, str)]
     hats = held(np.eye(stations.size)[standing])  # a stringer's load between two floorbeams reaches both by the lever
     parts = []
-    for name, kind, direct in _sections(stringers, spacing, beams.brackets):
+    for name, kind, beam in _sections(stringers, spacing, beams.brackets):
         unit = "N m" if kind == "moment" else "N"
         effects = tuple(Effect(f"floorbeam {points[number]}", name, kind, unit) for number in standing)
-        across = _over_stringers(stringers, direct, bridge.edges)
-        parts.append(Part(f"floorbeams, {name}", InfluenceLines(effects, stations, hats), across))
+        across = _over_stringers(stringers, beam.at(np.array(stringers.z)), bridge.edges)
+        parts.append(Part(f"floorbeams, {name}", InfluenceLines(effects, stations, hats), across, beam=beam))
     return tuple(parts)
 
 
@@ -108,27 +108,36 @@ def _planks(bridge: Bridge, stringers: Stringers) -> tuple[Part, ...]:
     return (Part("planks", PlankSpan(effects, stations, span, planks.contact), Across.typed(planks.sharing)),)
 
 
-def _sections(stringers: Stringers, spacing: float, brackets: tuple[float, float]) -> list[tuple[str, Kind, Floats]]:
-    """Return name, kind and ordinates at the stringers of every section of a floorbeam that may be the worst.
+def _sections(stringers: Stringers, spacing: float, brackets: tuple[float, float]) -> list[tuple[str, Kind, Across]]:
+    """Return name, kind and the beam's own line of every section of a floorbeam that may be the worst.
 
     Loads stand at the stringers, so a moment is greatest under one of them and a shear beside a truss. With the trusses
     at +-S/2 and a load at z: M at s = (S/2 + z)(S/2 - s)/S where z is right of s, (S/2 - z)(S/2 + s)/S left of it; the
     shear inside the left truss is (S/2 + z)/S. A load on a bracket is carried over its truss: M there = -(|z| - S/2).
     """
-    z, half = np.array(stringers.z), 0.5 * spacing
-    found: list[tuple[str, Kind, Floats]] = []
+    half = 0.5 * spacing
+    right, left = -half - brackets[0], half + brackets[1]
+    ends = np.unique([right, -half, half, left])
+    found: list[tuple[str, Kind, Across]] = []
     for name, s in zip(stringers.names, stringers.z, strict=True):
         if -half < s < half:
+            z = np.unique([right, s, left])
             line = np.where(z <= s, (half + z) * (half - s), (half - z) * (half + s)) / spacing
-            found.append((f"moment at {name}", "moment", line))
-    found.append(("shear at right truss", "shear", (half - z) / spacing - (z < -half)))
-    found.append(("shear at left truss", "shear", (half + z) / spacing - (z > half)))
-    for side, reach, beyond in (("right", brackets[0], -half - z), ("left", brackets[1], z - half)):
+            found.append((f"moment at {name}", "moment", Across(z, line)))
+    steps = np.unique([right, -half - _STEP, -half, half, half + _STEP, left])
+    beyond = steps[(steps >= right) & (steps <= left)]
+    found.append(("shear at right truss", "shear", Across(beyond, (half - beyond) / spacing - (beyond < -half))))
+    found.append(("shear at left truss", "shear", Across(beyond, (half + beyond) / spacing - (beyond > half))))
+    for side, reach in zip(("right", "left"), brackets, strict=True):
         if reach > 0.0:
-            out = np.maximum(beyond, 0.0)
-            found.append((f"moment over {side} truss", "moment", -out))
-            found.append((f"shear of {side} bracket", "shear", (out > 0.0).astype(np.float64)))
+            arm = np.maximum(-half - ends if side == "right" else ends - half, 0.0)
+            found.append((f"moment over {side} truss", "moment", Across(ends, -arm)))
+            past = beyond < -half if side == "right" else beyond > half
+            found.append((f"shear of {side} bracket", "shear", Across(beyond, past.astype(np.float64))))
     return found
+
+
+_STEP: Final = 1e-9  # m: a shear steps where the beam stands on a truss; a load there counts as inside
 
 
 def _over_stringers(stringers: Stringers, at_stringers: Floats, edges: tuple[float, float]) -> Across:

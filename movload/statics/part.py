@@ -102,12 +102,15 @@ class Part:
     bears
         Its share of what stands for good, where that differs: a typed fraction of an axle says nothing of a deck's
         weight.
+    beam
+        Of a floorbeam's section: its share of what lies on the beam itself, the beam's own weight.
     """
 
     title: str
     response: Response
     across: Across
     bears: Across | None = None
+    beam: Across | None = None
 
 
 def row_of(effects: Sequence[Effect], key: str | tuple[str, str]) -> int:

@@ -87,7 +87,7 @@ def floor_weights(bridge: Bridge) -> tuple[Item, ...]:
         low, high = -0.5 * spacing - right, 0.5 * spacing + left
         weight = floor.floorbeams.weight * (high - low)
         points = tuple((point, weight) for point in bridge.deck.panel_points if isinstance(point, str))
-        items.append(Item("floorbeams", "components", points=points, low=low, high=high))
+        items.append(Item("floorbeams", "components", points=points, low=low, high=high, on_floorbeams=True))
     return tuple(items)
 
 

@@ -85,9 +85,16 @@ def _share(part: Part, item: Item) -> float:
     if item.share is not None:
         return item.share
     try:
-        return share_across(part.bears or part.across, item.low, item.high)
+        return share_across(_line(part, item), item.low, item.high)
     except InputError as error:
         raise InputError(error.rule, place=f"permanent, {item.title}: across") from None
+
+
+def _line(part: Part, item: Item) -> Across:
+    """Return the line across that an item reaches a part by: what lies on the floorbeams goes by no stringer."""
+    if item.on_floorbeams and part.beam is not None:
+        return part.beam
+    return part.bears or part.across
 
 
 def _at_points(item: Item, points: Sequence[str]) -> Floats:

@@ -104,7 +104,7 @@ def test_a_file_of_ones_own() -> None:
         ("first = 1905", "first = 1906", r"metals: steel: a period begins the year after .* ends, 1904, got 1906"),
         ("first = 1905", "first = 1904", r"metals: steel: a period begins the year after .* ends, 1904, got 1904"),
         ("last = 1904\n", "", r"metals: steel: a period begins the year after .* ends, inf, got 1905"),
-        ("last = 1904", "last = 1855", r"metals: steel: ends before it begins, 1855"),
+        ("last = 1904", "last = 1855", r"steel from 1856: ends before it begins, 1855"),
         ('others = "own choice"', 'others = "hearsay"', r'others: must say "read", "from memory" or "own choice"'),
         ('others = "own choice"\n', "", r"metals\[0\].others: is missing"),
         ("fu = ", "fuu = ", r'metals\[0\]: key "fuu" is not known \(nearest: "fu"\)'),

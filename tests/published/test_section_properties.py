@@ -1,13 +1,13 @@
 """Properties of sections against the sectionproperties package, and their units against pint.
 
 R. van Leeuwen and C. Ferster, *sectionproperties: A Python package for the analysis of arbitrary cross-sections using
-the finite element method*, Journal of Open Source Software 8 (90), 6105, 2023, https://doi.org/10.21105/joss.06105 (title
-from memory). It integrates over a mesh of six-noded triangles; torsion and warping come from its finite elements, so they
+the finite element method*, Journal of Open Source Software 8 (90), 6105, 2023, doi 10.21105/joss.06105 (title from
+memory). It integrates over a mesh of six-noded triangles; torsion and warping come from its finite elements, so they
 hold without the assumption that parts are thin. pint, https://pint.readthedocs.io, has its own table of units.
 
 Tolerances. Area to plastic moduli of polygons are exact on both sides: EXACT for round-off; its plastic axis is found
-to about 1e-6 of the depth and the modulus is stationary there: STATIONARY. A round is a polygon of 256 sides there, of
-which area and inertia fall short by 2 (pi / 256)^2 x (1/3 to 2/3) = 1e-4 to 2e-4: ROUNDED. Twisting: see each test.
+to about 1e-6 of the depth and the modulus is stationary there: STATIONARY. A round is a polygon of 100 sides there,
+whose area falls short by 2/3 and inertia by 4/3 of (pi / 100)^2, 0.0007 and 0.0013: ROUNDED. Twisting: see the test.
 """
 
 from __future__ import annotations
@@ -20,16 +20,15 @@ from typing import TYPE_CHECKING, Any, Final
 import pint
 import pytest
 from numpy.testing import assert_allclose
-from sectionproperties.analysis import Section as Meshed
-from sectionproperties.pre.library import (
+from sectionproperties.analysis.section import Section as Meshed
+from sectionproperties.pre.library.primitive_sections import circular_section, rectangular_section
+from sectionproperties.pre.library.steel_sections import (
     angle_section,
     channel_section,
     circular_hollow_section,
-    circular_section,
     i_section,
     mono_i_section,
     rectangular_hollow_section,
-    rectangular_section,
 )
 
 from movload.bridge.section import Section
@@ -44,14 +43,13 @@ if TYPE_CHECKING:
 
     from sectionproperties.pre.geometry import Geometry
 
-    from movload.bridge.section_properties import Properties
     from movload.bridge.section_shape import Shape
 
 EXACT: Final = 1e-9
 STATIONARY: Final = 1e-6
-ROUNDED: Final = 3e-4
+ROUNDED: Final = 1.4e-3
 MM: Final = 1e-3
-SIDES: Final = 256
+SIDES: Final = 100
 
 
 @dataclass(frozen=True)
@@ -128,9 +126,7 @@ CASES = {
     "turned angle": Case(alone(Angle(0.100, 0.075, 0.008), turn=27.0), ANGLE.rotate_section(27.0, (0, 0)), 20),
     "channel": Case(alone(Channel(0.250, 0.080, 0.009, 0.012)), CHANNEL, 40),
     "I": Case(alone(ISection(0.300, 0.150, 0.008, 0.012)), BEAM, 40),
-    "unequal I": Case(
-        alone(ISection(0.300, 0.150, 0.008, 0.012, bottom_width=0.180, bottom_flange=0.015)), MONO, 40
-    ),
+    "unequal I": Case(alone(ISection(0.300, 0.150, 0.008, 0.012, bottom_width=0.180, bottom_flange=0.015)), MONO, 40),
     "rectangular tube": Case(alone(RectangularTube(0.120, 0.180, 0.006)), TUBE, 20),
     "round tube": Case(alone(RoundTube(0.140, 0.005)), circular_hollow_section(d=140, t=5, n=SIDES), 20, ROUNDED),
     "round bar": Case(alone(RoundBar(0.030)), circular_section(d=30, n=SIDES), 10, ROUNDED),
@@ -185,26 +181,60 @@ def test_plastic_moduli(name: str) -> None:
     close([case.ours.properties.z_x, case.ours.properties.z_y], [s_x, s_y], max(case.tolerance, STATIONARY))
 
 
-# name, J, Cw, shear centre (of the greater radius of gyration): how far thin-part formulas may be from finite elements.
+# How far J and Cw may be from theirs. Sums of b t^3 / 3 count the free ends of thin parts in full, where shear has to
+# turn round (0.21 t^4 each), and miss what junctions add: 1 to 3 % over in all, measured. Bredt leaves out what
+# the walls carry by themselves, 2 %. Flats follow a fit of the series that is good to 0.3 %.
 TWISTING = [
-    ("angle", 0.06, None, 0.02),
-    ("channel", 0.06, 0.03, 0.02),
-    ("I", 0.06, 0.03, 0.01),
-    ("unequal I", 0.06, 0.03, 0.02),
-    ("rectangular tube", 0.06, None, 0.01),
-    ("round tube", 3e-3, None, 0.01),
-    ("round bar", 3e-3, None, 0.01),
-    ("flat", 0.01, None, 0.01),
-    ("eyebar", 0.01, None, 0.01),
-    ("plate", 0.01, None, 0.01),
-    ("timber", 0.01, None, 0.01),
+    ("angle", 0.02, 0.03),
+    ("channel", 0.04, 0.02),
+    ("I", 0.02, 0.005),
+    ("unequal I", 0.03, 0.005),
+    ("rectangular tube", 0.03, None),
+    ("round tube", 2 * ROUNDED, None),
+    ("flat", 0.003, None),
+    ("eyebar", 0.003, None),
+    ("plate", 0.003, None),
+    ("timber", 0.003, None),
 ]
 
 
-@pytest.mark.parametrize(("name", "of_torsion", "of_warping", "of_place"), TWISTING)
-def test_twisting(name: str, of_torsion: float, of_warping: float | None, of_place: float) -> None:
-    """J, Cw and shear centre: formulas of thin parts against finite elements."""
+@pytest.mark.parametrize(("name", "of_torsion", "of_warping"), TWISTING)
+def test_twisting(name: str, of_torsion: float, of_warping: float | None) -> None:
+    """J, Cw and shear centre: formulas of thin parts against finite elements; the place to 0.6 % of the depth."""
     theirs = meshed(name)
     theirs.calculate_warping_properties()
     ours = CASES[name].ours.properties
-    print(name, ours.torsion / (theirs.get_j() * MM**4), ours.warping, theirs.get_gamma() * MM**6, ours.shear_centre, theirs.get_sc())
+    close([ours.torsion], [theirs.get_j() * MM**4], of_torsion)
+    size = 2.5 * max(ours.r_x, ours.r_y)  # about the depth
+    close(ours.shear_centre, [float(place) * MM for place in theirs.get_sc()], 0.006, scale=size)
+    if of_warping is None:
+        assert ours.warping == 0.0  # left out: closed or solid, it only stiffens
+    else:
+        close([ours.warping], [theirs.get_gamma() * MM**6], of_warping)
+
+
+REGISTRY: pint.UnitRegistry[Any] = pint.UnitRegistry()
+
+
+def converted(value: float, unit: str) -> float:
+    """Return an SI value of a power of a length in inches to that power, by pint's table."""
+    power = {"in": "m", "in**2": "m**2", "in**3": "m**3", "in**4": "m**4", "in**6": "m**6"}[unit]
+    return float(REGISTRY.Quantity(value, power).to(unit).magnitude)
+
+
+def test_units() -> None:
+    """An I typed in inches (12 x 6, web 3/8, flanges 1/2), its properties back in powers of inches by pint.
+
+    Closed formulas in inches; EXACT for the round-off of both tables.
+    """
+    typed = ["12 in", "6 in", '3/8"', '1/2"']
+    ours = alone(ISection(*(to_si(text, "section") for text in typed))).properties
+    d, b, w, f = 12.0, 6.0, 0.375, 0.5
+    i_x, i_y = (b * d**3 - (b - w) * (d - 2 * f) ** 3) / 12, (2 * f * b**3 + (d - 2 * f) * w**3) / 12
+    close([converted(ours.area, "in**2")], [2 * b * f + (d - 2 * f) * w], EXACT)
+    close([converted(ours.i_x, "in**4"), converted(ours.i_y, "in**4")], [i_x, i_y], EXACT)
+    close([converted(ours.s_x, "in**3")], [2 * i_x / d], EXACT)
+    close([converted(ours.z_x, "in**3")], [b * f * (d - f) + w * (d / 2 - f) ** 2], EXACT)
+    close([converted(ours.torsion, "in**4")], [(2 * b * f**3 + (d - 2 * f) * w**3) / 3], EXACT)
+    close([converted(ours.warping, "in**6")], [(d - f) ** 2 / 4 * 2 * f * b**3 / 12], EXACT)
+    close([converted(ours.r_x, "in")], [math.sqrt(i_x / (2 * b * f + (d - 2 * f) * w))], EXACT)
