@@ -237,14 +237,10 @@ def permanent(bridge: Bridge, name: str) -> float:
 
 
 def test_a_floorbeams_own_weight() -> None:
-    """1 kN/m over S = 4.6 m: (S^2/4 - z^2)/2 kN m at inner stringers, S/2 kN beside a truss and on it.
-
-    At an outermost stringer, where the deck's line across runs on to the truss, more than the true 0.84 kN m.
-    """
+    """1 kN/m over S = 4.6 m: (S^2/4 - z^2)/2 kN m at a stringer, S/2 kN beside a truss and on it."""
     bridge = two_panels(4.6, (-1.9, -0.4, 0.3, 1.9), Floorbeams(weight=1e3, strength=ANY))
-    for name, z in (("S2", 0.4), ("S3", 0.3)):
+    for name, z in (("S2", 0.4), ("S3", 0.3), ("S4", 1.9)):
         assert_allclose(permanent(bridge, f"floorbeam L1 moment at {name}"), 500.0 * (5.29 - z**2), rtol=1e-12)
-    assert permanent(bridge, "floorbeam L1 moment at S4") > 500.0 * (5.29 - 1.9**2)
     assert_allclose([permanent(bridge, f"floorbeam L1 shear at {one} truss") for one in ("left", "right")], 2300.0)
     assert_allclose([permanent(bridge, f"{one} truss U1-L1") for one in ("left", "right")], 2300.0)
 
