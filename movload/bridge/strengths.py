@@ -33,6 +33,8 @@ class TypedStrength:
         The kind of system a factor set knows the part by ("riveted members"); "" when nobody has said.
     timber
         Whether it is timber, which takes no impact.
+    place
+        Where in a file it was typed; "" when it was not.
     """
 
     permits: Mapping[str, float] = field(default_factory=dict)
@@ -42,6 +44,7 @@ class TypedStrength:
     measured: bool = field(default=False, kw_only=True)
     system: str = field(default="", kw_only=True)
     timber: bool = field(default=False, kw_only=True)
+    place: str = field(default="", kw_only=True)
 
     def __post_init__(self) -> None:
         """Refuse unknown senses and strengths that are not finite numbers, 0 or more."""
@@ -65,6 +68,7 @@ class TypedStrength:
         """Pickle by parts (a read-only mapping cannot be pickled)."""
         return (_rebuilt, (dict(self.permits), dict(self.nominal), dict(self.reduced), {
             "condition": self.condition, "measured": self.measured, "system": self.system, "timber": self.timber,
+            "place": self.place,
         }))  # fmt: skip
 
     @property

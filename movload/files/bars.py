@@ -63,6 +63,7 @@ def strength_of(table: MemberGroup | PartTable, place: str) -> TypedStrength:
             measured=table.measured,
             system=table.system or "",
             timber=table.timber,
+            place=place,
         )
     except MovloadError as error:
         raise error.at(place) from None

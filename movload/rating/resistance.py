@@ -83,9 +83,18 @@ def _of_condition(typed: TypedStrength, method: FactorSet, subject: str) -> floa
     if not typed.condition:
         raise MissingDataError(
             f'the condition of {subject} is needed ({", ".join(method.condition)}) by "{method.title}"',
-            place="condition",
+            place=_place(typed, "condition"),
         )
-    return condition_factor(method, typed.condition, measured=typed.measured)
+    try:
+        return condition_factor(method, typed.condition, measured=typed.measured)
+    except UnknownNameError as error:
+        place = _place(typed, "condition")
+        raise UnknownNameError(error.rule, place=place, nearest=error.nearest) from None
+
+
+def _place(typed: TypedStrength, word: str) -> str:
+    """Return where in the file a word about a part stands."""
+    return f"{typed.place}.{word}" if typed.place else word
 
 
 def _of_system(typed: TypedStrength, method: FactorSet, subject: str) -> float:
@@ -93,9 +102,12 @@ def _of_system(typed: TypedStrength, method: FactorSet, subject: str) -> float:
     known = ", ".join(f'"{name}"' for name in method.system)
     if not typed.system:
         raise MissingDataError(
-            f'the kind of system of {subject} is needed ({known}) by "{method.title}"', place="system"
+            f'the kind of system of {subject} is needed ({known}) by "{method.title}"',
+            place=_place(typed, "system"),
         )
     if typed.system not in method.system:
         near = nearest_name(typed.system, method.system)
-        raise UnknownNameError(f'"{typed.system}" of {subject} is not one of {known}', place="system", nearest=near)
+        raise UnknownNameError(
+            f'"{typed.system}" of {subject} is not one of {known}', place=_place(typed, "system"), nearest=near
+        )
     return method.system[typed.system]

@@ -95,6 +95,14 @@ PARTS = {
         "z = [-2.4, -0.8, 0.8, 2.4]", "z = [-2.4, 0.8, 0.8]",
         "floor.stringers.z: stringers stand from right to left",
     ),
+    "beyond the trusses": (
+        "z = [-2.4,", "z = [-3.5,",
+        "floor.floorbeams.brackets: stringer S1 at -3.5 m stands beyond the trusses at -3.2 and 3.2 m",
+    ),
+    "beyond the brackets": (
+        "0.8, 2.4]\nweight = 0.5", "0.8, 3.8]\nweight = 0.5",
+        "floor.floorbeams.brackets: stringer S4 at 3.8 m stands beyond the trusses",
+    ),
     "no places": ("z = [-2.4, -0.8, 0.8, 2.4]\n", "", "floor.stringers.z: is missing"),
     "only beams": (
         "[floor.stringers]\nz = [-2.4, -0.8, 0.8, 2.4]", "[floor.stringers]",

@@ -2,7 +2,8 @@
 
 AASHTO, Manual for Bridge Evaluation: yield and ultimate stress of unknown steel by date built (26/52, 30/60, 33/66,
 36/66 ksi) and of unknown wrought iron (26/48 ksi). FROM MEMORY, and the data say so. Modulus and density of steel,
-29 000 ksi and 490 lb/ft3: AASHTO, FROM MEMORY; of wrought iron, 28 000 ksi and 480 lb/ft3: common practice, FROM MEMORY.
+29 000 ksi and 490 lb/ft3: AASHTO, FROM MEMORY; of wrought iron, 28 000 ksi and 480 lb/ft3: common practice, FROM
+MEMORY.
 """
 
 from __future__ import annotations
