@@ -119,11 +119,19 @@ def _crossings(
     vehicles: list[str], places: list[str] | None, speeds: list[str] | None, *, abreast: int, wander: str | None
 ) -> list[tuple[str, Crossing]]:
     """Return every vehicle in every place at every speed, with the name it was asked for by."""
-    from movload.traffic.crossing import WANDER, Crossing
+    from movload.errors import InputError
+    from movload.traffic.crossing import MOST_ABREAST, WANDER, Crossing
 
     stray = WANDER if wander is None else _quantity(wander, "length", "--wander")
+    if wander is not None and "centre line" not in (places or []):
+        raise InputError('only counts with --at "centre line"', place="--wander")
     where = [_place(one) for one in places or ["anywhere"]]
     rates: list[float | None] = [_quantity(one, "speed", "--speed") for one in speeds or []]
+    for said, rate in zip(speeds or [], rates, strict=True):
+        if not (rate or 0.0) > 0.0:
+            raise InputError(f'a speed must be above 0, got "{said}"', place="--speed")
+    if not 0 <= abreast <= MOST_ABREAST:
+        raise InputError(f"0 to {MOST_ABREAST} may go abreast, got {abreast}", place="--abreast")
     return [
         (name, Crossing(loading, place, z, lanes=abreast, speed=rate, wander=stray))
         for name, loading in zip(vehicles, read_loadings(vehicles), strict=True)

@@ -87,7 +87,7 @@ def impact_table(bridge: Bridge, parts: Sequence[Part], method: FactorSet) -> Im
         said = f"Impact {bridge.impact:g} as typed"
         return ImpactTable(_TYPED, held(bridge.impact * dynamic), crawl=crawl, statement=_said(said, dynamic))
     rule = bridge.impact_rule or method.impact
-    if rule not in RULES:
+    if rule not in RULES[1:]:
         raise UnknownNameError(
             f'"{rule}" is no rule; a fraction or one of {", ".join(RULES[1:])}',
             place="rating.impact", nearest=nearest_name(rule, RULES[1:]),
@@ -111,6 +111,10 @@ def _by_surface(
     if not bridge.surface:
         raise MissingDataError(f'is needed by the impact of "{method.title}": {", ".join(SURFACES)}',
                                place="rating.surface")  # fmt: skip
+    if not any(surface in values for surface in SURFACES):
+        raise MissingDataError(
+            f'"{method.title}" has no values by riding surface; type a fraction or another rule', place="rating.impact"
+        )
     if bridge.surface not in values:
         raise UnknownNameError(
             f'"{bridge.surface}" is not one of {", ".join(SURFACES)}',

@@ -74,7 +74,9 @@ def _of_members(bridge: Bridge, method: FactorSet) -> list[str]:
         some = ", ".join(weightless[:3]) + (" ..." if len(weightless) > 3 else "")
         needed.append(f"density of {some} (0 if in deck weight)")
     footings = [("permits" if footing == "permitted" else footing) for footing in method.strengths]
-    typed = any(one.on(footing) for one in bridge.strengths.values() for footing in footings)
+    floor = (bridge.floor.stringers, bridge.floor.floorbeams, bridge.floor.planks)
+    strengths = [*bridge.strengths.values(), *(part.strength for part in floor if part is not None)]
+    typed = any(one.on(footing) for one in strengths for footing in footings)
     if not typed and not any(f".{footing}" in place for place in asked for footing in footings):
         words = " or ".join(footings)
         needed.append(

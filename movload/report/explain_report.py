@@ -99,7 +99,8 @@ def sum_table(
     lines = []
     for term in terms:
         line = [
-            str(term.axle), number_text(term.x, "length", units, more=1),
+            str(rating.peak.axle + 1 if rating.effect.part == "planks" else term.axle),
+            number_text(term.x, "length", units, more=1),
             number_text(term.load, "force", units, more=1), f"{term.share:.4f}", f"{1 + term.impact:.3f}",
             unsigned_zero(f"{term.ordinate / scale:+.5f}"),
             number_text(term.effect, quantity, units, more=1, sign="+"),
@@ -127,17 +128,15 @@ def sum_table(
 
 
 def _equation(rating: Rating, units: UnitSystem, *, margin: float) -> str:
-    """Return RF = (R - a D) / (b L) with its numbers, what permanent load uses with its margins."""
+    """Return RF = (R - a D) / (b L) with its numbers; what permanent load uses is negative where it relieves."""
     quantity = quantity_of(rating.effect)
     strength, live = (number_text(value, quantity, units, more=1) for value in (rating.strength, abs(rating.live)))
     pushed = rating.permanent if rating.side == 0 else -rating.permanent
     factored = "" if math.isclose(rating.pushed, pushed, rel_tol=1e-12) else "factored "
-    sign = "-" if rating.side == 0 else "+"
-    used = rating.pushed if rating.side == 0 else -rating.pushed
-    permanent = number_text(used, quantity, units, more=1, sign="+")
+    permanent = number_text(rating.pushed, quantity, units, more=1, sign="+")
     below = f"live {live}" if margin == 1 else f"({margin:g} x live {live})"
     why = use_text(rating)
     return (
-        f"RF = (strength {strength} {sign} {factored}permanent ({permanent})) / {below} "
+        f"RF = (strength {strength} - {factored}permanent ({permanent})) / {below} "
         f"{units.symbol(quantity)} = {factor_text(rating.factor)}{f': {why}' if why else ''}"
     )

@@ -149,7 +149,7 @@ def verdict_text(factor: float, coverage: Coverage, uplifts: Mapping[str, float]
     if gaps:
         conditions.append(f"the {gaps} parts not fully rated are" if gaps > 1 else "the part not fully rated is")
     if uplifts:
-        bearings = ", ".join(name.partition(" ")[0] for name in uplifts)
+        bearings = ", ".join(name.rpartition(" ")[0] for name in uplifts)
         conditions.append(f"{bearings} {'are' if len(uplifts) > 1 else 'is'} held down")
     return f"adequate only if {' and '.join(conditions)}" if conditions else "adequate, for the parts rated"
 

@@ -239,9 +239,9 @@ def test_the_sum_can_be_added_again() -> None:
 
 def test_the_equation_adds_what_relieves_and_takes_off_what_pushes() -> None:
     ratings = rate(brook(), [CART])
-    assert "(strength 300.00 + permanent (+" in sum_lines(row(ratings, "U1-L2", 1))[-1]
+    assert "(strength 300.00 - permanent (-" in sum_lines(row(ratings, "U1-L2", 1))[-1]
     assert "(strength 400.00 - permanent (+" in sum_lines(row(ratings, "U1-L2", 0))[-1]
-    assert "(strength 300.00 + permanent (-" in sum_lines(row(ratings, "L0-U1", 1))[-1]
+    assert "(strength 300.00 - permanent (+" in sum_lines(row(ratings, "L0-U1", 1))[-1]
 
 
 def test_the_equation_shows_the_levels_margins() -> None:
@@ -262,7 +262,7 @@ def test_the_equation_shows_relief_as_it_counts() -> None:
     pushed = judge(
         replace(bars([-1.0], permanent=[-20e3], strength=[(1e9, 100e3)]), method=method), [AXLE]
     ).governing(0)  # fmt: skip
-    assert sum_lines(pushed)[-1].startswith("RF = (strength 100.00 + factored permanent (-26.00)) / live 40.00 kN")
+    assert sum_lines(pushed)[-1].startswith("RF = (strength 100.00 - factored permanent (+26.00)) / live 40.00 kN")
 
 
 def test_the_equation_of_a_bar_that_permanent_load_fills_says_why_it_is_zero() -> None:
