@@ -189,6 +189,11 @@ class Period:
     density: float = field(kw_only=True)
     source: str = field(kw_only=True)
 
+    def __post_init__(self) -> None:
+        """Refuse a period that holds no year."""
+        if self.last < self.first:
+            raise InputError(f"ends before it begins, {self.last:g}", place=f"{self.kind} from {self.first}")
+
 
 def material_by_year(periods: Sequence[Period], kind: str, year: int, *, today: int) -> Material:
     """Return what a metal of unknown grade is taken to be, by the year the bridge was built.

@@ -69,7 +69,22 @@ def require_sizes(kind: str, **sizes: float) -> None:
 
 
 def require_at_most(kind: str, name: str, size: float, limit: tuple[float, str]) -> None:
-    """Refuse a thickness over what fits: the limit [m] and what it is."""
+    """Refuse a size over what fits: the limit [m] and what it is."""
     most, said = limit
     if size > most:
         raise InputError(f"must be at most {said}, {most:g} m, got {size:g} m", place=f"{kind}.{name}")
+
+
+def require_below(kind: str, name: str, size: float, limit: tuple[float, str]) -> None:
+    """Refuse a size that reaches what it must stay below: the limit [m] and what it is."""
+    most, said = limit
+    if size >= most:
+        raise InputError(f"must be below {said}, {most:g} m, got {size:g} m", place=f"{kind}.{name}")
+
+
+def require_factors(sharing: float, shear_lag: float) -> None:
+    """Refuse a sharing below 1 and a shear lag outside 0 to 1."""
+    if not (math.isfinite(sharing) and sharing >= 1):
+        raise InputError(f"worst bar over mean is at least 1, got {sharing:g}", place="sharing")
+    if not 0 < shear_lag <= 1:
+        raise InputError(f"U is above 0 and at most 1, got {shear_lag:g}", place="shear_lag")

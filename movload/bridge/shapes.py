@@ -1,15 +1,15 @@
 """Shapes of thin parts as measured: angle, channel, I, rectangular and round tube, plate.
 
-=================  ==========================================  ==================================================
-shape              as drawn (x to the right, y up)             reference point, parts that can be lost or holed
-=================  ==========================================  ==================================================
-Angle              first leg along +x, second leg along +y     heel (outer corner): first leg, second leg
-Channel            web upright, flanges towards +x             middle of the web's back: web, top flange, bottom flange
-ISection           web upright                                 half its depth, on the web: web, top flange, bottom flange
-RectangularTube    width along x, depth along y                centre: left wall, right wall, top wall, bottom wall
-RoundTube                                                      centre: wall
-Plate              lies: width along x                         centre: thickness, width
-=================  ==========================================  ==================================================
+================  ======================================  ===================================================
+shape             as drawn (x to the right, y up)         reference point: parts that can be lost or holed
+================  ======================================  ===================================================
+Angle             first leg along +x, second along +y     heel (outer corner): first leg, second leg
+Channel           web upright, flanges towards +x         middle of its back: web, top flange, bottom flange
+ISection          web upright                             web, half its depth: web, top flange, bottom flange
+RectangularTube   width along x, depth along y            centre: left wall, right wall, top wall, bottom wall
+RoundTube                                                 centre: wall
+Plate             lies: width along x, thickness along y  centre: thickness, width
+================  ======================================  ===================================================
 
 The last word alone means all of its kind: "flange" both flanges, "wall" all four walls. Legs, flanges and walls lose
 metal at their outer face, the web of a channel at its back, which leaves the least moment of inertia; the web of an I
@@ -22,7 +22,7 @@ from dataclasses import dataclass, field
 from typing import TYPE_CHECKING, ClassVar, Literal
 
 from movload.bridge.section_elements import Rect, Round
-from movload.bridge.section_shape import Edges, Form, Shape, require_at_most, require_sizes
+from movload.bridge.section_shape import Edges, Form, Shape, require_at_most, require_below, require_sizes
 
 if TYPE_CHECKING:
     from collections.abc import Mapping
@@ -42,7 +42,7 @@ class Angle(Shape):
         """Refuse what no angle can be."""
         require_sizes(self.kind, first_leg=self.first_leg, second_leg=self.second_leg, thickness=self.thickness)
         shorter = min(self.first_leg, self.second_leg)
-        require_at_most(self.kind, "thickness", self.thickness, (shorter / 2, "half the shorter leg"))
+        require_below(self.kind, "thickness", self.thickness, (shorter / 2, "half the shorter leg"))
 
     def elements(self) -> tuple[Rect, ...]:
         """Return both legs; the corner belongs to the first."""
@@ -100,43 +100,49 @@ class ISection(Shape):
     depth, width, web, flange
         Over all, width and thickness of the top flange, thickness of the web.
     bottom_width, bottom_flange
-        Width and thickness of the bottom flange; 0 (not typed) takes the top one's.
+        Width and thickness of the bottom flange; None takes the top one's.
     """
 
     depth: float
     width: float
     web: float
     flange: float
-    bottom_width: float = field(default=0.0, kw_only=True)
-    bottom_flange: float = field(default=0.0, kw_only=True)
+    bottom_width: float | None = field(default=None, kw_only=True)
+    bottom_flange: float | None = field(default=None, kw_only=True)
     kind: ClassVar[str] = "I"
     form: ClassVar[Form] = "flanged"
 
     def __post_init__(self) -> None:
-        """Make the bottom flange like the top one where it was not typed; refuse what no I can be."""
-        object.__setattr__(self, "bottom_width", self.bottom_width or self.width)
-        object.__setattr__(self, "bottom_flange", self.bottom_flange or self.flange)
+        """Refuse what no I can be."""
         require_sizes(self.kind, depth=self.depth, width=self.width, web=self.web, flange=self.flange)
-        require_sizes(self.kind, bottom_width=self.bottom_width, bottom_flange=self.bottom_flange)
-        flanges = {"flange": (self.flange, self.width), "bottom_flange": (self.bottom_flange, self.bottom_width)}
+        width, flange = self.bottom
+        require_sizes(self.kind, bottom_width=width, bottom_flange=flange)
+        flanges = {"flange": (self.flange, self.width), "bottom_flange": (flange, width)}
         _require_flanged(self.kind, self.depth, self.web, flanges)
+
+    @property
+    def bottom(self) -> tuple[float, float]:
+        """Width and thickness of the bottom flange [m]."""
+        return (
+            self.width if self.bottom_width is None else self.bottom_width,
+            self.flange if self.bottom_flange is None else self.bottom_flange,
+        )
 
     def elements(self) -> tuple[Rect, ...]:
         """Return web and flanges; the corners belong to the flanges."""
-        half, above, below = self.depth / 2, self.flange, self.bottom_flange
+        half, above, (bottom, below) = self.depth / 2, self.flange, self.bottom
         return (
             Rect("web", -self.web / 2, self.web / 2, below - half, half - above, thin="x"),
             Rect("top flange", -self.width / 2, self.width / 2, half - above, half, thin="y", face=1),
-            Rect("bottom flange", -self.bottom_width / 2, self.bottom_width / 2, -half, below - half,
-                 thin="y", face=-1),
-        )  # fmt: skip
+            Rect("bottom flange", -bottom / 2, bottom / 2, -half, below - half, thin="y", face=-1),
+        )
 
     def plate_widths(self) -> Mapping[str, tuple[float, Edges]]:
         """Return the web clear of the flanges, and half of each flange."""
         return {
-            "web": (self.depth - self.flange - self.bottom_flange, 2),
+            "web": (self.depth - self.flange - self.bottom[1], 2),
             "top flange": (self.width / 2, 1),
-            "bottom flange": (self.bottom_width / 2, 1),
+            "bottom flange": (self.bottom[0] / 2, 1),
         }
 
 
@@ -153,8 +159,7 @@ class RectangularTube(Shape):
     def __post_init__(self) -> None:
         """Refuse what no tube can be."""
         require_sizes(self.kind, width=self.width, depth=self.depth, wall=self.wall)
-        limit = (min(self.width, self.depth) / 2, "half the smaller side")
-        require_at_most(self.kind, "wall", self.wall, limit)
+        require_below(self.kind, "wall", self.wall, (min(self.width, self.depth) / 2, "half the smaller side"))
 
     def elements(self) -> tuple[Rect, ...]:
         """Return the four walls; the corners belong to top and bottom."""
@@ -189,7 +194,7 @@ class RoundTube(Shape):
     def __post_init__(self) -> None:
         """Refuse what no tube can be."""
         require_sizes(self.kind, diameter=self.diameter, wall=self.wall)
-        require_at_most(self.kind, "wall", self.wall, (self.diameter / 2, "half the diameter"))
+        require_below(self.kind, "wall", self.wall, (self.diameter / 2, "half the diameter"))
 
     def elements(self) -> tuple[Round, ...]:
         """Return its wall."""
@@ -211,22 +216,22 @@ class Plate(Shape):
     edges
         2 where both long edges are held (a cover plate between its lines of rivets), 1 where one stands free.
     clear
-        Width between the lines of fasteners, or from the line to the free edge [m]; 0 (not typed) takes the whole.
+        Width between the lines of fasteners, or from the line to the free edge [m]; None takes the whole.
     """
 
     width: float
     thickness: float
     edges: Literal[1, 2] = field(default=2, kw_only=True)
-    clear: float = field(default=0.0, kw_only=True)
+    clear: float | None = field(default=None, kw_only=True)
     kind: ClassVar[str] = "plate"
     form: ClassVar[Form] = "bar"
 
     def __post_init__(self) -> None:
         """Refuse what no plate can be."""
-        object.__setattr__(self, "clear", self.clear or self.width)
-        require_sizes(self.kind, width=self.width, thickness=self.thickness, clear=self.clear)
+        require_sizes(self.kind, width=self.width, thickness=self.thickness)
+        require_sizes(self.kind, clear=self.width if self.clear is None else self.clear)
         require_at_most(self.kind, "thickness", self.thickness, (self.width, "its width"))
-        require_at_most(self.kind, "clear", self.clear, (self.width, "its width"))
+        require_at_most(self.kind, "clear", self.clear or self.width, (self.width, "its width"))
 
     def elements(self) -> tuple[Rect, ...]:
         """Return the plate."""
@@ -235,11 +240,11 @@ class Plate(Shape):
 
     def plate_widths(self) -> Mapping[str, tuple[float, Edges]]:
         """Return the width that may buckle."""
-        return {"thickness": (self.clear, self.edges)}
+        return {"thickness": (self.clear or self.width, self.edges)}
 
 
 def _require_flanged(kind: str, depth: float, web: float, flanges: Mapping[str, tuple[float, float]]) -> None:
     """Refuse a flange over half the depth or a web over half the flange's width."""
     for name, (thickness, width) in flanges.items():
-        require_at_most(kind, name, thickness, (depth / 2, "half the depth"))
-        require_at_most(kind, "web", web, (width / 2, "half the flange's width"))
+        require_below(kind, name, thickness, (depth / 2, "half the depth"))
+        require_below(kind, "web", web, (width / 2, "half the flange's width"))

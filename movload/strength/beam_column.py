@@ -1,8 +1,8 @@
 """Bars that buckle, and bars that are bent as well: elastic loads, amplified moments, axial force with bending.
 
 For end posts, chords loaded between joints and bars found bowed or pulled off their axis. Axes x (across the bridge)
-and y (up) must be principal: an unsymmetrical angle goes by its own two. Not covered: bending moments of secondary
-stiffness, twist with bending, a lacing bar's own strength.
+and y (up) must be principal: an unsymmetrical angle goes by its own two. Not covered: moments of stiff joints unless
+typed, twist of a bent bar, the lacing bars' own strength.
 
 References
 ----------
@@ -18,9 +18,7 @@ import math
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Final, Literal
 
-import numpy as np
-
-from movload.errors import InputError
+from movload.errors import InputError, MissingDataError
 from movload.strength.strength import Step, Strength
 from movload.strength.warnings import require_fraction, require_not_negative, require_positive
 
@@ -29,7 +27,6 @@ if TYPE_CHECKING:
 
 TITLE: Final = "AASHTO LRFD"
 STABILITY: Final = "Timoshenko and Gere"
-SHEAR_RATIO: Final = 0.385  # G / E, AASHTO LRFD 6.9.4.1.3
 _BILINEAR: Final = "P/(2 Pr) + sum M/Mr = 1, P/Pr of 0.2 or more: P/Pr + 8/9 sum M/Mr = 1 (6.9.2.2-1, -2)"
 _PART: Final = 0.75  # greatest slenderness of one part over the whole bar's, AASHTO LRFD 6.9.4.3.1
 
@@ -44,6 +41,11 @@ class Torsion:
     x0: float = 0.0
     y0: float = 0.0
 
+    def __post_init__(self) -> None:
+        """Refuse what no bar has; an angle or a tee does not warp."""
+        require_positive(kl_z=self.kl_z, j=self.j)
+        require_not_negative(c_w=self.c_w)
+
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Connectors:
@@ -57,6 +59,10 @@ class Connectors:
     radius: float
     apart: float
 
+    def __post_init__(self) -> None:
+        """Refuse impossible dimensions."""
+        require_positive(spacing=self.spacing, radius=self.radius, apart=self.apart)
+
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Lacing:
@@ -64,6 +70,10 @@ class Lacing:
 
     axis: Literal["x", "y"]
     stiffness: float
+
+    def __post_init__(self) -> None:
+        """Refuse what lacing cannot be."""
+        require_positive(stiffness=self.stiffness)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -83,7 +93,7 @@ class Column:
     built_up
         How its parts are held together where that is not solid.
     slender
-        Q, above 0, to 1 [-]; 1 for stocky plates.
+        Q, above 0, to 1 [-]; 1 for stocky plates, else ``slender_reduction`` of movload.strength.aashto_lrfd.
     """
 
     area: float
@@ -103,14 +113,6 @@ class Column:
         names = ("area", "gross", "kl_x", "kl_y", "r_x", "r_y", "fy", "modulus")
         require_positive(**{name: getattr(self, name) for name in names})
         require_fraction("slender", self.slender)
-        if self.torsion is not None:
-            require_positive(kl_z=self.torsion.kl_z, j=self.torsion.j)
-            require_not_negative(c_w=self.torsion.c_w)
-        if isinstance(self.built_up, Lacing):
-            require_positive(stiffness=self.built_up.stiffness)
-        if isinstance(self.built_up, Connectors):
-            held = self.built_up
-            require_positive(spacing=held.spacing, radius=held.radius, apart=held.apart)
 
 
 def flexural_loads(column: Column) -> tuple[float, float, tuple[Step, ...]]:
@@ -121,33 +123,6 @@ def flexural_loads(column: Column) -> tuple[float, float, tuple[Step, ...]]:
         loads.append(math.pi**2 * column.modulus * column.area / slenderness**2)
         steps += [*found, Step(f"Pe{axis}", "pi^2 E Ag / (K l / r)^2 (6.9.4.1.2-1)", loads[-1], "N", TITLE)]
     return loads[0], loads[1], tuple(steps)
-
-
-def elastic_buckling(column: Column) -> tuple[float, tuple[Step, ...]]:
-    """Return the least elastic buckling load Pe [N] of a bar, and its steps.
-
-    With twist it is the lowest root of (Pe - Pex)(Pe - Pey)(Pe - Pez) - Pe^2 (Pe - Pey)(x0/r0)^2
-    - Pe^2 (Pe - Pex)(y0/r0)^2 = 0 (6.9.4.1.3-7), which is 6.9.4.1.3-2 where x0 or y0 is 0.
-    """
-    about_x, about_y, steps = flexural_loads(column)
-    twist = column.torsion
-    if twist is None:
-        least = min(about_x, about_y)
-        return least, (*steps, Step("Pe", "least of Pex, Pey; twist stated not to govern", least, "N", TITLE))
-    polar = twist.x0**2 + twist.y0**2 + column.r_x**2 + column.r_y**2
-    warping = math.pi**2 * column.modulus * twist.c_w / twist.kl_z**2
-    alone = (warping + SHEAR_RATIO * column.modulus * twist.j) / polar
-    # The equation is det(diag(P) - Pe C) = 0 with C below, so 1/Pe is the greatest eigenvalue of P^-1/2 C P^-1/2.
-    x, y = twist.x0 / math.sqrt(polar), twist.y0 / math.sqrt(polar)
-    coupled = np.array([[1.0, 0.0, x], [0.0, 1.0, y], [x, y, 1.0]])
-    root = np.sqrt([about_x, about_y, alone])
-    least = 1.0 / float(np.linalg.eigvalsh(coupled / np.outer(root, root))[-1])
-    return least, (
-        *steps,
-        Step("r0^2", "x0^2 + y0^2 + rx^2 + ry^2 (6.9.4.1.3-6)", polar, "m2", TITLE),
-        Step("Pez", "(pi^2 E Cw / (Kz lz)^2 + G J) / r0^2, G = 0.385 E (6.9.4.1.3-5)", alone, "N", TITLE),
-        Step("Pe", "lowest root with twist (6.9.4.1.3-7)", least, "N", TITLE),
-    )
 
 
 def _slenderness(column: Column, axis: str) -> tuple[float, tuple[Step, ...]]:
@@ -179,16 +154,15 @@ class Bending:
     Attributes
     ----------
     strength
-        In bending alone, [N m], phi on it.
+        In bending alone [N m], phi on it.
     moment
-        As typed, at the level's margins, beside the axial force and not growing with it [N m].
+        As typed at the level's margins, beside the axial force and not growing with it [N m].
     eccentricity, bow
-        Of the axial force off the axis, alike at both ends; of the bar between its ends, at the middle [m].
+        Of the axial force off the axis, alike at both ends; of the bar at its middle [m]. Tension straightens a bow.
     elastic
-        Elastic load of buckling in this plane [N], margin on it where the standard has one; infinite where nothing
-        amplifies: in tension.
+        Load of buckling in this plane [N], with the standard's margin if it has one; infinite in tension.
     evenness
-        Cm, 1 where a load stands between the joints [-].
+        Cm [-], 1 where a load stands between the joints.
     """
 
     strength: Strength
@@ -228,6 +202,8 @@ def with_bending(axial: Strength, planes: Sequence[Bending], *, linear: bool = F
     right; a rating above 1 takes that moment as not growing.
     """
     require_positive(axial=axial.value)
+    if not planes:
+        raise MissingDataError("what bends the bar is needed", place="planes")
     said, title = ("P/Pr + sum M/Mr = 1 (10.36, 10.54.2)", "MBE 6B") if linear else (_BILINEAR, TITLE)
 
     def used(load: float) -> float:
@@ -244,17 +220,15 @@ def with_bending(axial: Strength, planes: Sequence[Bending], *, linear: bool = F
                  moment, "N m", STABILITY),
             Step(f"M{number}/Mr", "part used in bending", moment / plane.strength.value, "-", title),
         ]  # fmt: skip
-    governs = "axial force with bending" if value > 0 else "bending alone is more than it carries"
-    return Strength(value, (*steps, Step("P", f"greatest P with {said}; {governs}", value, "N", title)))
+    governs = "axial force with bending" if value > 0 else "bending alone is too much"
+    return Strength(value, (*steps, Step("P bent", f"greatest P with {said}; {governs}", value, "N", title)))
 
 
 def _root(used: Callable[[float], float], high: float) -> float:
-    """Return the load at which a strength is used up, found by halving to the last digit; 0 where bending alone does."""
+    """Return the load up to ``high`` that uses up a strength, by halving; 0 where bending alone does."""
     low = 0.0
-    if used(high) <= 1.0:
-        return high
-    if used(low) >= 1.0:
-        return low
+    if used(high) <= 1.0 or used(low) >= 1.0:
+        return high if used(high) <= 1.0 else low
     while low < (middle := 0.5 * (low + high)) < high:
         low, high = (middle, high) if used(middle) <= 1.0 else (low, middle)
     return low

@@ -158,6 +158,12 @@ def test_a_year_or_a_kind_without_a_strength(kind: str, year: int, error: type[I
         by_year(kind, year)
 
 
+def test_a_period_of_one_year_and_one_that_ends_before_it_begins() -> None:
+    assert Period("steel", 1900, 1900, 1e8, fu=2e8, modulus=2e11, density=7850.0, source="one").last == 1900
+    with pytest.raises(InputError, match=r"steel from 1900: ends before it begins, 1899"):
+        Period("steel", 1900, 1899, 1e8, fu=2e8, modulus=2e11, density=7850.0, source="none")
+
+
 def test_a_metal_that_no_period_holds() -> None:
     with pytest.raises(InputError, match=r"steel: no strength is known by the year built"):
         material_by_year((), "steel", 1900, today=2026)

@@ -49,7 +49,7 @@ def test_the_curves_are_those_of_table_6_1() -> None:
     ],
 )  # fmt: skip
 def test_column_factor(evenness: float, ratio: float, factor: float) -> None:
-    """NDS 2018 (3.7-1) for FcE/Fc* = 0.5, 1, 2 and c of sawn timber, round poles and glued timber; half a last digit."""
+    """NDS 2018 (3.7-1) for FcE/Fc* = 0.5, 1, 2, c of sawn timber, round poles and glued timber; half a last digit."""
     assert column_factor(ratio, evenness) == pytest.approx(factor, rel=0.0, abs=HALF_LAST_DIGIT)
 
 

@@ -200,13 +200,13 @@ TWISTING = [
 
 @pytest.mark.parametrize(("name", "of_torsion", "of_warping"), TWISTING)
 def test_twisting(name: str, of_torsion: float, of_warping: float | None) -> None:
-    """J, Cw and shear centre: formulas of thin parts against finite elements; the place to 0.6 % of the depth."""
+    """J, Cw and shear centre: formulas of thin parts against finite elements; the place to 1 % of the depth."""
     theirs = meshed(name)
     theirs.calculate_warping_properties()
     ours = CASES[name].ours.properties
     close([ours.torsion], [theirs.get_j() * MM**4], of_torsion)
     size = 2.5 * max(ours.r_x, ours.r_y)  # about the depth
-    close(ours.shear_centre, [float(place) * MM for place in theirs.get_sc()], 0.006, scale=size)
+    close(ours.shear_centre, [float(place) * MM for place in theirs.get_sc()], 0.01, scale=size)
     if of_warping is None:
         assert ours.warping == 0.0  # left out: closed or solid, it only stiffens
     else:

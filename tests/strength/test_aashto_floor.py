@@ -110,6 +110,7 @@ def test_elastic_buckling_begins_where_the_straight_line_ends() -> None:
 def test_closely_braced_beams_lose_nothing() -> None:
     beam = replace(STRINGER, lateral=replace(BRACES, unbraced=2 * FOOT))
     assert bending(beam, PHI).value == bending(STRINGER, PHI).value
+    assert step(beam, "Mn sideways") == step(beam, "Mp")  # the straight line is cut at the full section
 
 
 def test_an_i_by_its_compression_flange() -> None:

@@ -25,7 +25,7 @@ from movload.strength.aashto_lrfd import (
     slender_reduction,
     tension,
 )
-from movload.strength.beam_column import Column, Connectors, Lacing, Torsion, flexural_loads
+from movload.strength.beam_column import Column, Torsion, flexural_loads
 from movload.units import unit_factor
 
 KIP, KSI, INCH = unit_factor("kip", "force"), unit_factor("ksi", "stress"), unit_factor("in", "section")
@@ -154,32 +154,6 @@ def test_twist_alone_governs_a_cruciform() -> None:
     assert steps[-1].value == load
 
 
-def test_battens_make_a_bar_slenderer() -> None:
-    """K l / r 75, a / rib = 30/0.8 = 37.5, alpha = 8/1.6 = 5: sqrt(75^2 + 0.82 25/26 37.5^2) = 82.06."""
-    held = Connectors(axis="y", spacing=30 * INCH, radius=0.8 * INCH, apart=8 * INCH)
-    _, about_y, steps = flexural_loads(replace(POST, built_up=held))
-    modified = math.sqrt(75**2 + 0.82 * 25 / 26 * 37.5**2)
-    assert_allclose(about_y, euler(modified), rtol=HAND)
-    assert_allclose(modified, 82.06, rtol=0, atol=0.005)  # half the last digit written in the docstring
-    assert any(step.symbol == "(Kl/r)my" for step in steps)
-
-
-def test_battens_too_far_apart_are_refused() -> None:
-    held = Connectors(axis="y", spacing=60 * INCH, radius=0.8 * INCH, apart=8 * INCH)
-    with pytest.raises(
-        InputError, match=r"^spacing: a / ri of one part may be 3/4 .* 56\.2 .*6\.9\.4\.3\.1.*got 75\.0"
-    ):
-        compression(replace(POST, built_up=held), PHI)
-
-
-def test_lacing_yields_as_a_spring_in_series() -> None:
-    """1/P = 1/Pe + 1/Sv about the laced axis, nothing about the other."""
-    stiffness = 900 * KIP
-    about_x, about_y, _ = flexural_loads(replace(POST, built_up=Lacing(axis="y", stiffness=stiffness)))
-    assert_allclose(1 / about_y, 1 / euler(75) + 1 / stiffness, rtol=HAND)
-    assert_allclose(about_x, euler(50), rtol=HAND)
-
-
 def test_lacing_stiffness_is_a_sheared_panels_own() -> None:
     """One bar at 45 degrees spanning b = p: a shear V gives it V sqrt 2 and the panel slides 2 sqrt 2 V b/(E A).
 
@@ -241,15 +215,11 @@ def test_refuses_a_column_that_cannot_be(change: dict[str, float], message: str)
         replace(POST, **change)
 
 
-def test_refuses_twist_and_lacing_that_cannot_be() -> None:
+def test_refuses_twist_that_cannot_be() -> None:
     with pytest.raises(InputError, match=r"^kl_z: must be finite and above 0, got 0"):
         Torsion(kl_z=0.0, j=1e-8, c_w=0.0)
     with pytest.raises(InputError, match=r"^c_w: must be finite and 0 or more, got -1"):
         Torsion(kl_z=1.0, j=1e-8, c_w=-1.0)
-    with pytest.raises(InputError, match=r"^stiffness: must be finite and above 0"):
-        Lacing(axis="x", stiffness=0.0)
-    with pytest.raises(InputError, match=r"^radius: must be finite and above 0"):
-        Connectors(axis="x", spacing=1.0, radius=0.0, apart=0.2)
 
 
 def test_every_step_names_its_source() -> None:

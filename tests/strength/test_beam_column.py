@@ -1,4 +1,4 @@
-"""Axial force with bending against hand figures, closed forms of bowed and eccentric bars, and slenderness notes.
+"""Built-up bars, axial force with bending, bowed and eccentric bars by closed forms, and slenderness notes.
 
 Bars are invented. S. P. Timoshenko, J. M. Gere, *Theory of Elastic Stability*, 2nd ed.: 1.3 (eccentric, secant), 1.12
 (bowed, Perry). FROM MEMORY, and derived again where a test says so.
@@ -15,14 +15,58 @@ import pytest
 from numpy.testing import assert_allclose
 
 from movload.errors import InputError, MissingDataError, Note
-from movload.strength.beam_column import Bending, with_bending
+from movload.strength.beam_column import Bending, Column, Connectors, Lacing, flexural_loads, with_bending
 from movload.strength.strength import Step, Strength
 from movload.strength.warnings import slenderness_notes
+from movload.units import unit_factor
 
 HALVED: Final = 1e-12  # relative: the root is halved to the last digit, the closed forms carry all digits
 AXIAL: Final = Strength(1e6, (Step("Pr", "typed", 1e6, "N", "invented"),))
 MOMENT: Final = Strength(1e5, (Step("Mr", "typed", 1e5, "N m", "invented"),))
 UNAMPLIFIED: Final = Bending(strength=MOMENT, elastic=math.inf)
+KIP, KSI, INCH = unit_factor("kip", "force"), unit_factor("ksi", "stress"), unit_factor("in", "section")
+POST: Final = Column(
+    area=10 * INCH**2, gross=10 * INCH**2, kl_x=200 * INCH, kl_y=150 * INCH, r_x=4 * INCH, r_y=2 * INCH, fy=36 * KSI,
+    modulus=29000 * KSI, torsion=None,
+)  # fmt: skip
+
+
+def euler(slenderness: float) -> float:
+    """Return pi^2 E A / (K l / r)^2 [N] of POST's area."""
+    return math.pi**2 * POST.modulus * POST.area / slenderness**2
+
+
+def test_battens_make_a_bar_slenderer() -> None:
+    """K l / r 75, a / rib = 30/0.8 = 37.5, alpha = 8/1.6 = 5: sqrt(75^2 + 0.82 25/26 37.5^2) = 82.06."""
+    held = Connectors(axis="y", spacing=30 * INCH, radius=0.8 * INCH, apart=8 * INCH)
+    _, about_y, steps = flexural_loads(replace(POST, built_up=held))
+    modified = math.sqrt(75**2 + 0.82 * 25 / 26 * 37.5**2)
+    assert_allclose(about_y, euler(modified), rtol=HALVED)
+    assert_allclose(modified, 82.06, rtol=0, atol=0.005)  # half the last digit written in the docstring
+    assert any(step.symbol == "(Kl/r)my" for step in steps)
+
+
+def test_battens_too_far_apart_are_refused() -> None:
+    held = Connectors(axis="y", spacing=60 * INCH, radius=0.8 * INCH, apart=8 * INCH)
+    with pytest.raises(
+        InputError, match=r"^spacing: a / ri of one part may be 3/4 .* 56\.2 .*6\.9\.4\.3\.1.*got 75\.0"
+    ):
+        flexural_loads(replace(POST, built_up=held))
+
+
+def test_lacing_yields_as_a_spring_in_series() -> None:
+    """1/P = 1/Pe + 1/Sv about the laced axis, nothing about the other."""
+    stiffness = 900 * KIP
+    about_x, about_y, _ = flexural_loads(replace(POST, built_up=Lacing(axis="y", stiffness=stiffness)))
+    assert_allclose(1 / about_y, 1 / euler(75) + 1 / stiffness, rtol=HALVED)
+    assert_allclose(about_x, euler(50), rtol=HALVED)
+
+
+def test_refuses_lacing_and_battens_that_cannot_be() -> None:
+    with pytest.raises(InputError, match=r"^stiffness: must be finite and above 0"):
+        Lacing(axis="x", stiffness=0.0)
+    with pytest.raises(InputError, match=r"^radius: must be finite and above 0"):
+        Connectors(axis="x", spacing=1.0, radius=0.0, apart=0.2)
 
 
 def test_half_and_eight_ninths_of_the_moment() -> None:
