@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass, field
+from itertools import pairwise
 from typing import TYPE_CHECKING, Final, TypeAlias
 
 import numpy as np
@@ -19,6 +20,7 @@ if TYPE_CHECKING:
 
 KINDS: Final = ("through", "pony", "deck")
 BEARS_ON: Final = ("floorbeams", "chord")
+_FARTHEST: Final = 1e9  # panels from x = 0: a nanometre of one is still told apart
 MOST_SHARE: Final = 2.0  # a load half a truss spacing outside reaches the nearer truss 1.5 times; 56 for 56 % is caught
 PanelPoint: TypeAlias = "str | float"  # a joint's name, or the x [m] of an abutment that carries an end stringer
 
@@ -102,7 +104,20 @@ def stations_of(truss: Truss, panel_points: Sequence[PanelPoint]) -> Floats:
                 f"after {_shown(panel_points[number - 1])} at x = {stations[number - 1]:g} m",
                 place=f"deck.panel_points[{number}]",
             )
+    _require_near(stations)
     return held(np.array(stations))
+
+
+def _require_near(stations: list[float]) -> None:
+    """Refuse places so far out that a position on the shortest panel is lost in round-off."""
+    farthest = max(range(len(stations)), key=lambda number: abs(stations[number]))
+    shortest = min(b - a for a, b in pairwise(stations))
+    if abs(stations[farthest]) > _FARTHEST * shortest:
+        raise InputError(
+            f"x = {stations[farthest]:g} m is too far out beside a panel of {shortest:g} m: positions are lost in "
+            "round-off",
+            place=f"deck.panel_points[{farthest}]",
+        )
 
 
 def deck_lengths(stations: Floats) -> Floats:

@@ -129,6 +129,13 @@ class Floor:
                 raise InputError(
                     "needs the stringers' places: type floor.stringers.z (where the deck bears)", place=f"floor.{word}"
                 )
+        if self.planks is not None and self.stringers is not None:
+            span = float(np.diff(self.stringers.z).max())
+            if not self.planks.contact < span:
+                raise InputError(
+                    f"a wheel's contact is shorter than a plank's span of {span:g} m, got {self.planks.contact:g} m",
+                    place="floor.planks.contact",
+                )
 
 
 def _require_weight(weight: float, place: str) -> None:

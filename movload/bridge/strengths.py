@@ -13,6 +13,7 @@ if TYPE_CHECKING:
     from collections.abc import Mapping
 
 SENSES: Final = ("tension", "compression", "moment", "hogging", "shear")
+BENDING: Final = ("moment", "hogging")
 FOOTINGS: Final = ("permits", "nominal", "reduced")
 """permits: margin included, nothing is put on it; nominal: every factor applies; reduced: phi is in it already."""
 
@@ -56,7 +57,9 @@ class TypedStrength:
                 if sense not in SENSES:
                     raise UnknownNameError("not a sense", place=place, nearest=nearest_name(sense, SENSES))
                 if not (math.isfinite(value) and value >= 0):
-                    raise InputError(f"a strength must be 0 or more, got {value:g} N or N m", place=place)
+                    raise InputError(
+                        f"a strength must be 0 or more, got {value:g} {'N m' if sense in BENDING else 'N'}", place=place
+                    )
         twice = set(self.nominal) & set(self.reduced)
         if twice:
             sense = min(twice)

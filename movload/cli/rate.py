@@ -125,7 +125,7 @@ def _crossings(
     stray = WANDER if wander is None else _quantity(wander, "length", "--wander")
     if wander is not None and "centre line" not in (places or []):
         raise InputError('only counts with --at "centre line"', place="--wander")
-    where = [_place(one) for one in places or ["anywhere"]]
+    where = list(dict.fromkeys(_place(one) for one in places or ["anywhere"]))
     rates: list[float | None] = [_quantity(one, "speed", "--speed") for one in speeds or []]
     for said, rate in zip(speeds or [], rates, strict=True):
         if not (rate or 0.0) > 0.0:
@@ -192,11 +192,14 @@ def _naming_option(option: str) -> Iterator[None]:
 
 def _asked(ratings: Ratings, row: str) -> Rating:
     """Return the worst rating of a row that was asked about, over crossings, levels, senses and parts that share it."""
+    from movload.bridge.strengths import SENSES
     from movload.errors import MissingDataError
     from movload.rating.ratings import EITHER
     from movload.statics.part import row_of
 
     said = row.replace(", ", " ").removeprefix(f"{EITHER} ")  # as the answer writes it
+    for sense in SENSES:
+        said = said.removesuffix(f" {sense}") if "-" in said.removesuffix(f" {sense}").rpartition(" ")[2] else said
     effects = ratings.solved.effects
     first = effects[row_of(effects, said)]
     parts = {first.part} if said.startswith(f"{first.part} ") else {effect.part for effect in effects}
@@ -242,15 +245,23 @@ def _drawing(stands: Bridge, ratings: Ratings, suffix: str) -> Callable[[], byte
 
     def make() -> bytes:
         from movload.report.figures import figure_bytes, peak_figure
-        from movload.report.phrases import factor_text
+        from movload.report.phrases import factor_text, way_text
+        from movload.report.ratings_report import governed_text
         from movload.statics.influence import influence_lines
 
-        worst = ratings.worst_member
+        worst, over_all = ratings.worst_member, ratings.worst
         lines = influence_lines(stands.truss, stands.deck.panel_points)
+        place = "" if ratings.solved.roadway is None else f", {way_text(ratings.crossings[worst.number], stands.units)}"
+        floor = (
+            f" The worst member; {governed_text(over_all)} governs with RF {factor_text(over_all.factor)}."
+            if over_all.effect.kind != "axial"
+            else ""
+        )
         figure = peak_figure(
             stands.truss, lines, worst.peak, worst.effect.name, stands.units,
-            title=f"{stands.title}: {worst.crossing}, RF {factor_text(worst.factor)} ({worst.sense})",
-            caption="Member forces: live load as it stands, the truss's share and impact included, no permanent load.",
+            title=f"{stands.title}: {worst.crossing}{place}, RF {factor_text(worst.factor)} ({worst.sense})",
+            caption=f"{worst.part}, level {worst.level}.{floor} Member forces: live load as it stands, the truss's "
+            "share and impact included, no permanent load.",
         )  # fmt: skip
         return figure_bytes(figure, suffix)
 

@@ -152,6 +152,7 @@ def _check_level(table: LevelTable, place: str) -> None:
     _known(table.kinds, KINDS, f"{place}.kinds")
     _known(table.live_by_kind, table.kinds or KINDS, f"{place}.live_by_kind")
     _known(table.resistance, SENSES, f"{place}.resistance")
+    _named(table.resistance, SENSES, f"{place}.resistance")
     _known([table.posting], _POSTING, f"{place}.posting")
     _known(table.permanent, PERMANENT_CLASSES, f"{place}.permanent")
     _named(table.permanent, [name for name in PERMANENT_CLASSES if name != REMOVABLE], f"{place}.permanent")

@@ -160,6 +160,8 @@ def _loading(table: VehicleFile) -> Loading:
                 else "the distance behind the axle before is missing"
             )
             raise InputError(said, place=f"axles[{number}].after")
+    if not table.headings:
+        raise InputError('"+x", "-x" or both are asked for, got []', place="headings")
     gauges = tuple(axle.gauge for axle in table.axles if axle.gauge is not None)
     if gauges and len(gauges) != len(table.axles):
         bare = next(number for number, axle in enumerate(table.axles) if axle.gauge is None)

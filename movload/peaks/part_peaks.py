@@ -79,7 +79,7 @@ class PartPeaks:
         if value == 0.0:
             return NO_PEAK
         abreast = [self._standing(train, row, side) for train in self.formation(row, side)]
-        felt = [one for one in abreast if one.value != 0.0]
+        felt = [one for one in abreast if one.value != 0.0] or abreast[:1]
         return replace(felt[0], value=value, placement=joined([one.placement for one in felt]))
 
     def _standing(self, train: Train, row: int, side: int) -> Peak:

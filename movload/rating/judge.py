@@ -48,7 +48,7 @@ def judge(solved: SolvedBridge, crossings: Sequence[Crossing | Loading | Vehicle
             raise InputError(
                 f'no level of "{solved.method.title}" rates a loading of kind "{one.loading.kind}"', place=one.title
             )
-    impact = np.stack([solved.impact.of(one.loading.kind, one.speed) for one in asked])
+    impact = np.stack([one.loading.dynamic * solved.impact.of(one.loading.kind, one.speed) for one in asked])
     peaks = _peaks(solved, asked, impact)
     live = SIGNS * np.stack([np.stack((one.highest, one.lowest), axis=1) for one in peaks])
     return Ratings(

@@ -27,6 +27,8 @@ class Rating:
         What, of which part as a person says it ("either truss" where both are alike), and in which sense.
     crossing, number, level
         The crossing's title and number, and the level's title.
+    place, speed
+        Where across it keeps, by name, and how fast [m/s].
     factor
         RF [-]; 0 when permanent load alone uses the strength, infinite when there is no live effect.
     strength
@@ -52,6 +54,8 @@ class Rating:
     sense: str
     crossing: str
     number: int
+    place: str
+    speed: float | None
     level: str
     factor: float
     strength: float

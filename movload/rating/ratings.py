@@ -13,6 +13,7 @@ from movload.errors import MissingDataError
 from movload.rating.kernel import SIGNS, pushed_by_permanent
 from movload.rating.rating import DIGITS, Coverage, Rating, sense_of, worst_first
 from movload.rating.resistance import SENSES
+from movload.traffic.crossing import TYPED_SHARE
 
 if TYPE_CHECKING:
     from movload.arrays import Bools, Floats
@@ -64,6 +65,8 @@ class Ratings:
             sense=sense_of(peaks.effects[row], side),
             crossing=loading.title,
             number=crossing,
+            place=self.crossings[crossing].place if solved.roadway else TYPED_SHARE,
+            speed=self.crossings[crossing].speed,
             level=self.levels[level],
             factor=float(self.factor[level, crossing, row, side]),
             strength=float(solved.strength[level, row, side]),

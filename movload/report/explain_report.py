@@ -95,13 +95,15 @@ def sum_table(
     factored = any(term.factor != 1.0 for term in terms)
     placed = any(not math.isnan(term.z) for term in terms)
     abreast = any(term.vehicle > 1 for term in terms)
-    scale = units.factor("length") if quantity == "moment" else 1.0
+    arm = units.factor("length") if quantity == "moment" else 1.0
+    across = rating.effect.part.startswith("floorbeam")  # a floorbeam's arm is across the bridge, in the share
+    scale, share_scale = (1.0, arm) if across else (arm, 1.0)
     lines = []
     for term in terms:
         line = [
             str(rating.peak.axle + 1 if rating.effect.part == "planks" else term.axle),
             number_text(term.x, "length", units, more=1),
-            number_text(term.load, "force", units, more=1), f"{term.share:.4f}", f"{1 + term.impact:.3f}",
+            number_text(term.load, "force", units, more=1), f"{term.share / share_scale:.4f}", f"{1 + term.impact:.3f}",
             unsigned_zero(f"{term.ordinate / scale:+.5f}"),
             number_text(term.effect, quantity, units, more=1, sign="+"),
         ]  # fmt: skip
@@ -112,8 +114,9 @@ def sum_table(
         if abreast:
             line.insert(0, str(term.vehicle))
         lines.append(line)
-    heads = ["axle", f"x [{length}]", f"load [{force}]", "x share", "x (1 + I)"]
-    heads += ["x ordinate" if quantity != "moment" else f"x ordinate [{length}]", f"= [{units.symbol(quantity)}]"]
+    of_arm = f" [{length}]" if quantity == "moment" else ""
+    heads = ["axle", f"x [{length}]", f"load [{force}]", f"x share{of_arm if across else ''}", "x (1 + I)"]
+    heads += [f"x ordinate{'' if across else of_arm}", f"= [{units.symbol(quantity)}]"]
     if factored:
         heads.insert(3, "x presence")
     if placed:

@@ -79,6 +79,8 @@ COLUMNS: Final[list[Column[Rating]]] = [
     Column("kind", "", lambda row: row.effect.kind),
     Column("crossing_number", "", lambda row: row.number),
     Column("abreast", "", lambda row: row.abreast),
+    Column("place", "", lambda row: row.place),
+    Column("speed", "", lambda row: row.speed, "speed"),
 ]  # fmt: skip
 _IN_TABLE: Final = ("part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "position")
 _JSON_ONLY: Final[list[Column[Rating]]] = [

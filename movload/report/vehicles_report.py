@@ -125,6 +125,9 @@ def one_tables(loading: Loading) -> list[RenderableType | str]:
     for case in loading.cases:
         if case.moving is not None:
             parts += ["", table_of(AXLE_COLUMNS, axles_of(case.moving), _METRIC)]
+            if case.moving.left_shares:
+                each = ", ".join(f"{100 * share:g} %" for share in case.moving.left_shares)
+                parts += ["", f"Left wheels carry, axle by axle: {each}"]
     return parts
 
 

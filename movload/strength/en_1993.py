@@ -37,7 +37,7 @@ CURVES: Final = {"a0": 0.13, "a": 0.21, "b": 0.34, "c": 0.49, "d": 0.76}
 _PLATEAU: Final = 0.2  # slenderness up to which buckling takes nothing off, 6.3.1.2(4)
 _REFERENCE: Final = 235e6  # Pa, of epsilon, Table 5.2
 _PLATES: Final = {"flange": 14.0, "stem": 14.0, "angle leg": 11.5, "web": 42.0, "cover": 42.0}
-"""Greatest c/t over epsilon of class 3, all in compression, Table 5.2; legs by the mean of both, (b + h)/2t."""
+"""Greatest c/t over epsilon of class 3, all in compression, Table 5.2; each leg by that of their mean, (b + h)/2t."""
 _FLANGE: Final = (9.0, 10.0, 14.0)  # c/t over epsilon of an outstand, classes 1 to 3, Table 5.2
 _EVEN_WEB: Final = (72.0, 83.0, 124.0)  # of a web in bending about its middle
 _ANY_WEB: Final = (66.0, 76.0, 84.0)  # of twice the depth in compression: the least over every neutral axis

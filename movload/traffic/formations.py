@@ -60,8 +60,12 @@ def fitting(crossing: Crossing, roadway: Roadway | None) -> int:
     """Return how many vehicles stand abreast at most in a crossing."""
     if roadway is None:
         return 1
-    widths = [max(_gauges(case.moving)) for case in crossing.loading.cases if case.moving is not None]
-    return max((_most(crossing, roadway, width) for width in widths), default=1)
+    counts = [
+        _counts(crossing, case, roadway, max(_gauges(case.moving)))
+        for case in crossing.loading.cases
+        if case.moving is not None
+    ]
+    return max((count.stop - 1 for count in counts), default=1)
 
 
 def _require_no_place(crossing: Crossing) -> None:

@@ -46,7 +46,7 @@ kinds = ["farm", "routine", "crowd"]
 live_by_traffic = [[0, 1.2], [100, 1.6]]
 live_by_kind = { farm = 1.1 }
 permanent = { components = [1.2, 0.9], surfacing = [1.4, 0.0], other = [1.2, 1.0], settlement = [1.0, 1.0] }
-resistance = { tension = 0.9, compression = "1/1.25" }
+resistance = { tension = 0.9, compression = "1/1.25", moment = 1.0, hogging = 1.0, shear = 1.0 }
 condition_factors = true
 posting = "none"
 
@@ -54,7 +54,11 @@ posting = "none"
 title = "all year"
 live = 2
 permanent = { components = [1.2, 0.9], surfacing = [1.4, 0.0], other = [1.2, 1.0], settlement = [1.0, 1.0] }
+resistance = { tension = 1.0, compression = 1.0, moment = 1.0, hogging = 1.0, shear = 1.0 }
 """
+
+
+ONES = dict.fromkeys(("tension", "compression", "moment", "hogging", "shear"), 1.0)
 
 
 def own(old: str = "", new: str = "") -> FactorSet:
@@ -123,7 +127,7 @@ def test_levels_of_ones_own_hold_what_their_tables_say() -> None:
     hay, year = own().levels
     assert (hay.title, hay.kinds, hay.posting) == ("hay time", ("farm", "routine", "crowd"), "")
     assert (hay.by_traffic, hay.by_kind) == (((0.0, 1.2), (100.0, 1.6)), {"farm": 1.1})
-    assert (hay.resistance, hay.condition_factors) == ({"tension": 0.9, "compression": 0.8}, True)
+    assert (hay.resistance, hay.condition_factors) == (ONES | {"tension": 0.9, "compression": 0.8}, True)
     assert hay.permanent_margins(PERMANENT_CLASSES).tolist() == [
         [1.2, 0.9],
         [1.4, 0.0],
@@ -132,7 +136,7 @@ def test_levels_of_ones_own_hold_what_their_tables_say() -> None:
         [1.0, 1.0],
     ]
     assert (year.live, year.kinds, year.posting, year.needs_traffic) == (2.0, (), "weight x RF", False)
-    assert (year.resistance, year.condition_factors) == ({}, False)
+    assert (year.resistance, year.condition_factors) == (ONES, False)
 
 
 def test_keys_that_may_be_left_out_leave_nothing_behind() -> None:

@@ -92,7 +92,8 @@ class Standing:
     def rows(self, title: str, *, at_midspan: bool = False) -> Floats:
         """Return a part's rows (R, K), the part named as a table names it; ``at_midspan``: see `stringer`."""
         if title.endswith("truss") and "," not in title:
-            return self.ordinates @ self.reactions[0 if title == "left truss" else 1]
+            forces: Floats = self.ordinates @ self.reactions[0 if title == "left truss" else 1]
+            return forces
         if title.startswith("stringer S"):
             return self.stringer(int(title.removeprefix("stringer S")) - 1, at_midspan=at_midspan)
         kind, _, where = title.removeprefix("floorbeams, ").partition(" ")
@@ -102,7 +103,8 @@ class Standing:
         if kind == "moment":
             return self.moment(side * self.half)
         bracket = self.on_beams[:, side * self.stringers > self.half].sum(axis=1)
-        return (bracket if "bracket" in where else self.reactions[0 if side > 0.0 else 1] - bracket)[self.beams]
+        shear: Floats = bracket if "bracket" in where else self.reactions[0 if side > 0.0 else 1] - bracket
+        return shear[self.beams]
 
     def moment(self, s: float) -> Floats:
         """Return each floorbeam's moment (beams, K) at z = s: reactions and loads to the right of the cut, times arms.
@@ -112,7 +114,8 @@ class Standing:
         left, right = self.reactions
         up = right * max(s + self.half, 0.0) + left * max(s - self.half, 0.0)
         arms = np.maximum(s - self.stringers, 0.0)[None, :, None]
-        return (up - (self.on_beams * arms).sum(axis=1))[self.beams]
+        moments: Floats = up - (self.on_beams * arms).sum(axis=1)
+        return moments[self.beams]
 
     def stringer(self, number: int, *, at_midspan: bool = False) -> Floats:
         """Return a stringer's moment and end shear, span by span (2 P, K); loads that would lift it are left out.
@@ -195,10 +198,10 @@ def fitting_beside(room: tuple[float, float], middles: Sequence[float], apart: f
 
 
 def tried_along(bridge: Bridge, vehicle: Vehicle, heading: Floats, random: np.random.Generator) -> Floats:
-    """Return front axles' x (K,): four of five times some axle stands at a floorbeam, else anywhere."""
+    """Return front axles' x (K,): four of five times some axle stands at a floorbeam or just beside, else anywhere."""
     x, size = _measured(bridge)[0], heading.size
     behind = -axles_at(vehicle, np.zeros(1), np.ones(1))[:, 0]
-    on = random.choice(x, size) + heading * random.choice(behind, size)
+    on = random.choice(x, size) + heading * random.choice(behind, size) + random.choice([0.0, 0.0, 1e-7, -1e-7], size)
     return np.where(random.random(size) < 0.8, on, random.uniform(x[0] - behind[-1], x[-1] + behind[-1], size))
 
 

@@ -184,7 +184,7 @@ def test_vehicles_abreast_have_columns_of_their_own() -> None:
     lines = printed(ratings, found(ratings, "floorbeam L2 moment at S2", 0))
     head = next(line for line in lines if line.startswith("vehicle"))
     assert cells(head) == [
-        "vehicle", "axle", "x [m]", "z [m]", "load [kN]", "x share", "x (1 + I)", "x ordinate [m]", "= [kN m]",
+        "vehicle", "axle", "x [m]", "z [m]", "load [kN]", "x share [m]", "x (1 + I)", "x ordinate", "= [kN m]",
     ]  # fmt: skip
     axles = [cells(line)[:2] for line in lines[lines.index(head) + 1 : -2]]
     assert axles == [["1", "1"], ["1", "2"], ["2", "1"], ["2", "2"]]

@@ -91,7 +91,7 @@ def test_json_is_the_published_document() -> None:
     ]  # fmt: skip
     assert list(read["rows"][0]) == [
         "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "safe_weight",
-        "position", "heading", "axle", "station", "kind", "crossing_number", "abreast", "permanent_use",
+        "position", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place", "speed", "permanent_use",
         "permanent_used", "live_factor", "stands_for", "placement",
     ]  # fmt: skip
     assert list(read["rows"][0]["placement"]) == ["x", "load", "share", "impact", "factor", "z", "vehicle"]
@@ -140,7 +140,7 @@ def test_csv_has_the_columns_of_the_list_with_the_files_units() -> None:
     ratings = rate(brook(units=US), [CART])
     lines = sheet(ratings_csv(ratings.rows(0), US))
     assert [re.sub(r" \[.*", "", head) for head in lines[0]] == [*(column.name for column in COLUMNS), "unit"]
-    assert [head for head in lines[0] if "[" in head] == ["safe_weight [kip]", "position [ft]"]
+    assert [head for head in lines[0] if "[" in head] == ["safe_weight [kip]", "position [ft]", "speed [mph]"]
     for line, rating in zip(lines, ratings.rows(0), strict=True):
         assert float(line["factor"]) == rating.factor
         assert line["unit"] == "kip"

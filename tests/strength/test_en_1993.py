@@ -196,8 +196,9 @@ def test_twist_of_a_singly_symmetric_bar_by_its_closed_form() -> None:
 
     found = squeezed(POST, torsion=twist)
     # An offset along x couples twist with bending along y, that is about x.
-    assert symbols(found)["Ncr,TF"] == pytest.approx(min(coupled(flexural), other), rel=1e-3)
-    assert symbols(found)["Ncr,TF"] < 0.99 * coupled(other) or coupled(flexural) < other
+    assert coupled(flexural) < other
+    assert coupled(flexural) != pytest.approx(coupled(other), rel=0.05)
+    assert symbols(found)["Ncr,TF"] == pytest.approx(coupled(flexural), rel=1e-3)
 
 
 def test_twist_takes_the_worse_curve_and_may_govern() -> None:
@@ -259,11 +260,20 @@ def test_the_limits_of_the_classes(*, even: bool, webs: tuple[float, ...]) -> No
     unit = math.sqrt(235 / 355)
     beam = replace(HELD, fy=355 * MPA, s_t=557e-6 if even else 500e-6)
     for number, (flange, web) in enumerate(zip((9.0, 10.0, 14.0), webs, strict=True), start=1):
-        assert section_class(replace(beam, flange_ratio=0.999 * flange * unit)) <= number
         assert section_class(replace(beam, flange_ratio=0.999 * flange * unit, web_ratio=0.999 * web * unit)) == number
+        if number < 3:
+            assert section_class(replace(beam, flange_ratio=1.001 * flange * unit)) == number + 1
+            assert section_class(replace(beam, web_ratio=1.001 * web * unit)) == number + 1
     for slender in ({"flange_ratio": 14.1 * unit}, {"web_ratio": 1.001 * webs[2] * unit}):
-        with pytest.raises(InputError, match=r"beam: EN 1993-1-1 class 4 is not covered: b/2t is 11.4 and 2 Dc/tw"):
+        message = rf"beam: EN 1993-1-1 class 4 is not covered: b/2t is 11.4 and 2 Dc/tw {webs[2] * unit:.1f} at most"
+        with pytest.raises(InputError, match=message):
             section_class(replace(beam, **slender))
+
+
+@pytest.mark.parametrize(("part", "number"), [(1.0, 2), (0.9995, 2), (0.998, 3)])
+def test_flanges_count_as_equal_within_the_rounding_of_a_table(part: float, number: int) -> None:
+    """A web at 80 is class 2 by 83 about its middle and class 3 by 76 about any axis."""
+    assert section_class(replace(HELD, web_ratio=80.0, s_t=part * HELD.s_c)) == number
 
 
 def least_over_neutral_axes(plastic: float | None) -> float:

@@ -57,6 +57,8 @@ class RatingDocument(Document):
     stands_for: str = Field(description="the part as a person says it: either truss where both are alike")
     crossing_number: int = Field(description="number in crossings, counted from 0")
     abreast: int = Field(description="how many vehicles stand side by side; 0 when off the bridge")
+    place: str = Field(description="where across the crossing keeps, by name")
+    speed: float | None = Field(description="[m/s]; null where none is meant")
     live_factor: float = Field(description="margin on the live effect")
     permanent_used: float = Field(description="what permanent load uses of the strength, margins included [N, N m]")
 
