@@ -19,6 +19,7 @@ if TYPE_CHECKING:
     from movload.bridge.truss import Truss
 
 
+_HAIR: Final = 1e-9  # m: round-off of typed places
 _MOST_IMPACT: Final = 2.0  # no rule asks for as much; 30 for 30 % is caught
 
 
@@ -96,7 +97,7 @@ class Bridge:
         brackets = floor.floorbeams.brackets if floor.floorbeams else (0.0, 0.0)
         if floor.stringers is not None and floor.floorbeams is not None:
             for name, z in zip(floor.stringers.names, floor.stringers.z, strict=True):
-                if not -half - brackets[0] <= z <= half + brackets[1]:
+                if not -half - brackets[0] - _HAIR <= z <= half + brackets[1] + _HAIR:
                     raise InputError(
                         f"stringer {name} at {z:g} m stands beyond the trusses at {-half:g} and {half:g} m and what "
                         f"brackets reach, {brackets[0]:g} and {brackets[1]:g} m",

@@ -192,14 +192,12 @@ def _naming_option(option: str) -> Iterator[None]:
 
 def _asked(ratings: Ratings, row: str) -> Rating:
     """Return the worst rating of a row that was asked about, over crossings, levels, senses and parts that share it."""
-    from movload.bridge.strengths import SENSES
     from movload.errors import MissingDataError
     from movload.rating.ratings import EITHER
     from movload.statics.part import row_of
 
     said = row.replace(", ", " ").removeprefix(f"{EITHER} ")  # as the answer writes it
-    for sense in SENSES:
-        said = said.removesuffix(f" {sense}") if "-" in said.removesuffix(f" {sense}").rpartition(" ")[2] else said
+    said = said.removesuffix(" tension").removesuffix(" compression")
     effects = ratings.solved.effects
     first = effects[row_of(effects, said)]
     parts = {first.part} if said.startswith(f"{first.part} ") else {effect.part for effect in effects}

@@ -52,7 +52,7 @@ SPOILED = {
     "axles, numbers": (AXLES, "axles = [20, 45]", "axles[0]: a table of keys is asked for, got 20"),
     "heading": ("kind =", 'headings = ["left"]\nkind =', 'headings[0]: "+x" or "-x" is asked for, got "left"'),
     "heading twice": ("kind =", 'headings = ["+x", "+x"]\nkind =', "headings: headings are +1, -1 or both, got (1, 1)"),
-    "no heading": ("kind =", "headings = []\nkind =", "headings: headings are +1, -1 or both, got ()"),
+    "no heading": ("kind =", "headings = []\nkind =", 'headings: "+x", "-x" or both are asked for, got []'),
     "headings, text": ("kind =", 'headings = "+x"\nkind =', 'headings: a list is asked for, got "+x"'),
     "unit": ('force = "kN"', 'force = "kNn"', 'units.force: "kNn": unit "kNn" is not known', '(nearest: "kN")'),
     "units missing": ('units = { length = "m", force = "kN" }', "", "units: the units are not said"),

@@ -25,12 +25,14 @@ COVERAGE = ["full", "partly", "none", "not_rated"]
 NOTE = ["code", "subject", "text", "source"]
 ROW = [
     "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "safe_weight",
-    "position", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place", "speed", "permanent_use", "permanent_used",
+    "position", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place", "speed",
+    "permanent_use", "permanent_used",
     "live_factor", "stands_for", "placement",
 ]  # fmt: skip
 HEADS = [
     "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact",
-    "safe_weight [kN]", "position [m]", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place", "speed [km/h]", "unit",
+    "safe_weight [kN]", "position [m]", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place",
+    "speed [km/h]", "unit",
 ]  # fmt: skip
 IN_UNIT = ("strength", "permanent", "live")  # forces and moments share these columns; the last one says their unit
 GRAVITY = 9.80665  # m/s2, standard (NIST SP 811, B.8, from memory)

@@ -103,6 +103,12 @@ surfacing = [1.0, 1.0]
 "removable surfacing" = [1.0, 0.0]
 other = [1.0, 1.0]
 settlement = [1.0, 1.0]
+[levels.resistance]
+tension = 1.0
+compression = 1.0
+moment = 1.0
+hogging = 1.0
+shear = 1.0
 """
 
 
