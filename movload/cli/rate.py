@@ -26,6 +26,7 @@ if TYPE_CHECKING:
     from pathlib import Path
 
     from movload.bridge.bridge import Bridge
+    from movload.rating.factor_sets import FactorSet
     from movload.rating.rating import Rating
     from movload.rating.ratings import Ratings
     from movload.rating.solved import SolvedBridge
@@ -85,7 +86,6 @@ def rate(
 ) -> None:
     """Rate a bridge for vehicles: rating factor, what governs, safe weight, and where the vehicle stands then."""
     check_outputs(csv, plot, force=force, inputs=[bridge, *vehicle])
-    from movload.files.factor_sets import read_factor_set
     from movload.files.read import read_bridge
     from movload.rating.solved import solve
     from movload.report.rating_text import rating_text
@@ -95,24 +95,38 @@ def rate(
     stands = read_bridge(bridge)
     if impact is not None:
         stands = _with_impact(stands, impact)
-    factors = read_factor_set(method)
+    factors = _factors(method)
     with naming(bridge):
         solved = solve(stands, factors)
     ratings = _judged(solved, _crossings(vehicle, at, speed, abreast=abreast, wander=wander), bridge)
     with naming(bridge):
         wanted = [explained(ratings, _asked(ratings, row)) for row in explain or []]
-    rows = [row for number in range(len(ratings.crossings)) for row in ratings.rows(number)]
+
+    def rows() -> list[Rating]:
+        return [row for number in range(len(ratings.crossings)) for row in ratings.rows(number)]
+
     deliver(
         text=lambda: rating_text(ratings, _station_names(stands), every=every, explain=wanted),
-        json=(lambda: ratings_json(ratings, rows, wanted)) if json else None,
+        json=(lambda: ratings_json(ratings, rows(), wanted)) if json else None,
         files={
-            csv: lambda: ratings_csv(rows, stands.units).encode(),
+            csv: lambda: ratings_csv(rows(), stands.units).encode(),
             plot: _drawing(stands, ratings, plot.suffix.lower() if plot else ""),
         },
         force=force,
     )
     if gate and not ratings.passes:
         raise typer.Exit(3)
+
+
+def _factors(method: str) -> FactorSet:
+    """Return a factor set; what reads their files is loaded only when one is asked for."""
+    from movload.rating.factor_sets import PERMITTED
+
+    if method == "permitted":
+        return PERMITTED
+    from movload.files.factor_sets import read_factor_set
+
+    return read_factor_set(method)
 
 
 def _crossings(

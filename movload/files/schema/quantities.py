@@ -134,7 +134,7 @@ Text = Annotated[str, Field(strict=True, min_length=1), AfterValidator(_one_line
 class Table(BaseModel):
     """A table of a file: unknown keys are errors that name the nearest known one."""
 
-    model_config = ConfigDict(extra="ignore", frozen=True)
+    model_config = ConfigDict(extra="ignore", frozen=True, defer_build=True)  # built once, within the whole file's
 
     @model_validator(mode="before")
     @classmethod
