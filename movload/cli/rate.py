@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from contextlib import contextmanager
 from dataclasses import replace
 from typing import TYPE_CHECKING, Annotated
 
@@ -18,11 +17,11 @@ from movload.cli.options import (
     check_outputs,
     deliver,
     naming,
-    read_loadings,
 )
+from movload.cli.ways import crossings_asked, naming_option, quantity_option
 
 if TYPE_CHECKING:
-    from collections.abc import Callable, Iterator
+    from collections.abc import Callable
     from pathlib import Path
 
     from movload.bridge.bridge import Bridge
@@ -98,7 +97,9 @@ def rate(
     factors = _factors(method)
     with naming(bridge):
         solved = solve(stands, factors)
-    ratings = _judged(solved, _crossings(vehicle, at, speed, abreast=abreast, wander=wander), bridge)
+    ratings = _judged(
+        solved, crossings_asked(vehicle, at, speed, abreast=abreast, wander=wander, roadway=stands.deck.roadway), bridge
+    )
     with naming(bridge):
         wanted = [explained(ratings, _asked(ratings, row)) for row in explain or []]
 
@@ -129,31 +130,6 @@ def _factors(method: str) -> FactorSet:
     return read_factor_set(method)
 
 
-def _crossings(
-    vehicles: list[str], places: list[str] | None, speeds: list[str] | None, *, abreast: int, wander: str | None
-) -> list[tuple[str, Crossing]]:
-    """Return every vehicle in every place at every speed, with the name it was asked for by."""
-    from movload.errors import InputError
-    from movload.traffic.crossing import MOST_ABREAST, WANDER, Crossing
-
-    stray = WANDER if wander is None else _quantity(wander, "length", "--wander")
-    if wander is not None and "centre line" not in (places or []):
-        raise InputError('only counts with --at "centre line"', place="--wander")
-    where = list(dict.fromkeys(_place(one) for one in places or ["anywhere"]))
-    rates: list[float | None] = [_quantity(one, "speed", "--speed") for one in speeds or []]
-    for said, rate in zip(speeds or [], rates, strict=True):
-        if not (rate or 0.0) > 0.0:
-            raise InputError(f'a speed must be above 0, got "{said}"', place="--speed")
-    if not 0 <= abreast <= MOST_ABREAST:
-        raise InputError(f"0 to {MOST_ABREAST} may go abreast, got {abreast}", place="--abreast")
-    return [
-        (name, Crossing(loading, place, z, lanes=abreast, speed=rate, wander=stray))
-        for name, loading in zip(vehicles, read_loadings(vehicles), strict=True)
-        for place, z in where
-        for rate in rates or [None]
-    ]
-
-
 def _judged(solved: SolvedBridge, crossings: list[tuple[str, Crossing]], bridge: Path) -> Ratings:
     """Return the ratings; where one cannot cross, the error says who and where."""
     from movload.errors import MovloadError
@@ -166,42 +142,6 @@ def _judged(solved: SolvedBridge, crossings: list[tuple[str, Crossing]], bridge:
             with naming(f"{name} on {bridge}"):
                 judge(solved, [one])
         raise
-
-
-def _place(said: str) -> tuple[str, float]:
-    """Return a place by its name, or an offset [m]."""
-    from movload.bridge.roadway import PLACES
-    from movload.errors import InputError, UnknownNameError, nearest_name
-
-    if said in PLACES and said != "offset":
-        return said, 0.0
-    if any(sign.isdigit() for sign in said):
-        return "offset", _quantity(said, "length", "--at")
-    named = [place for place in PLACES if place != "offset"]
-    if said == "offset":
-        raise InputError('say how far: --at "0.4 m"', place="--at")
-    raise UnknownNameError(
-        f'"{said}" is none of {", ".join(named)} and no offset', place="--at", nearest=nearest_name(said, named)
-    )
-
-
-def _quantity(text: str, quantity: str, option: str) -> float:
-    """Return a typed option in SI; errors name the option."""
-    from movload.units import to_si
-
-    with _naming_option(option):
-        return to_si(text, quantity)  # type: ignore[arg-type]  # one of the quantities
-
-
-@contextmanager
-def _naming_option(option: str) -> Iterator[None]:
-    """Say which option is wrong, whatever the domain calls its place."""
-    from movload.errors import InputError
-
-    try:
-        yield
-    except InputError as error:
-        raise type(error)(error.rule, place=option, nearest=error.nearest) from None
 
 
 def _asked(ratings: Ratings, row: str) -> Rating:
@@ -241,8 +181,8 @@ def _with_impact(stands: Bridge, impact: str) -> Bridge:
 
     missing = tuple(place for place in stands.missing if place != "rating.impact")
     if any(sign.isdigit() for sign in impact):
-        typed = _quantity(impact, "fraction", "--impact")
-        with _naming_option("--impact"):
+        typed = quantity_option(impact, "fraction", "--impact")
+        with naming_option("--impact"):
             return replace(stands, impact=typed, impact_rule="", missing=missing)
     if impact not in RULES[1:]:
         raise UnknownNameError(

@@ -147,7 +147,6 @@ LOOSE = {
 
 
 @pytest.mark.parametrize("words", LOOSE.values(), ids=LOOSE)
-@pytest.mark.xfail(reason="taken, or refused without naming the option", strict=True)
 def test_options_beyond_the_road(words: list[str]) -> None:
     assert_refused(movload("rate", KETTLE_FORD, "h5", *words), place=words[-2])
 
