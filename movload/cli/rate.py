@@ -212,8 +212,8 @@ def _drawing(stands: Bridge, ratings: Ratings, suffix: str) -> Callable[[], byte
         figure = peak_figure(
             stands.truss, lines, worst.peak, worst.effect.name, stands.units,
             title=f"{stands.title}: {worst.crossing}{place}, RF {factor_text(worst.factor)} ({worst.sense})",
-            caption=f"{worst.part[:1].upper()}{worst.part[1:]}, level {worst.level}.{floor} Member forces: live load as it "
-            "stands, the truss's share and impact included, no permanent load.",
+            caption=f"{worst.part[:1].upper()}{worst.part[1:]}, level {worst.level}.{floor} Member forces: live load "
+            "as it stands, the truss's share and impact included, no permanent load.",
         )  # fmt: skip
         return figure_bytes(figure, suffix)
 
