@@ -14,6 +14,7 @@ from movload.units import UnitSystem
 if TYPE_CHECKING:
     from collections.abc import Mapping
 
+    from movload.bridge.made import Made
     from movload.bridge.permanent import PermanentItems
     from movload.bridge.strengths import TypedStrength
     from movload.bridge.truss import Truss
@@ -34,7 +35,10 @@ class Bridge:
     permanent
         None when nobody has typed it; rating then asks for it.
     strengths
-        Typed strengths by member name; a member without an entry is not rated.
+        Typed strengths by member name; they come before what sections and materials give.
+    made
+        What members are made of, by name: in the left truss and in the right one. A member with neither entry is not
+        rated.
     floor
         Stringers, floorbeams and planks.
     impact
@@ -61,6 +65,7 @@ class Bridge:
     deck: Deck
     permanent: PermanentItems | None = field(default=None, kw_only=True)
     strengths: Mapping[str, TypedStrength] = field(default_factory=dict, kw_only=True)
+    made: Mapping[str, tuple[Made, Made]] = field(default_factory=dict, kw_only=True)
     floor: Floor = field(default_factory=Floor, kw_only=True)
     impact: float | None = field(default=None, kw_only=True)
     impact_rule: str = field(default="", kw_only=True)
@@ -74,8 +79,9 @@ class Bridge:
     def __post_init__(self) -> None:
         """Check that the parts belong together."""
         object.__setattr__(self, "strengths", MappingProxyType(dict(self.strengths)))
+        object.__setattr__(self, "made", MappingProxyType(dict(self.made)))
         stations_of(self.truss, self.deck.panel_points)
-        for name in self.strengths:
+        for name in (*self.strengths, *self.made):
             self.truss.member(name)
         if self.impact is not None and not 0 <= self.impact <= _MOST_IMPACT:
             raise InputError(
@@ -129,7 +135,10 @@ class Bridge:
     def __reduce__(self) -> tuple[object, ...]:
         """Pickle by parts (a read-only mapping cannot be pickled)."""
         rest = {one.name: getattr(self, one.name) for one in fields(self) if one.kw_only}
-        return (_rebuilt, (self.title, self.truss, self.deck, {**rest, "strengths": dict(self.strengths)}))
+        return (
+            _rebuilt,
+            (self.title, self.truss, self.deck, {**rest, "strengths": dict(self.strengths), "made": dict(self.made)}),
+        )
 
 
 def _rebuilt(title: str, truss: Truss, deck: Deck, rest: dict[str, object]) -> Bridge:

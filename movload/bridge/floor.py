@@ -4,12 +4,15 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass, field
-from typing import Final
+from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
 from movload.bridge.strengths import TypedStrength
 from movload.errors import InputError
+
+if TYPE_CHECKING:
+    from movload.bridge.made import Made
 
 _NOTHING: Final = TypedStrength()
 _MOST_FRACTION: Final = 2.0  # of a whole axle on one stringer; 70 for 70 % is caught
@@ -29,12 +32,15 @@ class Stringers:
         Each one's own weight [N/m].
     strength
         Of one stringer: moment, shear.
+    made
+        What each is made of; None while nobody has typed it.
     """
 
     z: tuple[float, ...]
     fraction: float | None = field(default=None, kw_only=True)
     weight: float = field(default=0.0, kw_only=True)
     strength: TypedStrength = field(default=_NOTHING, kw_only=True)
+    made: Made | None = field(default=None, kw_only=True)
 
     def __post_init__(self) -> None:
         """Check order, fraction and weight."""
@@ -69,11 +75,14 @@ class Floorbeams:
         Their own weight per metre of beam [N/m].
     strength
         Of one floorbeam: moment (sagging), hogging (over the truss), shear.
+    made
+        What each is made of; None while nobody has typed it.
     """
 
     brackets: tuple[float, float] = (0.0, 0.0)
     weight: float = field(default=0.0, kw_only=True)
     strength: TypedStrength = field(default=_NOTHING, kw_only=True)
+    made: Made | None = field(default=None, kw_only=True)
 
     def __post_init__(self) -> None:
         """Check brackets and weight."""
@@ -98,11 +107,14 @@ class Planks:
         Part of a wheel that one plank takes [-], above 0 and at most 1.
     strength
         Of one plank: moment, shear.
+    made
+        What it is made of; None while nobody has typed it.
     """
 
     contact: float
     sharing: float
     strength: TypedStrength = field(default=_NOTHING, kw_only=True)
+    made: Made | None = field(default=None, kw_only=True)
 
     def __post_init__(self) -> None:
         """Check contact and sharing."""

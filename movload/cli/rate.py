@@ -50,6 +50,11 @@ Abreast = Annotated[
 Wander = Annotated[
     str | None, typer.Option("--wander", metavar="LENGTH", help='Stray to either side of the centre line: "0.3 m".')
 ]
+Beside = Annotated[
+    str | None,
+    typer.Option("--beside", metavar="VEHICLE", help="Ordinary traffic that may stand beside it, held fixed in the "
+                 "rating."),
+]  # fmt: skip
 Impact = Annotated[
     str | None,
     typer.Option("--impact", metavar="RULE", help='Dynamic allowance instead of the file\'s: 0.3, "30 %", or a rule: '
@@ -74,6 +79,7 @@ def rate(
     speed: Speeds = None,
     abreast: Abreast = 0,
     wander: Wander = None,
+    beside: Beside = None,
     impact: Impact = None,
     explain: Explain = None,
     every: All = False,
@@ -84,7 +90,7 @@ def rate(
     force: Force = False,
 ) -> None:
     """Rate a bridge for vehicles: rating factor, what governs, safe weight, and where the vehicle stands then."""
-    check_outputs(csv, plot, force=force, inputs=[bridge, *vehicle])
+    check_outputs(csv, plot, force=force, inputs=[bridge, *vehicle, *([beside] if beside else [])])
     from movload.files.read import read_bridge
     from movload.rating.solved import solve
     from movload.report.rating_text import rating_text
@@ -97,9 +103,10 @@ def rate(
     factors = _factors(method)
     with naming(bridge):
         solved = solve(stands, factors)
-    ratings = _judged(
-        solved, crossings_asked(vehicle, at, speed, abreast=abreast, wander=wander, roadway=stands.deck.roadway), bridge
+    crossings = crossings_asked(
+        vehicle, at, speed, abreast=abreast, wander=wander, beside=beside, roadway=stands.deck.roadway
     )
+    ratings = _judged(solved, crossings, bridge)
     with naming(bridge):
         wanted = [explained(ratings, _asked(ratings, row)) for row in explain or []]
 

@@ -23,6 +23,7 @@ def crossings_asked(  # one parameter for each option
     *,
     abreast: int,
     wander: str | None,
+    beside: str | None,
     roadway: Roadway | None,
 ) -> list[tuple[str, Crossing]]:
     """Return every vehicle in every place at every speed, with the name it was asked for by."""
@@ -34,10 +35,13 @@ def crossings_asked(  # one parameter for each option
         raise InputError("the same place is asked for twice", place="--at")
     if not 0 <= abreast <= MOST_ABREAST:
         raise InputError(f"0 to {MOST_ABREAST} may go abreast, got {abreast}", place="--abreast")
+    traffic = None if beside is None else read_loadings([beside])[0]
+    if traffic is not None and abreast > 1:
+        raise InputError("with other traffic beside it one vehicle crosses; leave --abreast out", place="--beside")
     stray = _stray(wander, places or [], roadway)
     rates = [_speed(one) for one in speeds or []]
     return [
-        (name, Crossing(loading, place, z, lanes=abreast, speed=rate, wander=stray))
+        (name, Crossing(loading, place, z, lanes=abreast, speed=rate, wander=stray, beside=traffic))
         for name, loading in zip(vehicles, read_loadings(vehicles), strict=True)
         for place, z in where
         for rate in rates or [None]

@@ -22,7 +22,9 @@ _TIE: Final = 1e-12  # of the row's largest value: positions whose effects diffe
 _SAME_PLACE: Final = 9  # decimals of a metre to which positions count as equal when ties are broken
 
 
-def formation_extremes(response: AtStations, formations: Sequence[Formation], impact: Floats) -> tuple[Floats, Floats]:
+def formation_extremes(
+    response: AtStations, formations: Sequence[Formation], impact: Floats, held_impact: Floats | None = None
+) -> tuple[Floats, Floats]:
     """Return the highest and lowest value of each row under each formation (F, R), impact included.
 
     The vehicles of a formation stand abreast, each where it is worst: their extremes add.
@@ -31,29 +33,71 @@ def formation_extremes(response: AtStations, formations: Sequence[Formation], im
     ----------
     impact
         (F, R, 2) dynamic allowance on highest and lowest, for the trains that are dynamic.
+    held_impact
+        The same for trains that are held fixed; None where there are none.
     """
     counts = [len(formation) for formation in formations]
-    trains = [train for formation in formations for train in formation]
-    extremes = static_extremes(response, trains)
-    dynamic = np.array([train.dynamic for train in trains])[:, None]
-    of_train = impact if len(trains) == len(formations) else np.repeat(impact, counts, axis=0)
-    felt = [extreme * (1.0 + dynamic * of_train[:, :, side]) for side, extreme in enumerate(extremes)]
-    if len(trains) > len(formations):
+    felt = _felt(response, formations, impact, held_impact)
+    if sum(counts) > len(formations):
         starts = np.cumsum([0, *counts[:-1]])
         felt = [np.add.reduceat(one, starts, axis=0) for one in felt]
     return felt[0], felt[1]
 
 
-def governing_formation(response: AtStations, formations: Sequence[Formation], impact: Floats) -> Ints:
+def split_extremes(
+    response: AtStations, formations: Sequence[Formation], impact: Floats, held_impact: Floats
+) -> tuple[Floats, Floats]:
+    """Return what grows with a rating and what is held fixed, of each row under each formation (F, R, 2), magnitudes.
+
+    Parameters
+    ----------
+    impact, held_impact
+        (R, 2) dynamic allowance of either.
+    """
+    every = [np.broadcast_to(one, (len(formations), *one.shape)) for one in (impact, held_impact)]
+    highest, lowest = _felt(response, formations, every[0], every[1])
+    felt = np.stack((highest, -lowest), axis=2)
+    return split_up(formations, felt)
+
+
+def split_up(formations: Sequence[Formation], felt: Floats) -> tuple[Floats, Floats]:
+    """Return what each formation adds up to of what grows and of what is held fixed (F, ...), by train (T, ...)."""
+    of_train = np.repeat(np.arange(len(formations)), [len(formation) for formation in formations])
+    fixed = np.array([train.fixed for formation in formations for train in formation])
+    grows, stays = np.zeros((2, len(formations), *felt.shape[1:]))
+    np.add.at(grows, of_train[~fixed], felt[~fixed])
+    np.add.at(stays, of_train[fixed], felt[fixed])
+    return grows, stays
+
+
+def _felt(
+    response: AtStations, formations: Sequence[Formation], impact: Floats, held_impact: Floats | None
+) -> list[Floats]:
+    """Return each train's highest and lowest (T, R), impact included (see `formation_extremes`)."""
+    counts = [len(formation) for formation in formations]
+    trains = [train for formation in formations for train in formation]
+    extremes = static_extremes(response, trains)
+    dynamic = np.array([train.dynamic for train in trains])[:, None]
+    of_train = impact if len(trains) == len(formations) else np.repeat(impact, counts, axis=0)
+    if held_impact is not None:
+        fixed = np.array([train.fixed for train in trains])[:, None, None]
+        of_train = np.where(fixed, np.repeat(held_impact, counts, axis=0), of_train)
+    return [extreme * (1.0 + dynamic * of_train[:, :, side]) for side, extreme in enumerate(extremes)]
+
+
+def governing_formation(
+    response: AtStations, formations: Sequence[Formation], impact: Floats, held_impact: Floats | None = None
+) -> Ints:
     """Return which formation gives every row's highest and lowest (2, R); of equally bad ones the first.
 
     Parameters
     ----------
-    impact
+    impact, held_impact
         (R, 2), as in `formation_extremes`.
     """
-    every = np.broadcast_to(impact, (len(formations), *impact.shape))
-    highest, lowest = formation_extremes(response, formations, every)
+    many = len(formations)
+    of_held = None if held_impact is None else np.broadcast_to(held_impact, (many, *held_impact.shape))
+    highest, lowest = formation_extremes(response, formations, np.broadcast_to(impact, (many, *impact.shape)), of_held)
     adverse = np.stack((highest, -lowest))
     worst = adverse.max(axis=1)
     first: Ints = np.argmax(adverse >= (worst - _TIE * worst.max(axis=0))[:, None], axis=1)

@@ -9,8 +9,8 @@ from typing import TYPE_CHECKING, Final
 import numpy as np
 
 from movload.peaks.candidates import LOST
-from movload.peaks.governing import governing_formation, worst_candidates
-from movload.peaks.peaks import NO_PEAK, Peak
+from movload.peaks.governing import governing_formation, split_extremes, worst_candidates
+from movload.peaks.peaks import NO_PEAK, WORST, Peak
 from movload.peaks.placement import Placement, edge, joined, on_the_ends, panel_loads
 
 if TYPE_CHECKING:
@@ -37,6 +37,8 @@ class PartPeaks:
         (R,) with impact, both including 0.
     impact
         (R, 2) dynamic allowance on the highest and the lowest.
+    held_impact
+        The same for traffic that is held fixed; None where there is none.
     """
 
     response: AtStations
@@ -44,6 +46,7 @@ class PartPeaks:
     highest: Floats
     lowest: Floats
     impact: Floats
+    held_impact: Floats | None = None
 
     @property
     def effects(self) -> tuple[Effect, ...]:
@@ -53,18 +56,27 @@ class PartPeaks:
     @cached_property
     def _governing(self) -> Ints:
         """Formation of every row's highest and lowest (2, R)."""
-        return governing_formation(self.response, self.formations, self.impact)
+        return governing_formation(self.response, self.formations, self.impact, self.held_impact)
 
-    def formation(self, row: int, side: int) -> Formation:
-        """Return the formation that gives one row's highest (side 0) or lowest (side 1) peak."""
+    @cached_property
+    def split(self) -> tuple[Floats, Floats] | None:
+        """What grows with a rating and what is held fixed (F, R, 2), magnitudes; None where nothing is."""
+        if self.held_impact is None:
+            return None
+        return split_extremes(self.response, self.formations, self.impact, self.held_impact)
+
+    def formation(self, row: int, side: int, number: int = WORST) -> Formation:
+        """Return a formation by its number, or that of one row's highest (side 0) or lowest (side 1) peak."""
+        if number != WORST:
+            return self.formations[number]
         return self.formations[int(self._governing[side, row]) if len(self.formations) > 1 else 0]
 
-    def vehicle(self, row: int, side: int) -> Vehicle:
-        """Return the vehicle that gives it (abreast they are all alike)."""
-        return self.formation(row, side)[0].vehicle
+    def vehicle(self, row: int, side: int, number: int = WORST) -> Vehicle:
+        """Return the vehicle that is asked about there (abreast they are all alike)."""
+        return self.formation(row, side, number)[0].vehicle
 
-    def ordinates(self, row: int, side: int, stands: Placement) -> Floats:  # noqa: ARG002  # the line serves both sides
-        """Return the row's effect per unit load at each axle (A,)."""
+    def ordinates(self, row: int, side: int, stands: Placement, number: int = WORST) -> Floats:  # noqa: ARG002
+        """Return the row's effect per unit load at each axle (A,): the line serves both sides and all formations."""
         return self._line(row, stands.x)
 
     def _line(self, row: int, x: Floats) -> Floats:
@@ -73,12 +85,14 @@ class PartPeaks:
         ordinates: Floats = self.response.under(unit.T)[row]
         return ordinates
 
-    def peak(self, row: int, side: int) -> Peak:
-        """Return one row's highest (side 0) or lowest (side 1) peak."""
+    def peak(self, row: int, side: int, number: int = WORST) -> Peak:
+        """Return one row's highest (side 0) or lowest (side 1) peak, or the one under a formation by its number."""
         value = float((self.highest, self.lowest)[side][row])
+        if number != WORST and self.split is not None:
+            value = (1, -1)[side] * float(sum(one[number, row, side] for one in self.split))
         if value == 0.0:
             return NO_PEAK
-        abreast = [self._standing(train, row, side) for train in self.formation(row, side)]
+        abreast = [self._standing(train, row, side) for train in self.formation(row, side, number)]
         felt = [one for one in abreast if one.value != 0.0] or abreast[:1]
         return replace(felt[0], value=value, placement=joined([one.placement for one in felt]))
 
@@ -89,7 +103,8 @@ class PartPeaks:
         stations, count = self.response.stations, self.response.stations.size
         x = on_the_ends(stations, candidates.standing(run, run + 1)[stop])
         heading = int(candidates.runs.heading[run])
-        placement = standing_train(train, x, self.impact[row, side])
+        impact = self.held_impact if train.fixed and self.held_impact is not None else self.impact
+        placement = standing_train(train, x, impact[row, side])
         static = float(self._line(row, x) @ train.felt)
         if static * (1, -1)[side] <= 0.0:
             return NO_PEAK
@@ -111,7 +126,7 @@ def standing_train(train: Train, x: Floats, impact: float) -> Placement:
     axles = np.ones(x.size)
     return Placement(
         x, train.vehicle.loads, train.shares, (impact if train.dynamic else 0.0) * axles,
-        train.factor * axles, train.z * axles, np.zeros(x.size, dtype=np.intp),
+        train.factor * axles, train.z * axles, np.zeros(x.size, dtype=np.intp), np.full(x.size, train.fixed),
     )  # fmt: skip
 
 

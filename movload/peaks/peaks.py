@@ -62,6 +62,10 @@ class Peak:
 NO_PEAK: Final = Peak(0.0, float("nan"), 0, (), -1, -1, "", Placement.off())
 
 
+WORST: Final = -1
+"""In place of a formation's number: the formation that gives the greatest effect."""
+
+
 @dataclass(frozen=True, slots=True)
 class RowPeaks:
     """Highest and lowest peak of one row."""
@@ -89,15 +93,20 @@ class Swept(Protocol):
         """(R,) with impact, including 0."""
         ...
 
-    def peak(self, row: int, side: int) -> Peak:
-        """Return one row's highest (side 0) or lowest (side 1) peak."""
+    @property
+    def split(self) -> tuple[Floats, Floats] | None:
+        """What grows with a rating and what is held fixed by formation (F, R, 2); None where nothing is held fixed."""
         ...
 
-    def vehicle(self, row: int, side: int) -> Vehicle:
+    def peak(self, row: int, side: int, number: int = WORST) -> Peak:
+        """Return one row's highest (side 0) or lowest (side 1) peak, of all formations or of one by its number."""
+        ...
+
+    def vehicle(self, row: int, side: int, number: int = WORST) -> Vehicle:
         """Return the vehicle that gives it; any of them where the row feels none."""
         ...
 
-    def ordinates(self, row: int, side: int, stands: Placement) -> Floats:
+    def ordinates(self, row: int, side: int, stands: Placement, number: int = WORST) -> Floats:
         """Return a peak's effect per unit load at each axle (A,) of its placement: with the loads they add up to it."""
         ...
 
@@ -132,15 +141,15 @@ class Peaks:
         """Return the peaks of row ``number``."""
         return RowPeaks(self.effects[number], self.peak(number, 0), self.peak(number, 1))
 
-    def peak(self, number: int, side: int) -> Peak:
-        """Return the highest (side 0) or lowest (side 1) peak of row ``number``."""
+    def peak(self, number: int, side: int, formation: int = WORST) -> Peak:
+        """Return the highest (side 0) or lowest (side 1) peak of row ``number``, or the one under a formation."""
         part, inside = self.part_of(number)
-        return part.peak(inside, side)
+        return part.peak(inside, side, formation)
 
-    def vehicle(self, number: int, side: int) -> Vehicle:
+    def vehicle(self, number: int, side: int, formation: int = WORST) -> Vehicle:
         """Return the vehicle that gives the highest (side 0) or lowest (side 1) of row ``number``."""
         part, inside = self.part_of(number)
-        return part.vehicle(inside, side)
+        return part.vehicle(inside, side, formation)
 
     def part_of(self, number: int) -> tuple[Swept, int]:
         """Return the part that row ``number`` belongs to, and its row there."""

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
-from movload.arrays import Floats, Ints, frozen_floats
+from movload.arrays import Bools, Floats, Ints, frozen_floats
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -35,6 +35,8 @@ class Placement:
         Where the middle of each axle's vehicle keeps across (A,) [m]; nan where a share was typed.
     vehicle
         (A,) number of the vehicle that each axle belongs to, counted from 0.
+    fixed
+        (A,) whether a rating holds the axle fixed: traffic beside the vehicle that is asked about.
     """
 
     x: Floats
@@ -44,6 +46,7 @@ class Placement:
     factor: Floats
     z: Floats
     vehicle: Ints
+    fixed: Bools
 
     def __post_init__(self) -> None:
         """Copy read-only."""
@@ -54,7 +57,8 @@ class Placement:
     def off(cls) -> Placement:
         """Return the empty placement: the vehicle is off the bridge."""
         nothing = np.zeros(0)
-        return cls(nothing, nothing, nothing, nothing, nothing, nothing, np.zeros(0, dtype=np.intp))
+        return cls(nothing, nothing, nothing, nothing, nothing, nothing, np.zeros(0, dtype=np.intp),
+                   np.zeros(0, dtype=np.bool_))  # fmt: skip
 
     @property
     def felt(self) -> Floats:
@@ -80,7 +84,8 @@ def joined(placements: Sequence[Placement]) -> Placement:
     ]
     vehicle = np.repeat(np.arange(len(placements)), [one.x.size for one in placements])
     x, load, share, impact, factor, z = columns
-    return Placement(x, load, share, impact, factor, z, vehicle)
+    fixed = np.concatenate([one.fixed for one in placements])
+    return Placement(x, load, share, impact, factor, z, vehicle, fixed)
 
 
 def edge(stations: Floats) -> float:

@@ -9,8 +9,9 @@ import numpy as np
 
 from movload.arrays import Floats, held
 from movload.peaks.extremes import unit_of
+from movload.peaks.governing import split_up
 from movload.peaks.part_peaks import standing_train
-from movload.peaks.peaks import NO_PEAK, Peak
+from movload.peaks.peaks import NO_PEAK, WORST, Peak
 from movload.peaks.placement import Placement, joined
 from movload.peaks.span_maxima import span_maxima, span_values
 
@@ -50,6 +51,8 @@ class SpanPeaks:
         (R, 2) dynamic allowance.
     by_formation
         (F, R) what each formation gives at most.
+    held_impact
+        Dynamic allowance of traffic that is held fixed; None where there is none.
     """
 
     response: SimpleSpans
@@ -58,26 +61,41 @@ class SpanPeaks:
     lowest: Floats
     impact: Floats
     by_formation: Floats
+    held_impact: Floats | None = None
 
     @property
     def effects(self) -> tuple[Effect, ...]:
         """The rows (R)."""
         return self.response.effects
 
-    def vehicle(self, row: int, side: int) -> Vehicle:
-        """Return the vehicle that gives a row's peak (abreast they are all alike)."""
-        return self._formation(row, side)[0].vehicle
+    @property
+    def split(self) -> tuple[Floats, Floats] | None:
+        """What grows with a rating and what is held fixed (F, R, 2); None where nothing is."""
+        if self.held_impact is None:
+            return None
+        lengths, of_span = np.unique(self.response.lengths, return_inverse=True)
+        felt = _felt(lengths, of_span, [train for formation in self.formations for train in formation])
+        felt *= 1.0 + _impact_of(self.formations, self.impact, self.held_impact)
+        return split_up(self.formations, np.stack((felt, np.zeros_like(felt)), axis=2))
 
-    def _formation(self, row: int, side: int) -> Formation:
-        """Return the formation that gives a row's highest; nothing is felt on the other side."""
+    def vehicle(self, row: int, side: int, number: int = WORST) -> Vehicle:
+        """Return the vehicle that is asked about there (abreast they are all alike)."""
+        return self._formation(row, side, number)[0].vehicle
+
+    def _formation(self, row: int, side: int, number: int = WORST) -> Formation:
+        """Return a formation by its number, or that of a row's highest; nothing is felt on the other side."""
+        if number != WORST:
+            return self.formations[number]
         return self.formations[int(self.by_formation[:, row].argmax()) if side == 0 else 0]
 
-    def peak(self, row: int, side: int) -> Peak:
-        """Return one row's highest (side 0) peak; the lowest is always 0."""
+    def peak(self, row: int, side: int, number: int = WORST) -> Peak:
+        """Return one row's highest (side 0) peak, of all formations or of one; the lowest is always 0."""
         value = float((self.highest, self.lowest)[side][row])
+        if number != WORST and side == 0:
+            value = float(self.by_formation[number, row])
         if value == 0.0:
             return NO_PEAK
-        felt = [train for train in self._formation(row, side) if train.felt.any()]
+        felt = [train for train in self._formation(row, side, number) if train.felt.any()]
         stands = [self._stands(train, row) for train in felt]
         first, span, where = felt[0], row // 2, stands[0]
         return Peak(
@@ -102,16 +120,17 @@ class SpanPeaks:
         """Return a train as it stands, the axle that governs exactly on its section."""
         distances = train.vehicle.distances
         along = one.section + one.heading * (distances[one.axle] - distances)
-        return standing_train(train, self.response.stations[row // 2] + along, self.impact[row, 0])
+        impact = self.held_impact if train.fixed and self.held_impact is not None else self.impact
+        return standing_train(train, self.response.stations[row // 2] + along, impact[row, 0])
 
-    def ordinates(self, row: int, side: int, stands: Placement) -> Floats:
+    def ordinates(self, row: int, side: int, stands: Placement, number: int = WORST) -> Floats:
         """Return the row's effect per unit load at each axle (A,), at the section where its own vehicle is worst.
 
         Vehicles abreast whose axles share unlike may be worst at different sections; their effects are added all the
         same, which is safe. Moment at s: x (L - s)/L left of it, s (L - x)/L right of it. Shear inside the left end:
         1 - x/L.
         """
-        felt = [train for train in self._formation(row, side) if train.felt.any()]
+        felt = [train for train in self._formation(row, side, number) if train.felt.any()]
         sections = np.array([self._stands(train, row).section for train in felt])[stands.vehicle]
         span = row // 2
         length = float(self.response.lengths[span])
@@ -130,25 +149,39 @@ _EDGE = 1e-12  # of the span: an axle no further outside an end stands on it
 
 
 def spans_peaks(
-    responses: Sequence[SimpleSpans], crossings: Sequence[tuple[Formation, ...]], impact: Floats
+    responses: Sequence[SimpleSpans],
+    crossings: Sequence[tuple[Formation, ...]],
+    impact: Floats,
+    held_impact: Sequence[Floats | None],
 ) -> list[SpanPeaks]:
     """Return the peaks of stringers that answer alike, each under one crossing's formations (see `swept_parts`)."""
     lengths, of_span = np.unique(responses[0].lengths, return_inverse=True)
     felt = _felt(lengths, of_span, [one for formations in crossings for formation in formations for one in formation])
     sizes = [len(formation) for formations in crossings for formation in formations]
-    of_formation = np.repeat(impact[:, :, 0], [len(formations) for formations in crossings], axis=0)
-    dynamic = np.array([formation[0].dynamic for formations in crossings for formation in formations])
+    felt *= 1.0 + np.concatenate([_impact_of(*one) for one in zip(crossings, impact, held_impact, strict=True)])
     by_formation = np.add.reduceat(felt, np.cumsum([0, *sizes[:-1]]), axis=0)
-    by_formation *= 1.0 + dynamic[:, None] * of_formation
     first = np.cumsum([0, *(len(formations) for formations in crossings)])
     highest = held(np.maximum.reduceat(by_formation, first[:-1], axis=0))
     lowest = held(np.zeros(highest.shape[1]))
     return [
-        SpanPeaks(response, formations, highest[number], lowest, impact[number], by_formation[start:end])
+        SpanPeaks(
+            response, formations, highest[number], lowest, impact[number], by_formation[start:end], held_impact[number]
+        )
         for number, (response, formations, start, end) in enumerate(
             zip(responses, crossings, first[:-1], first[1:], strict=True)
         )
     ]
+
+
+def _impact_of(formations: tuple[Formation, ...], impact: Floats, held_impact: Floats | None) -> Floats:
+    """Return every train's dynamic allowance on each row (T, R)."""
+    trains = [train for formation in formations for train in formation]
+    dynamic = np.array([train.dynamic for train in trains])[:, None]
+    if held_impact is None:
+        return dynamic * impact[:, 0]
+    fixed = np.array([train.fixed for train in trains])[:, None]
+    of_train: Floats = dynamic * np.where(fixed, held_impact[:, 0], impact[:, 0])
+    return of_train
 
 
 def _felt(lengths: Floats, of_span: Ints, trains: list[Train]) -> Floats:

@@ -53,7 +53,10 @@ def sweep(lines: AtStations, vehicle: Vehicle | Loading | Sequence[Vehicle | Loa
 
 
 def swept_parts(
-    responses: Sequence[Response], crossings: Sequence[tuple[Formation, ...]], impact: Floats
+    responses: Sequence[Response],
+    crossings: Sequence[tuple[Formation, ...]],
+    impact: Floats,
+    held_impact: Sequence[Floats | None] | None = None,
 ) -> list[Swept]:
     """Return the peaks of parts that answer alike, each under one crossing's formations, impact included.
 
@@ -65,19 +68,27 @@ def swept_parts(
         For each asking the formations that the part feels.
     impact
         (P, R, 2) dynamic allowance on highest and lowest of every row, for trains that are dynamic.
+    held_impact
+        The same (R, 2) for traffic that is held fixed; None for an asking without.
     """
+    of_held = held_impact or [None] * len(responses)
     spans = [one for one in responses if isinstance(one, SimpleSpans)]
     if spans:
-        return [*spans_peaks(spans, crossings, impact)]
+        return [*spans_peaks(spans, crossings, impact, of_held)]
     planks = [one for one in responses if isinstance(one, PlankSpan)]
     if planks:
         return [*wheels_peaks(planks, crossings, impact)]
     lines = [cast("AtStations", one) for one in responses]
-    by_line = part_peaks(lines[0], crossings, impact)
+    by_line = part_peaks(lines[0], crossings, impact, of_held)
     return [replace(peaks, response=response) for peaks, response in zip(by_line, lines, strict=True)]
 
 
-def part_peaks(response: AtStations, crossings: Sequence[tuple[Formation, ...]], impact: Floats) -> list[PartPeaks]:
+def part_peaks(
+    response: AtStations,
+    crossings: Sequence[tuple[Formation, ...]],
+    impact: Floats,
+    held_impact: Sequence[Floats | None] = (),
+) -> list[PartPeaks]:
     """Return the peaks of one part under each crossing's formations, impact included.
 
     Parameters
@@ -86,17 +97,28 @@ def part_peaks(response: AtStations, crossings: Sequence[tuple[Formation, ...]],
         For each of C crossings the formations that the part feels; parts that share a response may be asked together.
     impact
         (C, R, 2) dynamic allowance on highest and lowest of every row, for trains that are dynamic.
+    held_impact
+        The same (R, 2) for traffic that is held fixed; None for a crossing without.
     """
     counts = [len(formations) for formations in crossings]
     several = max(counts, default=0) > 1
     flat = [formation for formations in crossings for formation in formations]
-    highest, lowest = formation_extremes(response, flat, np.repeat(impact, counts, axis=0) if several else impact)
+    of_held = [*held_impact] or [None] * len(crossings)
+    every = None
+    if any(one is not None for one in of_held):
+        both = [impact[row] if one is None else one for row, one in enumerate(of_held)]
+        every = np.repeat(np.array(both), counts, axis=0)
+    of_formation = np.repeat(impact, counts, axis=0) if several else impact
+    highest, lowest = formation_extremes(response, flat, of_formation, every)
     if several:  # the envelope over each crossing's formations
         starts = np.cumsum([0, *counts[:-1]])
         highest = np.maximum.reduceat(highest, starts, axis=0)
         lowest = np.minimum.reduceat(lowest, starts, axis=0)
     highest, lowest = held(highest), held(lowest)
-    return [PartPeaks(response, one, highest[row], lowest[row], impact[row]) for row, one in enumerate(crossings)]
+    return [
+        PartPeaks(response, one, highest[row], lowest[row], impact[row], of_held[row])
+        for row, one in enumerate(crossings)
+    ]
 
 
 def effects_with_front_at(lines: AtStations, vehicle: Vehicle, position: float, heading: int = 1) -> Floats:

@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from movload.arrays import Floats, held
-from movload.peaks.peaks import NO_PEAK, Peak
+from movload.peaks.peaks import NO_PEAK, WORST, Peak
 from movload.peaks.placement import Placement
 
 if TYPE_CHECKING:
@@ -48,11 +48,16 @@ class WheelPeaks:
         """The rows (2)."""
         return self.response.effects
 
-    def vehicle(self, row: int, side: int) -> Vehicle:  # noqa: ARG002  # one wheel gives every row
+    @property
+    def split(self) -> None:
+        """Nothing is held fixed: a plank bears one wheel, that of the vehicle that is asked about."""
+        return None
+
+    def vehicle(self, row: int, side: int, number: int = WORST) -> Vehicle:  # noqa: ARG002  # one wheel gives every row
         """Return the vehicle whose wheel it is."""
         return self.heaviest[0].vehicle
 
-    def peak(self, row: int, side: int) -> Peak:
+    def peak(self, row: int, side: int, number: int = WORST) -> Peak:  # noqa: ARG002  # one wheel gives every row
         """Return the peak with that wheel alone, standing at the first panel point."""
         value = float((self.highest, self.lowest)[side][row])
         if value == 0.0:
@@ -62,14 +67,14 @@ class WheelPeaks:
         placement = Placement(
             x, train.vehicle.loads[axle] * one, train.shares[axle] * wheel_part(train.vehicle)[axle] * one,
             (self.impact[row, side] if train.dynamic else 0.0) * one, train.factor * one, np.nan * one,
-            np.zeros(1, dtype=np.intp),
+            np.zeros(1, dtype=np.intp), np.zeros(1, dtype=np.bool_),
         )  # fmt: skip
         distances = train.vehicle.distances
         heading = train.headings[0]
         front = float(x[0] + heading * distances[axle])
         return Peak(value, front, heading, tuple(map(float, np.diff(distances))), axle, 0, train.case, placement)
 
-    def ordinates(self, row: int, side: int, stands: Placement) -> Floats:  # noqa: ARG002  # the same on either side
+    def ordinates(self, row: int, side: int, stands: Placement, number: int = WORST) -> Floats:  # noqa: ARG002  # as above
         """Return the row's effect per unit load at each axle (A,)."""
         return np.full(stands.x.shape, self.response.per_wheel[row])
 

@@ -194,6 +194,21 @@ class FactorSet:
         factors = self.presence_by_kind.get(kind, self.multiple_presence)
         return factors[min(count, len(factors)) - 1]
 
+    def beside_margin(self, level: Level, kind: str, traffic: float | None = None) -> float:
+        """Return the margin on ordinary traffic of a kind beside what a level rates.
+
+        The level's own where it rates that kind, else the greatest of the levels that do.
+
+        Raises
+        ------
+        InputError
+            No level rates that kind.
+        """
+        levels = [level] if level.rates(kind) else [one for one in self.levels if one.rates(kind)]
+        if not levels:
+            raise InputError(f'no level rates a loading of kind "{kind}"', place=f'factor set "{self.title}"')
+        return max(one.live_margin(kind, traffic) for one in levels)
+
     def levels_for(self, kind: str) -> tuple[int, ...]:
         """Return the numbers of the levels that rate a kind of loading."""
         return tuple(number for number, level in enumerate(self.levels) if level.rates(kind))

@@ -2,19 +2,18 @@
 
 from __future__ import annotations
 
-import math
 import re
 from typing import TYPE_CHECKING
 
 import numpy as np
 
-from movload.arrays import Floats, held
+from movload.arrays import Floats, Ints, held
 from movload.errors import InputError, Note
-from movload.peaks.peaks import Peaks, Swept, stacked
+from movload.peaks.peaks import WORST, Peaks, Swept, stacked
 from movload.peaks.sweep import swept_parts
 from movload.rating.factor_sets import PERMITTED, FactorSet
 from movload.rating.kernel import SIGNS, pushed_by_permanent, rating_factors
-from movload.rating.ratings import Ratings
+from movload.rating.ratings import Ratings, known_traffic
 from movload.rating.solved import SolvedBridge, solve
 from movload.traffic.crossing import Crossing
 from movload.traffic.formations import formations_on
@@ -22,7 +21,7 @@ from movload.traffic.loading import Loading
 from movload.traffic.vehicle import Vehicle
 
 if TYPE_CHECKING:
-    from collections.abc import Sequence
+    from collections.abc import Iterator, Sequence
 
     from movload.bridge.bridge import Bridge
 
@@ -43,22 +42,25 @@ def judge(solved: SolvedBridge, crossings: Sequence[Crossing | Loading | Vehicle
     asked = tuple(_crossing(one) for one in crossings)
     if not asked:
         raise InputError("nothing crosses: at least one vehicle is needed", place="crossings")
-    for one in asked:
-        if not solved.method.levels_for(one.loading.kind):
-            raise InputError(
-                f'no level of "{solved.method.title}" rates a loading of kind "{one.loading.kind}"', place=one.title
-            )
+    for crossing in asked:
+        for one in (crossing.loading, *filter(None, [crossing.beside])):
+            if not solved.method.levels_for(one.kind):
+                raise InputError(
+                    f'no level of "{solved.method.title}" rates a loading of kind "{one.kind}"', place=one.title
+                )
     impact = np.stack([one.loading.dynamic * solved.impact.of(one.loading.kind, one.speed) for one in asked])
     peaks = _peaks(solved, asked, impact)
     live = SIGNS * np.stack([np.stack((one.highest, one.lowest), axis=1) for one in peaks])
+    factor, formation = _factors(solved, live, asked, peaks)
     return Ratings(
         solved,
         asked,
         tuple(level.title for level in solved.method.levels),
         peaks,
         held(impact),
-        _factors(solved, live, [one.loading.kind for one in asked]),
-        (*solved.notes, *_notes([one.loading for one in asked])),
+        factor,
+        (*solved.notes, *_notes([one.loading for one in asked] + [one.beside for one in asked if one.beside])),
+        formation=formation,
     )
 
 
@@ -79,7 +81,11 @@ def _peaks(solved: SolvedBridge, crossings: Sequence[Crossing], impact: Floats) 
 
     Parts that answer alike (two trusses, sections of floorbeams) are swept together.
     """
-    starts = np.cumsum([0, *(len(part.response.effects) for part in solved.parts)])
+    starts = _starts(solved)
+    of_held = [
+        None if one.beside is None else one.beside.dynamic * solved.impact.of(one.beside.kind, None)
+        for one in crossings
+    ]
     groups: dict[object, list[int]] = {}
     for number, part in enumerate(solved.parts):
         groups.setdefault(part.response.alike, []).append(number)
@@ -93,7 +99,10 @@ def _peaks(solved: SolvedBridge, crossings: Sequence[Crossing], impact: Floats) 
         of_rows = np.concatenate([impact[:, starts[number] : starts[number + 1]] for number in group])
         responses = [solved.parts[number].response for number in group for _ in crossings]
         keys = [(number, crossing) for number in group for crossing in range(len(crossings))]
-        found |= zip(keys, swept_parts(responses, formations, of_rows), strict=True)
+        beside = [
+            None if one is None else one[starts[number] : starts[number + 1]] for number in group for one in of_held
+        ]
+        found |= zip(keys, swept_parts(responses, formations, of_rows, beside), strict=True)
     effects = solved.effects
     return tuple(
         stacked(one.title, [found[number, crossing] for number in range(len(solved.parts))], effects)
@@ -107,22 +116,54 @@ def _presence(solved: SolvedBridge, crossing: Crossing) -> tuple[float, ...]:
     return method.presence_by_kind.get(crossing.loading.kind, method.multiple_presence)
 
 
-def _factors(solved: SolvedBridge, live: Floats, kinds: Sequence[str]) -> Floats:
-    """Return RF (S, C, R, 2) under live effects (C, R, 2) given as magnitudes, of loadings of these kinds (C).
+def _starts(solved: SolvedBridge) -> Ints:
+    """Return the number of each part's first row, and of all rows (P + 1,)."""
+    return np.cumsum([0, *(len(part.response.effects) for part in solved.parts)])
 
-    nan for levels that do not rate a kind.
+
+def _factors(
+    solved: SolvedBridge, live: Floats, crossings: Sequence[Crossing], peaks: Sequence[Peaks]
+) -> tuple[Floats, Ints | None]:
+    """Return RF (S, C, R, 2) under live effects (C, R, 2) given as magnitudes, and the formation that gives each.
+
+    nan for levels that do not rate a kind. The formation is WORST where nothing is held fixed: the greatest live effect
+    then gives the least RF. None where that is so everywhere.
     """
     if not np.isfinite(live).all():
         raise InputError("a live effect is not a finite number", place=solved.title)
-    traffic = None if solved.traffic is None or math.isinf(solved.traffic) else solved.traffic
-    factors = []
-    for level, strength in zip(solved.method.levels, solved.strength, strict=True):
+    traffic = known_traffic(solved.traffic)
+    kinds = [one.loading.kind for one in crossings]
+    factors = np.empty((len(solved.method.levels), *live.shape))
+    shared = any(one.beside is not None for one in crossings)
+    formation = np.full(factors.shape if shared else 0, WORST)
+    for number, (level, strength) in enumerate(zip(solved.method.levels, solved.strength, strict=True)):
         pushed = pushed_by_permanent(solved.permanent, level.permanent_margins(solved.classes))
         margins = np.array([level.live_margin(kind, traffic) for kind in kinds])
-        one = np.array(rating_factors(strength, pushed, margins[:, None, None] * live))
-        one[[not level.rates(kind) for kind in kinds]] = np.nan
-        factors.append(one)
-    return held(np.array(factors))
+        factors[number] = rating_factors(strength, pushed, margins[:, None, None] * live)
+        for crossing, one in enumerate(crossings):
+            if one.beside is not None:
+                both = margins[crossing], solved.method.beside_margin(level, one.beside.kind, traffic)
+                for rows, least, which in _beside(peaks[crossing], strength, pushed, both):
+                    factors[number, crossing, rows], formation[number, crossing, rows] = least, which
+        factors[number, [not level.rates(kind) for kind in kinds]] = np.nan
+    return held(factors), formation if shared else None
+
+
+def _beside(
+    peaks: Peaks, strength: Floats, pushed: Floats, margins: tuple[float, float]
+) -> Iterator[tuple[slice, Floats, Ints]]:
+    """Yield for each part with traffic held fixed its rows, their least RF (R, 2), and the formation that gives it."""
+    first = 0
+    for part in peaks.parts:
+        rows = slice(first, first + part.highest.size)
+        first = rows.stop
+        if part.split is None:
+            continue
+        grows, stays = part.split
+        factors = rating_factors(strength[rows], pushed[rows], margins[0] * grows, margins[1] * stays)
+        rated = np.where(np.isnan(factors), np.inf, factors)
+        which = np.asarray(rated.argmin(axis=0))
+        yield rows, np.take_along_axis(factors, which[None], axis=0)[0], which
 
 
 def _notes(loadings: Sequence[Loading]) -> list[Note]:

@@ -37,15 +37,17 @@ class Rating:
         D summed over classes [N], tension positive.
     live
         L with impact [N], tension positive.
+    held
+        Live effect of traffic beside it that is held fixed, with impact [N], tension positive.
     impact
         I [-].
     pushed
         What permanent load uses of R [N], the level's margins included; negative relieves.
-    live_factor
-        The level's margin on L [-].
+    live_factor, held_factor
+        The level's margins on L and on what is held fixed [-].
     margins
         The level itself.
-    peaks, row, side
+    peaks, row, side, formation
         Where the placement is found.
     """
 
@@ -61,18 +63,21 @@ class Rating:
     strength: float
     permanent: float
     live: float
+    held: float
     impact: float
     pushed: float
     live_factor: float
+    held_factor: float
     margins: Level
     peaks: Peaks
     row: int
     side: int
+    formation: int
 
     @cached_property
     def peak(self) -> Peak:
-        """The live peak with its placement."""
-        return self.peaks.peak(self.row, self.side)
+        """The live peak with its placement, traffic beside it included."""
+        return self.peaks.peak(self.row, self.side, self.formation)
 
     @cached_property
     def safe_weight(self) -> float:
@@ -82,7 +87,7 @@ class Rating:
     @property
     def gross(self) -> float:
         """Weight of the vehicle that governs [N]."""
-        return self.peaks.vehicle(self.row, self.side).gross
+        return self.peaks.vehicle(self.row, self.side, self.formation).gross
 
     @property
     def abreast(self) -> int:

@@ -3,20 +3,21 @@
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from functools import cached_property
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
 from movload.errors import MissingDataError
+from movload.peaks.peaks import WORST
 from movload.rating.kernel import SIGNS, pushed_by_permanent
 from movload.rating.rating import DIGITS, Coverage, Rating, sense_of, worst_first
 from movload.rating.resistance import SENSES
 from movload.traffic.crossing import TYPED_SHARE
 
 if TYPE_CHECKING:
-    from movload.arrays import Bools, Floats
+    from movload.arrays import Bools, Floats, Ints
     from movload.errors import Note
     from movload.peaks.peaks import Peaks
     from movload.rating.solved import SolvedBridge
@@ -45,6 +46,9 @@ class Ratings:
         RF (S, C, R, 2).
     notes
         What a reader must know, the solved bridge's own included.
+    formation
+        (S, C, R, 2) which formation gives each rating where other traffic stands beside, else WORST; None where none
+        does anywhere.
     """
 
     solved: SolvedBridge
@@ -54,11 +58,15 @@ class Ratings:
     impact: Floats
     factor: Floats
     notes: tuple[Note, ...] = ()
+    formation: Ints | None = field(default=None, kw_only=True)
 
     def rating(self, crossing: int, row: int, side: int, *, level: int = 0) -> Rating:
         """Return one rating."""
         peaks, solved, loading = self.peaks[crossing], self.solved, self.crossings[crossing].loading
         margins = solved.method.levels[level]
+        beside = self.crossings[crossing].beside
+        formation = WORST if self.formation is None else int(self.formation[level, crossing, row, side])
+        live, stays = self._live(crossing, row, side, formation)
         return Rating(
             effect=peaks.effects[row],
             part=self.said(peaks.effects[row]),
@@ -71,7 +79,9 @@ class Ratings:
             factor=float(self.factor[level, crossing, row, side]),
             strength=float(solved.strength[level, row, side]),
             permanent=float(solved.permanent[:, row].sum()),
-            live=float((peaks.highest, peaks.lowest)[side][row]),
+            live=live,
+            held=stays,
+            held_factor=solved.method.beside_margin(margins, beside.kind, self._traffic) if beside else 1.0,
             impact=float(self.impact[crossing, row, side]),
             pushed=float(self._pushed[level][row, side]),
             live_factor=margins.live_margin(loading.kind, self._traffic),
@@ -79,7 +89,17 @@ class Ratings:
             peaks=peaks,
             row=row,
             side=side,
+            formation=formation,
         )
+
+    def _live(self, crossing: int, row: int, side: int, formation: int) -> tuple[float, float]:
+        """Return the live effect that grows with a rating and the one that is held fixed, tension positive [N]."""
+        peaks = self.peaks[crossing]
+        if formation == WORST:
+            return float((peaks.highest, peaks.lowest)[side][row]), 0.0
+        part, inside = peaks.part_of(row)
+        grows, stays = (float(SIGNS[side] * one[formation, inside, side]) for one in part.split or ())
+        return grows, stays
 
     @cached_property
     def _pushed(self) -> tuple[Floats, ...]:
@@ -93,8 +113,7 @@ class Ratings:
     @property
     def _traffic(self) -> float | None:
         """Trucks a day, None where unknown."""
-        traffic = self.solved.traffic
-        return None if traffic is None or math.isinf(traffic) else traffic
+        return known_traffic(self.solved.traffic)
 
     def said(self, effect: Effect) -> str:
         """Return a row's part as a person says it."""
@@ -102,12 +121,17 @@ class Ratings:
 
     @cached_property
     def alike(self) -> bool:
-        """Whether both trusses carry the same in every crossing, so that one stands for both."""
+        """Whether both trusses carry the same in every crossing and may carry the same: one then stands for both."""
         sides = [[row for row, effect in enumerate(self.solved.effects) if effect.part == part] for part in _TRUSSES]
         left, right = (np.array(rows, dtype=np.intp) for rows in sides)
         if not left.size:
             return False
         values = [self.solved.permanent, np.array([(one.highest, one.lowest) for one in self.peaks])]
+        if not all(
+            np.allclose(one[..., left, :], one[..., right, :], rtol=_SAME, equal_nan=True)
+            for one in (self.solved.strength, self.factor)
+        ):
+            return False
         return all(
             np.allclose(one[..., left], one[..., right], rtol=_SAME, atol=_SAME * np.abs(one).max(initial=0.0))
             for one in values
@@ -222,3 +246,8 @@ class Ratings:
         """Whether every unrounded rating is 1 or more, every member rated in what it feels, and no bearing lifted."""
         rated = self.factor[~np.isnan(self.factor)]
         return bool((rated >= 1.0).all()) and self.coverage.complete and not self.uplifts
+
+
+def known_traffic(traffic: float | None) -> float | None:
+    """Return trucks a day, None where they are unknown."""
+    return None if traffic is None or math.isinf(traffic) else traffic

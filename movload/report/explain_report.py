@@ -95,6 +95,7 @@ def sum_table(
     factored = any(term.factor != 1.0 for term in terms)
     placed = any(not math.isnan(term.z) for term in terms)
     abreast = any(term.vehicle > 1 for term in terms)
+    beside = any(term.held for term in terms)
     arm = units.factor("length") if quantity == "moment" else 1.0
     across = rating.effect.part.startswith("floorbeam")  # a floorbeam's arm is across the bridge, in the share
     scale, share_scale = (1.0, arm) if across else (arm, 1.0)
@@ -112,7 +113,7 @@ def sum_table(
         if placed:
             line.insert(2, number_text(term.z, "length", units, more=1, sign="+"))
         if abreast:
-            line.insert(0, str(term.vehicle))
+            line.insert(0, f"{term.vehicle}{', held' if term.held else ''}")
         lines.append(line)
     of_arm = f" [{length}]" if quantity == "moment" else ""
     heads = ["axle", f"x [{length}]", f"load [{force}]", f"x share{of_arm if across else ''}", "x (1 + I)"]
@@ -123,7 +124,9 @@ def sum_table(
         heads.insert(2, f"z [{length}]")
     if abreast:
         heads.insert(0, "vehicle")
-    lines.append([""] * (len(heads) - 2) + ["sum", number_text(rating.live, quantity, units, more=1, sign="+")])
+    sums = [("sum", rating.live)] if not beside else [("sum", rating.live), ("sum held", rating.held)]
+    for said, value in sums:
+        lines.append([""] * (len(heads) - 2) + [said, number_text(value, quantity, units, more=1, sign="+")])
     peak = rating.peak
     where = ", ".join(filter(None, (standing_text(peak, stations), place_text(peak, units))))
     title = f"{governed_text(rating)} under {rating.crossing}: {where}"
@@ -131,7 +134,7 @@ def sum_table(
 
 
 def _equation(rating: Rating, units: UnitSystem, *, margin: float) -> str:
-    """Return RF = (R - a D) / (b L) with its numbers; what permanent load uses is negative where it relieves."""
+    """Return RF = (R - a D - f F) / (b L) with its numbers; what permanent load uses is negative where it relieves."""
     quantity = quantity_of(rating.effect)
     strength, live = (number_text(value, quantity, units, more=1) for value in (rating.strength, abs(rating.live)))
     pushed = rating.permanent if rating.side == 0 else -rating.permanent
@@ -139,7 +142,9 @@ def _equation(rating: Rating, units: UnitSystem, *, margin: float) -> str:
     permanent = number_text(rating.pushed, quantity, units, more=1, sign="+")
     below = f"live {live}" if margin == 1 else f"({margin:g} x live {live})"
     why = use_text(rating)
+    stays = number_text(abs(rating.held), quantity, units, more=1)
+    beside = f" - {rating.held_factor:g} x held {stays}" if rating.held else ""
     return (
-        f"RF = (strength {strength} - {factored}permanent ({permanent})) / {below} "
+        f"RF = (strength {strength} - {factored}permanent ({permanent}){beside}) / {below} "
         f"{units.symbol(quantity)} = {factor_text(rating.factor)}{f': {why}' if why else ''}"
     )

@@ -105,10 +105,12 @@ def weight_text(weight: float, units: UnitSystem) -> str:
 
 
 def use_text(rating: Rating) -> str:
-    """Return how much of the strength permanent load alone uses, in words; "" unless it uses all of it."""
+    """Return what uses all of the strength before the vehicle comes, in words; "" where something is left."""
     if rating.factor > 0:
         return ""
     use = rating.permanent_use
+    if rating.held and use < 1:
+        return "traffic beside it leaves no strength"
     if math.isinf(use):
         return "permanent load alone; no strength"
     return f"permanent load alone uses {rounded_down(use * 100, 0):.0f} %" if use > 0 else "no strength"
@@ -170,15 +172,15 @@ def _some(names: tuple[str, ...]) -> str:
 
 
 def way_text(crossing: Crossing, units: UnitSystem) -> str:
-    """Return where across a crossing keeps and how fast, in words."""
+    """Return where across a crossing keeps, how fast, and beside whom, in words."""
     place = crossing.place
     if place == "offset":
         place = f"z = {number_text(crossing.z, 'length', units, sign='+')} {units.symbol('length')}"
     elif place == "centre line":
         place += f" \u00b1 {number_text(crossing.wander, 'length', units)} {units.symbol('length')}"
-    if crossing.speed is None:
-        return place
-    return f"{place}, {number_text(crossing.speed, 'speed', units)} {units.symbol('speed')}"
+    if crossing.speed is not None:
+        place += f", {number_text(crossing.speed, 'speed', units)} {units.symbol('speed')}"
+    return place if crossing.beside is None else f"{place}, beside {crossing.beside.title}"
 
 
 def span_ratio_text(ratio: float) -> str:

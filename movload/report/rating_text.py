@@ -55,7 +55,7 @@ def rating_text(
             parts += _rows(ratings, number, every=every)
         if single and not explain:
             worst = ratings.governing(number)
-            found = terms(worst.peaks, worst.row, worst.side)
+            found = terms(worst.peaks, worst.row, worst.side, worst.formation)
             parts += [*sum_table(worst, found, stations, solved.units, margin=worst.live_factor), ""]
         del crossing
     for one in explain:
@@ -144,7 +144,14 @@ def _abreast_texts(ratings: Ratings) -> list[str]:
     counts = sorted({fitting(crossing, solved.roadway) for crossing in ratings.crossings})
     most = " or ".join(str(count) for count in counts)
     alike = "both trusses carry the same and are shown as one" if ratings.alike else "both trusses are shown"
-    return [f"Up to {most} vehicle(s) side by side, one behind the other never; {alike}."]
+    beside = {crossing.beside.title for crossing in ratings.crossings if crossing.beside}
+    texts = [f"Up to {most} vehicle(s) side by side, one behind the other never; {alike}."]
+    if beside:
+        texts.append(
+            f"Beside it may stand {', '.join(sorted(beside))}, at full impact and its own margin, held fixed: RF and "
+            "safe weight are those of the vehicle asked about alone, with and without it."
+        )
+    return texts
 
 
 def _sign_texts(ratings: Ratings) -> list[str]:

@@ -81,12 +81,17 @@ COLUMNS: Final[list[Column[Rating]]] = [
     Column("abreast", "", lambda row: row.abreast),
     Column("place", "", lambda row: row.place),
     Column("speed", "", lambda row: row.speed, "speed"),
+    Column(
+        "held", "held", lambda row: row.held, lambda row: quantity_of(row.effect), right=True,
+        text=lambda row, units: effect_text(row.effect, row.held, units),
+    ),
 ]  # fmt: skip
-_IN_TABLE: Final = ("part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "position")
+_IN_TABLE: Final = ("part", "row", "sense", "factor", "strength", "permanent", "live", "held", "impact", "position")
 _JSON_ONLY: Final[list[Column[Rating]]] = [
     Column("permanent_use", "", lambda row: row.permanent_use),
     Column("permanent_used", "", lambda row: row.pushed),
     Column("live_factor", "", lambda row: row.live_factor),
+    Column("held_factor", "", lambda row: row.held_factor),
     Column("stands_for", "", lambda row: row.part),
     Column("placement", "", lambda row: placement_json(row.peak.placement)),
 ]
@@ -106,7 +111,7 @@ def summary(ratings: Ratings, levels: Sequence[int]) -> RenderableType:
     heads = ["crossing", "weighs", "keeps", "abreast", "level", "RF", "answer", "governed by", "safe weight",
              "worst with"]  # fmt: skip
     right = {"weighs", "abreast", "RF"}
-    placed = any(crossing.place != ANYWHERE or crossing.speed for crossing in ratings.crossings)
+    placed = any(one.place != ANYWHERE or one.speed or one.beside for one in ratings.crossings)
     shown = {"keeps": placed, "abreast": any(line[3] != "1" for line in lines), "level": len(ratings.levels) > 1}
     kept = [number for number, head in enumerate(heads) if shown.get(head, True)]
     return grid(
@@ -144,7 +149,9 @@ def detail(rows: Sequence[Rating], units: UnitSystem) -> RenderableType:
     """Return rated rows, the worst first."""
     several = len({row.part for row in rows}) > 1
     impacts = len({row.impact for row in rows}) > 1
-    names = [name for name in _IN_TABLE if (name != "part" or several) and (name != "impact" or impacts)]
+    beside = any(row.held for row in rows)
+    shown = {"part": several, "impact": impacts, "held": beside}
+    names = [name for name in _IN_TABLE if shown.get(name, True)]
     if len({row.level for row in rows}) > 1:
         names.insert(0, "level")
     by_name = {column.name: column for column in COLUMNS}
@@ -169,7 +176,8 @@ def explanation_json(one: Explanation) -> dict[str, object]:
             for term in one.permanent
         ],
         "terms": [asdict(term) for term in one.terms],
-        "spare": one.spare, "live": one.live, "live_factor": one.live_margin, "factor": rating.factor,
+        "spare": one.spare, "live": one.live, "live_factor": one.live_margin, "held": one.held,
+        "held_factor": one.held_margin, "factor": rating.factor,
     }  # fmt: skip
 
 
@@ -190,6 +198,7 @@ def ratings_json(ratings: Ratings, rows: Sequence[Rating], explanations: Sequenc
                     "source": crossing.loading.source,
                     "z": crossing.z if crossing.place == "offset" else None, "speed": crossing.speed,
                     "most_abreast": fitting(crossing, ratings.solved.roadway),
+                    "beside": crossing.beside.title if crossing.beside else None,
                 }
                 for crossing in ratings.crossings
             ],

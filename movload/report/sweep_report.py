@@ -115,4 +115,5 @@ def placement_json(placement: Placement) -> dict[str, object] | None:
     return {
         "x": placement.x, "load": placement.load, "share": placement.share, "impact": placement.impact,
         "factor": placement.factor, "z": placement.z, "vehicle": placement.vehicle + 1,
+        "held": placement.fixed,
     }  # fmt: skip

@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+import math
+from dataclasses import dataclass, field
 
 
 @dataclass(frozen=True, slots=True)
@@ -28,7 +29,21 @@ class Step:
 
 @dataclass(frozen=True, slots=True)
 class Strength:
-    """What a part may carry in one sense: a magnitude [N, N m] and its steps."""
+    """What a part may carry in one sense.
+
+    Attributes
+    ----------
+    value
+        A magnitude [N, N m].
+    steps
+        How it was found.
+    as_new
+        The same with no metal gone [N, N m]; nan where it was typed.
+    permanent
+        What permanent load alone may use of it [N, N m]; infinite but for timber, which carries less for a long time.
+    """
 
     value: float
     steps: tuple[Step, ...]
+    as_new: float = field(default=math.nan, kw_only=True)
+    permanent: float = field(default=math.inf, kw_only=True)

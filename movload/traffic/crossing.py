@@ -43,6 +43,8 @@ class Crossing:
         [m/s]; None when no limit is meant.
     wander
         How far it strays to either side where the place is "centre line" [m].
+    beside
+        Ordinary traffic that may stand beside it: a rating holds it fixed while the vehicle that is asked about grows.
     """
 
     loading: Loading
@@ -51,6 +53,7 @@ class Crossing:
     lanes: int = field(default=0, kw_only=True)
     speed: float | None = field(default=None, kw_only=True)
     wander: float = field(default=WANDER, kw_only=True)
+    beside: Loading | None = field(default=None, kw_only=True)
 
     def __post_init__(self) -> None:
         """Refuse places, speeds and counts that are no numbers."""
@@ -62,6 +65,10 @@ class Crossing:
             raise InputError(f"a speed must be above 0, got {self.speed} m/s", place=self.title)
         if not 0 <= self.lanes <= MOST_ABREAST:
             raise InputError(f"0 to {MOST_ABREAST} may go abreast, got {self.lanes}", place=self.title)
+        if self.beside is not None and self.lanes > 1:
+            raise InputError(
+                f"with {self.beside.title} beside it one of it crosses, got {self.lanes} abreast", place=self.title
+            )
 
     @property
     def title(self) -> str:
@@ -98,6 +105,8 @@ class Train:
         What the case and the number abreast multiply it by [-].
     even
         Whether all shares are known to be one number.
+    fixed
+        Whether a rating holds it fixed: traffic beside the vehicle that is asked about.
     """
 
     case: str
@@ -109,6 +118,7 @@ class Train:
     z: float = field(default=math.nan, kw_only=True)
     factor: float = field(default=1.0, kw_only=True)
     even: bool = field(default=False, kw_only=True)
+    fixed: bool = field(default=False, kw_only=True)
 
     @property
     def felt(self) -> Floats:

@@ -1,4 +1,7 @@
-"""The formations of a crossing on one part: vehicles abreast, in the few places across that may be worst for it."""
+"""The formations of a crossing on one part: vehicles abreast, in the few places across that may be worst for it.
+
+Traffic beside the vehicle that is asked about is in `movload.traffic.beside`.
+"""
 
 from __future__ import annotations
 
@@ -9,10 +12,11 @@ from typing import TYPE_CHECKING, TypeAlias
 import numpy as np
 
 from movload.arrays import Floats, Ints, held
-from movload.bridge.roadway import span_of_place
-from movload.errors import InputError, MissingDataError, MovloadError
+from movload.errors import InputError, MissingDataError
 from movload.traffic.abreast import candidate_places, shares_at, worst_groups
+from movload.traffic.beside import formations_beside, most_beside
 from movload.traffic.crossing import ANYWHERE, MOST_ABREAST, TYPED_SHARE, Train, axles_only, even_train
+from movload.traffic.rooms import gauges_of, headings_of, room_of
 
 if TYPE_CHECKING:
     from movload.bridge.across import Across
@@ -51,9 +55,10 @@ def formations_on(
     if roadway is None or across.z.size == 1:
         return _by_typed_share(across, crossing)
     dynamic = crossing.loading.dynamic
-    return tuple(
+    alone = tuple(
         formation for way in _ways(crossing, roadway, presence) for formation in _abreast(across, way, dynamic=dynamic)
     )
+    return alone if crossing.beside is None else (*alone, *formations_beside(across, crossing, roadway, presence))
 
 
 def fitting(crossing: Crossing, roadway: Roadway | None) -> int:
@@ -61,11 +66,11 @@ def fitting(crossing: Crossing, roadway: Roadway | None) -> int:
     if roadway is None:
         return 1
     counts = [
-        _counts(crossing, case, roadway, max(_gauges(case.moving)))
+        _counts(crossing, case, roadway, max(gauges_of(case.moving)))
         for case in crossing.loading.cases
         if case.moving is not None
     ]
-    return max((count.stop - 1 for count in counts), default=1)
+    return max((count.stop - 1 for count in counts), default=1) + most_beside(crossing, roadway)
 
 
 def _require_no_place(crossing: Crossing) -> None:
@@ -73,6 +78,8 @@ def _require_no_place(crossing: Crossing) -> None:
     asked = "" if crossing.lanes <= 1 else f"{crossing.lanes} abreast"
     if crossing.place not in {ANYWHERE, TYPED_SHARE} or crossing.z != 0.0:
         asked = f'"{crossing.place}" at {crossing.z:g} m'
+    if crossing.beside is not None:
+        asked = f"{crossing.beside.title} beside it"
     if asked:
         raise MissingDataError(
             f"{asked} cannot be rated from one typed share; type deck.truss_spacing and deck.kerbs instead",
@@ -114,12 +121,12 @@ def _ways(crossing: Crossing, roadway: Roadway, presence: tuple[float, ...]) -> 
     found: list[_Way] = []
     for case in crossing.loading.cases:
         vehicle = axles_only(case)
-        gauges = _gauges(vehicle)
+        gauges = gauges_of(vehicle)
         axles = tuple(zip(gauges, vehicle.left_shares or (0.5,) * len(gauges), strict=True))
         kinds = tuple(dict.fromkeys(axles))
         of_kind = np.array([kinds.index(axle) for axle in axles], dtype=np.intp)
-        for headings in _headings(vehicle, crossing):
-            room = _room(crossing, roadway, max(gauges), headings[0])
+        for headings in headings_of(vehicle, crossing):
+            room = room_of(crossing, roadway, max(gauges), headings[0])
             found += [
                 _Way(
                     case.title, vehicle, headings, kinds, of_kind, room, max(gauges) + roadway.between, count,
@@ -128,16 +135,6 @@ def _ways(crossing: Crossing, roadway: Roadway, presence: tuple[float, ...]) -> 
                 for count in _counts(crossing, case, roadway, max(gauges))
             ]  # fmt: skip
     return tuple(found)
-
-
-def _room(crossing: Crossing, roadway: Roadway, width: float, heading: int) -> tuple[float, float]:
-    """Return the range of the vehicle's middle [m]; errors name what crosses."""
-    try:
-        return span_of_place(
-            roadway, crossing.place, gauge=width, heading=heading, z=crossing.z, wander=crossing.wander
-        )
-    except MovloadError as error:
-        raise error.at(crossing.title) from None
 
 
 def _counts(crossing: Crossing, case: Case, roadway: Roadway, width: float) -> range:
@@ -195,25 +192,8 @@ def _groups(where: _Where, count: int) -> tuple[tuple[tuple[float, int, Floats],
     return tuple(tuple((float(z[place[one]]), int(heading[one]), shares[one]) for one in group) for group in groups)
 
 
-def _headings(vehicle: Vehicle, crossing: Crossing) -> tuple[tuple[int, ...], ...]:
-    """Return the vehicle's headings, apart where its room depends on them."""
-    if crossing.place == "own lane":
-        return tuple((heading,) for heading in vehicle.headings)
-    return (vehicle.headings,)
-
-
 def _most(crossing: Crossing, roadway: Roadway, width: float) -> int:
     """Return how many of a vehicle stand abreast at most."""
-    if crossing.place != ANYWHERE:
+    if crossing.place != ANYWHERE or crossing.beside is not None:
         return 1
     return min(roadway.abreast(width), MOST_ABREAST)
-
-
-def _gauges(vehicle: Vehicle) -> tuple[float, ...]:
-    """Return every axle's gauge [m], which a place across needs."""
-    if not vehicle.gauges:
-        raise MissingDataError(
-            "is needed to place it across the deck: type gauge (between wheel centres) on every axle of its file",
-            place=f"{vehicle.title}: axles[0].gauge",
-        )
-    return vehicle.gauges

@@ -19,22 +19,22 @@ FIELDS = [
     "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "deflections", "uplifts",
     "cautions", "sources", "rows", "explanations",
 ]  # fmt: skip
-CROSSING = ["title", "kind", "weight", "place", "source", "z", "speed", "most_abreast"]
+CROSSING = ["title", "kind", "weight", "place", "source", "z", "speed", "most_abreast", "beside"]
 DEFLECTION = ["part", "point", "crossing", "crossing_number", "down", "ratio", "limit"]
 COVERAGE = ["full", "partly", "none", "not_rated"]
 NOTE = ["code", "subject", "text", "source"]
 ROW = [
     "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "safe_weight",
     "position", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place", "speed",
-    "permanent_use", "permanent_used",
-    "live_factor", "stands_for", "placement",
+    "held", "permanent_use", "permanent_used",
+    "live_factor", "held_factor", "stands_for", "placement",
 ]  # fmt: skip
 HEADS = [
     "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact",
     "safe_weight [kN]", "position [m]", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place",
-    "speed [km/h]", "unit",
+    "speed [km/h]", "held", "unit",
 ]  # fmt: skip
-IN_UNIT = ("strength", "permanent", "live")  # forces and moments share these columns; the last one says their unit
+IN_UNIT = ("strength", "permanent", "live", "held")  # forces and moments share these columns; the last says which
 GRAVITY = 9.80665  # m/s2, standard (NIST SP 811, B.8, from memory)
 
 

@@ -110,6 +110,42 @@ def test_how_many_abreast(asked: list[Any]) -> None:
     assert {row["abreast"] for row in lone} == {0, 1}
 
 
+def test_traffic_beside_it_is_held_fixed(asked: list[Any]) -> None:
+    """Cart at the left kerb, its like 3.1 m beside it: the hanger's RF is (R - D - held)/live, each by its own share.
+
+    Impact 0.3 on both.
+    """
+    alone, both = (
+        movload(*asked, "--at", "left kerb", *more, "--json").json() for more in ([], ["--beside", asked[2]])
+    )
+    (crossing,) = both["crossings"]
+    assert (crossing["beside"], crossing["most_abreast"]) == ("Alder hay cart", 2)
+    one, row = (row_in(read, "left truss", "U1-L1", "tension") for read in (alone, both))
+    assert_allclose((row["live"], row["held"]), (1.3 * FORTH * share(ROOM), 1.3 * FORTH * share(ROOM - 3.1)), rtol=HAND)
+    assert (one["held"], one["held_factor"], one["live"]) == (0.0, 1.0, row["live"])
+    assert_allclose(row["factor"], (row["strength"] - row["permanent"] - row["held"]) / row["live"], rtol=HAND)
+    axles = len(one["placement"]["x"])
+    assert row["placement"]["held"] == [False] * axles + [True] * axles
+    RatingsDocument.model_validate(both)
+    told = movload(*asked, "--at", "left kerb", "--beside", asked[2], "--explain", "left truss U1-L1").out
+    assert "2, held" in told
+    assert re.search(r"RF = \(strength [\d.]+ - permanent \(\+[\d.]+\) - 1 x held [\d.]+\) / live", told)
+    assert "Beside it may stand Alder hay cart" in told
+
+
+@pytest.mark.parametrize(
+    ("more", "said"),
+    [
+        (["--beside", "nobody"], '"nobody" is not in the library'),
+        (["--beside", "h20", "--abreast", "2"], "--beside: with other traffic beside it one vehicle crosses"),
+    ],
+)
+def test_what_may_not_be_asked_beside(asked: list[Any], more: list[str], said: str) -> None:
+    ended = movload(*asked, *more)
+    assert ended.code == 1
+    assert said in ended.err
+
+
 def test_multiple_presence_is_the_methods(asked: list[Any]) -> None:
     """LRFR: 1.20 on one and 1.00 on two (from memory); two with 1.03 of an axle beat 1.20 x 0.76 of one."""
     read = movload(*asked, "--method", "lrfr", "--abreast", "1", "--json").json()

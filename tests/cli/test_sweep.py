@@ -19,7 +19,7 @@ ROW = [
     "lowest", "lowest_position", "lowest_heading", "lowest_axle", "lowest_station_name",
     "highest_placement", "lowest_placement",
 ]  # fmt: skip
-PLACEMENT = ["x", "load", "share", "impact", "factor", "z", "vehicle"]
+PLACEMENT = ["x", "load", "share", "impact", "factor", "z", "vehicle", "held"]
 HEADS = [
     "vehicle", "part", "row", "kind", "unit",
     "highest", "highest_position [m]", "highest_heading", "highest_axle", "highest_station_name",

@@ -243,7 +243,7 @@ def test_the_document_holds_every_line_of_it() -> None:
     one, other = read["explanations"]
     assert list(one) == [
         "crossing_number", "level", "part", "row", "sense", "strength", "permanent", "terms", "spare", "live",
-        "live_factor", "factor",
+        "live_factor", "held", "held_factor", "factor",
     ]  # fmt: skip
     assert [one[key] for key in ("crossing_number", "level", "part", "row", "sense")] == [
         0, "legal", "left truss", "L1-L2", "tension",
@@ -251,7 +251,7 @@ def test_the_document_holds_every_line_of_it() -> None:
     assert [list(step) for step in one["strength"]] == [["symbol", "equation", "value", "unit", "source"]] * 6
     assert list(one["permanent"][0]) == ["title", "effect", "margin", "used"]
     assert list(one["terms"][0]) == [
-        "vehicle", "axle", "x", "z", "load", "factor", "share", "impact", "ordinate", "effect",
+        "vehicle", "axle", "x", "z", "load", "factor", "share", "impact", "ordinate", "effect", "held",
     ]  # fmt: skip
     assert (other["part"], other["row"], other["sense"]) == ("floorbeam L2", "moment at S2", "moment")
     for said, nominal in ((one, 500e3 * 0.95), (other, 300e3 * 0.9)):

@@ -92,11 +92,12 @@ def test_json_is_the_published_document() -> None:
     assert list(read["rows"][0]) == [
         "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "safe_weight",
         "position", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place", "speed",
-        "permanent_use",
-        "permanent_used", "live_factor", "stands_for", "placement",
+        "held", "permanent_use", "permanent_used", "live_factor", "held_factor", "stands_for", "placement",
     ]  # fmt: skip
-    assert list(read["rows"][0]["placement"]) == ["x", "load", "share", "impact", "factor", "z", "vehicle"]
-    assert list(read["crossings"][0]) == ["title", "kind", "weight", "place", "source", "z", "speed", "most_abreast"]
+    assert list(read["rows"][0]["placement"]) == ["x", "load", "share", "impact", "factor", "z", "vehicle", "held"]
+    assert list(read["crossings"][0]) == [
+        "title", "kind", "weight", "place", "source", "z", "speed", "most_abreast", "beside",
+    ]  # fmt: skip
     assert list(read["deflections"][0]) == ["part", "point", "crossing", "crossing_number", "down", "ratio", "limit"]
     assert read["units"] == {"force": "N", "length": "m", "moment": "N m", "speed": "m/s"}
     assert read["sources"] == ["brook.toml"]
@@ -416,7 +417,7 @@ def test_every_crossing_is_in_the_document() -> None:
     assert [one["title"] for one in read["crossings"]] == ["cart", "lorry"]
     assert read["crossings"][1] == {
         "title": "lorry", "kind": "farm", "weight": 90e3, "place": "typed share", "source": "invented",
-        "z": None, "speed": None, "most_abreast": 1,
+        "z": None, "speed": None, "most_abreast": 1, "beside": None,
     }  # fmt: skip
     assert {(one["crossing"], one["crossing_number"]) for one in read["rows"]} == {("cart", 0), ("lorry", 1)}
     assert [note["code"] for note in read["notes"]] == [

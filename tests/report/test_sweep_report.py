@@ -139,6 +139,6 @@ def test_table_and_csv_and_json_have_the_same_rows(peaks: list[Peaks]) -> None:
 def test_a_vehicle_off_the_bridge_has_no_placement() -> None:
     assert placement_json(Placement.off()) is None
     columns = [np.array([one]) for one in (4.0, 9e3, 0.5, 0.3, 1.2, 0.4)]
-    said = placement_json(Placement(*columns, np.zeros(1, dtype=np.intp)))
+    said = placement_json(Placement(*columns, np.zeros(1, dtype=np.intp), np.zeros(1, dtype=np.bool_)))
     assert said is not None
-    assert list(said) == ["x", "load", "share", "impact", "factor", "z", "vehicle"]
+    assert list(said) == ["x", "load", "share", "impact", "factor", "z", "vehicle", "held"]

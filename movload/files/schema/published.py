@@ -29,6 +29,7 @@ class PlacementDocument(Document):
         description="where its vehicle's middle keeps across [m]; null where a share is typed"
     )
     vehicle: list[int] = Field(description="which of the vehicles abreast it belongs to, counted from 1")
+    held: list[bool] = Field(description="whether a rating holds it fixed: traffic beside")
 
 
 class RatingDocument(Document):
@@ -60,6 +61,8 @@ class RatingDocument(Document):
     place: str = Field(description="where across the crossing keeps, by name")
     speed: float | None = Field(description="[m/s]; null where none is meant")
     live_factor: float = Field(description="margin on the live effect")
+    held: float = Field(description="live effect of traffic beside it that is held fixed, impact included [N, N m]")
+    held_factor: float = Field(description="margin on it")
     permanent_used: float = Field(description="what permanent load uses of the strength, margins included [N, N m]")
 
 
@@ -73,7 +76,8 @@ class CrossingDocument(Document):
     source: str
     z: float | None = Field(description="the offset asked for [m]; null where the place has a name")
     speed: float | None = Field(description="[m/s]; null where none is meant")
-    most_abreast: int = Field(description="how many of it stand side by side at most")
+    most_abreast: int = Field(description="how many stand side by side at most, traffic beside it included")
+    beside: str | None = Field(description="ordinary traffic that may stand beside it")
 
 
 class CoverageDocument(Document):
@@ -138,6 +142,7 @@ class TermDocument(Document):
     impact: float
     ordinate: float
     effect: float
+    held: bool
 
 
 class ExplanationDocument(Document):
@@ -151,9 +156,11 @@ class ExplanationDocument(Document):
     strength: list[StepDocument]
     permanent: list[PermanentTermDocument]
     terms: list[TermDocument]
-    spare: float = Field(description="strength less what permanent load uses [N, N m]")
+    spare: float = Field(description="strength less what permanent and held load use [N, N m]")
     live: float = Field(description="magnitude [N, N m]")
     live_factor: float
+    held: float = Field(description="magnitude of what is held fixed [N, N m]; spare is less its margin times it")
+    held_factor: float
     factor: float | None
 
 
