@@ -23,7 +23,7 @@ if TYPE_CHECKING:
 
 Quantity = Literal[
     "length", "section", "force", "line load", "pressure", "moment", "area", "stress", "density", "stiffness", "speed",
-    "fraction",
+    "fraction", "section modulus", "torsion", "warping",
 ]  # fmt: skip
 
 GRAVITY: Final = 9.80665  # m/s2, standard
@@ -51,6 +51,15 @@ _AREA: Final = {
     for length, metre in _LENGTH.items()
     if length in {"m", "cm", "mm", "ft", "in"}
     for square in ("2", "²")
+}
+_POWERS: Final = {
+    power: {
+        f"{length}{sign}": metre**power
+        for length, metre in _LENGTH.items()
+        if length in {"m", "cm", "mm", "ft", "in"}
+        for sign in (str(power), raised)
+    }
+    for power, raised in ((3, "³"), (4, "⁴"), (6, "⁶"))
 }
 _PER_AREA: Final = {f"{force}/{area}": newton / m2 for force, newton in _FORCE.items() for area, m2 in _AREA.items()}
 _MOMENT: Final = {
@@ -83,6 +92,9 @@ _TABLES: Final[Mapping[Quantity, Mapping[str, float]]] = MappingProxyType(
         "density": _DENSITY,
         "stiffness": _PER_LENGTH,
         "fraction": {"%": 0.01, "": 1.0},
+        "section modulus": _POWERS[3],
+        "torsion": _POWERS[4],
+        "warping": _POWERS[6],
     }
 )
 _AS_WORDS: Final[Mapping[Quantity, str]] = MappingProxyType(
@@ -92,6 +104,8 @@ _AS_WORDS: Final[Mapping[Quantity, str]] = MappingProxyType(
         "line load": "a load per length",
         "stiffness": "a force per length",
         "pressure": "a load per area",
+        "torsion": "a torsion constant",
+        "warping": "a warping constant",
     }
 )
 
@@ -204,6 +218,8 @@ def _example(quantity: Quantity) -> str:
         "line load": '"9 kN/m" or "0.64 klf"', "area": '"2400 mm2" or "3.75 in2"', "stress": '"200 GPa" or "29000 ksi"',
         "density": '"7850 kg/m3" or "490 pcf"', "stiffness": '"50 kN/mm" or "280 kip/in"', "fraction": '"30 %"',
         "pressure": '"1.2 kN/m2" or "25 psf"', "moment": '"85 kN m" or "62 kip ft"', "speed": '"8 km/h" or "5 mph"',
+        "section modulus": '"154000 mm3" or "9.4 in3"', "torsion": '"42000 mm4" or "0.1 in4"',
+        "warping": '"3.1e9 mm6" or "11.5 in6"',
     }  # fmt: skip
     return examples[quantity]
 
@@ -263,7 +279,8 @@ class UnitSystem:
             "stress": f"{self.force}/{self.section}2", "stiffness": f"{self.force}/{self.section}",
             "density": "lb/ft3" if self.is_us else "kg/m3", "fraction": "",
             "pressure": f"{self.force}/{self.length}2", "moment": f"{self.force} {self.length}",
-            "speed": "mph" if self.is_us else "km/h",
+            "speed": "mph" if self.is_us else "km/h", "section modulus": f"{self.section}3",
+            "torsion": f"{self.section}4", "warping": f"{self.section}6",
         }  # fmt: skip
         return symbols[quantity]
 
@@ -279,6 +296,7 @@ class UnitSystem:
             "area": section**2, "stress": force / section**2, "stiffness": force / section,
             "density": _DENSITY[self.symbol("density")], "fraction": 1.0,
             "pressure": force / length**2, "moment": force * length, "speed": _SPEED[self.symbol("speed")],
+            "section modulus": section**3, "torsion": section**4, "warping": section**6,
         }  # fmt: skip
         return factors[quantity]
 

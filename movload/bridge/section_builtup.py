@@ -39,6 +39,14 @@ def torsion_of(pieces: Sequence[Piece]) -> dict[str, float | str]:
     return known | {"x_0": x - whole.x, "y_0": y - whole.y, "warping": warping}
 
 
+def is_mirrored(pieces: Sequence[Piece], axis: str) -> bool:
+    """Whether a section mirrors itself in its axis "y" (left to right) or "x" (top to bottom) through the centroid."""
+    whole = combined(region.moments() for piece in pieces for region in piece.regions)
+    if axis == "y":
+        return _same(pieces, lambda point: (2 * whole.x - point[0], point[1]))
+    return _same(pieces, lambda point: (point[0], 2 * whole.y - point[1]))
+
+
 def _twist(pieces: Sequence[Piece]) -> tuple[float, float, float | str]:
     """Return shear centre and warping constant; the latter may be the reason why there is none."""
     if len(pieces) == 1:

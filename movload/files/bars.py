@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING
 from movload.bridge.strengths import FOOTINGS, TypedStrength
 from movload.bridge.truss import Member
 from movload.errors import InputError, MovloadError, UnknownNameError, nearest_name
+from movload.files.places import in_file
 from movload.files.toml import written_key
 
 if TYPE_CHECKING:
@@ -14,9 +15,12 @@ if TYPE_CHECKING:
 
     from movload.bridge.layout import LaidOut
     from movload.files.schema.bridge import BridgeFile, MemberGroup, PartTable
+    from movload.files.sections import Catalogue
 
 
-def members_of(table: BridgeFile, laid_out: LaidOut, joints: Mapping[str, tuple[float, float]]) -> dict[str, Member]:
+def members_of(
+    table: BridgeFile, laid_out: LaidOut, joints: Mapping[str, tuple[float, float]], catalogue: Catalogue
+) -> dict[str, Member]:
     """Return every member by name, the layout's first and in its order.
 
     Raises
@@ -26,7 +30,7 @@ def members_of(table: BridgeFile, laid_out: LaidOut, joints: Mapping[str, tuple[
     UnknownNameError
         A joint or a role that is not there.
     """
-    groups = _group_of_each(table, laid_out)
+    groups = groups_of(table, laid_out)
     roles = {f"{bar.start}-{bar.end}": bar.role for bar in laid_out.bars}
     members: dict[str, Member] = {}
     for name in (*roles, *(name for name in groups if name not in roles)):
@@ -36,11 +40,13 @@ def members_of(table: BridgeFile, laid_out: LaidOut, joints: Mapping[str, tuple[
                 place="members",
             )
         title, place = groups[name]
-        members[name] = _member(name, table.members[title], joints, place, roles.get(name, title))
+        ends = _ends(name, joints, place)
+        with in_file(place, table.members[title]):
+            members[name] = _member(ends, table.members[title], catalogue, roles.get(name, title))
     return members
 
 
-def strengths_of(table: BridgeFile, laid_out: LaidOut) -> dict[str, TypedStrength]:
+def strengths_of(table: BridgeFile, laid_out: LaidOut, catalogue: Catalogue) -> dict[str, TypedStrength]:
     """Return typed strengths by member; a group without any leaves its members unrated.
 
     Raises
@@ -48,13 +54,15 @@ def strengths_of(table: BridgeFile, laid_out: LaidOut) -> dict[str, TypedStrengt
     InputError
         A strength below 0, or given twice.
     """
-    of_group = {title: strength_of(group, f"members.{written_key(title)}") for title, group in table.members.items()}
-    groups = _group_of_each(table, laid_out)
+    of_group = {
+        title: strength_of(group, f"members.{written_key(title)}", catalogue) for title, group in table.members.items()
+    }
+    groups = groups_of(table, laid_out)
     return {name: of_group[title] for name, (title, _) in groups.items() if of_group[title].typed}
 
 
-def strength_of(table: MemberGroup | PartTable, place: str) -> TypedStrength:
-    """Return a group's or a floor part's typed strengths; ``place`` is its key."""
+def strength_of(table: MemberGroup | PartTable, place: str, catalogue: Catalogue) -> TypedStrength:
+    """Return a group's or a floor part's typed strengths; ``place`` is its key. A timber's material says timber."""
     said = [getattr(table, footing) for footing in FOOTINGS]
     try:
         return TypedStrength(
@@ -62,14 +70,14 @@ def strength_of(table: MemberGroup | PartTable, place: str) -> TypedStrength:
             condition=table.condition or "",
             measured=table.measured,
             system=table.system or "",
-            timber=table.timber,
+            timber=table.timber or catalogue.is_timber(table),
             place=place,
         )
     except MovloadError as error:
         raise error.at(place) from None
 
 
-def _group_of_each(table: BridgeFile, laid_out: LaidOut) -> dict[str, tuple[str, str]]:
+def groups_of(table: BridgeFile, laid_out: LaidOut) -> dict[str, tuple[str, str]]:
     """Return for each bar the title of its group and the place that says so; bars by name win over roles."""
     of_role: dict[str, tuple[str, str]] = {}
     by_name: dict[str, tuple[str, str]] = {}
@@ -84,7 +92,7 @@ def _group_of_each(table: BridgeFile, laid_out: LaidOut) -> dict[str, tuple[str,
             raise InputError("the list of bars is empty", place=f"{place}.bars")
         for number, bar in enumerate(group.bars):
             here = f"{place}.bars[{number}]"
-            start, end = _joints_of(bar, here)
+            start, end = joints_of(bar, here)
             name = names.setdefault(frozenset((start, end)), f"{start}-{end}")
             if name in by_name:
                 raise InputError(f'bar "{bar}" is given twice (also at {by_name[name][1]})', place=here)
@@ -111,7 +119,7 @@ def _bars_of_role(title: str, laid_out: LaidOut, place: str) -> Iterator[str]:
     return (f"{bar.start}-{bar.end}" for bar in laid_out.bars if bar.role == title)
 
 
-def _joints_of(bar: str, place: str) -> tuple[str, str]:
+def joints_of(bar: str, place: str) -> tuple[str, str]:
     """Return the two joints that a bar's name joins."""
     start, dash, end = (part.strip() for part in bar.partition("-"))
     if not (dash and start and end) or "-" in end:
@@ -119,13 +127,19 @@ def _joints_of(bar: str, place: str) -> tuple[str, str]:
     return start, end
 
 
-def _member(name: str, group: MemberGroup, joints: Mapping[str, tuple[float, float]], place: str, role: str) -> Member:
-    """Return one member of a group."""
-    start, end = _joints_of(name, place)
+def _ends(name: str, joints: Mapping[str, tuple[float, float]], place: str) -> tuple[str, str]:
+    """Return a bar's two joints, which must be there."""
+    start, end = joints_of(name, place)
     for joint in (start, end):
         if joint not in joints:
             raise UnknownNameError(f'joint "{joint}" is not defined', place=place, nearest=nearest_name(joint, joints))
-    try:
-        return Member(start, end, group.area, group.modulus, density=group.density, role=role)
-    except MovloadError as error:
-        raise error.at(place) from None
+    return start, end
+
+
+def _member(ends: tuple[str, str], group: MemberGroup, catalogue: Catalogue, role: str) -> Member:
+    """Return one member of a group, by area and modulus or by section and material."""
+    area, modulus, density = group.area or 0.0, group.modulus or 0.0, group.density
+    if group.section is not None and group.material is not None:
+        area = catalogue.areas[group.section]
+        modulus, density = catalogue.elastic(group.material)
+    return Member(*ends, area, modulus, density=density, role=role)

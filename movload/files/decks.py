@@ -10,11 +10,22 @@ from movload.bridge.permanent import Item, PermanentItems
 from movload.bridge.roadway import BETWEEN, Roadway
 from movload.errors import InputError, MissingDataError, MovloadError, UnknownNameError, nearest_name
 from movload.files.bars import strength_of
+from movload.files.makes import made_of_part
 from movload.files.toml import written_key
 
 if TYPE_CHECKING:
     from movload.bridge.deck import PanelPoint
-    from movload.files.schema.bridge import BridgeFile, DeckTable, FloorTable, ItemTable, PermanentTable
+    from movload.files.schema.bridge import (
+        BridgeFile,
+        DeckTable,
+        FloorbeamsTable,
+        FloorTable,
+        ItemTable,
+        PermanentTable,
+        PlanksTable,
+        StringersTable,
+    )
+    from movload.files.sections import Catalogue
 
 _WAITING = {"deck.truss_spacing", "deck.kerbs", "deck.clearance"}
 _WEIGHTS = ("line", "per_area", "thickness", "points")
@@ -54,28 +65,43 @@ def _roadway(deck: DeckTable) -> Roadway | None:
     return Roadway(right, left, clearance=deck.clearance, between=between, keeps=deck.keeps or "right")
 
 
-def floor_of(table: FloorTable) -> Floor:
+def floor_of(table: FloorTable, catalogue: Catalogue) -> Floor:
     """Return stringers, floorbeams and planks, as far as they were typed."""
-    stringers, beams, planks = table.stringers, table.floorbeams, table.planks
     return Floor(
-        None
-        if stringers is None
-        else Stringers(
-            tuple(stringers.z),
-            fraction=stringers.fraction,
-            weight=stringers.weight or 0.0,
-            strength=strength_of(stringers, "floor.stringers"),
-        ),
-        None
-        if beams is None
-        else Floorbeams(
-            beams.brackets or (0.0, 0.0),
-            weight=beams.weight or 0.0,
-            strength=strength_of(beams, "floor.floorbeams"),
-        ),
-        None
-        if planks is None
-        else Planks(planks.contact, planks.sharing, strength=strength_of(planks, "floor.planks")),
+        None if table.stringers is None else _stringers(table.stringers, "floor.stringers", catalogue),
+        None if table.floorbeams is None else _floorbeams(table.floorbeams, "floor.floorbeams", catalogue),
+        None if table.planks is None else _planks(table.planks, "floor.planks", catalogue),
+    )
+
+
+def _stringers(table: StringersTable, place: str, catalogue: Catalogue) -> Stringers:
+    """Return the stringers; those without a weight weigh what their section does."""
+    return Stringers(
+        tuple(table.z),
+        fraction=table.fraction,
+        weight=catalogue.weight(table) if table.weight is None else table.weight,
+        strength=strength_of(table, place, catalogue),
+        made=made_of_part(table, place, catalogue),
+    )
+
+
+def _floorbeams(table: FloorbeamsTable, place: str, catalogue: Catalogue) -> Floorbeams:
+    """Return the floorbeams; those without a weight weigh what their section does."""
+    return Floorbeams(
+        table.brackets or (0.0, 0.0),
+        weight=catalogue.weight(table) if table.weight is None else table.weight,
+        strength=strength_of(table, place, catalogue),
+        made=made_of_part(table, place, catalogue),
+    )
+
+
+def _planks(table: PlanksTable, place: str, catalogue: Catalogue) -> Planks:
+    """Return the planks."""
+    return Planks(
+        table.contact,
+        table.sharing,
+        strength=strength_of(table, place, catalogue),
+        made=made_of_part(table, place, catalogue),
     )
 
 

@@ -15,12 +15,14 @@ from movload.files.toml import parsed, read_text, written_key
 from movload.rating.factor_sets import PERMITTED, FactorSet, Level
 from movload.rating.impact import RULES, SURFACES
 from movload.statics.permanent import PERMANENT_CLASSES
+from movload.strength.parts import STANDARDS
 from movload.traffic.loading import KINDS
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
 
 _FOLDER: Final = Path(__file__).resolve().parent.parent / "data" / "factor_sets"
+FRACTURE: Final = "fracture"  # phi of a net section, which no sense of its own has
 _POSTING: Final = ("weight x RF", "legal curve", "none")
 _BY_SURFACE: Final = "by riding surface"
 
@@ -94,6 +96,7 @@ def _factor_set(table: FactorSetFile, name: str) -> FactorSet:
         table.edition,
         name=name,
         strengths=("reduced", "nominal"),
+        rules=table.rules or "",
         multiple_presence=tuple(table.multiple_presence),
         presence_by_kind={kind: tuple(factors) for kind, factors in table.presence_by_kind.items()},
         condition=dict(table.condition),
@@ -118,6 +121,7 @@ def _level(table: LevelTable) -> Level:
         kinds=tuple(table.kinds),
         by_traffic=tuple(table.live_by_traffic),
         resistance=dict(table.resistance),
+        timber=dict(table.timber),
         condition_factors=table.condition_factors,
         posting="" if table.posting == "none" else table.posting,
     )
@@ -128,6 +132,8 @@ def _check(table: FactorSetFile) -> None:
     _known(table.presence_by_kind, KINDS, "presence_by_kind")
     _known(table.impact_values, (*KINDS, *SURFACES), "impact_values")
     _known(table.crawl_kinds, KINDS, "crawl_kinds")
+    if table.rules is not None:
+        _known([table.rules], STANDARDS, "rules")
     if table.impact is not None:
         _known([table.impact], RULES[1:], "impact")
     if table.impact == _BY_SURFACE:
@@ -151,7 +157,8 @@ def _check_level(table: LevelTable, place: str) -> None:
     """Check a level's names, and that its live and permanent margins say one thing each."""
     _known(table.kinds, KINDS, f"{place}.kinds")
     _known(table.live_by_kind, table.kinds or KINDS, f"{place}.live_by_kind")
-    _known(table.resistance, SENSES, f"{place}.resistance")
+    _known(table.resistance, (*SENSES, FRACTURE), f"{place}.resistance")
+    _known(table.timber, SENSES, f"{place}.timber")
     _named(table.resistance, SENSES, f"{place}.resistance")
     _known([table.posting], _POSTING, f"{place}.posting")
     _known(table.permanent, PERMANENT_CLASSES, f"{place}.permanent")

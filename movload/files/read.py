@@ -15,9 +15,11 @@ from movload.bridge.truss import Support, Truss
 from movload.errors import InputError, MovloadError, UnknownNameError, nearest_name
 from movload.files.bars import members_of, strengths_of
 from movload.files.decks import deck_of, floor_of, permanent_of
+from movload.files.makes import made_of
 from movload.files.schema.bridge import BridgeFile, DeckTable, LayoutTable, SupportTable
 from movload.files.schema.checked import checked
 from movload.files.schema.vehicle import VehicleFile
+from movload.files.sections import catalogue_of, require_used
 from movload.files.toml import parsed, read_text, without_placeholders
 from movload.traffic.loading import Loading
 from movload.traffic.vehicle import Vehicle
@@ -56,18 +58,20 @@ def _bridge(table: BridgeFile, units: UnitSystem, missing: tuple[str, ...], sour
     laid_out = _laid_out(table.layout)
     joints = {**laid_out.joints, **table.joints}
     supports = [_support(joint, support) for joint, support in table.supports.items()]
-    members = members_of(table, laid_out, joints)
+    catalogue = catalogue_of(table, missing)
+    members = members_of(table, laid_out, joints, catalogue)
     truss = Truss(joints, list(members.values()), supports)
     deck = deck_of(table, _panel_points(table.deck, laid_out), missing)
     rating = table.rating
     with _placed(lambda place: _deck_place(place, deck, table.deck)):
-        return Bridge(
+        bridge = Bridge(
             table.title,
             truss,
             deck,
             permanent=permanent_of(table, deck, missing),
-            strengths=strengths_of(table, laid_out),
-            floor=floor_of(table.floor),
+            strengths=strengths_of(table, laid_out, catalogue),
+            made=made_of(table, laid_out, truss, catalogue),
+            floor=floor_of(table.floor, catalogue),
             impact=None if isinstance(rating.impact, str) else rating.impact,
             impact_rule=rating.impact if isinstance(rating.impact, str) else "",
             surface=rating.surface or "",
@@ -77,6 +81,8 @@ def _bridge(table: BridgeFile, units: UnitSystem, missing: tuple[str, ...], sour
             missing=missing,
             sources=(source,),
         )
+    require_used(table, missing)
+    return bridge
 
 
 @contextmanager

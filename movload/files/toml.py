@@ -19,6 +19,10 @@ _MAY_WAIT: Final = re.compile(
     r"(members\..+|floor\.\w+)\.(condition|system|(permits|nominal|reduced)(\.\w+)?)|members\..+\.density"
     r"|deck\.(truss_share|truss_spacing|kerbs|clearance|chord_bending)"
     r"|permanent|permanent\.(deck|truss_share|detail_allowance)|rating|rating\.(impact|surface|traffic)"
+    r"|members\..+\.(unbraced_[xyz]|k_[xyz]|curves|joined|bent|losses)"
+    r"|floor\.\w+\.(section|material|unbraced|c_b|stiffeners|lever|curves|losses)"
+    r"|materials\..+\.(fy|fu|density|source|product|durations|treated|(stresses|factors)(\.\w+){0,2})"
+    r"|sections\..+\.(r_(x|y|min)|net|[sz]_[xy]|shear_(lag|centre|offset)|sharing|torsion|warping|holes|punched)"
 )
 _DEEPEST: Final = 20  # tables within tables; a bridge file has four
 _LONGEST: Final = 60  # signs of a line or a value that an error shows

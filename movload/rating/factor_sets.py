@@ -41,7 +41,9 @@ class Level:
     by_traffic
         (trucks a day one way, live margin), increasing; straight between, level outside; it replaces ``live``.
     resistance
-        Factor phi on a nominal strength by sense [-], 1 where not named.
+        Factor phi on a nominal strength by sense [-], 1 where not named; "fracture" of a net section is for rules only.
+    timber
+        Factor on a timber's strength by the rules, by sense [-].
     condition_factors
         Whether condition and system factors apply: a strength limit state.
     posting
@@ -62,6 +64,7 @@ class Level:
     kinds: tuple[str, ...] = field(default=(), kw_only=True)
     by_traffic: tuple[tuple[float, float], ...] = field(default=(), kw_only=True)
     resistance: Mapping[str, float] = field(default_factory=dict, kw_only=True)
+    timber: Mapping[str, float] = field(default_factory=dict, kw_only=True)
     condition_factors: bool = field(default=False, kw_only=True)
     posting: str = field(default="weight x RF", kw_only=True)
 
@@ -72,7 +75,7 @@ class Level:
         _require_factors("permanent", (self.permanent, self.relieving, *both), place)
         live = (self.live, *self.by_kind.values(), *(margin for _, margin in self.by_traffic))
         _require_factors("live", live, place, above=True)
-        _require_factors("resistance", self.resistance.values(), place, above=True)
+        _require_factors("resistance", (*self.resistance.values(), *self.timber.values()), place, above=True)
         trucks = [number for number, _ in self.by_traffic]
         if min(trucks, default=0.0) < 0 or not all(one < other for one, other in pairwise([*trucks, math.inf])):
             raise InputError(f"trucks a day must be 0 or more and increase, got {trucks}", place=place)
@@ -128,6 +131,8 @@ class FactorSet:
         What it is asked for by: a shipped name, or the file it is in.
     strengths
         Footings of typed strengths it can use, the first found counts: "permitted", "reduced", "nominal".
+    rules
+        Name of the standard whose rules give strengths from sections and materials; "" where only typed ones count.
     multiple_presence, presence_by_kind
         By number abreast (one, two ..., the last repeats) [-], and where a kind of loading differs.
     condition, system
@@ -157,6 +162,7 @@ class FactorSet:
     source: str
     name: str = field(default="", kw_only=True)
     strengths: tuple[str, ...] = field(default=("permitted",), kw_only=True)
+    rules: str = field(default="", kw_only=True)
     multiple_presence: tuple[float, ...] = field(default=(1.0,), kw_only=True)
     presence_by_kind: Mapping[str, tuple[float, ...]] = field(default_factory=dict, kw_only=True)
     condition: Mapping[str, float] = field(default_factory=dict, kw_only=True)

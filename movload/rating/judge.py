@@ -136,23 +136,28 @@ def _factors(
     factors = np.empty((len(solved.method.levels), *live.shape))
     shared = any(one.beside is not None for one in crossings)
     formation = np.full(factors.shape if shared else 0, WORST)
+    alone = np.full_like(solved.strength, np.inf) if solved.alone is None else solved.alone
     for number, (level, strength) in enumerate(zip(solved.method.levels, solved.strength, strict=True)):
         pushed = pushed_by_permanent(solved.permanent, level.permanent_margins(solved.classes))
         margins = np.array([level.live_margin(kind, traffic) for kind in kinds])
-        factors[number] = rating_factors(strength, pushed, margins[:, None, None] * live)
+        factors[number] = rating_factors(strength, pushed, margins[:, None, None] * live, alone=alone[number])
         for crossing, one in enumerate(crossings):
             if one.beside is not None:
                 both = margins[crossing], solved.method.beside_margin(level, one.beside.kind, traffic)
-                for rows, least, which in _beside(peaks[crossing], strength, pushed, both):
+                limits = strength, pushed, alone[number]
+                for rows, least, which in _beside(peaks[crossing], limits, both):
                     factors[number, crossing, rows], formation[number, crossing, rows] = least, which
         factors[number, [not level.rates(kind) for kind in kinds]] = np.nan
     return held(factors), formation if shared else None
 
 
 def _beside(
-    peaks: Peaks, strength: Floats, pushed: Floats, margins: tuple[float, float]
+    peaks: Peaks, limits: tuple[Floats, Floats, Floats], margins: tuple[float, float]
 ) -> Iterator[tuple[slice, Floats, Ints]]:
-    """Yield for each part with traffic held fixed its rows, their least RF (R, 2), and the formation that gives it."""
+    """Yield for each part with traffic held fixed its rows, their least RF (R, 2), and the formation that gives it.
+
+    ``limits`` are strength, what permanent load uses of it, and what it alone may use, each (R, 2).
+    """
     first = 0
     for part in peaks.parts:
         rows = slice(first, first + part.highest.size)
@@ -160,7 +165,8 @@ def _beside(
         if part.split is None:
             continue
         grows, stays = part.split
-        factors = rating_factors(strength[rows], pushed[rows], margins[0] * grows, margins[1] * stays)
+        strength, pushed, alone = (one[rows] for one in limits)
+        factors = rating_factors(strength, pushed, margins[0] * grows, margins[1] * stays, alone=alone)
         rated = np.where(np.isnan(factors), np.inf, factors)
         which = np.asarray(rated.argmin(axis=0))
         yield rows, np.take_along_axis(factors, which[None], axis=0)[0], which

@@ -34,12 +34,14 @@ def pushed_by_permanent(permanent: Floats, margins: Floats) -> Floats:
     return used
 
 
-def rating_factors(strength: Floats, pushed: Floats, live: Floats, fixed: Floats | float = 0.0) -> Floats:
+def rating_factors(
+    strength: Floats, pushed: Floats, live: Floats, fixed: Floats | float = 0.0, *, alone: Floats | float = np.inf
+) -> Floats:  # fmt: skip
     """Return RF, shape of ``live``.
 
-    0 where permanent load alone uses all strength, even where the live effect is zero; infinite where there is
-    strength to spare and no live effect; nan where no strength is known. A sense that neither permanent nor live load
-    brings about needs no strength, so there a strength of 0 is enough.
+    0 where permanent load alone uses all strength or more than it alone may, even where the live effect is zero;
+    infinite where there is strength to spare and no live effect; nan where no strength is known. A sense that neither
+    permanent nor live load brings about needs no strength, so there a strength of 0 is enough.
 
     Parameters
     ----------
@@ -51,11 +53,14 @@ def rating_factors(strength: Floats, pushed: Floats, live: Floats, fixed: Floats
         b L (..., R, 2) [N], magnitudes with impact and margin; leading axes are crossings.
     fixed
         F (..., R, 2) [N], what live load that does not scale takes; it never relieves.
+    alone
+        (R, 2) [N], the most that permanent load alone may use: timber carries less for good than for a while.
     """
     spare = strength - pushed - np.maximum(fixed, 0.0)
     felt = live > 0
     factors = np.full(live.shape, np.inf)
     np.divide(spare, live, out=factors, where=felt)
     factors[(spare <= 0) & (felt | (pushed + np.maximum(fixed, 0.0) > 0))] = 0.0
+    factors[..., pushed > alone] = 0.0
     factors[..., np.isnan(spare)] = np.nan
     return held(factors)

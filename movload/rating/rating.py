@@ -31,8 +31,10 @@ class Rating:
         Where across it keeps, by name, and how fast [m/s].
     factor
         RF [-]; 0 when permanent load alone uses the strength, infinite when there is no live effect.
-    strength
-        R, magnitude [N].
+    strength, as_new
+        R, magnitude [N], and the same with no metal gone; nan where it was typed.
+    alone
+        The most of R that permanent load alone may use [N]; infinite but for timber.
     permanent
         D summed over classes [N], tension positive.
     live
@@ -61,6 +63,8 @@ class Rating:
     level: str
     factor: float
     strength: float
+    as_new: float
+    alone: float
     permanent: float
     live: float
     held: float

@@ -78,6 +78,8 @@ class Ratings:
             level=self.levels[level],
             factor=float(self.factor[level, crossing, row, side]),
             strength=float(solved.strength[level, row, side]),
+            as_new=solved.derived(level, row, side).as_new,
+            alone=solved.derived(level, row, side).permanent,
             permanent=float(solved.permanent[:, row].sum()),
             live=live,
             held=stays,

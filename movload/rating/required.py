@@ -77,9 +77,12 @@ def _of_members(bridge: Bridge, method: FactorSet) -> list[str]:
     floor = (bridge.floor.stringers, bridge.floor.floorbeams, bridge.floor.planks)
     strengths = [*bridge.strengths.values(), *(part.strength for part in floor if part is not None)]
     typed = any(one.on(footing) for one in strengths for footing in footings)
+    if method.rules and (bridge.made or any(part is not None and part.made is not None for part in floor)):
+        return needed
     if not typed and not any(f".{footing}" in place for place in asked for footing in footings):
         words = " or ".join(footings)
         needed.append(
             f'{words} of at least one member group for method "{method.title}": {{ tension = ..., compression = ... }}'
+            + (", or section and material" if method.rules else "")
         )
     return needed

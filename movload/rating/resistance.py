@@ -56,26 +56,39 @@ def _from_nominal(typed: TypedStrength, sense: str, method: FactorSet, level: Le
     """Return a nominal strength with the level's factors on it."""
     nominal, unit = typed.nominal[sense], _UNITS[sense]
     phi = level.resistance.get(sense, 1.0)
-    steps = [
+    both, said = reduction(typed, sense, method, level, subject)
+    value = both * phi * nominal
+    steps = (
         Step("Rn", f"nominal {sense}, as typed", nominal, unit, "bridge file"),
         Step("phi", f"resistance factor, {sense}", phi, "-", method.title),
-    ]
+        *said,
+        Step("C", "k phi Rn" if said else "phi Rn", value, unit, method.title),
+    )
+    return Strength(value, steps)
+
+
+def reduction(
+    typed: TypedStrength, sense: str, method: FactorSet, level: Level, subject: str
+) -> tuple[float, tuple[Step, ...]]:
+    """Return k = max(phi_c phi_s, 0.85), phi_s = 1 in shear, and its steps; 1 and none where the level has no such.
+
+    Raises
+    ------
+    MissingDataError, UnknownNameError
+        The level asks for a condition or a system that nobody has typed, or that the method does not know.
+    """
     if not level.condition_factors:
-        value = phi * nominal
-        return Strength(value, (*steps, Step("C", "phi Rn", value, unit, method.title)))
+        return 1.0, ()
     of_condition = _of_condition(typed, method, subject)
     of_system = 1.0 if sense == "shear" else _of_system(typed, method, subject)
     both = capacity_factor(of_condition, of_system)
-    value = both * phi * nominal
-    said = ", loss measured" if typed.measured else ""
+    measured = ", loss measured" if typed.measured else ""
     system = "1 in shear" if sense == "shear" else f'system "{typed.system}"'
-    steps += [
-        Step("phi_c", f'condition "{typed.condition}"{said}', of_condition, "-", method.title),
+    return both, (
+        Step("phi_c", f'condition "{typed.condition}"{measured}', of_condition, "-", method.title),
         Step("phi_s", system, of_system, "-", method.title),
         Step("k", "max(phi_c phi_s, 0.85)", both, "-", method.title),
-        Step("C", "k phi Rn", value, unit, method.title),
-    ]
-    return Strength(value, tuple(steps))
+    )
 
 
 def _of_condition(typed: TypedStrength, method: FactorSet, subject: str) -> float:

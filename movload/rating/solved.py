@@ -14,7 +14,8 @@ from movload.rating.factor_sets import PERMITTED, FactorSet
 from movload.rating.impact_table import ImpactTable, impact_table
 from movload.rating.notes import bridge_notes
 from movload.rating.required import require_data
-from movload.rating.resistance import SENSES, UNRATED, resistance
+from movload.rating.resistance import UNRATED
+from movload.rating.strengths import may_feel, strengths_of
 from movload.statics.floor import floor_parts, truss_lines
 from movload.statics.influence import lines_of
 from movload.statics.part import Effect, Part
@@ -22,13 +23,11 @@ from movload.statics.permanent import PERMANENT_CLASSES, permanent_effects
 from movload.statics.stiffness import factored
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping, Sequence
+    from collections.abc import Mapping
 
     from movload.bridge.bridge import Bridge
     from movload.bridge.roadway import Roadway
-    from movload.bridge.strengths import TypedStrength
     from movload.errors import Note
-    from movload.rating.factor_sets import Level
     from movload.strength.strength import Strength
     from movload.units import UnitSystem
 
@@ -61,6 +60,8 @@ class SolvedBridge:
         Units to show results in.
     roadway
         The kerbs; None where a share was typed.
+    alone
+        What permanent load alone may use of each strength (levels, R, 2), infinite but for timber; None as if so.
     strengths
         The distinct strengths with their steps.
     which
@@ -86,6 +87,7 @@ class SolvedBridge:
     impact: ImpactTable = field(kw_only=True)
     units: UnitSystem = field(kw_only=True)
     roadway: Roadway | None = field(default=None, kw_only=True)
+    alone: Floats | None = field(default=None, kw_only=True)
     strengths: tuple[Strength, ...] = field(default=(), kw_only=True)
     which: np.ndarray[tuple[int, ...], np.dtype[np.intp]] | None = field(default=None, kw_only=True)
     traffic: float | None = field(default=None, kw_only=True)
@@ -126,65 +128,28 @@ def solve(bridge: Bridge, method: FactorSet = PERMITTED) -> SolvedBridge:
     else:
         trusses = (Part("truss", lines, Across.typed(share or 0.0)),)
     parts = (*trusses, *floor_parts(bridge))
-    which, strengths = _strengths(bridge, parts, method)
+    stands = permanent_effects(bridge, solver, parts, permanent)
+    strengths = strengths_of(bridge, parts, method, may_feel(parts, stands))
     return SolvedBridge(
         bridge.title,
         parts,
-        permanent_effects(bridge, solver, parts, permanent),
-        held(np.array([one.value for one in strengths])[which]),
-        bridge_notes(bridge, method),
+        stands,
+        held(strengths.values()),
+        (*bridge_notes(bridge, method), *strengths.notes),
         bridge.sources,
         classes=PERMANENT_CLASSES,
         method=method,
         impact=impact_table(bridge, parts, method),
         units=bridge.units,
         roadway=bridge.deck.roadway,
-        strengths=strengths,
-        which=which,
+        alone=held(strengths.values("permanent")),
+        strengths=strengths.distinct,
+        which=strengths.which,
         traffic=bridge.traffic,
         spans=_spans(bridge),
         deflection_limit=bridge.deflection_limit,
         not_rated=_not_rated(bridge),
     )
-
-
-def _strengths(
-    bridge: Bridge, parts: Sequence[Part], method: FactorSet
-) -> tuple[np.ndarray[tuple[int, ...], np.dtype[np.intp]], tuple[Strength, ...]]:
-    """Return the number (levels, R, 2) of every row's strength, and the distinct strengths; number 0 is none."""
-    effects = [effect for part in parts for effect in part.response.effects]
-    which = np.zeros((len(method.levels), len(effects), 2), dtype=np.intp)
-    found: list[Strength] = [UNRATED]
-    numbers: dict[tuple[int, str, int], int] = {}
-    own = {bridge.truss.member(name).name: typed for name, typed in bridge.strengths.items()}
-    for row, effect in enumerate(effects):
-        typed = _typed(bridge, own, effect)
-        if typed is None:
-            continue
-        for side, sense in enumerate(SENSES.get(effect.kind, ())):
-            for number, level in enumerate(method.levels):
-                key = (id(typed), sense, number)
-                if key not in numbers:
-                    numbers[key] = len(found)
-                    found.append(_resistance(typed, sense, method, level, effect))
-                which[number, row, side] = numbers[key]
-    which.flags.writeable = False
-    return which, tuple(found)
-
-
-def _resistance(typed: TypedStrength, sense: str, method: FactorSet, level: Level, effect: Effect) -> Strength:
-    """Return a row's strength at a level; errors name the row."""
-    return resistance(typed, sense, method, level, subject=effect.name if effect.kind == "axial" else effect.part)
-
-
-def _typed(bridge: Bridge, of_members: dict[str, TypedStrength], effect: Effect) -> TypedStrength | None:
-    """Return what was typed about a row's part; None where nothing was."""
-    if effect.kind == "axial":
-        return of_members.get(effect.name)
-    floor = bridge.floor
-    beams = {"stringer": floor.stringers, "floorbeam": floor.floorbeams, "planks": floor.planks}
-    part = beams.get(effect.part.partition(" ")[0])
-    return part.strength if part is not None and effect.kind in SENSES else None
 
 
 def _spans(bridge: Bridge) -> dict[str, float]:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Final
 
 from movload.report.phrases import (
     factor_text,
@@ -16,6 +16,7 @@ from movload.report.phrases import (
 )
 from movload.report.ratings_report import governed_text
 from movload.report.table import grid
+from movload.units import unit_factor
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -24,8 +25,14 @@ if TYPE_CHECKING:
 
     from movload.rating.rating import Rating
     from movload.review.hand import Explanation, Term
-    from movload.strength.strength import Step
+    from movload.strength.strength import Step, Strength
     from movload.units import Quantity, UnitSystem
+
+_QUANTITIES: Final[dict[str, Quantity]] = {
+    "N": "force", "N m": "moment", "m": "section", "m2": "area", "m3": "section modulus", "m4": "torsion",
+    "m6": "warping",
+}  # fmt: skip
+"""What a step's value is, by its unit."""
 
 
 def explanation_parts(
@@ -38,7 +45,8 @@ def explanation_parts(
         "",
         "Strength",
         "",
-        _steps_table(explanation.strength.steps, rating, units),
+        _steps_table(explanation.strength.steps, units),
+        *_as_new_texts(explanation.strength, rating, units),
         "",
         "Permanent load, what it uses of the strength",
         "",
@@ -48,26 +56,37 @@ def explanation_parts(
     ]
 
 
-def _steps_table(steps: Sequence[Step], rating: Rating, units: UnitSystem) -> RenderableType:
+def _steps_table(steps: Sequence[Step], units: UnitSystem) -> RenderableType:
     """Return a strength equation by equation."""
-    quantity = quantity_of(rating.effect)
-    lines = [
-        [
-            step.symbol,
-            step.equation,
-            _step_text(step, quantity, units),
-            step.source,
-        ]
-        for step in steps
-    ]
+    lines = [[step.symbol, step.equation, _step_text(step, units), step.source] for step in steps]
     return grid(["", "equation", "value", "source"], lines, right=[False, False, True, False])
 
 
-def _step_text(step: Step, quantity: Quantity, units: UnitSystem) -> str:
-    """Return a step's value with its unit."""
-    if step.unit == "-":
-        return f"{step.value:.4g}"
-    return f"{number_text(step.value, quantity, units, more=1)} {units.symbol(quantity)}"
+def _step_text(step: Step, units: UnitSystem) -> str:
+    """Return a step's value with its unit: forces and moments to one decimal more than in tables, the rest to five."""
+    if step.unit == "Pa":
+        symbol = "ksi" if units.is_us else "MPa"
+        return f"{step.value / unit_factor(symbol, 'stress'):.5g} {symbol}"
+    quantity = _QUANTITIES.get(step.unit)
+    if quantity is None:
+        return f"{step.value:.5g}" if step.unit == "-" else f"{step.value:.5g} {step.unit}"
+    if quantity in {"force", "moment"}:
+        return f"{number_text(step.value, quantity, units, more=1)} {units.symbol(quantity)}"
+    return f"{units.shown(step.value, quantity):.5g} {units.symbol(quantity)}"
+
+
+def _as_new_texts(strength: Strength, rating: Rating, units: UnitSystem) -> list[str]:
+    """Return the strength as new beside that as found, and what permanent load alone may use where that is less."""
+    quantity, lines = quantity_of(rating.effect), []
+    symbol = units.symbol(quantity)
+    if not math.isnan(strength.as_new):
+        new, found = (number_text(value, quantity, units, more=1) for value in (strength.as_new, strength.value))
+        left = f"{100.0 * strength.value / strength.as_new:.0f} %" if strength.as_new > 0 else "0 %"
+        lines += ["", f"As new {new} {symbol}, as found {found} {symbol}: {left} is left."]
+    if math.isfinite(strength.permanent):
+        limit = number_text(strength.permanent, quantity, units, more=1)
+        lines += ["", f"Permanent load alone may use {limit} {symbol} of it (timber under load for good)."]
+    return lines
 
 
 def _permanent_table(explanation: Explanation, units: UnitSystem) -> RenderableType:

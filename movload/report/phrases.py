@@ -109,6 +109,9 @@ def use_text(rating: Rating) -> str:
     if rating.factor > 0:
         return ""
     use = rating.permanent_use
+    if rating.pushed > rating.alone:
+        over = rounded_down(rating.pushed / rating.alone * 100, 0)
+        return f"permanent load alone uses {over:.0f} % of what timber carries for good"
     if rating.held and use < 1:
         return "traffic beside it leaves no strength"
     if math.isinf(use):

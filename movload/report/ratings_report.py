@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import asdict
 from typing import TYPE_CHECKING, Final
 
@@ -35,11 +36,22 @@ if TYPE_CHECKING:
     from movload.units import UnitSystem
 
 FORMAT: Final = "movload.ratings/1"
+_SAME: Final = 1e-9  # relative: a strength as new that differs by round-off only is not shown apart
 
 
 def _strength_text(row: Rating, units: UnitSystem) -> str:
-    """Return a strength with its letter, or its unit where it is a moment."""
-    number = number_text(row.strength, quantity_of(row.effect), units)
+    """Return a strength as found with its letter, or its unit where it is a moment."""
+    return _carried_text(row, row.strength, units)
+
+
+def _as_new_text(row: Rating, units: UnitSystem) -> str:
+    """Return a strength with no metal gone; "as typed" where it was typed."""
+    return "as typed" if math.isnan(row.as_new) else _carried_text(row, row.as_new, units)
+
+
+def _carried_text(row: Rating, value: float, units: UnitSystem) -> str:
+    """Return what a row carries with its letter, or its unit where it is a moment."""
+    number = number_text(value, quantity_of(row.effect), units)
     if row.effect.kind == "moment":
         return f"{number} {units.symbol('moment')}"
     return f"{number} {row.sense[0].upper()}" if row.effect.kind == "axial" else number
@@ -82,11 +94,27 @@ COLUMNS: Final[list[Column[Rating]]] = [
     Column("place", "", lambda row: row.place),
     Column("speed", "", lambda row: row.speed, "speed"),
     Column(
+        "as_new", "as new", lambda row: None if math.isnan(row.as_new) else row.as_new,
+        lambda row: quantity_of(row.effect), right=True, text=_as_new_text,
+    ),
+    Column(
         "held", "held", lambda row: row.held, lambda row: quantity_of(row.effect), right=True,
         text=lambda row, units: effect_text(row.effect, row.held, units),
     ),
 ]  # fmt: skip
-_IN_TABLE: Final = ("part", "row", "sense", "factor", "strength", "permanent", "live", "held", "impact", "position")
+_IN_TABLE: Final = (
+    "part",
+    "row",
+    "sense",
+    "factor",
+    "strength",
+    "as_new",
+    "permanent",
+    "live",
+    "held",
+    "impact",
+    "position",
+)
 _JSON_ONLY: Final[list[Column[Rating]]] = [
     Column("permanent_use", "", lambda row: row.permanent_use),
     Column("permanent_used", "", lambda row: row.pushed),
@@ -150,7 +178,8 @@ def detail(rows: Sequence[Rating], units: UnitSystem) -> RenderableType:
     several = len({row.part for row in rows}) > 1
     impacts = len({row.impact for row in rows}) > 1
     beside = any(row.held for row in rows)
-    shown = {"part": several, "impact": impacts, "held": beside}
+    lost = any(row.as_new > row.strength * (1.0 + _SAME) for row in rows)
+    shown = {"part": several, "impact": impacts, "held": beside, "as_new": lost}
     names = [name for name in _IN_TABLE if shown.get(name, True)]
     if len({row.level for row in rows}) > 1:
         names.insert(0, "level")

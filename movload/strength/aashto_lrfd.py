@@ -156,7 +156,7 @@ def elastic_buckling(column: Column) -> tuple[float, tuple[Step, ...]]:
     if twist is None:
         least = min(about_x, about_y)
         return least, (*steps, Step("Pe", "least of Pex, Pey; twist stated not to govern", least, "N", TITLE))
-    polar = twist.x0**2 + twist.y0**2 + column.r_x**2 + column.r_y**2
+    polar = twist.polar or twist.x0**2 + twist.y0**2 + column.r_x**2 + column.r_y**2
     warping = math.pi**2 * column.modulus * twist.c_w / twist.kl_z**2
     alone = (warping + SHEAR_RATIO * column.modulus * twist.j) / polar
     # The equation is det(diag(P) - Pe C) = 0 with C below, so 1/Pe is the greatest eigenvalue of P^-1/2 C P^-1/2.

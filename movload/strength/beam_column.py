@@ -33,17 +33,21 @@ _PART: Final = 0.75  # greatest slenderness of one part over the whole bar's, AA
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Torsion:
-    """What twist asks for: K L of twist [m], J [m4], Cw [m6], shear centre from the centroid x0, y0 [m]."""
+    """What twist asks for: K L of twist [m], J [m4], Cw [m6], shear centre from the centroid x0, y0 [m].
+
+    ``polar`` is r0^2 [m2] where the column's radii are stand-ins; None takes x0^2 + y0^2 + rx^2 + ry^2.
+    """
 
     kl_z: float
     j: float
     c_w: float
     x0: float = 0.0
     y0: float = 0.0
+    polar: float | None = None
 
     def __post_init__(self) -> None:
         """Refuse what no bar has; an angle or a tee does not warp."""
-        require_positive(kl_z=self.kl_z, j=self.j)
+        require_positive(kl_z=self.kl_z, j=self.j, polar=self.polar)
         require_not_negative(c_w=self.c_w)
 
 

@@ -21,7 +21,7 @@ HOLLIS_MILL, STAG_LEDGE, TANNER_GORGE, WITHY_ISLAND = (
     EXAMPLES / f"{name}.toml" for name in ("hollis_mill", "stag_ledge", "tanner_gorge", "withy_island")
 )
 EN = ROOT / "movload" / "data" / "factor_sets" / "en.toml"
-RESISTANCE = 'tension = 1.0, compression = "1/1.10", moment = 1.0, hogging = 1.0, shear = 1.0'
+RESISTANCE = 'tension = 1.0, fracture = "1/1.25", compression = "1/1.10", moment = 1.0, hogging = 1.0, shear = 1.0'
 SHORT_TON = 2000 * 4.4482216152605  # N (NIST SP 811, B.8, from memory)
 
 

@@ -26,13 +26,13 @@ NOTE = ["code", "subject", "text", "source"]
 ROW = [
     "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "safe_weight",
     "position", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place", "speed",
-    "held", "permanent_use", "permanent_used",
+    "as_new", "held", "permanent_use", "permanent_used",
     "live_factor", "held_factor", "stands_for", "placement",
 ]  # fmt: skip
 HEADS = [
     "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact",
     "safe_weight [kN]", "position [m]", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place",
-    "speed [km/h]", "held", "unit",
+    "speed [km/h]", "as_new", "held", "unit",
 ]  # fmt: skip
 IN_UNIT = ("strength", "permanent", "live", "held")  # forces and moments share these columns; the last says which
 GRAVITY = 9.80665  # m/s2, standard (NIST SP 811, B.8, from memory)

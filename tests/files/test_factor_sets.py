@@ -156,7 +156,7 @@ def test_keys_that_may_be_left_out_leave_nothing_behind() -> None:
         ("surfacing =", "surfaceing =", ('levels[0].permanent: "surfaceing" is not one of components, surfacing, '
          'removable surfacing, other, settlement (nearest: "surfacing")')),
         ("{ tension", "{ tensile", ('levels[0].resistance: "tensile" is not one of tension, compression, moment, '
-         'hogging, shear (nearest: "tension")')),
+         'hogging, shear, fracture (nearest: "tension")')),
         ('"crowd"]', '"crowds"]', 'levels[0].kinds: "crowds" is not one of routine, '),
         ("{ farm = 1.1 }", "{ trail = 1.1 }", 'levels[0].live_by_kind: "trail" is not one of farm, routine, crowd'),
         ('= ["farm"]', '= ["frm"]', 'crawl_kinds: "frm" is not one of '),
@@ -292,7 +292,7 @@ def test_every_shipped_set_is_a_whole_method(name: str) -> None:
     assert "from memory" in method.source
     for level in method.levels:
         assert set(level.by_class) == set(PERMANENT_CLASSES) - {"removable surfacing"}  # it follows surfacing
-        assert set(level.resistance) == {"tension", "compression", "moment", "hogging", "shear"}
+        assert set(level.resistance) == {"fracture", "tension", "compression", "moment", "hogging", "shear"}
         assert all(0 < phi <= 1 for phi in level.resistance.values())
         assert all(math.isfinite(level.live_margin(kind)) for kind in level.kinds)
         assert level.condition_factors == (name == "lrfr")

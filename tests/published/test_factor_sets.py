@@ -94,7 +94,9 @@ def test_lrfr_legal_load_by_traffic(traffic: float | None, live: float) -> None:
 def test_lrfr_resistance() -> None:
     """LRFD, FROM MEMORY: tension yielding 0.95, compression 0.95 (0.90 in older editions), bending and shear 1.0."""
     for one in LRFR.levels:
-        assert one.resistance == {"tension": 0.95, "compression": 0.95, "moment": 1.0, "hogging": 1.0, "shear": 1.0}
+        assert one.resistance == {
+            "tension": 0.95, "fracture": 0.80, "compression": 0.95, "moment": 1.0, "hogging": 1.0, "shear": 1.0,
+        }  # fmt: skip
         assert one.condition_factors
 
 
@@ -123,11 +125,13 @@ def test_lrfr_impact_and_multiple_presence() -> None:
 
 @pytest.mark.parametrize(("title", "live"), [("inventory", 2.17), ("operating", 1.3)])
 def test_load_factor(title: str, live: float) -> None:
-    """MBE 6B, FROM MEMORY: A1 = 1.3, A2 = 2.17 or 1.3, column 0.85. Plain relief: own choice, no source."""
+    """MBE 6B, FROM MEMORY: A1 = 1.3, A2 = 2.17 or 1.3, column 0.85. Relief and fracture 0.80: own choice, no source."""
     one = level(LOAD_FACTOR, title)
     assert one.live_margin("routine") == live
     assert one.permanent_margins(CLASSES).tolist() == [[1.3, 1.0]] * 4
-    assert one.resistance == {"tension": 1.0, "compression": 0.85, "moment": 1.0, "hogging": 1.0, "shear": 1.0}
+    assert one.resistance == {
+        "tension": 1.0, "fracture": 0.80, "compression": 0.85, "moment": 1.0, "hogging": 1.0, "shear": 1.0,
+    }  # fmt: skip
     assert not one.condition_factors
 
 
@@ -135,12 +139,17 @@ def test_load_factor(title: str, live: float) -> None:
     ("title", "of_yield", "safety", "of_shear"), [("inventory", 0.55, 2.12, 0.33), ("operating", 0.75, 1.70, 0.45)]
 )
 def test_allowable_stress(title: str, of_yield: float, safety: float, of_shear: float) -> None:
-    """MBE 6B, FROM MEMORY: 0.55 or 0.75 Fy, columns 1/2.12 or 1/1.70, shear 0.33 or 0.45 Fy on a nominal 0.58 Fy."""
+    """MBE 6B, FROM MEMORY: 0.55 or 0.75 Fy, columns 1/2.12 or 1/1.70, shear 0.33 or 0.45 Fy on a nominal 0.58 Fy.
+
+    0.50 or 0.67 of the ultimate on net sections; timber 1 or 1.33 times the NDS: FROM MEMORY too.
+    """
     one = level(ALLOWABLE_STRESS, title)
     assert one.live_margin("routine") == 1.0
     assert one.permanent_margins(CLASSES).tolist() == [[1.0, 1.0]] * 4
     assert [one.resistance[sense] for sense in ("tension", "moment", "hogging")] == [of_yield] * 3
     assert_allclose(one.resistance["compression"], 1 / safety, rtol=TYPED)
+    assert one.resistance["fracture"] == {0.55: 0.50, 0.75: 0.67}[of_yield]
+    assert set(one.timber.values()) == {{0.55: 1.0, 0.75: 1.33}[of_yield]}
     assert_allclose(one.resistance["shear"], of_shear / 0.58, rtol=TYPED)
     assert not one.condition_factors
 
@@ -164,6 +173,7 @@ def test_en_partial_factors() -> None:
     others = dict.fromkeys(("farm", "forest", "trail"), 1.50)
     assert live == {**dict.fromkeys(KINDS, 1.35), "rail": 1.45, **others}
     assert_allclose(ultimate.resistance["compression"], 1 / 1.10, rtol=TYPED)
+    assert_allclose(ultimate.resistance["fracture"], 1 / 1.25, rtol=TYPED)
     assert [ultimate.resistance[sense] for sense in ("tension", "moment", "hogging", "shear")] == [1.0] * 4
     assert EN.impact == ""
     assert [EN.presence("routine", count) for count in (1, 2, 3)] == [1.0] * 3

@@ -92,7 +92,7 @@ def test_json_is_the_published_document() -> None:
     assert list(read["rows"][0]) == [
         "crossing", "level", "part", "row", "sense", "factor", "strength", "permanent", "live", "impact", "safe_weight",
         "position", "heading", "axle", "station", "kind", "crossing_number", "abreast", "place", "speed",
-        "held", "permanent_use", "permanent_used", "live_factor", "held_factor", "stands_for", "placement",
+        "as_new", "held", "permanent_use", "permanent_used", "live_factor", "held_factor", "stands_for", "placement",
     ]  # fmt: skip
     assert list(read["rows"][0]["placement"]) == ["x", "load", "share", "impact", "factor", "z", "vehicle", "held"]
     assert list(read["crossings"][0]) == [

@@ -3,12 +3,12 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable
-from typing import Annotated, Any, Final, Literal
+from typing import Annotated, Final, Literal
 
-from pydantic import AfterValidator, BeforeValidator, Field, ValidationInfo, WithJsonSchema, model_validator
+from pydantic import AfterValidator, Field, ValidationInfo, model_validator
 
-from movload.errors import InputError, UnknownNameError, nearest_name
+from movload.errors import InputError, MissingDataError, nearest_name
+from movload.files.schema.makes import MaterialTable, MemberMake, PartMake
 from movload.files.schema.quantities import (
     STILL_HELD,
     Area,
@@ -25,11 +25,14 @@ from movload.files.schema.quantities import (
     Table,
     Text,
     Units,
+    known_name,
     number,
+    read_by,
     shown,
     units_in,
 )
-from movload.files.toml import PLACEHOLDER, short, written_key
+from movload.files.schema.sections import SectionTable
+from movload.files.toml import PLACEHOLDER, written_key
 from movload.rating.impact import RULES, SURFACES
 
 
@@ -52,21 +55,13 @@ def _place_across(value: object, info: ValidationInfo) -> str | tuple[float, flo
 def _impact(value: object, info: ValidationInfo) -> float | str:
     """Return a fraction, or the name of a rule."""
     if isinstance(value, str) and not any(sign.isdigit() for sign in value):
-        return _known(value, RULES[1:], "no fraction and none")
+        return known_name(value, RULES[1:], "no fraction and none")
     return number(value, "fraction", units_in(info))
 
 
 def _surface(value: str) -> str:
     """Return the name of a riding surface."""
-    return _known(value, SURFACES, "not one")
-
-
-def _known(value: str, known: tuple[str, ...], what: str) -> str:
-    """Return a name that is one of those known."""
-    if value not in known:
-        said = STILL_HELD if value == PLACEHOLDER else f'"{short(value)}" is {what} of {", ".join(known)}'
-        raise UnknownNameError(said, nearest=nearest_name(value, known))
-    return value
+    return known_name(value, SURFACES, "not one")
 
 
 def _traffic(value: object, info: ValidationInfo) -> float:
@@ -87,16 +82,11 @@ def _count(value: object, info: ValidationInfo) -> float:
     return number(value, "fraction", units_in(info))
 
 
-def _read_by(reader: Callable[[object, ValidationInfo], object], kinds: list[str]) -> Any:  # parts of Annotated
-    """Return the annotation's two parts for a value that may be a name or a quantity."""
-    return BeforeValidator(reader), WithJsonSchema({"type": kinds})
-
-
 _NAMED: Final = ("full width", "left", "right")
-Across = Annotated[str | tuple[float, float], *_read_by(_place_across, ["string", "number", "array"])]
-Impact = Annotated[float | str, *_read_by(_impact, ["number", "string"])]
-Traffic = Annotated[float, *_read_by(_traffic, ["number", "string"])]
-Count = Annotated[float, *_read_by(_count, ["number"])]
+Across = Annotated[str | tuple[float, float], *read_by(_place_across, ["string", "number", "array"])]
+Impact = Annotated[float | str, *read_by(_impact, ["number", "string"])]
+Traffic = Annotated[float, *read_by(_traffic, ["number", "string"])]
+Count = Annotated[float, *read_by(_count, ["number"])]
 Surface = Annotated[Text, AfterValidator(_surface)]
 
 
@@ -152,16 +142,31 @@ class StrengthKeys(Table):
     timber: Annotated[bool, Field(strict=True)] = Field(False, description="timber takes no impact")
 
 
-class MemberGroup(StrengthKeys):
+class MemberGroup(StrengthKeys, MemberMake):
     """Bars that share one section and material."""
 
-    area: Area
-    modulus: Stress
+    area: Area | None = None
+    modulus: Stress | None = None
     density: Density | None = None
     bars: list[Text] | None = None
     permits: AxialTable | None = Field(None, description="margin included")
     nominal: AxialTable | None = Field(None, description="every factor of the method applies")
     reduced: AxialTable | None = Field(None, description="phi is in it already")
+
+    @model_validator(mode="after")
+    def _one_way(self) -> MemberGroup:
+        typed = [key for key in ("area", "modulus", "density") if getattr(self, key) is not None]
+        if self.section is None and self.material is None:
+            for key in ("area", "modulus"):
+                if key not in typed:
+                    raise MissingDataError("is missing: type area and modulus, or section and material", place=key)
+            return self
+        for key, other in (("section", "material"), ("material", "section")):
+            if getattr(self, key) is None:
+                raise MissingDataError(f"is needed beside {other}", place=key)
+        if typed:
+            raise InputError("is given twice: typed, and by section and material", place=typed[0])
+        return self
 
 
 class DeckTable(Table):
@@ -183,7 +188,7 @@ class DeckTable(Table):
     chord_bending: Text | None = Field(None, description="who checked a deck that bears on the chord, and the result")
 
 
-class PartTable(StrengthKeys):
+class PartTable(StrengthKeys, PartMake):
     """A part of the floor."""
 
     permits: BendingTable | None = None
@@ -196,7 +201,7 @@ class StringersTable(PartTable):
 
     z: list[Length] = Field(description="their places across, from the right looking toward +x")
     fraction: Fraction | None = Field(None, description="of a whole axle on one stringer; the lever rule when left out")
-    weight: LineLoad | None = Field(None, description="of one stringer")
+    weight: LineLoad | None = Field(None, description="of one stringer; by its section when left out")
     continuous: Annotated[bool, Field(strict=True)] = False
 
     @model_validator(mode="after")
@@ -211,7 +216,7 @@ class FloorbeamsTable(PartTable):
     """Floorbeams, one at each panel point."""
 
     brackets: tuple[Length, Length] | None = Field(None, description="reach beyond the right and the left truss")
-    weight: LineLoad | None = Field(None, description="per length of beam")
+    weight: LineLoad | None = Field(None, description="per length of beam; by its section when left out")
 
 
 class PlanksTable(PartTable):
@@ -268,6 +273,8 @@ class BridgeFile(Table):
     layout: LayoutTable | None = None
     joints: dict[Text, tuple[Length, Length]] = Field(default_factory=dict)
     supports: dict[Text, SupportTable | Literal["pinned"]]
+    sections: dict[Text, SectionTable] = Field(default={}, description="cross-sections by name")
+    materials: dict[Text, MaterialTable] = Field(default={}, description="materials by name")
     members: dict[Text, MemberGroup]
     deck: DeckTable = Field(default_factory=lambda: DeckTable.model_validate({}))
     floor: FloorTable = Field(default_factory=lambda: FloorTable.model_validate({}))

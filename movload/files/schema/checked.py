@@ -66,13 +66,14 @@ def _validated(model: type[Model], data: object, place: str, *, units: UnitSyste
 def _our_error(error: ValidationError, model: type[BaseModel], outer: str) -> MovloadError:
     """Return the first of pydantic's complaints in our words, with its place."""
     first = error.errors(include_url=False)[0]
-    where = ".".join(filter(None, (outer, _place(first["loc"], model))))
+    inner, kind = _place(first["loc"], model)
+    where = ".".join(filter(None, (outer, inner)))
     context = first.get("ctx", {})
     cause = context.get("error")
     if first["input"] == PLACEHOLDER:
         return InputError(STILL_HELD, place=where)
     if isinstance(cause, MovloadError):
-        return cause.at(where) if where else cause
+        return _put_at(cause, where, kind)
     if first["type"] == "missing":
         return InputError("is missing", place=where)
     rules = _WORDS | {
@@ -83,8 +84,15 @@ def _our_error(error: ValidationError, model: type[BaseModel], outer: str) -> Mo
     return InputError(f"{rule}, got {shown(first['input'])}", place=where)
 
 
-def _place(location: tuple[int | str, ...], model: type[BaseModel]) -> str:
-    """Return a place as one writes it: members."top chord".bars[2].
+def _put_at(cause: MovloadError, where: str, kind: object) -> MovloadError:
+    """Return an error of ours at its place; what it names within a table of this kind may be one of its keys."""
+    if where and isinstance(kind, type) and issubclass(kind, BaseModel) and cause.place in kind.model_fields:
+        return type(cause)(cause.rule, place=f"{where}.{cause.place}", nearest=cause.nearest)
+    return cause.at(where) if where else cause
+
+
+def _place(location: tuple[int | str, ...], model: type[BaseModel]) -> tuple[str, object]:
+    """Return a place as one writes it, members."top chord".bars[2], and the kind of value that stands there.
 
     Pydantic also puts words of its own in a location, and a joint may bear the same word: what a step is follows from
     where in the model it stands, never from how it reads.
@@ -96,7 +104,8 @@ def _place(location: tuple[int | str, ...], model: type[BaseModel]) -> str:
             text += f"[{step}]"
         elif is_in_file:
             text += f".{written_key(str(step))}" if text else written_key(str(step))
-    return text
+    alone = _alternatives(kind)
+    return text, alone[0] if len(alone) == 1 else kind
 
 
 def _within(kind: object, step: int | str) -> tuple[object, bool]:

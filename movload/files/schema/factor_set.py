@@ -93,7 +93,10 @@ class LevelTable(Table):
     live_by_kind: dict[Text, Positive] = Field(default={}, description="instead of live, or of live_by_traffic")
     live_by_traffic: list[tuple[Trucks, Positive]] = Field(default=[], description="[trucks a day one way, factor]")
     permanent: dict[Text, tuple[Factor, Factor]] = Field(description="by class: [pushing, relieving]")
-    resistance: dict[Text, Positive] = Field(default={}, description="phi on a nominal strength, by sense; else 1")
+    resistance: dict[Text, Positive] = Field(
+        default={}, description='phi on a nominal strength, by sense; "fracture" of a net section for the rules'
+    )
+    timber: dict[Text, Positive] = Field(default={}, description="factor on timber's strengths by the rules, by sense")
     condition_factors: Flag = Field(default=False, description="whether phi_c and phi_s apply")
     posting: Text = Field(default="weight x RF", description="weight x RF, legal curve or none")
 
@@ -105,6 +108,7 @@ class FactorSetFile(Table):
     edition: Text
     statement: Text = Field(description="what every answer says about it")
     sources: dict[Text, Source] = Field(description='where each value comes from: "..., read", "..., from memory"')
+    rules: Text | None = Field(None, description="standard that gives strengths from sections and materials")
     multiple_presence: Abreast = Field(default=[1.0], description="by number abreast; the last repeats")
     presence_by_kind: dict[Text, Abreast] = Field(default={})
     condition: dict[Text, Positive] = Field(default={}, description="phi_c by condition")

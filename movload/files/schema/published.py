@@ -42,6 +42,9 @@ class RatingDocument(Document):
     sense: str = Field(description="tension or compression")
     factor: float | None = Field(description="RF; null when there is strength to spare and no live effect")
     strength: float = Field(description="magnitude [N, N m]")
+    as_new: float | None = Field(
+        description="the same with no metal gone, by the rules; null where it was typed [N, N m]"
+    )
     permanent: float = Field(description="permanent effect [N, N m], tension and sagging positive")
     live: float = Field(description="live effect with share and impact [N, N m], tension and sagging positive")
     impact: float

@@ -7,6 +7,7 @@ from __future__ import annotations
 
 import math
 import unicodedata
+from collections.abc import Callable, Sequence
 from typing import Annotated, Any, Final
 
 from pydantic import (
@@ -115,6 +116,28 @@ Pressure = Annotated[
 Moment = Annotated[float, *_typed("moment", "a moment; bare numbers in units.force times units.length")]
 Section = Annotated[float, *_typed("section", "a small length; bare numbers in units.section")]
 Fraction = Annotated[float, *_typed("fraction", 'a fraction, 0.3 or "30 %"')]
+SectionModulus = Annotated[float, *_typed("section modulus", "bare numbers in units.section to the power of 3")]
+TorsionConstant = Annotated[float, *_typed("torsion", "bare numbers in units.section to the power of 4")]
+WarpingConstant = Annotated[float, *_typed("warping", "bare numbers in units.section to the power of 6")]
+
+
+def read_by(reader: Callable[[object, ValidationInfo], object], kinds: list[str]) -> Any:  # parts of Annotated
+    """Return the annotation's two parts for a value that may be a name or a quantity."""
+    return BeforeValidator(reader), WithJsonSchema({"type": kinds})
+
+
+def known_name(value: str, known: Sequence[str], what: str = "not one") -> str:
+    """Return a name that is one of those known.
+
+    Raises
+    ------
+    UnknownNameError
+        It is none of them; the nearest is named.
+    """
+    if value not in known:
+        said = STILL_HELD if value == PLACEHOLDER else f'"{short(value)}" is {what} of {", ".join(known)}'
+        raise UnknownNameError(said, nearest=nearest_name(value, known))
+    return value
 
 
 def _one_line(text: str) -> str:
