@@ -1,4 +1,4 @@
-"""The stiffness of a truss, factored once: banded Cholesky, then every load column by back-substitution.
+"""The stiffness of a truss, factored once (see `movload.statics.cholesky`), then every load column solved with it.
 
 One step of iterative refinement follows each solve, its residual formed element by element, r = F - Aᵀ s, never as
 F - K u; and its correction is added to the forces, s + k A du, never to u before A is applied: the difference of two
@@ -13,9 +13,9 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING, Final
 
 import numpy as np
-from scipy.linalg.lapack import dpbtrf, dpbtrs
 
 from movload.errors import UnstableError
+from movload.statics.cholesky import Factor, cholesky
 from movload.statics.elements import ElementRows, element_rows
 
 if TYPE_CHECKING:
@@ -40,7 +40,7 @@ class FactoredTruss:
 
     truss: Truss
     rows: ElementRows
-    band: Floats
+    factor: Factor
 
     def solve(self, loads: Floats, misfit: Floats | None = None) -> tuple[Floats, Floats]:
         """Return displacements and element forces under joint loads.
@@ -89,8 +89,7 @@ class FactoredTruss:
         """Return K⁻¹ columns."""
         if not columns.size:
             return columns
-        solved, _ = dpbtrs(self.band, columns, lower=1)
-        return np.asarray(solved)
+        return self.factor.solved(columns)
 
 
 def factored(truss: Truss) -> FactoredTruss:
@@ -103,14 +102,14 @@ def factored(truss: Truss) -> FactoredTruss:
     """
     rows = element_rows(truss)
     band = _assembled(rows)
-    factor, failed = dpbtrf(band, lower=1) if rows.free else (band, 0)
-    if failed:
+    factor, definite = cholesky(band)
+    if not definite:
         shifted = band.copy(order="F")
         shifted[0] += _SHIFT * band[0].max()
-        factor, _ = dpbtrf(shifted, lower=1)
-    answer = FactoredTruss(truss, rows, np.asarray(factor))
+        factor, _ = cholesky(shifted)
+    answer = FactoredTruss(truss, rows, factor)
     if rows.free:
-        _require_stable(answer, failed=bool(failed))
+        _require_stable(answer, failed=not definite)
     return answer
 
 

@@ -5,13 +5,14 @@ from __future__ import annotations
 import math
 from typing import Annotated, Final, Literal
 
-from pydantic import AfterValidator, Field, ValidationInfo, model_validator
+from pydantic import Field, ValidationInfo, model_validator
 
 from movload.errors import InputError, MissingDataError, nearest_name
 from movload.files.schema.makes import MaterialTable, MemberMake, PartMake
 from movload.files.schema.quantities import (
     STILL_HELD,
     Area,
+    Checked,
     Density,
     Force,
     Fraction,
@@ -87,7 +88,7 @@ Across = Annotated[str | tuple[float, float], *read_by(_place_across, ["string",
 Impact = Annotated[float | str, *read_by(_impact, ["number", "string"])]
 Traffic = Annotated[float, *read_by(_traffic, ["number", "string"])]
 Count = Annotated[float, *read_by(_count, ["number"])]
-Surface = Annotated[Text, AfterValidator(_surface)]
+Surface = Annotated[Text, Checked(_surface)]
 
 
 class LayoutTable(Table):

@@ -4,13 +4,14 @@ from __future__ import annotations
 
 from typing import Annotated, Any, Final, Literal
 
-from pydantic import AfterValidator, Field, ValidationInfo
+from pydantic import Field, ValidationInfo
 
 from movload.bridge.material import KINDS
 from movload.errors import InputError, nearest_name
 from movload.files.schema.metals import Year
 from movload.files.schema.quantities import (
     Area,
+    Checked,
     Density,
     Fraction,
     Moment,
@@ -31,7 +32,7 @@ Strong = Annotated[Stress, between(1e6, 3e9, "Pa", 'a stress (say its unit: "230
 Weak = Annotated[Stress, between(1e4, 3e8, "Pa", 'a stress (say its unit: "8.5 MPa")')]
 Elastic = Annotated[Stress, between(1e8, 1e12, "Pa", 'a modulus (say its unit: "200 GPa")')]
 Heavy = Annotated[Density, between(50.0, 25000.0, "kg/m3", "a density")]
-Kind = Annotated[Text, AfterValidator(lambda kind: known_name(kind, KINDS))]
+Kind = Annotated[Text, Checked(lambda kind: known_name(kind, KINDS))]
 Factors = dict[Text, Fraction]
 
 

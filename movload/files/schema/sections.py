@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import MISSING, fields
 from typing import Annotated, Final, Literal
 
-from pydantic import AfterValidator, BeforeValidator, Field, WithJsonSchema, model_validator
+from pydantic import BeforeValidator, Field, ValidationInfo, model_validator
 
 from movload.bridge.section_bars import Eyebar, Flat, RoundBar, SawnTimber, ThreadedRod
 from movload.bridge.section_shape import Shape
@@ -13,7 +13,9 @@ from movload.bridge.shapes import Angle, Channel, ISection, Plate, RectangularTu
 from movload.errors import InputError, MissingDataError, UnknownNameError, nearest_name
 from movload.files.schema.quantities import (
     Area,
+    Checked,
     Fraction,
+    Read,
     Section,
     SectionModulus,
     Table,
@@ -34,7 +36,7 @@ _SMALLEST, _LARGEST = 1e-4, 20.0  # m; no part of a cross-section is smaller or 
 _MOST_HOLES: Final = 99
 
 
-def between(low: float, high: float, unit: str, words: str) -> AfterValidator:
+def between(low: float, high: float, unit: str, words: str) -> Checked:
     """Return the validator of a value that must lie within what there is; beyond it a wrong unit was meant."""
 
     def check(value: float) -> float:
@@ -42,10 +44,10 @@ def between(low: float, high: float, unit: str, words: str) -> AfterValidator:
             raise InputError(f"{words} of {low:g} to {high:g} {unit} is asked for, got {value:g} {unit}")
         return value
 
-    return AfterValidator(check)
+    return Checked(check)
 
 
-def sized(power: int) -> AfterValidator:
+def sized(power: int) -> Checked:
     """Return the validator of a size, or of a power of it: the domain refuses what is not above 0, this the absurd."""
 
     def check(value: float) -> float:
@@ -55,10 +57,10 @@ def sized(power: int) -> AfterValidator:
             raise InputError(f"beyond any cross-section's, {said}, got {value:g} {unit}")
         return value
 
-    return AfterValidator(check)
+    return Checked(check)
 
 
-def _count(value: object) -> int:
+def _count(value: object, info: ValidationInfo) -> int:  # noqa: ARG001  # no unit is asked
     """Return a number of things."""
     if isinstance(value, bool) or not isinstance(value, int) or not 0 <= value <= _MOST_HOLES:
         raise InputError(f"a whole number up to {_MOST_HOLES} is asked for, got {shown(value)}")
@@ -67,7 +69,7 @@ def _count(value: object) -> int:
 
 Size = Annotated[Section, sized(1)]
 Offset = Annotated[Section, between(-_LARGEST, _LARGEST, "m", "a place or a distance")]
-Counted = Annotated[int, BeforeValidator(_count), WithJsonSchema({"type": "integer", "minimum": 0})]
+Counted = Annotated[int, Read(_count, {"type": "integer", "minimum": 0})]
 Modulus = Annotated[SectionModulus, sized(3)]
 Torsion = Annotated[TorsionConstant, sized(4)]
 Warping = Annotated[WarpingConstant, sized(6)]
