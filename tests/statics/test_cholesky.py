@@ -1,4 +1,4 @@
-"""A factored matrix on either side of the size from which it is banded: both solve, both refuse what is not definite."""
+"""A factored matrix on either side of the size from which it is banded: both solve, both refuse the indefinite."""
 
 from __future__ import annotations
 
