@@ -57,9 +57,16 @@ SAID = [
     Said("stag_ledge", "log_truck", "either truss", "L2-L3", "tension", True, place="centre line"),
     Said("tanner_gorge", "fire_engine", "either truss", "M5-L5", "tension", True),
     Said("tanner_gorge", "ev3", "either truss", "M5-L5", "tension", False),
+    Said("tanner_gorge", "ev3", "left truss", "M5-L5", "tension", False, method="lrfr"),
     Said("withy_island", "h5", "stringer S1", "L2-L3 moment", "moment", True),
     Said("withy_island", "en_footbridge_service_vehicle", "stringer S1", "L2-L3 moment", "moment", False),
 ]
+NOT_COVERED = {
+    ("kettle_ford", "en"): "laced and battened bars", ("hollis_mill", "en"): "laced and battened bars",
+    ("tanner_gorge", "en"): "laced and battened bars", ("withy_island", "lrfr"): "timber by AASHTO LRFD",
+    ("withy_island", "load_factor"): "timber by MBE 6B, load factor", ("withy_island", "en"): "timber by EN 1993-1-1",
+}  # fmt: skip
+"""What the rules of a factor set refuse of an example, by the words of their note."""
 NAMES = sorted({said.name for said in SAID})
 COMMAND = re.compile(r'movload rate examples/(\w+)\.toml (\w+)(?: --method (\w+))?(?: --at "([^"]+)")?')
 
@@ -116,6 +123,12 @@ def test_an_example_rates_as_its_opening_says(said: Said) -> None:
 def test_every_part_of_an_example_is_rated_by_every_factor_set(name: str, method: str) -> None:
     vehicle = next(said.vehicle for said in SAID if said.name == name)
     ratings = rated(name, vehicle, method)
+    refused = [note.text for note in ratings.notes if note.code == "not-covered"]
+    if (name, method) in NOT_COVERED:
+        assert any(NOT_COVERED[name, method] in text for text in refused)
+        assert not ratings.coverage.complete
+        return
+    assert refused == []
     assert ratings.coverage.complete
     levels = [number for number in range(len(ratings.levels)) if ratings.rates(0, number)]
     assert levels
@@ -128,13 +141,39 @@ def test_every_part_of_an_example_is_rated_by_every_factor_set(name: str, method
 
 @pytest.mark.parametrize("method", ["permitted", "lrfr", "load_factor", "allowable_stress", "en"])
 def test_the_floor_of_withy_island_governs_by_every_factor_set(method: str) -> None:
+    """By the older check the trusses carry a third more and its stringers govern; by the rules its floorbeams do."""
     ratings = rated("withy_island", "en_footbridge_service_vehicle", method)
-    assert ratings.governing(0).effect.part == "stringer S1"
+    floor = {"permitted": "stringer S1"}.get(method, "floorbeam L3")
+    assert ratings.governing(0).effect.part == floor
     trusses = [row.factor for row in ratings.rows(0, level=0) if row.effect.kind == "axial"]
-    assert min(trusses) > 1.3 * ratings.governing(0, level=0).factor
+    assert min(trusses) > 1.25 * ratings.governing(0, level=0).factor
 
 
-@pytest.mark.parametrize("method", ["lrfr", "load_factor", "allowable_stress", "en"])
+@pytest.mark.parametrize("method", ["lrfr", "load_factor", "allowable_stress"])
+def test_a_loss_on_one_truss_only_governs_tanner_gorge(method: str) -> None:
+    """64 % of both angles of the left truss's hanger M5-L5 is gone at one end; the right truss's carries its whole."""
+    ratings = rated("tanner_gorge", "ev3", method)
+    worst = ratings.governing(0)
+    assert (worst.part, worst.effect.name) == ("left truss", "M5-L5")
+    sound = rating_of(ratings, "right truss", "M5-L5")
+    assert_allclose(worst.strength / worst.as_new, 0.36, rtol=HAND)
+    assert_allclose(sound.strength, worst.as_new, rtol=1e-12)
+    assert sound.factor > 2.5 * worst.factor
+
+
+def test_tanner_gorge_rusted_hanger_by_equations() -> None:
+    """LRFR (6.8.2) FROM MEMORY: two angles 5 x 3 1/2 x 7/16 in, (5 + 3.5 - 0.4375) x 0.4375 = 3.52734 in2 each.
+
+    Gross 7.05469, 36 % left: 2.53969 in2. Net as found: less one hole of 1 in in each thinned short leg, 2.53969 -
+    2 x 0.36 x 0.4375 = 2.22469 in2. Steel of 1911: 30 and 60 ksi. Poor 0.85 + 0.05 measured = 0.90, riveted 0.90: 0.81,
+    at least 0.85 (KHAN p. 187, READ).
+    Yield 0.85 x 0.95 x 30 x 2.53969 = 61.5239 kip; fracture 0.85 x 0.80 x 60 x 2.22469 x 0.90 punched x 0.80 = 65.352.
+    """
+    hanger = rated("tanner_gorge", "ev3", "lrfr").governing(0)
+    assert_allclose(hanger.strength / KIP, 61.5239, rtol=HAND)
+
+
+@pytest.mark.parametrize("method", ["lrfr", "load_factor", "allowable_stress"])
 def test_a_reversal_governs_at_kettle_ford_by_every_factor_set(method: str) -> None:
     diagonal = rated("kettle_ford", "tractor_slurry_tanker", method).governing(0)
     assert (diagonal.effect.name, diagonal.sense) == ("L3-U4", "compression")
@@ -222,16 +261,16 @@ def test_tanner_gorge_rusted_hanger_from_load_to_rating() -> None:
     31 x (1 + 1 - 4 / 13.04) = 52.4908 kip. The truck's middle 1 ft off the centre line: 5 ft to the kerb less 1 ft less
     half of 6 ft. Share 0.5 + 1 / 17 = 0.558824, with impact: x 0.558824 x 1.20 = 35.1997 kip.
     Permanent: concrete 12 x 0.5 x 150 lb = 0.90, two stringers 0.20, laterals 0.25, railings 0.25: 1.60 klf x 0.5 x
-    13.02 ft = 10.4160; half a floorbeam 0.125 x 17 / 2 = 1.0625; bottom chord 24/144 ft2 x 490 lb/ft3 x 13.02 ft =
-    1.0633 and half the hanger 5/144 x 490 x 14.0215/2 = 0.1193 (M5 on the diagonal from 28.00 ft: 28 x 13.04 / 26.04),
-    x 1.15 = 1.3600; sum 12.8385 kip.
-    RF = (45 - 12.8385) / 35.1997 = 0.91369.
+    13.02 ft = 10.4160; half a floorbeam 0.125 x 17 / 2 = 1.0625; bottom chord 23.40/144 ft2 x 490 lb/ft3 x 13.02 ft
+    = 1.0367 and half the hanger 7.0547/144 x 490 x 14.0215/2 = 0.1683 (M5 on the diagonal from 28.00 ft: 28 x 13.04 /
+    26.04), x 1.15 = 1.3858; sum 12.8643 kip.
+    RF = (45 - 12.8643) / 35.1997 = 0.91295.
     """
     assert_allclose(live("tanner_gorge", "ev3", "M5-L5", "highest").value / KIP, 52.4908, rtol=HAND)
     hanger = rated("tanner_gorge", "ev3").governing(0)
-    assert_allclose(hanger.permanent / KIP, 12.8385, rtol=HAND)
+    assert_allclose(hanger.permanent / KIP, 12.8643, rtol=HAND)
     assert_allclose(hanger.live / KIP, 35.1997, rtol=HAND)
-    assert_allclose(hanger.factor, 0.91369, rtol=HAND)
+    assert_allclose(hanger.factor, 0.91295, rtol=HAND)
 
 
 def test_hollis_mill_floorbeam_between_two_trucks() -> None:
@@ -289,16 +328,16 @@ def test_withy_island_sunken_pier_by_virtual_work() -> None:
 
     f = sum of n^2 l / (A E), the sinking of L2 a unit load, E = 21000 kN/cm2; L2 halves the span. With z = 1.55 m:
     bottom chord n = M / z under U1 to U4: 0.95806, 2.89032, 2.88065, 0.94516 on 5.93, 6.05, 6.11, 5.87 m:
-    sum n^2 l = 111.930, / 18.7 cm2 = 5.98556
-    top chord n = -M / z over L1, L2, L3: 1.91290, 3.86452, 1.89355 on 5.99, 6.07, 6.00 m: 134.084, / 22.7 = 5.90679
-    diagonals n = 0.5 l / z, half panels 2.97, 2.96, 3.03, 3.02, 3.05, 3.06, 2.94, 2.93 m: 31.9437, / 10.4 = 3.07151
-    f = 14.96386 / 21000 = 7.12565e-4 m/kN. The reaction loses 0.012 / f = 16.8406 kN, and the bar U2-U3 over the pier
-    gains -3.86452 x 16.8406 = -65.0809 kN.
+    sum n^2 l = 111.930, / 18.6396 cm2 = 6.00496
+    top chord n = -M / z over L1, L2, L3: 1.91290, 3.86452, 1.89355 on 5.99, 6.07, 6.00 m: 134.084, / 22.5596 = 5.94354
+    diagonals n = 0.5 l / z, half panels 2.97, 2.96, 3.03, 3.02, 3.05, 3.06, 2.94, 2.93 m: 31.9437, / 10.3116 = 3.09784
+    f = 15.04634 / 21000 = 7.16492e-4 m/kN. The reaction loses 0.012 / f = 16.7483 kN, and the bar U2-U3 over the pier
+    gains -3.86452 x 16.7483 = -64.7240 kN. (Areas 4 t (b - t) of tubes 4.9 and 3.9 mm thick.)
     """
     solved = movload.solve(movload.read_bridge(path_of("withy_island")))
     sunk = solved.permanent[PERMANENT_CLASSES.index("settlement")] / KILONEWTON
-    assert_allclose(sunk[row_of(solved.effects, "L2 normal")], -16.8406, rtol=HAND)
-    assert_allclose(sunk[row_of(solved.effects, "U2-U3")], -65.0809, rtol=HAND)
+    assert_allclose(sunk[row_of(solved.effects, "L2 normal")], -16.7483, rtol=HAND)
+    assert_allclose(sunk[row_of(solved.effects, "U2-U3")], -64.7240, rtol=HAND)
 
 
 def test_withy_island_top_chord_is_pushed_only_by_the_sunken_pier() -> None:

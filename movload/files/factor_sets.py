@@ -15,7 +15,7 @@ from movload.files.toml import parsed, read_text, written_key
 from movload.rating.factor_sets import PERMITTED, FactorSet, Level
 from movload.rating.impact import RULES, SURFACES
 from movload.statics.permanent import PERMANENT_CLASSES
-from movload.strength.parts import STANDARDS
+from movload.strength.standards import STANDARDS
 from movload.traffic.loading import KINDS
 
 if TYPE_CHECKING:

@@ -38,6 +38,8 @@ def judge(solved: SolvedBridge, crossings: Sequence[Crossing | Loading | Vehicle
     ------
     InputError
         No crossing, or a spacing that is a range.
+    MissingDataError
+        A rule needs something about a part in a sense that it feels, and nobody has typed it.
     """
     asked = tuple(_crossing(one) for one in crossings)
     if not asked:
@@ -51,6 +53,7 @@ def judge(solved: SolvedBridge, crossings: Sequence[Crossing | Loading | Vehicle
     impact = np.stack([one.loading.dynamic * solved.impact.of(one.loading.kind, one.speed) for one in asked])
     peaks = _peaks(solved, asked, impact)
     live = SIGNS * np.stack([np.stack((one.highest, one.lowest), axis=1) for one in peaks])
+    _require_asked(solved, live)
     factor, formation = _factors(solved, live, asked, peaks)
     return Ratings(
         solved,
@@ -114,6 +117,14 @@ def _presence(solved: SolvedBridge, crossing: Crossing) -> tuple[float, ...]:
     """Return multiple presence by number abreast for a crossing."""
     method = solved.method
     return method.presence_by_kind.get(crossing.loading.kind, method.multiple_presence)
+
+
+def _require_asked(solved: SolvedBridge, live: Floats) -> None:
+    """Raise what a rule asks about a sense that a row now feels, from live load (C, R, 2) or for good."""
+    stands = SIGNS * solved.permanent.sum(axis=0)[:, None]
+    for row, side, error in solved.asked:
+        if stands[row, side] > 0 or (live[:, row, side] > 0).any():
+            raise error
 
 
 def _starts(solved: SolvedBridge) -> Ints:

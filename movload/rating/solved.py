@@ -27,7 +27,7 @@ if TYPE_CHECKING:
 
     from movload.bridge.bridge import Bridge
     from movload.bridge.roadway import Roadway
-    from movload.errors import Note
+    from movload.errors import MissingDataError, Note
     from movload.strength.strength import Strength
     from movload.units import UnitSystem
 
@@ -62,6 +62,8 @@ class SolvedBridge:
         The kerbs; None where a share was typed.
     alone
         What permanent load alone may use of each strength (levels, R, 2), infinite but for timber; None as if so.
+    asked
+        Row, side and what a rule still asks about it, for when a crossing makes the row feel that sense.
     strengths
         The distinct strengths with their steps.
     which
@@ -88,6 +90,7 @@ class SolvedBridge:
     units: UnitSystem = field(kw_only=True)
     roadway: Roadway | None = field(default=None, kw_only=True)
     alone: Floats | None = field(default=None, kw_only=True)
+    asked: tuple[tuple[int, int, MissingDataError], ...] = field(default=(), kw_only=True)
     strengths: tuple[Strength, ...] = field(default=(), kw_only=True)
     which: np.ndarray[tuple[int, ...], np.dtype[np.intp]] | None = field(default=None, kw_only=True)
     traffic: float | None = field(default=None, kw_only=True)
@@ -142,6 +145,7 @@ def solve(bridge: Bridge, method: FactorSet = PERMITTED) -> SolvedBridge:
         impact=impact_table(bridge, parts, method),
         units=bridge.units,
         roadway=bridge.deck.roadway,
+        asked=strengths.asked,
         alone=held(strengths.values("permanent")),
         strengths=strengths.distinct,
         which=strengths.which,

@@ -40,11 +40,14 @@ class Strengths:
         Those, with their steps.
     notes
         What a reader must know of them; rows that a rule does not cover are named here.
+    asked
+        Row, side and what the rules still ask about it: raised when a crossing makes the row feel that sense.
     """
 
     which: Numbers
     distinct: tuple[Strength, ...]
     notes: tuple[Note, ...]
+    asked: tuple[tuple[int, int, MissingDataError], ...] = ()
 
     def values(self, name: str = "value") -> Floats:
         """Return a value of every row's strength (levels, R, 2)."""
@@ -57,14 +60,15 @@ def strengths_of(bridge: Bridge, parts: Sequence[Part], method: FactorSet, felt:
     Parameters
     ----------
     felt
-        (R, 2) whether a row may feel a sense: where it cannot, nothing is asked of section or material.
+        (R, 2) whether a row may feel a sense at all: where it cannot, nothing is asked of section or material.
 
     Raises
     ------
     MissingDataError, UnknownNameError
-        Something that a rule or a level asks for is not there.
+        Something that a level asks beside a typed strength is not there.
     """
     found = _Found(method)
+    asked: dict[tuple[int, int], MissingDataError] = {}
     effects = [effect for part in parts for effect in part.response.effects]
     which = np.zeros((len(method.levels), len(effects), 2), dtype=np.intp)
     own = {bridge.truss.member(name).name: typed for name, typed in bridge.strengths.items()}
@@ -75,8 +79,11 @@ def strengths_of(bridge: Bridge, parts: Sequence[Part], method: FactorSet, felt:
             known = _Known(typed, of if felt[row, side] and method.rules else None)
             for number, level in enumerate(method.levels):
                 which[number, row, side] = found.number(known, sense, level, effect)
+                if (error := found.missing.get(found.key(known, sense, level))) is not None:
+                    asked.setdefault((row, side), error)
     which.flags.writeable = False
-    return Strengths(which, tuple(found.distinct), found.notes)
+    still = tuple((row, side, error) for (row, side), error in asked.items())
+    return Strengths(which, tuple(found.distinct), found.notes, still)
 
 
 @dataclass(frozen=True, slots=True)
@@ -94,23 +101,38 @@ class _Found:
     method: FactorSet
     distinct: list[Strength] = field(default_factory=lambda: [UNRATED])
     numbers: dict[tuple[object, ...], int] = field(default_factory=dict)
-    refused: dict[tuple[str, str], list[str]] = field(default_factory=dict)
-    made: dict[int, tuple[Made, str, set[str]]] = field(default_factory=dict)
+    refused: dict[tuple[object, ...], tuple[str, list[str]]] = field(default_factory=dict)
+    made: dict[int, tuple[Made, list[str], set[str]]] = field(default_factory=dict)
+    missing: dict[tuple[object, ...], MissingDataError] = field(default_factory=dict)
+
+    @staticmethod
+    def key(known: _Known, sense: str, level: Level) -> tuple[object, ...]:
+        """Return what makes two strengths one."""
+        return (id(known.typed), id(known.made), sense, level.title)
 
     def number(self, known: _Known, sense: str, level: Level, effect: Effect) -> int:
         """Return the number of a strength, found once for all rows of one make and words; 0 for none."""
-        key = (id(known.typed), id(known.made), sense, level.title)
+        key = self.key(known, sense, level)
         if key not in self.numbers:
             strength = self._strength(known, sense, level, effect)
             self.numbers[key] = len(self.distinct) if strength is not UNRATED else 0
             if strength is not UNRATED:
                 self.distinct.append(strength)
+        self._told(key, known, sense, _subject(effect))
         return self.numbers[key]
+
+    def _told(self, key: tuple[object, ...], known: _Known, sense: str, subject: str) -> None:
+        """Keep whom a refusal, or a strength by the rules, is about."""
+        if key in self.refused:
+            self.refused[key][1].append(subject)
+        elif known.made is not None and self.numbers[key]:
+            _, subjects, senses = self.made.setdefault(id(known.made), (known.made, [], set()))
+            subjects.append(subject)
+            senses.add(sense)
 
     def _strength(self, known: _Known, sense: str, level: Level, effect: Effect) -> Strength:
         """Return a strength as typed, else by the rules; none where nobody has typed it or no rule covers it."""
-        subject = effect.name if effect.kind == "axial" else effect.part
-        typed, made = known.typed, known.made
+        subject, typed, made = _subject(effect), known.typed, known.made
         if typed is not None:
             strength = resistance(typed, sense, self.method, level, subject=subject)
             if strength is not UNRATED:
@@ -122,12 +144,12 @@ class _Found:
         words = typed or TypedStrength(place=made.place)
         try:
             strength = ruled(made, words, sense, (self.method, level), subject=subject)
-        except MissingDataError:
-            raise
-        except InputError as error:
-            self.refused.setdefault((f"{sense}: {error}", self.method.title), []).append(subject)
+        except MissingDataError as error:
+            self.missing[self.key(known, sense, level)] = error
             return UNRATED
-        self.made.setdefault(id(made), (made, subject, set()))[2].add(sense)
+        except InputError as error:
+            self.refused[self.key(known, sense, level)] = f"{sense}: {error}", []
+            return UNRATED
         return strength
 
     @property
@@ -136,15 +158,19 @@ class _Found:
         notes: dict[tuple[str, str, str], list[str]] = {}
         if self.made:
             from movload.strength.parts import part_notes
-        for made, subject, senses in self.made.values():
-            for note in part_notes(made, subject, senses):
-                notes.setdefault((note.code, note.text, note.source), []).append(note.subject)
+        for made, subjects, senses in self.made.values():
+            for note in part_notes(made, subjects[0], senses):
+                whom = subjects if note.subject == subjects[0] else [note.subject]
+                notes.setdefault((note.code, note.text, note.source), []).extend(whom)
+        for said, subjects in self.refused.values():
+            notes.setdefault(("not-covered", f"not rated in {said}", self.method.title), []).extend(subjects)
         told = [Note(code, _some(subjects), text, source) for (code, text, source), subjects in notes.items()]
-        refused = [
-            Note("not-covered", _some(subjects), f"not rated in {said}", title)
-            for (said, title), subjects in self.refused.items()
-        ]
-        return (*refused, *told)
+        return tuple(sorted(told, key=lambda note: note.code != "not-covered"))
+
+
+def _subject(effect: Effect) -> str:
+    """Return what errors and notes call a row's part."""
+    return effect.name if effect.kind == "axial" else effect.part
 
 
 def _some(subjects: Sequence[str]) -> str:

@@ -33,6 +33,8 @@ _QUANTITIES: Final[dict[str, Quantity]] = {
     "m6": "warping",
 }  # fmt: skip
 """What a step's value is, by its unit."""
+_NOTHING: Final = 1e-9  # in any unit of a file: round-off of a place on an axis of symmetry
+_LONG: Final = 1e10  # as long a number as can be read without an exponent
 
 
 def explanation_parts(
@@ -66,13 +68,21 @@ def _step_text(step: Step, units: UnitSystem) -> str:
     """Return a step's value with its unit: forces and moments to one decimal more than in tables, the rest to five."""
     if step.unit == "Pa":
         symbol = "ksi" if units.is_us else "MPa"
-        return f"{step.value / unit_factor(symbol, 'stress'):.5g} {symbol}"
+        return f"{_plain(step.value / unit_factor(symbol, 'stress'))} {symbol}"
     quantity = _QUANTITIES.get(step.unit)
     if quantity is None:
-        return f"{step.value:.5g}" if step.unit == "-" else f"{step.value:.5g} {step.unit}"
+        return f"{_plain(step.value)} {step.unit}".removesuffix(" -")
     if quantity in {"force", "moment"}:
         return f"{number_text(step.value, quantity, units, more=1)} {units.symbol(quantity)}"
-    return f"{units.shown(step.value, quantity):.5g} {units.symbol(quantity)}"
+    return f"{_plain(units.shown(step.value, quantity))} {units.symbol(quantity)}"
+
+
+def _plain(value: float) -> str:
+    """Return a number to five figures, without an exponent where that can be read."""
+    if abs(value) < _NOTHING:
+        return "0"
+    short = f"{value:.5g}"
+    return f"{float(short):,.0f}".replace(",", " ") if "e+" in short and abs(value) < _LONG else short
 
 
 def _as_new_texts(strength: Strength, rating: Rating, units: UnitSystem) -> list[str]:
@@ -81,8 +91,9 @@ def _as_new_texts(strength: Strength, rating: Rating, units: UnitSystem) -> list
     symbol = units.symbol(quantity)
     if not math.isnan(strength.as_new):
         new, found = (number_text(value, quantity, units, more=1) for value in (strength.as_new, strength.value))
-        left = f"{100.0 * strength.value / strength.as_new:.0f} %" if strength.as_new > 0 else "0 %"
-        lines += ["", f"As new {new} {symbol}, as found {found} {symbol}: {left} is left."]
+        part = 100.0 * strength.value / strength.as_new if strength.as_new > 0 else 0.0
+        lost = f"As new {new} {symbol}, as found {found} {symbol}: {part:.0f} % is left."
+        lines += ["", lost if strength.value < strength.as_new else f"As new the same, {new} {symbol}: none is gone."]
     if math.isfinite(strength.permanent):
         limit = number_text(strength.permanent, quantity, units, more=1)
         lines += ["", f"Permanent load alone may use {limit} {symbol} of it (timber under load for good)."]

@@ -29,6 +29,7 @@ if TYPE_CHECKING:
     from movload.strength.aashto_lrfd import Plate
     from movload.strength.of_section import Axes
 
+_PACKED: Final = 15.0  # imin between packing plates of closely spaced parts, EN 1993-1-1 Table 6.9 (from memory)
 _AMPLIFIED: Final = 0.75  # phi_K on Pe of an amplified moment, AASHTO LRFD 4.5.3.2.2b (from memory)
 
 
@@ -95,7 +96,7 @@ def pushed_bar(made: Made, standard: str) -> Pushed:
     axes = axes_of(properties, held)
     plates = plates_of(made.section.middle, material.fy, material.modulus)
     slender, of_plates = _slender(made, plates, standard)
-    built_up, of_joints = _built_up(made, axes)
+    built_up, of_joints = _built_up(made, axes, standard)
     column = Column(
         area=properties.area, gross=gross.area, kl_x=axes.kl_x, kl_y=axes.kl_y, r_x=axes.r_x, r_y=axes.r_y,
         fy=material.fy, modulus=material.modulus, torsion=None, built_up=built_up, slender=slender,
@@ -152,11 +153,14 @@ def _slender(made: Made, plates: list[Plate], standard: str) -> tuple[float, tup
     return slender_reduction(plates, area, made.material.fy, made.material.modulus)
 
 
-def _built_up(made: Made, axes: Axes) -> tuple[Connectors | Lacing | None, tuple[Step, ...]]:
+def _built_up(made: Made, axes: Axes, standard: str) -> tuple[Connectors | Lacing | None, tuple[Step, ...]]:
     """Return how a bar's parts are held together; between skew axes the weaker one is weakened, which is safe."""
     joined = made.joined
     if joined is None:
         return None, ()
+    if standard == "en_1993" and not joined.laced and joined.spacing <= _PACKED * joined.radius:
+        said = "packing plates at most 15 imin apart make it one bar (6.4.4, Table 6.9)"
+        return None, (Step("a / imin", said, joined.spacing / joined.radius, "-", en_1993.TITLE),)
     axis = joined.axis
     if axes.skew:
         axis = "x" if axes.kl_x / axes.r_x > axes.kl_y / axes.r_y else "y"

@@ -16,6 +16,7 @@ from movload.errors import InputError, MissingDataError
 from movload.strength import nds
 from movload.strength.nds import Joist, Post
 from movload.strength.of_section import key_of
+from movload.strength.standards import TITLES
 from movload.strength.strength import Step, Strength
 
 if TYPE_CHECKING:
@@ -97,7 +98,7 @@ def _require_covered(made: Made, standard: str) -> None:
     """Refuse what the NDS's rules here do not cover."""
     section = made.section.section
     if standard != _STANDARD:
-        raise InputError(f"timber by {standard} is not covered: type its strength", place=made.material.title)
+        raise InputError(f"timber by {TITLES[standard]} is not covered: type its strength", place=made.material.title)
     if not (isinstance(section, Section) and [type(piece.shape) for piece in section.pieces] == [SawnTimber]):
         raise InputError("a timber's section is one timber of a width and a depth: type its strength",
                          place=section.title)  # fmt: skip

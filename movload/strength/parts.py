@@ -15,6 +15,7 @@ from movload.strength.of_bars import bar_strength
 from movload.strength.of_beams import beam_strength
 from movload.strength.of_section import axes_of
 from movload.strength.of_timber import timber_strength
+from movload.strength.standards import STANDARDS, TITLES
 from movload.strength.strength import Step, Strength
 from movload.strength.warnings import slenderness_notes
 
@@ -24,7 +25,6 @@ if TYPE_CHECKING:
     from movload.bridge.loss import CrossSection
     from movload.bridge.made import Made
 
-STANDARDS: Final = ("aashto_lrfd", "mbe_allowable_stress", "mbe_load_factor", "en_1993")
 SENSES: Final = ("tension", "compression", "moment", "hogging", "shear")
 _AXIAL: Final = frozenset({"tension", "compression"})
 _EXEMPT: Final = frozenset({"bar", "round"})  # eyebars, rods and plates may be as slender as they are in tension
@@ -100,7 +100,7 @@ def _strength(made: Made, sense: str, standard: str, phi: Mapping[str, float], *
     if isinstance(section, Section) and any(piece.shape.kind == "timber" for piece in section.pieces):
         raise InputError(f"a sawn timber is not of {material.kind}", place=section.title)
     if material.kind == "cast iron":
-        rule = f"no formula of {standard} is for cast iron: type nominal or reduced strengths"
+        rule = f"no formula of {TITLES[standard]} is for cast iron: type nominal or reduced strengths"
         raise InputError(rule, place=material.title)
     return (bar_strength if sense in _AXIAL else beam_strength)(made, sense, standard, phi)
 

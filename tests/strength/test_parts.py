@@ -477,9 +477,9 @@ REFUSED: Final = {
     "cast beam": (made(BEAM, material=CAST), "hogging", "en_1993", "cast iron breaks without warning"),
     "cast column": (
         made(BAR, material=CAST, held=HELD), "compression", "mbe_load_factor",
-        "cast: no formula of mbe_load_factor is for cast iron: type nominal or reduced strengths",
+        "cast: no formula of MBE 6B, load factor is for cast iron: type nominal or reduced strengths",
     ),
-    "timber": (timber(), "tension", "aashto_lrfd", "larch: timber by aashto_lrfd is not covered: type its strength"),
+    "timber": (timber(), "tension", "aashto_lrfd", "larch: timber by AASHTO LRFD is not covered: type its strength"),
     "timber pair": (
         made(LACED, material=TIMBER), "tension", "mbe_allowable_stress", "two channels: a timber's section is one"
     ),
