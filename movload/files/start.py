@@ -19,6 +19,8 @@ _MOST_REPEATS: Final = 1000
 _DIGITS: Final = 9  # of a count are read: with more than four it is refused anyway
 # Area, modulus and density of steel, with their units: right beside any units that the file may have.
 _STAND_IN: Final = ("2000 mm2", "200 GPa", "7850 kg/m3")
+_EYEBAR_US: Final = tuple(0.0254 * inches for inches in (3.0, 1.0, 7.5, 3.25, 2.0))  # m; an example's sizes
+_EYEBAR: Final = (0.075, 0.025, 0.190, 0.080, 0.050)
 _STAND_IN_US: Final = ("3 in2", "29000 ksi", "490 lb/ft3")
 
 
@@ -76,6 +78,7 @@ def starter_text(title: str, layout: Layout, units: UnitSystem) -> str:
     area, modulus, density = _STAND_IN_US if units.is_us else _STAND_IN
     first, last = laid_out.panel_points[0], laid_out.panel_points[-1]
     roles = dict.fromkeys(bar.role for bar in laid_out.bars)
+    bar = f"{laid_out.bars[0].start}-{laid_out.bars[0].end}"
     left, out = ("6", "5, -2.5, 0, 2.5, 5") if units.is_us else ("1.9", "1.6, -0.8, 0, 0.8, 1.6")
     right, stringers = f"-{left}", f"-{out}"
     groups = "\n".join(_group(role, area, modulus) for role in roles)
@@ -101,7 +104,7 @@ depths = {_numbers(layout.depths, units)}
 # One group for the bars of each role; bars = ["U1-L2"] in a group of its own gives single bars their own values.
 # area: a stand-in, put the measured one. modulus: that of steel. density: "{density}" is common for steel.
 # permits: the axial force each bar may carry, margin included, in {units.symbol("force")}.
-{groups}
+{_made_of(bar, units)}{groups}
 [deck]                      # looking toward +x, z across from the bridge's centre line, + to the left
 truss_spacing = "?"         # between the trusses' middle planes
 kerbs = "?"                 # [right, left], e.g. [{right}, {left}]
@@ -122,6 +125,33 @@ detail_allowance = "?"      # of the members' weight, for lacing, rivets, pins a
 
 [rating]
 impact = "?"                # a fraction, e.g. 0.30, or "by loaded length"
+"""
+
+
+def _made_of(bar: str, units: UnitSystem) -> str:
+    """Return comment lines that say how a group is written by section and material; the sizes are an example's."""
+    sizes = _EYEBAR_US if units.is_us else _EYEBAR
+    width, thickness, head, pin, off = (f"{units.shown(size, 'section'):.4g}" for size in sizes)
+    small = units.symbol("section")
+    shape = f'shape = "eyebar", width = {width}, thickness = {thickness}, head_width = {head}, pin_hole = {pin}'
+    return f"""#
+# Or say what a group is made of, and the factor set's standard finds its strengths: in place of area, modulus, density
+# and permits it then has section and material, and the tables below stand without their #. Sizes in {small}.
+#   section = "tie"
+#   material = "iron"
+#   unbraced_x = "joint to joint"   # only where it is compressed: free length in the truss's plane, and
+#   unbraced_y = "joint to joint"   # out of it
+#   k_x = 1.0
+#   k_y = 1.0
+#   losses = [{{ where = "start end", fraction = "30 %", bar = "{bar}", truss = "left" }}]
+# [materials.iron]
+# kind = "wrought iron"             # or steel
+# built = 1889                      # or fy, fu, modulus, density and source
+# [sections.tie]
+# pieces = [
+#   {{ {shape}, x = -{off} }},
+#   {{ {shape}, x = {off} }},
+# ]
 """
 
 

@@ -12,6 +12,7 @@ from numpy.testing import assert_allclose
 import movload
 from movload.bridge.layout import DECKS, FORMS, Layout, lay_out
 from movload.errors import InputError, MissingDataError
+from movload.files.factor_sets import read_factor_set
 from movload.files.read import bridge_from
 from movload.files.start import depths_question, lengths_from, starter_text
 from movload.units import UnitSystem
@@ -105,9 +106,25 @@ def test_the_floor_is_there_to_be_uncommented(units: UnitSystem) -> None:
     assert ratings.coverage.not_rated == ("deck planks", "deck")
 
 
+@pytest.mark.parametrize("units", [METRIC, US], ids=["metric", "US"])
+def test_sections_are_there_to_be_uncommented(units: UnitSystem) -> None:
+    """A group by section and material, as its comment shows, is rated by the rules, its loss on one truss only."""
+    text = starter_text("A bridge", layout("pratt", "through"), units)
+    tables = re.sub(r"(?m)^# (\[materials|\[sections|kind = \"wrought|built = |pieces = |  \{ shape|\])", r"\1", text)
+    keys = "\n".join(line[4:] for line in re.findall(r"(?m)^#   .*$", text) if "shape" not in line)
+    group = re.search(r'(?s)\[members\."top chord"\]\n(.*?)\n\n', tables)
+    assert group is not None
+    named = f'condition = "good"\nsystem = "other"\n{keys}'
+    made = tables.replace(group[0], group[0].replace(group[1], named))
+    bridge = bridge_from(filled(made), "filled.toml")
+    assert sorted({both[0] is both[1] for both in bridge.made.values()}) == [False, True]
+    ratings = movload.rate(bridge, [movload.read_vehicle("type_3")], read_factor_set("load_factor"))
+    assert any(row.as_new > row.strength for row in ratings.rows(0))
+
+
 @pytest.mark.parametrize("number", range(21))
 def test_one_open_place_is_enough_to_refuse(number: int) -> None:
-    text = filled(starter_text("A bridge", layout("howe", "through"), METRIC))
+    text = re.sub(r"(?m)^#.*\n", "", filled(starter_text("A bridge", layout("howe", "through"), METRIC)))
     written = "|".join(f"(?<== ){re.escape(answer)}" for answer in ANSWERS.values())
     answers = [match.span() for match in re.finditer(written, text)]
     assert len(answers) == 21  # three of each of 5 groups, three of the deck, two permanent, one impact
