@@ -78,7 +78,8 @@ def starter_text(title: str, layout: Layout, units: UnitSystem) -> str:
     area, modulus, density = _STAND_IN_US if units.is_us else _STAND_IN
     first, last = laid_out.panel_points[0], laid_out.panel_points[-1]
     roles = dict.fromkeys(bar.role for bar in laid_out.bars)
-    bar = f"{laid_out.bars[0].start}-{laid_out.bars[0].end}"
+    tie = next((one for one in laid_out.bars if one.role == "bottom chord"), laid_out.bars[0])
+    bar = f"{tie.start}-{tie.end}"
     left, out = ("6", "5, -2.5, 0, 2.5, 5") if units.is_us else ("1.9", "1.6, -0.8, 0, 0.8, 1.6")
     right, stringers = f"-{left}", f"-{out}"
     groups = "\n".join(_group(role, area, modulus) for role in roles)

@@ -112,7 +112,7 @@ def test_sections_are_there_to_be_uncommented(units: UnitSystem) -> None:
     text = starter_text("A bridge", layout("pratt", "through"), units)
     tables = re.sub(r"(?m)^# (\[materials|\[sections|kind = \"wrought|built = |pieces = |  \{ shape|\])", r"\1", text)
     keys = "\n".join(line[4:] for line in re.findall(r"(?m)^#   .*$", text) if "shape" not in line)
-    group = re.search(r'(?s)\[members\."top chord"\]\n(.*?)\n\n', tables)
+    group = re.search(r'(?s)\[members\."bottom chord"\]\n(.*?)\n\n', tables)
     assert group is not None
     named = f'condition = "good"\nsystem = "other"\n{keys}'
     made = tables.replace(group[0], group[0].replace(group[1], named))
