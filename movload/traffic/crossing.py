@@ -107,6 +107,10 @@ class Train:
         Whether all shares are known to be one number.
     fixed
         Whether a rating holds it fixed: traffic beside the vehicle that is asked about.
+    strip_shares, tail_share
+        Share of each strip that reaches the part (S,) [-], and of the tail.
+    relieving
+        Part of each load that counts where it relieves [-] (see `Case`).
     """
 
     case: str
@@ -119,6 +123,9 @@ class Train:
     factor: float = field(default=1.0, kw_only=True)
     even: bool = field(default=False, kw_only=True)
     fixed: bool = field(default=False, kw_only=True)
+    strip_shares: Floats = field(default_factory=lambda: held(np.zeros(0)), kw_only=True)
+    tail_share: float = field(default=0.0, kw_only=True)
+    relieving: float = field(default=1.0, kw_only=True)
 
     @property
     def felt(self) -> Floats:
@@ -149,6 +156,8 @@ def _of_whole_case(case: Case, *, dynamic: bool) -> Train:
 
 def axles_only(case: Case) -> Vehicle:
     """Return a case's vehicle, or refuse what would otherwise be left out in silence."""
+    if case.relieving != 1.0:
+        raise InputError("a load that counts less where it relieves cannot be swept yet", place=f"case {case.title}")
     if case.moving is None or case.fills:
         raise InputError("loads that fill the bridge cannot be swept yet", place=f"case {case.title}")
     if case.moving.strips or case.moving.tail is not None:

@@ -44,6 +44,9 @@ class Case:
         Multiplier on the whole case [-], above 0.
     lanes
         How many stand abreast; 0 leaves it to the crossing.
+    relieving
+        Part of each load that counts where it relieves the effect [-], 0 to 1: 1 for a real vehicle, 0 for a load model
+        that leaves out what relieves, between them for axle weights known within a tolerance.
     """
 
     title: str
@@ -51,9 +54,14 @@ class Case:
     fills: tuple[Fill, ...] = ()
     factor: float = 1.0
     lanes: int = field(default=0, kw_only=True)
+    relieving: float = field(default=1.0, kw_only=True)
 
     def __post_init__(self) -> None:
         """Refuse a case that loads nothing."""
+        if not 0.0 <= self.relieving <= 1.0:
+            raise InputError(
+                f"what counts where it relieves is 0 to 1, got {self.relieving}", place=f"case {self.title}"
+            )
         if not (math.isfinite(self.factor) and self.factor > 0):
             raise InputError(f"a factor must be above 0, got {self.factor}", place=f"case {self.title}")
         if self.moving is None and not self.fills:

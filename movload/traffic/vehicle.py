@@ -21,20 +21,49 @@ Spacing: TypeAlias = "float | tuple[float, float]"
 class Strip:
     """A uniform load of finite length that moves with the vehicle (a crawler track, a car of a train).
 
-    ``start`` is the distance of its front end behind the front axle [m], ``length`` [m], ``load`` [N/m].
+    Parameters
+    ----------
+    start
+        Distance of its front end behind the front axle [m]; negative where it reaches before it.
+    length
+        [m], above 0.
+    load
+        Of both sides together [N/m], 0 or more.
+    gauge
+        Between the middles of its two sides [m]; nan when not stated.
+
+    Raises
+    ------
+    InputError
+        No length, or a load that is none.
     """
 
     start: float
     length: float
     load: float
+    gauge: float = field(default=math.nan, kw_only=True)
+
+    def __post_init__(self) -> None:
+        """Refuse a strip without length, and a load that lifts."""
+        _require_uniform("strips", self.start, self.load, self.gauge)
+        if not (math.isfinite(self.length) and self.length > 0):
+            raise InputError(f"a uniform load needs a length above 0, got {self.length:g} m", place="strips.length")
 
 
 @dataclass(frozen=True, slots=True)
 class Tail:
-    """A uniform load that follows the vehicle and never ends: ``start`` behind the front axle [m], ``load`` [N/m]."""
+    """A uniform load that follows the vehicle and never ends: ``start`` behind the front axle [m], ``load`` [N/m].
+
+    ``gauge`` is that of its wheels [m]; nan when not stated.
+    """
 
     start: float
     load: float
+    gauge: float = field(default=math.nan, kw_only=True)
+
+    def __post_init__(self) -> None:
+        """Refuse a load that lifts."""
+        _require_uniform("tail", self.start, self.load, self.gauge)
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -116,6 +145,16 @@ class Vehicle:
                     place=f"{self.title}: spacings[{number}]",
                 )
         return self._distances
+
+
+def _require_uniform(place: str, start: float, load: float, gauge: float) -> None:
+    """Refuse a uniform load that starts nowhere, lifts, or has no gauge where one is stated."""
+    if not math.isfinite(start):
+        raise InputError(f"a start is a finite distance, got {start:g} m", place=f"{place}.start")
+    if not (math.isfinite(load) and load >= 0):
+        raise InputError(f"a uniform load must be 0 or more, got {load:g} N/m", place=f"{place}.load")
+    if not (math.isnan(gauge) or (math.isfinite(gauge) and gauge > 0)):
+        raise InputError(f"a gauge must be above 0, got {gauge:g} m", place=f"{place}.gauge")
 
 
 def _spacing(gap: Spacing | Sequence[float]) -> Spacing:
