@@ -23,16 +23,23 @@ from numpy.testing import assert_allclose
 import movload
 from movload.bridge.truss import Member, Support, Truss
 from movload.files.library import vehicle_names
+from movload.traffic.vehicle import Vehicle
 
 if TYPE_CHECKING:
     from movload.arrays import Floats
-    from movload.traffic.loading import Loading
-    from movload.traffic.vehicle import Vehicle
+    from movload.traffic.loading import Case, Loading
 
 FOLDER = Path(__file__).resolve().parents[1] / "vehicles"
 TABLE = Path(__file__).with_name("data") / "vehicles.csv"
 FILES = sorted(FOLDER.glob("*.toml"))
-INVENTED = {"tractor_slurry_tanker", "grain_cart", "combine", "log_truck", "snow_groomer", "fire_engine"}
+INVENTED = {
+    "tractor_slurry_tanker", "grain_cart", "combine", "log_truck", "snow_groomer", "fire_engine", "snow_groomer_tracks",
+    "tracked_excavator",
+}  # fmt: skip
+CROWDS = {"crowd_90_psf", "en_crowd"}
+LANES = {"h20_lane", "hs20_lane"}
+EN = {"en_footbridge_service_vehicle", "lm71", "sw0", "sw2", "en_lm1_lane_1", "en_lm1_lane_2", "en_lm1_lane_3"}
+OF_CASES = {"hl93", "lane_type_legal"}
 FOOT = 0.3048  # m, exact (NIST SP 811, B.8, from memory)
 KIP = 4448.2216152605  # N, exact (NIST SP 811, B.8, from memory)
 
@@ -60,6 +67,12 @@ def recalled() -> list[dict[str, str]]:
 ROWS = recalled()
 
 
+def only_case(name: str) -> Case:
+    """Return the one case of a shipped loading."""
+    (case,) = movload.read_vehicle(name).cases
+    return case
+
+
 def only_vehicle(loading: Loading) -> Vehicle:
     """Return the one vehicle of a loading with one case."""
     (case,) = loading.cases
@@ -80,11 +93,11 @@ def test_every_vehicle_reads_and_says_what_it_is(path: Path) -> None:
     assert re.search(r'^kind = "\w+"$', text, re.MULTILINE), "a kind is typed, not left to a default"
     assert loading.source
     assert re.fullmatch(r"[a-z0-9]+(_[a-z0-9]+)*", path.stem)
-    assert loading.gross > 0
+    assert (loading.gross == 0) == (path.stem in CROWDS)
 
 
 def test_the_library_holds_these_vehicles_and_no_others() -> None:
-    expected = INVENTED | {row["file"] for row in ROWS} | {"en_footbridge_service_vehicle"}
+    expected = INVENTED | {row["file"] for row in ROWS} | CROWDS | LANES | EN | OF_CASES
     assert set(vehicle_names()) == expected == {path.stem for path in FILES}
 
 
@@ -94,7 +107,10 @@ def test_axles_are_those_of_the_table(row: dict[str, str]) -> None:
     loading = movload.read_vehicle(row["file"])
     vehicle = only_vehicle(loading)
     assert_allclose(vehicle.loads / KIP, numbers(row["axle_loads_kip"]), rtol=1e-12)
-    assert_allclose(np.diff(vehicle.distances) / FOOT, numbers(row["spacings_ft"]), rtol=1e-12)
+    for gap, typed in zip(vehicle.spacings, row["spacings_ft"].split(), strict=True):
+        assert_allclose(
+            np.array(gap) / FOOT, numbers(typed.replace("-", " ")) if "-" in typed else float(typed), rtol=1e-12
+        )
     assert_allclose(loading.gross / KIP, float(row["gross_kip"]), rtol=1e-12)
 
 
@@ -132,9 +148,131 @@ def test_exactly_the_invented_say_so_and_give_gauges() -> None:
     said = {path.stem for path in FILES if movload.read_vehicle(path).source == "invented"}
     assert said == INVENTED
     for name in INVENTED:
-        vehicle = only_vehicle(movload.read_vehicle(name))
-        assert len(vehicle.gauges) == vehicle.loads.size
-        assert 1.5 < min(vehicle.gauges) <= max(vehicle.gauges) < 3.5
+        for case in movload.read_vehicle(name).cases:
+            assert case.moving is not None
+            gauges = [*case.moving.gauges, *(strip.gauge for strip in case.moving.strips)]
+            assert len(gauges) == case.moving.loads.size + len(case.moving.strips)
+            assert 1.5 < min(gauges) <= max(gauges) < 3.5
+
+
+@pytest.mark.parametrize(("name", "weight", "truck"), [("h20_lane", 40, "h20"), ("hs20_lane", 72, "hs20")])
+def test_lane_loads(name: str, weight: float, truck: str) -> None:
+    """0.64 kip/ft with 18 kip (Khan, Table 6.7, read) or 26 kip (from memory); it stands for its truck's weight."""
+    case = only_case(name)
+    assert case.moving is None
+    lane, edge = case.fills
+    assert (lane.shape, edge.shape, lane.where, edge.where) == ("uniform", "knife edge", "adverse", "adverse")
+    assert_allclose([lane.load * FOOT / KIP, edge.load / KIP, edge.web_load / KIP], [0.64, 18, 26], rtol=1e-12)
+    assert_allclose(movload.read_vehicle(name).gross / KIP, weight, rtol=1e-12)
+    assert_allclose(movload.read_vehicle(name).gross, movload.read_vehicle(truck).gross, rtol=1e-12)
+
+
+def test_hl93_is_truck_or_tandem_with_the_lane() -> None:
+    """Lane 0.64 kip/ft without impact (Khan, p. 167, read); truck, tandem of 25 kip at 4 ft, two trucks from memory."""
+    loading = movload.read_vehicle("hl93")
+    truck, tandem, two = loading.cases
+    assert loading.dynamic
+    for case in loading.cases:
+        assert_allclose(case.fills[0].load * FOOT / KIP, 0.64, rtol=1e-12)
+        assert (case.fills[0].impact, case.relieving) == (False, 0.0)
+        assert case.moving is not None
+    assert truck.moving is not None
+    assert tandem.moving is not None
+    assert_allclose(tandem.moving.loads / KIP, [25, 25], rtol=1e-12)
+    assert_allclose(tandem.moving.distances / FOOT, [0, 4], rtol=1e-12)
+    for case, ranged in ((truck, True), (two, False)):
+        assert case.moving is not None
+        assert_allclose(case.moving.loads / KIP, [8, 32, 32], rtol=1e-12)
+        assert case.moving.has_ranges == ranged
+    assert_allclose(np.array(truck.moving.spacings[1]) / FOOT, [14, 30], rtol=1e-12)
+    assert (two.factor, two.continuous, truck.continuous, tandem.convoy) == (0.9, True, False, None)
+    assert two.convoy is not None
+    assert two.convoy.most == 2
+    assert_allclose(two.convoy.headway / FOOT, 50, rtol=1e-12)
+
+
+def test_the_lane_type_legal_load_is_three_quarters_of_a_type_3_3() -> None:
+    """0.75 x Type 3-3 with 0.2 kip/ft above 200 ft; two of them 30 ft apart where continuous (from memory)."""
+    long, two = movload.read_vehicle("lane_type_legal").cases
+    whole = only_vehicle(movload.read_vehicle("type_3_3"))
+    for case in (long, two):
+        assert case.moving is not None
+        assert_allclose(case.moving.loads, 0.75 * whole.loads, rtol=1e-12)
+        assert case.moving.spacings == whole.spacings
+        assert_allclose(case.fills[0].load * FOOT / KIP, 0.2, rtol=1e-12)
+        assert not case.fills[0].impact
+    assert_allclose([long.above / FOOT, two.above], [200, 0], rtol=1e-12)
+    assert (long.continuous, long.convoy, two.continuous) == (False, None, True)
+    assert two.convoy is not None
+    assert_allclose(two.convoy.headway / FOOT, 30, rtol=1e-12)
+    assert_allclose(movload.read_vehicle("lane_type_legal").gross, whole.gross, rtol=1e-12)
+
+
+def test_cooper_e80_has_the_published_moment_sums() -> None:
+    """Moments of one rail's wheels 1 to 8 of an E40 about wheel 8, and 1 to 4 about wheel 4: 2851 and 480 kip ft.
+
+    C. A. Ellis, *Essentials in the Theory of Framed Structures*, McGraw-Hill 1922, pp. 165-166 (read). An E40's rail
+    carries a quarter of an E80's track. The tail of 8 kip/ft (read) begins 5 ft behind the last axle (from memory).
+    """
+    vehicle = only_vehicle(movload.read_vehicle("cooper_e80"))
+    loads, at = vehicle.loads / KIP / 4, vehicle.distances / FOOT
+    for last, total in ((8, 2851.0), (4, 480.0)):
+        assert_allclose(loads[:last] @ (at[last - 1] - at[:last]), total, rtol=1e-12)
+    assert vehicle.tail is not None
+    assert_allclose(vehicle.tail.load * FOOT / KIP, 8.0, rtol=1e-12)
+    assert_allclose(vehicle.tail.start / FOOT, at[-1] + 5.0, rtol=1e-12)
+
+
+def test_lm71() -> None:
+    """Four axles of 250 kN at 1.6 m, 80 kN/m outside (an article on UIC 702, read), from 0.8 m on (from memory)."""
+    case = only_case("lm71")
+    assert case.moving is not None
+    assert case.moving.loads.tolist() == [250e3] * 4
+    assert_allclose(case.moving.distances, [0, 1.6, 3.2, 4.8], rtol=1e-15)
+    (fill,) = case.fills
+    assert (fill.load, fill.where, fill.clear, case.relieving) == (80e3, "outside", (0.8, 0.8), 0.0)
+
+
+@pytest.mark.parametrize(("name", "load", "length", "gap"), [("sw0", 133, 15, 5.3), ("sw2", 150, 25, 7)])
+def test_sw(name: str, load: float, length: float, gap: float) -> None:
+    """133 kN/m on twice 15 m, 5.3 m apart; 150 kN/m on twice 25 m, 7 m apart (from memory); whole and once."""
+    case = only_case(name)
+    assert case.moving is not None
+    assert case.moving.loads.size == 0
+    assert [(one.load, one.start, one.length) for one in case.moving.strips] == [
+        (load * 1e3, 0.0, length), (load * 1e3, pytest.approx(length + gap, rel=1e-15), length),
+    ]  # fmt: skip
+    assert (case.relieving, case.convoy, case.fills) == (1.0, None, ())
+    assert_allclose(movload.read_vehicle(name).gross, 2e3 * load * length, rtol=1e-15)
+
+
+@pytest.mark.parametrize(("lane", "axle", "area"), [(1, 300, 9.0), (2, 200, 2.5), (3, 100, 2.5)])
+def test_en_lm1(lane: int, axle: float, area: float) -> None:
+    """Tandems of two axles of 300, 200 and 100 kN, 9 and 2.5 kN/m2 (read), 1.2 m and lanes of 3 m (from memory)."""
+    loading, case = movload.read_vehicle(f"en_lm1_lane_{lane}"), only_case(f"en_lm1_lane_{lane}")
+    assert case.moving is not None
+    assert case.moving.loads.tolist() == [axle * 1e3] * 2
+    assert case.moving.spacings == (1.2,)
+    assert_allclose(case.fills[0].load, area * 1e3 * 3.0, rtol=1e-15)
+    assert not loading.dynamic  # impact is in the model
+    assert "one lane alone" in loading.notes[0]
+
+
+def test_crowds() -> None:
+    """90 psf is 4309 N/m2 (from memory; the conversion exact); EN's dense crowd begins at 5 kN/m2 (from memory)."""
+    for name, load, density in (("crowd_90_psf", 90 * KIP / 1e3 / FOOT**2, ""), ("en_crowd", 5e3, "en crowd")):
+        loading = movload.read_vehicle(name)
+        fills = [case.fills for case in loading.cases]
+        assert [one.across for (one,) in fills] == ["full width", "left half", "right half"]
+        assert_allclose([one.load for (one,) in fills], load, rtol=1e-12)
+        assert all(one.per_area and one.density == density for (one,) in fills)
+        assert (loading.kind, loading.dynamic) == ("crowd", False)
+
+
+def test_the_groomer_weighs_the_same_on_its_tracks() -> None:
+    """Both invented; to the third digit, as their loads are written."""
+    axles, tracks = (movload.read_vehicle(name).gross for name in ("snow_groomer", "snow_groomer_tracks"))
+    assert_allclose(tracks, axles, rtol=5e-3)
 
 
 def test_a_weighbridge_in_tonnes_becomes_newtons() -> None:
@@ -182,6 +320,15 @@ def test_simple_span_moments_and_shears_do_not_change(name: str, rows: tuple[tup
     found = np.array([moment_and_shear(vehicle, span) for span in (40.0, 60.0, 100.0)])
     assert_allclose(found[:, 0], [moment for moment, _ in rows], rtol=0, atol=0.0505)
     assert_allclose(found[:, 1], [shear for _, shear in rows], rtol=0, atol=0.00505)
+
+
+def test_nrl_at_its_least_spacing_does_not_change() -> None:
+    """Regression values (derived) with the first spacing at 6 ft; to half of the last digit and a tie in rounding."""
+    ranged = only_vehicle(movload.read_vehicle("nrl"))
+    vehicle = Vehicle("NRL, 6 ft", ranged.loads, [6 * FOOT, *ranged.spacings[1:]])
+    found = np.array([moment_and_shear(vehicle, span) for span in (40.0, 60.0, 100.0)])
+    assert_allclose(found[:, 0], [537.6, 937.1, 1736.6], rtol=0, atol=0.0505)
+    assert_allclose(found[:, 1], [52.70, 61.60, 68.96], rtol=0, atol=0.00505)
 
 
 @pytest.mark.parametrize(("span", "moment"), [(30.0, 246.61), (40.0, 345.96), (50.0, 445.57)])

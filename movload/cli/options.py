@@ -41,26 +41,16 @@ def read_loadings(names: Sequence[str]) -> list[Loading]:
     Raises
     ------
     InputError
-        A vehicle is named twice, or has a spacing that is a range.
+        A vehicle is named twice.
     """
-    loadings = [_with_one_distance(name) for name in names]
+    from movload.files.library import read_vehicle
+
+    loadings = [read_vehicle(name) for name in names]
     titles = [loading.title for loading in loadings]
     for number, title in enumerate(titles):
         if title in titles[:number]:
             raise InputError(f'"{title}" is asked for twice', place=names[number])
     return loadings
-
-
-def _with_one_distance(name: str) -> Loading:
-    """Return a vehicle; one with a range of spacings cannot be placed yet, and its file is named here."""
-    from movload.files.library import read_vehicle
-
-    loading = read_vehicle(name)
-    for case in loading.cases:
-        if case.moving is not None and case.moving.has_ranges:
-            with naming(name):
-                _ = case.moving.distances
-    return loading
 
 
 def one_line(text: str) -> str:

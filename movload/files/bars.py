@@ -52,7 +52,7 @@ def strengths_of(table: BridgeFile, laid_out: LaidOut, catalogue: Catalogue) -> 
     Raises
     ------
     InputError
-        A strength below 0, or given twice.
+        A strength below 0, or given twice; a metal said to be timber.
     """
     of_group = {
         title: strength_of(group, f"members.{written_key(title)}", catalogue) for title, group in table.members.items()
@@ -64,6 +64,9 @@ def strengths_of(table: BridgeFile, laid_out: LaidOut, catalogue: Catalogue) -> 
 def strength_of(table: MemberGroup | PartTable, place: str, catalogue: Catalogue) -> TypedStrength:
     """Return a group's or a floor part's typed strengths; ``place`` is its key. A timber's material says timber."""
     said = [getattr(table, footing) for footing in FOOTINGS]
+    if table.timber and table.material is not None and not catalogue.is_timber(table):
+        kind = catalogue.tables[table.material].kind
+        raise InputError(f"its material is {kind}: impact is left out on timber alone", place=f"{place}.timber")
     try:
         return TypedStrength(
             *({} if one is None else one.model_dump(exclude_none=True) for one in said),

@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING, Final
 
 from movload.bridge.loss import AsFound, Loss
 from movload.bridge.made import Bent, Held, Joined, Made, Sideways
+from movload.bridge.section import Section
 from movload.errors import InputError, MissingDataError, UnknownNameError, nearest_name
 from movload.files.bars import groups_of, joints_of
 from movload.files.places import in_file, require_one_of
@@ -17,6 +18,7 @@ if TYPE_CHECKING:
     from collections.abc import Mapping, Sequence
 
     from movload.bridge.layout import LaidOut
+    from movload.bridge.loss import CrossSection
     from movload.bridge.truss import Truss
     from movload.files.schema.bridge import BridgeFile, MemberGroup
     from movload.files.schema.makes import BentTable, JoinedTable, LossTable
@@ -25,6 +27,7 @@ if TYPE_CHECKING:
 _HELD: Final = ("unbraced_x", "unbraced_y", "k_x", "k_y", "unbraced_z", "k_z")
 _NEEDED: Final = _HELD[:4]
 _SIDEWAYS: Final = ("c_b", "stiffeners", "lever")
+_TOGETHER: Final = 1e-3  # m; centroids that near stand in one line
 _DIGITS: Final = 9  # of a length in metres: bars that differ by round-off alone are alike
 
 
@@ -105,6 +108,7 @@ def _made(
     for number in range(len(losses)):
         with in_file(f"{place}.losses[{losses[number][0]}]", table):
             AsFound(section, tuple(loss for _, loss in losses[: number + 1]))
+    _require_joints(section, how.get("joined"), f"{place}.joined")
     typed = catalogue.tables[table.material or ""]
     _require_curves(table.curves or (), f"{place}.curves")
     with in_file(place, table):
@@ -117,6 +121,25 @@ def _made(
             place=place,
             **how,  # type: ignore[arg-type]  # held, joined, bent or sideways
         )
+
+
+def _require_joints(section: CrossSection, joined: object, place: str) -> None:
+    """Refuse what joins parts that do not stand apart that way, and a part that is stiffer than the whole."""
+    if not (isinstance(joined, Joined) and isinstance(section, Section)):
+        return
+    least = math.sqrt(section.properties.i_min / section.properties.area)
+    if joined.radius > least * (1 + 1e-6):  # round-off; sum of parts about their own axes is less than the whole
+        said = f"the least radius of one part is at most that of the whole section, {least:.4g} m"
+        raise InputError(f"{said}, got {joined.radius:.4g} m", place=f"{place}.radius")
+    parts = [piece for piece in section.pieces if piece.shape.kind != "plate"]  # a cover plate lies across the others
+    middles = [Section("", (piece,)).properties for piece in (parts if len(parts) > 1 else section.pieces)]
+    apart = {axis: max(places) - min(places) for axis, places in (
+        ("y", [middle.x for middle in middles]), ("x", [middle.y for middle in middles])
+    )}  # fmt: skip
+    other = "x" if joined.axis == "y" else "y"
+    if apart[joined.axis] < _TOGETHER <= apart[other]:
+        said = f'its parts stand apart across "{other}" and not across "{joined.axis}"'
+        raise InputError(said, place=f"{place}.axis")
 
 
 def _require_curves(curves: Sequence[str], place: str) -> None:
@@ -177,10 +200,11 @@ def _joined(table: JoinedTable, place: str) -> Joined:
     """Return what holds the parts of a bar together."""
     for key in ("lacing_area", "planes", "radius"):
         value = getattr(table, key)
+        unit = {"lacing_area": " m2", "radius": " m"}.get(key, "")
         if value is not None and not value > 0:
-            raise InputError(f"must be above 0, got {value:g}", place=f"{place}.{key}")
+            raise InputError(f"must be above 0, got {value:g}{unit}", place=f"{place}.{key}")
         if value is not None and key != "radius" and table.radius is not None:
-            raise InputError(f"is of lacing, and radius of battens or stitches: keep one, got {value:g}",
+            raise InputError(f"is of lacing, and radius of battens or stitches: keep one, got {value:g}{unit}",
                              place=f"{place}.{key}")  # fmt: skip
     with in_file(place, table, "joined"):
         return Joined(

@@ -1,4 +1,4 @@
-"""A bridge file becomes a bridge, a vehicle file a loading: names only, every number is SI already."""
+"""A bridge file becomes a bridge: names only, every number is SI already. `vehicle_from` is in ``files/vehicles``."""
 
 from __future__ import annotations
 
@@ -18,17 +18,17 @@ from movload.files.decks import deck_of, floor_of, permanent_of
 from movload.files.makes import made_of
 from movload.files.schema.bridge import BridgeFile, DeckTable, LayoutTable, SupportTable
 from movload.files.schema.checked import checked
-from movload.files.schema.vehicle import VehicleFile
 from movload.files.sections import catalogue_of, require_used
 from movload.files.toml import parsed, read_text, without_placeholders
-from movload.traffic.loading import Loading
-from movload.traffic.vehicle import Vehicle
+from movload.files.vehicles import vehicle_from
 
 if TYPE_CHECKING:
     from collections.abc import Callable, Iterator
 
     from movload.bridge.deck import Deck, PanelPoint
     from movload.units import UnitSystem
+
+__all__ = ["bridge_from", "read_bridge", "vehicle_from"]
 
 
 def read_bridge(path: str | Path) -> Bridge:
@@ -146,56 +146,3 @@ def _panel_points(deck: DeckTable, laid_out: LaidOut) -> tuple[PanelPoint, ...]:
     left = [] if deck.left_abutment is None else [deck.left_abutment]
     right = [] if deck.right_abutment is None else [deck.right_abutment]
     return (*left, *joints, *right)
-
-
-def vehicle_from(text: str, place: str) -> Loading:
-    """Return the loading in a vehicle file's text; ``place`` is what errors call the file."""
-    try:
-        return _loading(checked(VehicleFile, parsed(text))[0])
-    except MovloadError as error:
-        raise error.at(place) from None
-
-
-def _loading(table: VehicleFile) -> Loading:
-    """Return the loading that a checked table describes."""
-    for number, axle in enumerate(table.axles):
-        if (number == 0) != (axle.after is None):
-            said = (
-                "the first axle has no axle before it"
-                if number == 0
-                else "the distance behind the axle before is missing"
-            )
-            raise InputError(said, place=f"axles[{number}].after")
-    if not table.headings:
-        raise InputError('"+x", "-x" or both are asked for, got []', place="headings")
-    gauges = tuple(axle.gauge for axle in table.axles if axle.gauge is not None)
-    if gauges and len(gauges) != len(table.axles):
-        bare = next(number for number, axle in enumerate(table.axles) if axle.gauge is None)
-        raise InputError("some axles have a gauge and this one has none", place=f"axles[{bare}].gauge")
-    lefts = tuple(0.5 if axle.left is None else axle.left for axle in table.axles)
-    with _placed(_axle_place):
-        vehicle = Vehicle(
-            table.title,
-            np.array([axle.load for axle in table.axles]),
-            [axle.after for axle in table.axles if axle.after is not None],
-            gauges=gauges,
-            left_shares=lefts if any(axle.left is not None for axle in table.axles) else (),
-            headings=tuple({"+x": 1, "-x": -1}[heading] for heading in table.headings),
-        )
-    of_impact = {
-        "included": ("its loads hold impact already: none is added",),
-        "none": ("its rule asks for no impact",),
-    }
-    notes = (*table.notes, *of_impact.get(table.impact, ()))
-    dynamic = table.impact == "added"
-    return Loading.of(vehicle, table.kind, source=table.source or "", notes=notes, dynamic=dynamic)
-
-
-def _axle_place(place: str) -> str:
-    """Return where the file has a gap or a gauge: with the axle that follows the gap, or that has the gauge."""
-    counted = re.fullmatch(r"(spacings|gauges|left_shares)\[(\d+)\]", place)
-    if not counted:
-        return place
-    number = int(counted[2])
-    words = {"spacings": f"axles[{number + 1}].after", "gauges": f"axles[{number}].gauge"}
-    return words.get(counted[1], f"axles[{number}].left")

@@ -28,6 +28,7 @@ if TYPE_CHECKING:
 _METAL: Final = ("fy", "fu", "modulus", "density", "source")
 _TIMBER: Final = ("product", "stresses", "modulus", "density", "source")
 _OF_TIMBER: Final = ("product", "stresses", "factors", "durations", "treated")
+_MODULI: Final = {"metal": (5e10, 2.5e11), "timber": (1e9, 3e10)}  # Pa; no metal or timber of a bridge is beyond
 
 
 @dataclass(frozen=True, slots=True)
@@ -220,10 +221,32 @@ def _typed(name: str, table: MaterialTable) -> Material:
         for number, duration in enumerate(table.durations):
             require_one_of(duration, DURATIONS, f"durations[{number}]")
     typed = _said(table, ("modulus", "density", "source", "fy", "fu"))
+    _require_modulus(table)
     if table.stresses is not None:
         factors = table.factors.model_dump(exclude_none=True) if table.factors is not None else {}
         timber = Timber(table.product or "", table.stresses.model_dump(exclude_none=True), factors)
+        _require_factors(timber)
     return Material(name, table.kind, timber=timber, **typed)  # type: ignore[arg-type]  # each key is one of its own
+
+
+def _require_modulus(table: MaterialTable) -> None:
+    """Refuse a modulus that no such material has: a wrong unit was meant."""
+    (low, high), modulus = _MODULI["timber" if table.kind == "timber" else "metal"], table.modulus or 0.0
+    if not low <= modulus <= high:
+        said = f'of {table.kind} a modulus (say its unit: "200 GPa") of {low:g} to {high:g} Pa is asked for'
+        raise InputError(f"{said}, got {modulus:g} Pa", place="modulus")
+
+
+def _require_factors(timber: Timber) -> None:
+    """Refuse a factor that the standard does not put there, or that none of its own is as great as."""
+    from movload.strength.nds import FACTORS, GREATEST
+
+    for use, factors in timber.factors.items():
+        for symbol, factor in factors.items():
+            place = f"factors.{use}.{symbol}"
+            require_one_of(symbol, FACTORS[timber.product][use], place)
+            if factor > GREATEST:
+                raise InputError(f"no factor is above {GREATEST:g}, got {factor:g}", place=place)
 
 
 def _said(table: object, keys: Iterable[str]) -> dict[str, object]:

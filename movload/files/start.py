@@ -121,7 +121,7 @@ clearance = "?"             # from a kerb to the outermost wheel's centre
 # permits = {{ moment = "?", shear = "?" }}
 
 [permanent]
-deck = "?"                  # deck, floor and surfacing of the whole bridge, {units.symbol("line load")}, kerb to kerb
+deck = "?"                  # {units.symbol("line load")}, kerb to kerb: deck, surfacing, floor beams not weighed above
 detail_allowance = "?"      # of the members' weight, for lacing, rivets, pins and gussets, e.g. "15 %"
 
 [rating]

@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
+from movload.peaks.any_train import extremes_of
 from movload.peaks.candidates import Candidates, candidates_of
 from movload.peaks.extremes import may_lose, runs_at_a_time, static_extremes
 
@@ -76,7 +77,7 @@ def _felt(
     """Return each train's highest and lowest (T, R), impact included (see `formation_extremes`)."""
     counts = [len(formation) for formation in formations]
     trains = [train for formation in formations for train in formation]
-    extremes = static_extremes(response, trains)
+    extremes = extremes_of(response, trains)
     dynamic = np.array([train.dynamic for train in trains])[:, None]
     of_train = impact if len(trains) == len(formations) else np.repeat(impact, counts, axis=0)
     if held_impact is not None:

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Final
 
 import numpy as np
 
+from movload.peaks.any_train import lines_for
 from movload.peaks.candidates import LOST
 from movload.peaks.governing import governing_formation, split_extremes, worst_candidates
 from movload.peaks.peaks import NO_PEAK, WORST, Peak
@@ -98,36 +99,68 @@ class PartPeaks:
 
     def _standing(self, train: Train, row: int, side: int) -> Peak:
         """Return one train where it is worst for a row, impact left out of the value; nothing where it is not felt."""
-        candidates, worst = worst_candidates(self.response, train)
+        if train.vehicle.has_ranges:
+            return self._spaced(train, row, side)
+        response = lines_for(self.response, train.relieving)[side]
+        candidates, worst = worst_candidates(response, train)
         stop, run = divmod(int(worst[side, row]), candidates.runs.train.size)
-        stations, count = self.response.stations, self.response.stations.size
+        stations, count = response.stations, response.stations.size
         x = on_the_ends(stations, candidates.standing(run, run + 1)[stop])
         heading = int(candidates.runs.heading[run])
-        impact = self.held_impact if train.fixed and self.held_impact is not None else self.impact
-        placement = standing_train(train, x, impact[row, side])
-        static = float(self._line(row, x) @ train.felt)
+        placement, static = self._stood(train, x, row, side)
         if static * (1, -1)[side] <= 0.0:
             return NO_PEAK
+        met = float(stations[stop if stop < count else (0, count - 1)[stop - count]])
         return Peak(
             static,
             _front(stations, x, heading * train.vehicle.distances, lost=stop - count),
             heading,
             tuple(map(float, np.diff(train.vehicle.distances))),
             int(candidates.runs.axle[run]),
-            stop if stop < count else (0, count - 1)[stop - count],
+            _number_of(self.response.stations, met),
             train.case,
             placement,
             lost=stop >= count,
         )
 
+    def _stood(self, train: Train, x: Floats, row: int, side: int) -> tuple[Placement, float]:
+        """Return a train's axles as they count at x (A,) [m] for a row's peak, and the row's static value."""
+        line = self._line(row, x)
+        counts = np.where(line * (1, -1)[side] < 0.0, train.relieving, 1.0)
+        impact = self.held_impact if train.fixed and self.held_impact is not None else self.impact
+        return standing_train(train, x, impact[row, side], counts), float(line @ (train.felt * counts))
 
-def standing_train(train: Train, x: Floats, impact: float) -> Placement:
-    """Return a train's axles standing at x (A,) [m] with an impact that counts where the train is dynamic."""
+    def _spaced(self, train: Train, row: int, side: int) -> Peak:
+        """Return a train whose spacings may vary where it is worst for a row, with the spacings that make it so."""
+        from movload.peaks.gaps import gap_stand  # with what it needs as long to load as a command's own modules
+
+        stand = gap_stand(self.response, train, row, side)
+        if stand.value == 0.0:
+            return NO_PEAK
+        x = on_the_ends(self.response.stations, stand.front - stand.heading * stand.distances)
+        placement, _ = self._stood(train, x, row, side)
+        return Peak(
+            stand.value, stand.front, stand.heading, tuple(map(float, np.diff(stand.distances))), stand.axle,
+            stand.station, train.case, placement, lost=stand.lost,
+        )  # fmt: skip
+
+
+def standing_train(train: Train, x: Floats, impact: float, counts: Floats | float = 1.0) -> Placement:
+    """Return a train's axles standing at x (A,) [m] with an impact that counts where the train is dynamic.
+
+    ``counts`` is what counts of each axle there (A,) [-]: less than 1 where it relieves and its model says so.
+    """
     axles = np.ones(x.size)
     return Placement(
         x, train.vehicle.loads, train.shares, (impact if train.dynamic else 0.0) * axles,
-        train.factor * axles, train.z * axles, np.zeros(x.size, dtype=np.intp), np.full(x.size, train.fixed),
+        train.factor * counts * axles, train.z * axles, np.zeros(x.size, dtype=np.intp), np.full(x.size, train.fixed),
     )  # fmt: skip
+
+
+def _number_of(stations: Floats, x: float) -> int:
+    """Return the number of the station at x [m]; -1 where x is none, as where a line crosses zero in a panel."""
+    nearest = int(np.abs(stations - x).argmin())
+    return nearest if abs(stations[nearest] - x) <= edge(stations) else -1
 
 
 def _front(stations: Floats, x: Floats, behind: Floats, *, lost: int) -> float:

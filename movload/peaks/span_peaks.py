@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from functools import lru_cache
 from typing import TYPE_CHECKING, NamedTuple
 
 import numpy as np
@@ -88,6 +89,10 @@ class SpanPeaks:
             return self.formations[number]
         return self.formations[int(self.by_formation[:, row].argmax()) if side == 0 else 0]
 
+    def _felt_of(self, row: int, side: int, number: int) -> list[Train]:
+        """Return the trains of a formation that the stringer feels, spacings that may vary at their least."""
+        return [_least(train) for train in self._formation(row, side, number) if train.felt.any()]
+
     def peak(self, row: int, side: int, number: int = WORST) -> Peak:
         """Return one row's highest (side 0) peak, of all formations or of one; the lowest is always 0."""
         value = float((self.highest, self.lowest)[side][row])
@@ -95,7 +100,7 @@ class SpanPeaks:
             value = float(self.by_formation[number, row])
         if value == 0.0:
             return NO_PEAK
-        felt = [train for train in self._formation(row, side, number) if train.felt.any()]
+        felt = self._felt_of(row, side, number)
         stands = [self._stands(train, row) for train in felt]
         first, span, where = felt[0], row // 2, stands[0]
         return Peak(
@@ -130,7 +135,7 @@ class SpanPeaks:
         same, which is safe. Moment at s: x (L - s)/L left of it, s (L - x)/L right of it. Shear inside the left end:
         1 - x/L.
         """
-        felt = [train for train in self._formation(row, side, number) if train.felt.any()]
+        felt = self._felt_of(row, side, number)
         sections = np.array([self._stands(train, row).section for train in felt])[stands.vehicle]
         span = row // 2
         length = float(self.response.lengths[span])
@@ -189,10 +194,25 @@ def _felt(lengths: Floats, of_span: Ints, trains: list[Train]) -> Floats:
     units: dict[Train, int] = {}
     unit, times = np.empty(len(trains), dtype=np.intp), np.empty(len(trains))
     for number, train in enumerate(trains):
-        whole, share = unit_of(train)
+        whole, share = unit_of(_least(train))
         unit[number], times[number] = units.setdefault(whole, len(units)), share
     rows: Floats = _values(lengths, list(units))[:, of_span].reshape(len(units), -1)
     return rows[unit] * times[:, None]
+
+
+def _least(train: Train) -> Train:
+    """Return a train with every spacing that may vary at its least: on a simple span no other is worse."""
+    if not train.vehicle.has_ranges:
+        return train
+    return replace(train, vehicle=_least_vehicle(train.vehicle))
+
+
+@lru_cache(maxsize=256)
+def _least_vehicle(vehicle: Vehicle) -> Vehicle:
+    """Return one vehicle for one with ranges, so that it is worked out once."""
+    from movload.peaks.span_uniform import least_spacings
+
+    return least_spacings(vehicle)
 
 
 def _values(lengths: Floats, units: list[Train]) -> Floats:

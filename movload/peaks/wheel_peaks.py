@@ -69,7 +69,7 @@ class WheelPeaks:
             (self.impact[row, side] if train.dynamic else 0.0) * one, train.factor * one, np.nan * one,
             np.zeros(1, dtype=np.intp), np.zeros(1, dtype=np.bool_),
         )  # fmt: skip
-        distances = train.vehicle.distances
+        distances = np.cumsum([0.0, *(gap[0] if isinstance(gap, tuple) else gap for gap in train.vehicle.spacings)])
         heading = train.headings[0]
         front = float(x[0] + heading * distances[axle])
         return Peak(value, front, heading, tuple(map(float, np.diff(distances))), axle, 0, train.case, placement)

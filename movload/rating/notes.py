@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Final
 
+from movload.bridge.strengths import FOOTINGS
 from movload.errors import Note
 
 if TYPE_CHECKING:
@@ -47,9 +48,11 @@ def _of_truss(bridge: Bridge) -> dict[str, str]:
         texts["redundant"] = _REDUNDANT.format(count=truss.redundancy)
     if any(support.settlement or support.movement for support in truss.supports):
         texts["settlement"] = "Settlements and imposed movements of bearings are in the permanent effects."
-    if any(typed.permits.get("compression", 1.0) == 0.0 for typed in bridge.strengths.values()):
+    typed = [one.on(footing).get("compression", 1.0) for one in bridge.strengths.values() for footing in FOOTINGS]
+    if 0.0 in typed:
         texts["no-compression"] = (
-            "Some bars permit no compression: where live load pushes one a counter must act, and none is modelled."
+            "Some bars carry no compression, as typed: where live load pushes one a counter must act, and none is "
+            "modelled; its row says only that."
         )
     if bridge.deck.bears_on == "chord":
         texts["chord-bending"] = f"The deck bears on the chord between joints; its bending: {bridge.deck.chord_bending}"

@@ -94,6 +94,11 @@ class Rating:
         return self.peaks.vehicle(self.row, self.side, self.formation).gross
 
     @property
+    def ranged(self) -> bool:
+        """Whether that vehicle's axles stand at distances that may vary: the worst were found."""
+        return self.peaks.vehicle(self.row, self.side, self.formation).has_ranges
+
+    @property
     def abreast(self) -> int:
         """How many vehicles stand side by side then; 0 when off the bridge."""
         vehicle = self.peak.placement.vehicle

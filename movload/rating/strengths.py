@@ -11,7 +11,7 @@ from typing import TYPE_CHECKING, TypeAlias
 import numpy as np
 
 from movload.bridge.strengths import TypedStrength
-from movload.errors import InputError, MissingDataError, Note
+from movload.errors import InputError, MissingDataError, Note, UnknownNameError
 from movload.rating.resistance import SENSES, UNRATED, resistance
 
 if TYPE_CHECKING:
@@ -147,6 +147,8 @@ class _Found:
         except MissingDataError as error:
             self.missing[self.key(known, sense, level)] = error
             return UNRATED
+        except UnknownNameError:
+            raise  # a word misspelled is no case that a rule leaves out
         except InputError as error:
             self.refused[self.key(known, sense, level)] = f"{sense}: {error}", []
             return UNRATED

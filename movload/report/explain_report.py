@@ -10,6 +10,7 @@ from movload.report.phrases import (
     number_text,
     place_text,
     quantity_of,
+    spacings_text,
     standing_text,
     unsigned_zero,
     use_text,
@@ -158,7 +159,8 @@ def sum_table(
     for said, value in sums:
         lines.append([""] * (len(heads) - 2) + [said, number_text(value, quantity, units, more=1, sign="+")])
     peak = rating.peak
-    where = ", ".join(filter(None, (standing_text(peak, stations), place_text(peak, units))))
+    spaced = spacings_text(peak, units) if rating.ranged else ""
+    where = ", ".join(filter(None, (standing_text(peak, stations), place_text(peak, units), spaced)))
     title = f"{governed_text(rating)} under {rating.crossing}: {where}"
     return [title, "", grid(heads, lines, right=[True] * len(heads)), "", _equation(rating, units, margin=margin)]
 

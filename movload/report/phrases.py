@@ -126,6 +126,12 @@ def place_text(peak: Peak, units: UnitSystem) -> str:
     return f"{number_text(peak.position, 'length', units)} {units.symbol('length')} {ARROWS[peak.heading]}"
 
 
+def spacings_text(peak: Peak, units: UnitSystem) -> str:
+    """Return the distances between axles that were found the worst, front to back."""
+    gaps = " ".join(number_text(gap, "length", units) for gap in peak.spacings)
+    return f"axles {gaps} {units.symbol('length')} apart" if gaps else ""
+
+
 def standing_text(peak: Peak, stations: tuple[str, ...]) -> str:
     """Return which axle stands on which panel point, or has just left it; "" when the vehicle is off."""
     if peak.heading and peak.station < 0:

@@ -67,8 +67,10 @@ def _rows(ratings: Ratings, number: int, *, every: bool) -> list[RenderableType 
     """Return a crossing's rows, the worst or all."""
     units, crossing = ratings.solved.units, ratings.crossings[number]
     mine = ratings.rows(number)
-    shown = mine if every else mine[:_SHOWN]
-    rest = f", the worst {len(shown)} of {len(mine)} (--all for every row)" if len(shown) < len(mine) else ""
+    first = {(row.part, row.effect.name): row for row in reversed(mine)}  # each row once, where it is worst
+    worst = [row for row in mine if first[row.part, row.effect.name] is row]
+    shown = mine if every else worst[:_SHOWN]
+    rest = f", the worst {len(shown)} of {len(worst)} rows (--all for every rating)" if len(shown) < len(mine) else ""
     way = f" ({way_text(crossing, units)})" if ratings.solved.roadway else ""
     return [f"{crossing.title}{way}: forces in {units.symbol('force')}{rest}", "", detail(shown, units), ""]
 
@@ -148,7 +150,7 @@ def _abreast_texts(ratings: Ratings) -> list[str]:
     texts = [f"Up to {most} vehicle(s) side by side, one behind the other never; {alike}."]
     if beside:
         texts.append(
-            f"Beside it may stand {', '.join(sorted(beside))}, at full impact and its own margin, held fixed: RF and "
+            f"Beside it may stand {', '.join(sorted(beside))}, with its own impact and margin, held fixed: RF and "
             "safe weight are those of the vehicle asked about alone, with and without it."
         )
     return texts

@@ -38,7 +38,7 @@ DURATIONS: Final = {
 }  # fmt: skip
 """C_D of Table 2.3.2 by how long the full load stands in all."""
 _TREATED: Final = 1.6  # greatest C_D of timber treated under pressure, Table 2.3.2
-_GREATEST: Final = 2.0  # no factor of the standard is greater: 85 typed for 85 % is caught
+GREATEST: Final = 2.0  # no factor of the standard is greater: 85 typed for 85 % is caught
 _TABLES: Final = {"sawn": "Table 4.3.1", "glued laminated": "Table 5.3.1"}
 FACTORS: Final[Mapping[str, Mapping[str, tuple[str, ...]]]] = {
     "sawn": {
@@ -238,8 +238,8 @@ def _typed(timber: Timber, use: str) -> tuple[float, Mapping[str, float]]:
             raise UnknownNameError(rule, place=place, nearest=nearest_name(symbol, needed))
         if symbol not in typed:
             raise MissingDataError(f"{table} asks for it; type 1 only where it is 1", place=place)
-        if typed[symbol] > _GREATEST:
-            raise InputError(f"no factor of {table} is above {_GREATEST:g}, got {typed[symbol]:g}", place=place)
+        if typed[symbol] > GREATEST:
+            raise InputError(f"no factor of {table} is above {GREATEST:g}, got {typed[symbol]:g}", place=place)
     return timber.stresses[use], typed
 
 

@@ -14,9 +14,10 @@ from movload.bridge.section import Section
 from movload.bridge.section_open import groups
 from movload.errors import InputError, MissingDataError
 from movload.strength import aashto_lrfd, en_1993, mbe_stress
-from movload.strength.aashto_lrfd import Tie, elastic_buckling, lacing_stiffness, slender_reduction
+from movload.strength.aashto_lrfd import elastic_buckling, lacing_stiffness, slender_reduction
 from movload.strength.beam_column import Bending, Column, Connectors, Lacing, flexural_loads, with_bending
 from movload.strength.of_section import axes_of, curves_of, edge_moduli, key_of, plates_of
+from movload.strength.of_ties import tie_of, where
 from movload.strength.of_twist import twist_of
 from movload.strength.strength import Step, Strength
 from movload.strength.warnings import factor_of
@@ -24,10 +25,9 @@ from movload.strength.warnings import factor_of
 if TYPE_CHECKING:
     from collections.abc import Mapping
 
-    from movload.bridge.loss import LeastArea
     from movload.bridge.made import Bent, Held, Made
     from movload.strength.aashto_lrfd import Plate
-    from movload.strength.of_section import Axes
+from movload.strength.of_section import Axes
 
 _PACKED: Final = 15.0  # imin between packing plates of closely spaced parts, EN 1993-1-1 Table 6.9 (from memory)
 _AMPLIFIED: Final = 0.75  # phi_K on Pe of an amplified moment, AASHTO LRFD 4.5.3.2.2b (from memory)
@@ -64,24 +64,6 @@ def bar_strength(made: Made, sense: str, standard: str, phi: Mapping[str, float]
     return with_bending(axial, planes, linear=standard != "aashto_lrfd") if planes else axial
 
 
-def tie_of(made: Made) -> tuple[Tie, tuple[Step, ...]]:
-    """Return what tension asks for, and the steps to it."""
-    section, material, gross, net = made.section.section, made.material, made.section.gross, made.section.net
-    steps = (
-        Step("Ag new", "gross area as new", gross.as_new, "m2", section.title),
-        Step("Ag", f"least gross area as found, {_where(gross)}", gross.area, "m2", section.title),
-        Step("An new", "net area as new", net.as_new, "m2", section.title),
-        Step("An", f"least net area of both ends as found, {_where(net)}", net.area, "m2", section.title),
-        Step("Fy", "yield stress", material.fy, "Pa", material.source),
-        Step("Fu", "ultimate stress", material.fu, "Pa", material.source),
-    )
-    tie = Tie(
-        gross=gross.area, net=net.area, fy=material.fy, fu=material.fu, shear_lag=section.shear_lag,
-        punched=section.punched,
-    )  # fmt: skip
-    return tie, steps
-
-
 def pushed_bar(made: Made, standard: str) -> Pushed:
     """Return a bar in compression as the rules want it.
 
@@ -106,7 +88,7 @@ def pushed_bar(made: Made, standard: str) -> Pushed:
     steps = (
         Step("A new", "gross area as new", gross.as_new, "m2", title),
         Step("A", "gross area at mid length as found", properties.area, "m2", title),
-        Step("A least", f"least gross area as found, {_where(gross)}", gross.area, "m2", title),
+        Step("A least", f"least gross area as found, {where(gross)}", gross.area, "m2", title),
         Step("rx", "radius of gyration at mid length, sqrt(Ix / A)", properties.r_x, "m", title),
         Step("ry", "sqrt(Iy / A)", properties.r_y, "m", title),
         Step("Fy", "yield stress", material.fy, "Pa", material.source),
@@ -242,11 +224,6 @@ def _bending_alone(made: Made, axis: str, standard: str, phi: Mapping[str, float
             Step(f"Mr{axis}", said, value, "N m", material.source),
         ),
     )
-
-
-def _where(least: LeastArea) -> str:
-    """Return where along the bar an area is least, in words."""
-    return f"at the {least.place}" if least.place else "the same all along"
 
 
 def _after(steps: tuple[Step, ...], strength: Strength) -> Strength:

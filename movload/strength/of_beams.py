@@ -71,7 +71,7 @@ def beam_strength(made: Made, sense: str, standard: str, phi: Mapping[str, float
 def sideways_of(made: Made) -> Sideways:
     """Return how a beam is held against buckling sideways, or ask for it."""
     if made.sideways is None:
-        rule = 'bending needs the length between points where the edge in compression is held, or "all along"'
+        rule = 'bending needs the length between points that hold the edge in compression, or "held" for all along'
         raise MissingDataError(rule, place=key_of(made, "unbraced"))
     return made.sideways
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+import re
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Final
 
@@ -19,6 +20,7 @@ if TYPE_CHECKING:
     from movload.bridge.section_properties import Properties
 
 _OWN: Final = "movload"
+_BARE: Final = re.compile("[A-Za-z0-9_-]+")  # what TOML writes without quotes
 _PRINCIPAL: Final = 1e-6  # I_xy over I_max up to which x and y are the principal axes: places typed to a micrometre
 _SKEW: Final = math.radians(15.0)  # tilt beyond which neither principal axis is called x or y (own choice)
 _ROUND_WALL: Final = 0.11  # E/Fy times it is the greatest D/t of a round tube, AASHTO LRFD 6.9.4.2 (from memory)
@@ -68,6 +70,15 @@ class Axes:
 def key_of(made: Made, name: str) -> str:
     """Return where a value of a part is to be typed."""
     return f"{made.place}.{name}" if made.place else name
+
+
+def material_key(made: Made, name: str) -> str:
+    """Return where a value of a part's material is to be typed: in a file, the table that bears its name."""
+    title = made.material.title
+    if not made.place:
+        return f'material "{title}".{name}'
+    key = title if _BARE.fullmatch(title) else f'"{title}"'
+    return f"materials.{key}.{name}"
 
 
 def axes_of(properties: Properties, held: Held) -> Axes:

@@ -15,7 +15,7 @@ from movload.bridge.section_bars import SawnTimber
 from movload.errors import InputError, MissingDataError
 from movload.strength import nds
 from movload.strength.nds import Joist, Post
-from movload.strength.of_section import key_of
+from movload.strength.of_section import key_of, material_key
 from movload.strength.standards import TITLES
 from movload.strength.strength import Step, Strength
 
@@ -28,6 +28,7 @@ if TYPE_CHECKING:
     from movload.strength.aashto_floor import Sense
 
 _STANDARD: Final = "mbe_allowable_stress"
+_OF_MATERIAL: Final = frozenset({"stresses", "factors"})
 
 
 def timber_strength(made: Made, sense: str, standard: str, phi: Mapping[str, float]) -> Strength:
@@ -43,7 +44,12 @@ def timber_strength(made: Made, sense: str, standard: str, phi: Mapping[str, flo
     _require_covered(made, standard)
     duration = _duration(made)
     steps, rule = _rule(made, sense, phi)
-    whole, permanent = nds.in_combination(rule, duration)
+    try:
+        whole, permanent = nds.in_combination(rule, duration)
+    except InputError as error:
+        if error.place.partition(".")[0] not in _OF_MATERIAL:
+            raise
+        raise type(error)(error.rule, place=material_key(made, error.place), nearest=error.nearest) from None
     typed = [replace(step, source=made.material.source) if step.equation.startswith("reference") else step
              for step in whole.steps]  # fmt: skip
     return replace(whole, steps=(*steps, *typed), permanent=permanent.value)
@@ -87,7 +93,7 @@ def post_of(made: Made) -> Post:
 def joist_of(made: Made, sense: str) -> Joist:
     """Return a timber in bending or in shear as the rule wants it: the least sizes anywhere along."""
     if made.sideways is None and sense != "shear":
-        rule = 'bending needs the length between points where the edge in compression is held, or "all along"'
+        rule = 'bending needs the length between points that hold the edge in compression, or "held" for all along'
         raise MissingDataError(rule, place=key_of(made, "unbraced"))
     sizes = [_sizes(with_loss(made.section.section, made.section.losses, place)) for place in PLACES]
     breadth, depth = (min(size[each] for size in sizes) for each in range(2))
@@ -116,10 +122,10 @@ def _duration(made: Made) -> float:
     if not made.durations:
         known = ", ".join(nds.DURATIONS)
         raise MissingDataError(f"{nds.TITLE} 2.3.2 needs how long the loads stand: {known}",
-                               place=key_of(made, "durations"))  # fmt: skip
+                               place=material_key(made, "durations"))  # fmt: skip
     if made.treated is None:
         raise MissingDataError(f"{nds.TITLE} 2.3.2 needs whether it is treated under pressure: true or false",
-                               place=key_of(made, "treated"))  # fmt: skip
+                               place=material_key(made, "treated"))  # fmt: skip
     return nds.duration_factor(made.durations, treated=made.treated)
 
 

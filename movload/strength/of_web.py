@@ -101,6 +101,8 @@ def webbed(section: CrossSection) -> Webbed:
     webs = [box for box, is_web in boxes if is_web]
     if len(webs) != 1 or webs[0].top - webs[0].bottom < webs[0].right - webs[0].left:
         raise _refused(section)
+    if not webs[0].area > 0:
+        raise InputError("nothing is left of its web: not covered", place=section.title)
     flanges = [box for box, is_web in boxes if not is_web and box.area > 0]
     top = tuple(box for box in flanges if box.y > webs[0].y)
     bottom = tuple(box for box in flanges if box.y <= webs[0].y)

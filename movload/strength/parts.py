@@ -150,8 +150,8 @@ def _is_single_angle(section: CrossSection) -> bool:
 
 
 def _placed(error: MovloadError, place: str) -> MovloadError:
-    """Return an error with a part's place before its own, once."""
-    return error if error.place.startswith(place) else error.at(place)
+    """Return an error with a part's place before its own, once; a material has a place of its own."""
+    return error if error.place.startswith((place, "materials.", 'material "')) else error.at(place)
 
 
 def _require_known(name: str, known: Sequence[str], place: str) -> None:

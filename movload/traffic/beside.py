@@ -100,7 +100,15 @@ def _casts(crossing: Crossing, roadway: Roadway) -> tuple[tuple[_Who, tuple[_Who
             most = max(most, fits)
             casts += [(own, (rest,) * count) for count in range(1, fits + 1)]
     if most == 0:
-        raise InputError(f"{traffic.title} does not fit beside it between the kerbs", place=crossing.title)
+        free = roadway.width - 2.0 * roadway.clearance
+        needed = min(
+            max(gauges_of(axles_only(one))) + roadway.between + max(gauges_of(axles_only(other)))
+            for one, other in product(crossing.loading.cases, traffic.cases)
+        )
+        raise InputError(
+            f"{traffic.title} does not fit beside it between the kerbs: {needed:.2f} m from outer wheel to outer wheel "
+            f"are needed, {free:.2f} m are left between the clearances", place=crossing.title,
+        )  # fmt: skip
     if most > _MOST:
         raise InputError(f"at most {_MOST} others are looked at beside it, {most} fit here", place=crossing.title)
     return tuple(casts)
@@ -148,6 +156,7 @@ def _train(across: Across, one: _Who, z: float, factor: float) -> list[Train]:
         Train(
             one.case.title, one.vehicle, held(shares_at(across, np.array([z]), gauges, lefts, headings[0])[0]),
             headings=headings, dynamic=one.dynamic, z=z, factor=one.case.factor * factor, fixed=one.fixed,
+            relieving=one.case.relieving,
         )
         for headings in ([(heading,) for heading in one.headings] if lopsided else [one.headings])
     ]  # fmt: skip

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from functools import lru_cache
 from typing import TYPE_CHECKING, Final
 
@@ -151,17 +151,20 @@ def _whole(vehicle: Vehicle) -> Train:
 def _of_whole_case(case: Case, *, dynamic: bool) -> Train:
     """Return the train of a case's whole axles."""
     vehicle = axles_only(case)
-    return even_train(case.title, vehicle, 1.0, factor=case.factor, dynamic=dynamic)
+    train = even_train(case.title, vehicle, 1.0, factor=case.factor, dynamic=dynamic)
+    return train if case.relieving == 1.0 else replace(train, relieving=case.relieving)
 
 
 def axles_only(case: Case) -> Vehicle:
     """Return a case's vehicle, or refuse what would otherwise be left out in silence."""
-    if case.relieving != 1.0:
-        raise InputError("a load that counts less where it relieves cannot be swept yet", place=f"case {case.title}")
     if case.moving is None or case.fills:
         raise InputError("loads that fill the bridge cannot be swept yet", place=f"case {case.title}")
     if case.moving.strips or case.moving.tail is not None:
         raise InputError("uniform loads that move with a vehicle cannot be swept yet", place=case.moving.title)
+    if case.convoy is not None:
+        raise InputError("vehicles that follow each other cannot be swept yet", place=f"case {case.title}")
+    if case.above or case.continuous:
+        raise InputError("a case for some trusses or lengths only cannot be swept yet", place=f"case {case.title}")
     return case.moving
 
 

@@ -5,7 +5,7 @@ Traffic beside the vehicle that is asked about is in `movload.traffic.beside`.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import lru_cache
 from typing import TYPE_CHECKING, TypeAlias
 
@@ -91,7 +91,12 @@ def _by_typed_share(across: Across, crossing: Crossing) -> tuple[Formation, ...]
     """Return one train a case, with the share that is typed wherever it keeps and however many stand abreast."""
     share, loading = float(across.at(0.0)), crossing.loading
     return tuple(
-        (even_train(case.title, vehicle, share, factor=case.factor, dynamic=loading.dynamic),)
+        (
+            replace(
+                even_train(case.title, vehicle, share, factor=case.factor, dynamic=loading.dynamic),
+                relieving=case.relieving,
+            ),
+        )
         for case in loading.cases
         for vehicle in (axles_only(case),)
     )
@@ -113,6 +118,7 @@ class _Way:
     apart: float
     count: int
     factor: float
+    relieving: float
 
 
 @lru_cache(maxsize=256)  # every part of the bridge asks
@@ -130,7 +136,7 @@ def _ways(crossing: Crossing, roadway: Roadway, presence: tuple[float, ...]) -> 
             found += [
                 _Way(
                     case.title, vehicle, headings, kinds, of_kind, room, max(gauges) + roadway.between, count,
-                    case.factor * presence[min(count, len(presence)) - 1],
+                    case.factor * presence[min(count, len(presence)) - 1], case.relieving,
                 )
                 for count in _counts(crossing, case, roadway, max(gauges))
             ]  # fmt: skip
@@ -154,7 +160,7 @@ def _abreast(across: Across, way: _Way, *, dynamic: bool) -> list[Formation]:
         tuple(
             Train(
                 way.case, way.vehicle, held(shares[way.of_kind]), headings=(heading,) if lopsided else way.headings,
-                z=z, factor=way.factor, dynamic=dynamic, even=len(way.kinds) == 1,
+                z=z, factor=way.factor, dynamic=dynamic, even=len(way.kinds) == 1, relieving=way.relieving,
             )
             for z, heading, shares in group
         )

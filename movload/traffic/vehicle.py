@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass, field
-from typing import TYPE_CHECKING, TypeAlias
+from typing import TYPE_CHECKING, Final, TypeAlias
 
 import numpy as np
 
@@ -15,6 +15,10 @@ if TYPE_CHECKING:
     from collections.abc import Sequence
 
 Spacing: TypeAlias = "float | tuple[float, float]"
+
+MOST_AXLES: Final = 200
+MOST_RANGES: Final = 12
+"""Gaps of one vehicle that may vary: the places to look at grow with every one."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -75,17 +79,22 @@ class Vehicle:
     title
         What it is called.
     loads
-        Whole-axle loads (A,) [N], front to back, 0 or more and not all 0.
+        Whole-axle loads (A,) [N], front to back, 0 or more; at most 200. None where strips alone carry it (tracks).
     spacings
-        Distances between axles (A - 1) [m], 0 or more, each a number or a (least, greatest) pair.
+        Distances between axles (A - 1) [m], 0 or more, each a number or a (least, greatest) pair; at most 12 pairs.
     gauges
         Wheel gauge of each axle (A,) [m]; empty when not stated.
     left_shares
         Part of each axle that its left wheels carry (A,) [-]; empty for halves.
     strips, tail
-        Uniform loads that move with it.
+        Uniform loads that move with it: at most 200 strips. Not all that it carries may be 0.
     headings
         Directions in which it may cross: +1 toward +x, -1 the other way.
+
+    Raises
+    ------
+    InputError
+        Nothing that carries, loads or distances that are none, or more axles or ranges than are looked at.
     """
 
     title: str
@@ -103,10 +112,11 @@ class Vehicle:
         object.__setattr__(self, "loads", frozen_floats(np.atleast_1d(np.asarray(self.loads, dtype=np.float64))))
         object.__setattr__(self, "spacings", tuple(_spacing(gap) for gap in self.spacings))
         object.__setattr__(self, "headings", tuple(self.headings))
-        _check_loads(self.loads)
+        object.__setattr__(self, "strips", tuple(self.strips))
+        _check_loads(self.loads, self.strips)
         _check_spacings(self.spacings, self.loads.size)
         fixed = [] if self.has_ranges else self.spacings
-        object.__setattr__(self, "_distances", held(np.cumsum([0.0, *fixed])))
+        object.__setattr__(self, "_distances", held(np.cumsum([0.0, *fixed][: self.loads.size])))
         if sorted(self.headings) not in ([-1], [1], [-1, 1]):
             raise InputError(f"headings are +1, -1 or both, got {self.headings}", place="headings")
         for number, share in enumerate(self.left_shares):
@@ -121,8 +131,8 @@ class Vehicle:
 
     @property
     def gross(self) -> float:
-        """Sum of the axle loads [N]."""
-        return float(self.loads.sum())
+        """Axle loads and strips together [N]; a tail, which never ends, is left out."""
+        return float(self.loads.sum()) + sum(strip.load * strip.length for strip in self.strips)
 
     @property
     def has_ranges(self) -> bool:
@@ -131,7 +141,7 @@ class Vehicle:
 
     @property
     def distances(self) -> Floats:
-        """Distance of each axle behind the front one (A,) [m].
+        """Distance of each axle behind the front (A,) [m]: the first axle, or 0 of the strips where there is none.
 
         Raises
         ------
@@ -167,23 +177,32 @@ def _spacing(gap: Spacing | Sequence[float]) -> Spacing:
     return least if least == greatest else (least, greatest)
 
 
-def _check_loads(loads: Floats) -> None:
-    """Refuse axle loads that are no weights."""
-    if loads.ndim != 1 or not loads.size:
+def _check_loads(loads: Floats, strips: Sequence[Strip]) -> None:
+    """Refuse axle loads that are no weights, and a vehicle that weighs nothing."""
+    if loads.ndim != 1 or not (loads.size or strips):
         raise InputError("a vehicle needs at least one axle, got none", place="axles")
+    for word, count in (("axles", loads.size), ("strips", len(strips))):
+        if count > MOST_AXLES:
+            raise InputError(f"a vehicle has at most {MOST_AXLES} {word}, got {count}", place=word)
     for number, load in enumerate(loads):
         if not (math.isfinite(load) and load >= 0):
             raise InputError(
                 f"a load must be a finite number, 0 or more, got {load:g} N", place=f"axles[{number}].load"
             )
-    if not loads.any():
+    if not loads.any() and not strips:
         raise InputError("all axle loads are 0 N; at least one must be above 0", place="axles")
+    if not loads.any() and not any(strip.load for strip in strips):
+        raise InputError("all of its loads are 0; at least one must be above 0", place="strips")
 
 
 def _check_spacings(spacings: Sequence[Spacing], axles: int) -> None:
     """Refuse gaps that are negative, reversed, or too few or many."""
-    if len(spacings) != axles - 1:
-        raise InputError(f"{axles} axles need {axles - 1} spacings, got {len(spacings)}", place="spacings")
+    gaps = max(axles - 1, 0)
+    if len(spacings) != gaps:
+        raise InputError(f"{axles} axles need {gaps} spacings, got {len(spacings)}", place="spacings")
+    ranges = sum(isinstance(gap, tuple) for gap in spacings)
+    if ranges > MOST_RANGES:
+        raise InputError(f"at most {MOST_RANGES} spacings may be ranges, got {ranges}", place="spacings")
     for number, gap in enumerate(spacings):
         least, greatest = gap if isinstance(gap, tuple) else (gap, gap)
         if not (math.isfinite(least) and math.isfinite(greatest) and least >= 0):

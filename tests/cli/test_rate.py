@@ -125,7 +125,7 @@ def test_text_answers_sums_covers_and_warns(asked: list[Any]) -> None:
     out = " ".join(movload(*asked).out.split())
     for part in (
         "95.0 kN 2.19 adequate, for the parts rated U1-L1 tension",
-        "the worst 8 of 18 (--all for every row)",
+        "the worst 8 of 9 rows (--all for every rating)",
         "U1-L1 tension under Alder hay cart: axle 2 on L1, 5.80 m →",
         "RF = (strength 90.00 - permanent (+6.85)) / live 37.94 kN = 2.19",
         "Covers: 9 of 9 members and beams rated in every sense they feel; floor, deck not rated.",
@@ -143,7 +143,7 @@ def test_text_answers_sums_covers_and_warns(asked: list[Any]) -> None:
     ):
         assert part in out
     every = movload(*asked, "--all").out
-    assert "--all for every row" not in every
+    assert "--all for every rating" not in every
     assert every.count("tension") + every.count("compression") > 18
 
 

@@ -12,7 +12,7 @@ SUBJECTS = {
         ["title", "units", "layout", "joints", "supports", "members", "deck", "floor", "permanent", "rating"],
         ["title", "units", "supports", "members"],
     ),
-    "vehicle": (["title", "kind", "source", "units", "axles", "headings"], ["title", "kind", "units", "axles"]),
+    "vehicle": (["title", "kind", "source", "units", "axles", "headings"], ["title", "kind", "units"]),
     "ratings": (
         [
             "format", "title", "method", "statement", "units", "crossings", "coverage", "notes", "deflections",

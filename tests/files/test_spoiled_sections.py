@@ -119,7 +119,7 @@ MATERIALS = {
     "fu below": ('"380 MPa"', '"180 MPa"', "steel.fu: the ultimate stress is at least fy, 2.3e+08 Pa, got 1.8e+08 Pa"),
     "bare yield": (
         '"230 MPa"', "230",
-        'steel.fy: a stress (say its unit: "230 MPa") of 1e+06 to 3e+09 Pa is asked for',
+        'steel.fy: a stress (say its unit: "230 MPa") of 1e+06 to 1.5e+09 Pa is asked for',
     ),
     "bare modulus": (
         "modulus = 200\ndensity = 7850\nsource", "modulus = 2e5\ndensity = 7850\nsource",
@@ -127,7 +127,7 @@ MATERIALS = {
     ),
     "bare stress": (
         '"8.5 MPa"', "8.5",
-        'oak.stresses.bending: a stress (say its unit: "8.5 MPa") of 10000 to 3e+08 Pa',
+        'oak.stresses.bending: a stress (say its unit: "8.5 MPa") of 10000 to 4e+07 Pa',
     ),
     "density": (
         "density = 800\nsource", "density = 8e5\nsource",

@@ -142,6 +142,46 @@ CASES = {
 }
 
 
+def found(shape: Shape, *cuts: Cut) -> Section:
+    """Return a section of one piece with metal gone."""
+    return Section(shape.kind, (Piece(shape, cuts=cuts),))
+
+
+# As found: what is gone is cut off their section at the face where rust sits.
+CASES |= {
+    "angle as found": Case(
+        found(Angle(0.100, 0.075, 0.008), Cut("second leg", amount=0.003)),
+        ANGLE - rectangular_section(d=67, b=3).shift_section(0, 8), 20,
+    ),
+    "channel as found": Case(
+        found(Channel(0.250, 0.080, 0.009, 0.012), Cut("top flange", fraction=0.25)),
+        CHANNEL - rectangular_section(d=3, b=80).shift_section(0, 122), 40,
+    ),
+    "I as found": Case(
+        found(ISection(0.300, 0.150, 0.008, 0.012), Cut("bottom flange", amount=0.004), Cut("web", fraction=0.25)),
+        i_section(d=300, b=150, t_f=12, t_w=6, r=0, n_r=1).shift_section(-75, -150)
+        - rectangular_section(d=4, b=150).shift_section(-75, -150), 40,
+    ),
+    "tube as found": Case(
+        found(RectangularTube(0.120, 0.180, 0.006), Cut("left wall", amount=0.002)),
+        TUBE - rectangular_section(d=168, b=2).shift_section(-60, -84), 20,
+    ),
+    "pipe as found": Case(
+        found(RoundTube(0.140, 0.005), Cut("wall", amount=0.001)), circular_hollow_section(d=138, t=4, n=SIDES), 20,
+        ROUNDED,
+    ),
+    "round bar as found": Case(found(RoundBar(0.030), Cut(amount=0.002)), circular_section(d=28, n=SIDES), 10, ROUNDED),
+    "flat as found": Case(
+        found(Flat(0.080, 0.025), Cut("thickness", fraction=0.2)),
+        rectangular_section(d=80, b=20).shift_section(-10, -40), 20,
+    ),
+    "timber as found": Case(
+        found(SawnTimber(0.140, 0.190), Cut(amount=0.020)),
+        rectangular_section(d=170, b=120).shift_section(-60, -85), 100,
+    ),
+}  # fmt: skip
+
+
 @cache
 def meshed(name: str) -> Meshed:
     """Return their section, meshed, its plane properties calculated."""
@@ -191,6 +231,8 @@ TWISTING = [
     ("unequal I", 0.03, 0.005),
     ("rectangular tube", 0.03, None),
     ("round tube", 2 * ROUNDED, None),
+    ("round bar", ROUNDED, None),
+    ("threaded rod", ROUNDED, None),
     ("flat", 0.003, None),
     ("eyebar", 0.003, None),
     ("plate", 0.003, None),

@@ -32,7 +32,9 @@ from movload.bridge.across import Across
 from movload.bridge.strengths import permitted
 from movload.errors import InputError
 from movload.rating.factor_sets import FactorSet, Level
+from movload.review.hand import terms
 from movload.statics.part import row_of
+from movload.traffic.loading import Case
 
 GRAVITY = 9.80665  # m/s2, standard
 HAND = 1e-12  # relative: the hand formulas carry all digits
@@ -220,9 +222,41 @@ def test_nothing_crosses() -> None:
         judge(solve(brook()), [])
 
 
-def test_a_spacing_must_be_one_number() -> None:
-    with pytest.raises(InputError, match=r"stretch: spacings\[0\]: a spacing between 3 and 5 m is a range"):
-        judge(solve(brook()), [Vehicle("stretch", [30e3, 50e3], [(3.0, 5.0)])])
+def test_a_spacing_that_may_vary_is_no_better_than_any_of_its_own() -> None:
+    """Between 3 and 5 m: each rating is the least of many rigid vehicles, or less by no more than a step."""
+    solved = solve(brook())
+    gaps = np.linspace(3.0, 5.0, 41)
+    rigid = judge(solved, [Vehicle(f"at {gap:g}", [30e3, 50e3], [gap]) for gap in gaps])
+    ranged = judge(solved, [Vehicle("stretch", [30e3, 50e3], [(3.0, 5.0)])])
+    least = rigid.factor.min(axis=1)
+    rated = np.isfinite(least)
+    assert rated.any()
+    assert (ranged.factor[:, 0][rated] <= least[rated] * (1 + 1e-9)).all()
+    assert (ranged.factor[:, 0][rated] >= least[rated] * 0.98).all()  # a step of 50 mm changes no line by more
+    for rating in ranged.rows(0):
+        if rating.live:
+            assert_allclose(sum(term.effect for term in terms(rating.peaks, rating.row, rating.side)), rating.live,
+                            rtol=1e-9)  # fmt: skip
+            assert 3.0 - 1e-9 <= rating.peak.spacings[0] <= 5.0 + 1e-9
+
+
+@given(st.floats(0.0, 1.0), st.booleans())
+def test_what_counts_less_where_it_relieves(relieving: float, ranged: bool) -> None:
+    """No rating rises above that of the whole vehicle, none falls below that which drops relief; terms add up."""
+    spacing = (3.0, 5.0) if ranged else 4.2
+    vehicle = Vehicle("model", [40e3, 90e3, 90e3], [spacing, 4.3])
+    solved = solve(brook())
+    whole, some, none = (
+        judge(solved, [Loading("model", "design", (Case("model", vehicle, relieving=part),))])
+        for part in (1.0, relieving, 0.0)
+    )
+    rated = np.isfinite(whole.factor)
+    assert (some.factor[rated] <= whole.factor[rated] * (1 + 1e-9)).all()
+    assert (some.factor[rated] >= none.factor[rated] * (1 - 1e-9)).all()
+    for rating in some.rows(0):
+        if rating.live:
+            found = sum(term.effect for term in terms(rating.peaks, rating.row, rating.side))
+            assert_allclose(found, rating.live, rtol=1e-9)
 
 
 def test_levels_take_their_own_margins() -> None:

@@ -463,8 +463,8 @@ ASKED: Final = {
     "lever": (
         made(BEAM, sideways=Sideways(unbraced=3.0), curves=("b", "c")), "moment", "en_1993", rf"^{PLACE}\.lever: C2 zg"
     ),
-    "durations": (timber(durations=()), "tension", "mbe_allowable_stress", rf"^{PLACE}\.durations: NDS 2018 2\.3\.2"),
-    "treated": (timber(treated=None), "tension", "mbe_allowable_stress", rf"^{PLACE}\.treated: .* true or false"),
+    "durations": (timber(durations=()), "tension", "mbe_allowable_stress", r"^materials\.larch\.durations: NDS 2018 2"),
+    "treated": (timber(treated=None), "tension", "mbe_allowable_stress", r"^materials\.larch\.treated: .* true or f"),
     "post": (timber(), "compression", "mbe_allowable_stress", rf"^{PLACE}\.unbraced_x: compression needs"),
     "joist": (timber(), "moment", "mbe_allowable_stress", rf"^{PLACE}\.unbraced: bending needs the length"),
     "flange gone": (

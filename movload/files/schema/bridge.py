@@ -251,7 +251,10 @@ class ItemTable(Table):
 class PermanentTable(Table):
     """What stands on the bridge for good."""
 
-    deck: LineLoad | None = Field(None, description="whole bridge: deck, floor and surfacing per length along it")
+    deck: LineLoad | None = Field(
+        None,
+        description="whole bridge: deck and surfacing per length along it, and the floor where [floor] has no weight",
+    )
     truss_share: Fraction | None = None
     detail_allowance: Fraction | None = Field(None, description="of the members' weight: lacing, rivets, pins, gussets")
     items: list[ItemTable] = Field(default=[])

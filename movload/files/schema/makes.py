@@ -27,13 +27,28 @@ from movload.files.schema.quantities import (
 from movload.files.schema.sections import Counted, Flag, Offset, Size, between, sized
 
 _CLOSEST: Final = 0.01  # m; nothing along a bar stands closer: metres typed where millimetres are asked are caught
+_LEAST_K: Final = 0.1  # no bar between its own points of hold has less; 0.0085 typed for 0.85 is caught
 Apart = Annotated[Section, between(_CLOSEST, 200.0, "m", "a distance along or across a bar")]
-Strong = Annotated[Stress, between(1e6, 3e9, "Pa", 'a stress (say its unit: "230 MPa")')]
-Weak = Annotated[Stress, between(1e4, 3e8, "Pa", 'a stress (say its unit: "8.5 MPa")')]
+Strong = Annotated[Stress, between(1e6, 1.5e9, "Pa", 'a stress (say its unit: "230 MPa")')]
+Weak = Annotated[Stress, between(1e4, 4e7, "Pa", 'a stress (say its unit: "8.5 MPa")')]
 Elastic = Annotated[Stress, between(1e8, 1e12, "Pa", 'a modulus (say its unit: "200 GPa")')]
 Heavy = Annotated[Density, between(50.0, 25000.0, "kg/m3", "a density")]
 Kind = Annotated[Text, Checked(lambda kind: known_name(kind, KINDS))]
 Factors = dict[Text, Fraction]
+
+
+def _least(low: float, unit: str = "") -> Checked:
+    """Return the validator of what is above 0 and too small: the domain refuses 0 and less, this the absurd."""
+
+    def check(value: float | str) -> float | str:
+        if not isinstance(value, str) and 0 < value < low:
+            raise InputError(f"at least {low:g}{unit} is asked for, got {value:g}{unit}")
+        return value
+
+    return Checked(check)
+
+
+K = Annotated[Fraction, _least(_LEAST_K)]
 
 
 def _free(name: str) -> Any:  # the parts of Annotated
@@ -53,8 +68,8 @@ def _free(name: str) -> Any:  # the parts of Annotated
 
 JOINT_TO_JOINT: Final = "joint to joint"
 HELD: Final = "held"
-FreeOfBar = Annotated[float | str, *_free(JOINT_TO_JOINT)]
-FreeOfBeam = Annotated[float | str, *_free(HELD)]
+FreeOfBar = Annotated[float | str, *_free(JOINT_TO_JOINT), _least(_CLOSEST, " m")]
+FreeOfBeam = Annotated[float | str, *_free(HELD), _least(_CLOSEST, " m")]
 
 
 class StressesTable(Table):
@@ -144,14 +159,12 @@ class MakeKeys(Table):
 class MemberMake(MakeKeys):
     """What bars are made of and how they are held."""
 
-    unbraced_x: Annotated[float | str, *_free("joint to joint")] | None = Field(
-        None, description="in the truss's plane"
-    )
-    unbraced_y: Annotated[float | str, *_free("joint to joint")] | None = Field(None, description="out of it")
-    unbraced_z: Annotated[float | str, *_free("joint to joint")] | None = Field(None, description="of twist")
-    k_x: Fraction | None = Field(None, description="effective length factor K")
-    k_y: Fraction | None = None
-    k_z: Fraction | None = None
+    unbraced_x: FreeOfBar | None = Field(None, description="in the truss's plane")
+    unbraced_y: FreeOfBar | None = Field(None, description="out of it")
+    unbraced_z: FreeOfBar | None = Field(None, description="of twist")
+    k_x: K | None = Field(None, description="effective length factor K")
+    k_y: K | None = None
+    k_z: K | None = None
     joined: JoinedTable | None = None
     bent: list[BentTable] | None = None
     losses: list[MemberLossTable] | None = None
