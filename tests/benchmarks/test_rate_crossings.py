@@ -55,9 +55,17 @@ def bridge() -> Bridge:
     )  # fmt: skip
 
 
+def is_rigid(loading: Loading) -> bool:
+    """Whether it is one vehicle of axles at fixed distances, all of which count wherever they stand."""
+    (case, *more) = loading.cases
+    moving = case.moving
+    plain = moving is not None and not (more or case.fills or case.convoy or moving.strips or moving.tail)
+    return plain and not moving.has_ranges and case.relieving == 1.0
+
+
 def loadings() -> list[Loading]:
-    """Return the library, and its first vehicles again a tenth heavier: 30 in all."""
-    shipped = [read_vehicle(name) for name in vehicle_names()]
+    """Return the rigid vehicles of the library, and its first vehicles again a tenth heavier: 30 in all."""
+    shipped = [one for one in map(read_vehicle, vehicle_names()) if is_rigid(one)]
     again = [
         Loading.of(replace(moving, title=f"{moving.title}, heavier", loads=1.1 * moving.loads), one.kind)
         for one in shipped

@@ -17,6 +17,7 @@ from benchmarks.stepping_scripts import (
     by_one_product,
     by_product_a_passage,
 )
+from benchmarks.test_rate_crossings import is_rigid
 from benchmarks.vectorised_script import all_lines, free_part
 
 from movload.files.library import read_vehicle, vehicle_names
@@ -41,8 +42,8 @@ STEPPED_PAST = 0.02  # of the row's peak: half a step, 25 mm, beside a kink of a
 
 @pytest.fixture(scope="module")
 def loadings() -> list[Loading]:
-    """Return the first 20 vehicles of the library, 69 axles together."""
-    return [read_vehicle(name) for name in vehicle_names()[:20]]
+    """Return the first 20 rigid vehicles of the library."""
+    return [one for one in map(read_vehicle, vehicle_names()) if is_rigid(one)][:20]
 
 
 @pytest.fixture(scope="module")
