@@ -220,7 +220,8 @@ def _drawing(stands: Bridge, ratings: Ratings, suffix: str) -> Callable[[], byte
             stands.truss, lines, worst.peak, worst.effect.name, stands.units,
             title=f"{stands.title}: {worst.crossing}{place}, RF {factor_text(worst.factor)} ({worst.sense})",
             caption=f"{worst.part[:1].upper()}{worst.part[1:]}, level {worst.level}.{floor} Member forces: live load "
-            "as it stands, the truss's share and impact included, no permanent load.",
+            f"as it stands,{' traffic beside it,' if worst.held else ''} the truss's share and impact included, no "
+            "permanent load.",
         )  # fmt: skip
         return figure_bytes(figure, suffix)
 

@@ -240,6 +240,16 @@ def test_the_other_commands_read_it_too(tmp_path: Path, words: list[str]) -> Non
     assert all(abs(number) < 1e300 for number in numbers_in(done.json()))
 
 
+def test_traffic_beside_is_said_in_the_drawing(asked: list[Any], tmp_path: Path) -> None:
+    """Its own vehicle is drawn; the other's forces are in the bars, and both are said."""
+    picture = tmp_path / "a.svg"
+    movload(*asked, "--at", "left kerb", "--beside", asked[2], "--plot", picture)
+    text = picture.read_text(encoding="utf-8")
+    assert "other traffic beside it is not drawn" in text
+    assert "side by side" not in text
+    assert "traffic beside it, the truss" in " ".join(text.split())
+
+
 def test_two_abreast_are_drawn(asked: list[Any], tmp_path: Path) -> None:
     picture = tmp_path / "new.svg"
     done = movload(*asked, "--plot", picture)

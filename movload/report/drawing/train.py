@@ -47,6 +47,8 @@ class Train:
         How far beyond the bridge's ends anything is drawn [m].
     abreast
         How many of it stand side by side.
+    beside
+        Whether other traffic stands beside it, which is not drawn.
     """
 
     x: Floats
@@ -57,20 +59,23 @@ class Train:
     title: str
     room: float
     abreast: int
+    beside: bool = False
 
     @classmethod
     def of(cls, peak: Peak, stations: Floats) -> Train:
         """Return the train of a peak's placement; of vehicles that stand side by side at the same x one is drawn."""
         stands, margin = peak.placement, edge(stations)
-        abreast = int(stands.vehicle.max(initial=0)) + 1
-        first = stands.vehicle == 0
-        alike = first.sum() * abreast == first.size and bool((stands.x == np.tile(stands.x[first], abreast)).all())
-        drawn = first if alike else np.ones(first.size, dtype=np.bool_)
+        own = ~stands.fixed
+        abreast = np.unique(stands.vehicle[own]).size
+        first = own & (stands.vehicle == stands.vehicle[own].min(initial=0))
+        alike = first.sum() * abreast == own.sum() and bool((stands.x[own] == np.tile(stands.x[first], abreast)).all())
+        drawn = first if alike else own
         x, loads = stands.x[drawn], stands.load[drawn]
         on = (x >= stations[0] - margin) & (x <= stations[-1] + margin)
         room = _ROOM * (stations[-1] - stations[0])
         shown = (x >= stations[0] - room) & (x <= stations[-1] + room)
-        return cls(x, loads, on, shown, peak.heading, peak.case, float(room), abreast if alike else 1)
+        return cls(x, loads, on, shown, peak.heading, peak.case, float(room), abreast if alike else 1,
+                   bool(stands.fixed.any()))  # fmt: skip
 
     def extent(self, first: float, last: float) -> tuple[float, float]:
         """Return the x of the bridge's ends, widened so that the drawn axles fit [m]."""
@@ -100,6 +105,7 @@ class Train:
         """Return the weight of the whole vehicle with its unit."""
         weight = units.shown(float(self.loads.sum()), "force")
         each = f" each, {self.abreast} side by side" if self.abreast > 1 else ""
+        each += "; other traffic beside it is not drawn" if self.beside else ""
         return f"{plain(weight, min(figures(weight, 4), 1)).removesuffix('.0')} {units.force}{each}"
 
 
