@@ -328,8 +328,8 @@ def test_no_other_crowd_is_worse(lines: InfluenceLines, density: Density, parts:
 def test_a_crowd_where_it_stands_gives_its_value(lines: InfluenceLines, density: Density) -> None:
     """Density at the length that it stands on, times what 1 N/m there gives, twice as wide.
 
-    Not on lines with a level stretch: `crowd_scattered` then gives the right value and a wrong place (known: DEVELOPERS.md,
-    "Begun and not yet joined").
+    Not on lines with a level stretch: `crowd_scattered` then gives the right value and a wrong place, as is known and
+    written in DEVELOPERS.md, "Begun and not yet joined".
     """
     y = lines.ordinates
     assume(not ((np.diff(y, axis=1) == 0.0) & (y[:, 1:] != 0.0)).any())
