@@ -163,7 +163,7 @@ def spans_peaks(
     lengths, of_span = np.unique(responses[0].lengths, return_inverse=True)
     felt = _felt(lengths, of_span, [one for formations in crossings for formation in formations for one in formation])
     sizes = [len(formation) for formations in crossings for formation in formations]
-    felt *= 1.0 + np.concatenate([_impact_of(*one) for one in zip(crossings, impact, held_impact, strict=True)])
+    felt *= 1.0 + _impact_of_all(crossings, impact, held_impact)
     by_formation = np.add.reduceat(felt, np.cumsum([0, *sizes[:-1]]), axis=0)
     first = np.cumsum([0, *(len(formations) for formations in crossings)])
     highest = held(np.maximum.reduceat(by_formation, first[:-1], axis=0))
@@ -178,10 +178,27 @@ def spans_peaks(
     ]
 
 
+def _impact_of_all(
+    crossings: Sequence[tuple[Formation, ...]], impact: Floats, held_impact: Sequence[Floats | None]
+) -> Floats:
+    """Return every train's dynamic allowance on each row (T, R), crossing after crossing."""
+    if any(one is not None for one in held_impact):
+        return np.concatenate([_impact_of(*one) for one in zip(crossings, impact, held_impact, strict=True)])
+    counts = [sum(map(len, formations)) for formations in crossings]
+    trains = [train for formations in crossings for formation in formations for train in formation]
+    of_train: Floats = np.repeat(impact[:, :, 0], counts, axis=0)
+    return of_train if all(train.dynamic for train in trains) else _dynamic(trains) * of_train
+
+
+def _dynamic(trains: Sequence[Train]) -> Floats:
+    """Return 1 for each train that takes impact and 0 for each that does not (T, 1)."""
+    return np.array([train.dynamic for train in trains], dtype=np.float64)[:, None]
+
+
 def _impact_of(formations: tuple[Formation, ...], impact: Floats, held_impact: Floats | None) -> Floats:
     """Return every train's dynamic allowance on each row (T, R)."""
     trains = [train for formation in formations for train in formation]
-    dynamic = np.array([train.dynamic for train in trains])[:, None]
+    dynamic = _dynamic(trains)
     if held_impact is None:
         return dynamic * impact[:, 0]
     fixed = np.array([train.fixed for train in trains])[:, None]
