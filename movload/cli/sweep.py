@@ -48,7 +48,6 @@ def sweep(
     if plot is not None and not row:
         raise InputError("say which row to draw: --row U1-L2", place="--plot")
     from movload.files.read import read_bridge
-    from movload.peaks.sweep import sweep as swept
     from movload.report.lines_report import station_names
     from movload.report.sweep_report import sweep_csv, sweep_json, sweep_tables, swept_rows
     from movload.statics.influence import influence_lines
@@ -58,7 +57,7 @@ def sweep(
     with naming(bridge):
         lines = influence_lines(stands.truss, stands.deck.panel_points)
         wanted = [row_of(lines.effects, name) for name in row] if row else list(range(len(lines.effects)))
-    peaks = swept(lines, read_loadings(vehicle))
+    peaks = _swept(lines, vehicle)
     rows = swept_rows(peaks, station_names(stands.deck.panel_points), wanted)
     deliver(
         text=lambda: [stands.title, "", *sweep_tables(peaks, rows, stands.units)],
@@ -69,6 +68,21 @@ def sweep(
         },
         force=force,
     )
+
+
+def _swept(lines: InfluenceLines, vehicles: list[str]) -> list[Peaks]:
+    """Return the peaks under every vehicle; where one cannot be swept, the error says which."""
+    from movload.errors import MovloadError
+    from movload.peaks.sweep import sweep as swept
+
+    loadings = read_loadings(vehicles)
+    try:
+        return swept(lines, loadings)
+    except MovloadError:
+        for name, loading in zip(vehicles, loadings, strict=True):
+            with naming(name):
+                swept(lines, [loading])
+        raise
 
 
 def _drawing(stands: Bridge, lines: InfluenceLines, peaks: Peaks, row: int, suffix: str) -> Callable[[], bytes]:
