@@ -28,6 +28,13 @@ ENDS: Final[tuple[Place, ...]] = ("start end", "end end")
 ALL_ALONG: Final = "all along"
 
 
+def place_text(place: str) -> str:
+    """Return a place along a bar in words; "" is the same everywhere."""
+    words = {"start end": "at the end by its first joint", "end end": "at the end by its last joint",
+             "middle": "at mid length"}  # fmt: skip
+    return words.get(place, "the same all along")
+
+
 @dataclass(frozen=True, slots=True)
 class Loss:
     """Metal gone.

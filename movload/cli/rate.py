@@ -170,7 +170,10 @@ def _asked(ratings: Ratings, row: str) -> Rating:
         for one in ratings.of_row(crossing, number)
     ]
     if not found:
-        raise MissingDataError("has no strength, so it is not rated", place=f"--explain {row}")
+        named = {first.name if first.kind == "axial" else first.part}
+        why = [one.text for one in ratings.notes if one.code == "not-covered" and named & set(one.subject.split(", "))]
+        said = "; ".join(["has no strength, so it is not rated", *why])
+        raise MissingDataError(said, place=f"--explain {row}")
     return min(found, key=lambda one: one.factor)
 
 

@@ -10,7 +10,7 @@ import math
 from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING, Final, Literal, TypedDict
 
-from movload.bridge.loss import PLACES, with_loss
+from movload.bridge.loss import PLACES, place_text, with_loss
 from movload.bridge.section import Section
 from movload.bridge.section_plastic import halving_level
 from movload.errors import MissingDataError
@@ -130,7 +130,7 @@ def _shear(made: Made, standard: str, phi: Mapping[str, float]) -> Strength:
                   stiffeners=stiffeners)  # fmt: skip
         found.append((_shear_of(web, standard, phi), parts, place))
     strength, parts, place = min(found, key=lambda each: each[0].value)
-    where = f"at the {place}" if made.section.losses else "the same all along"
+    where = place_text(place if made.section.losses else "")
     steps = (
         Step("tw new", "web as new", webbed(section).thickness, "m", section.title),
         Step("tw", f"web as found, {where}", parts.thickness, "m", section.title),

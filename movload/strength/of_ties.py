@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Final
 
-from movload.bridge.loss import ENDS, PLACES, LeastArea, with_loss
+from movload.bridge.loss import ENDS, PLACES, LeastArea, place_text, with_loss
 from movload.bridge.section import Section
 from movload.bridge.section_open import groups
 from movload.strength.aashto_lrfd import Tie
@@ -82,4 +82,4 @@ def _least_left(
 
 def where(least: LeastArea) -> str:
     """Return where along the bar an area is least, in words."""
-    return f"at the {least.place}" if least.place else "the same all along"
+    return place_text(least.place)

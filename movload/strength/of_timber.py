@@ -9,7 +9,7 @@ from __future__ import annotations
 from dataclasses import replace
 from typing import TYPE_CHECKING, Final, cast
 
-from movload.bridge.loss import PLACES, with_loss
+from movload.bridge.loss import PLACES, place_text, with_loss
 from movload.bridge.section import Section
 from movload.bridge.section_bars import SawnTimber
 from movload.errors import InputError, MissingDataError
@@ -143,7 +143,7 @@ def _least_area(made: Made) -> float:
 def _areas(made: Made, net: float) -> tuple[Step, ...]:
     """Return the steps to the least area."""
     gross, title = made.section.gross, made.section.section.title
-    where = f"at the {gross.place}" if gross.place else "the same all along"
+    where = place_text(gross.place)
     return (
         Step("A new", "gross area as new", gross.as_new, "m2", title),
         Step("A least", f"least gross area as found, {where}", gross.area, "m2", title),

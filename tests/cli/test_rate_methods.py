@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Any, Final
 
 import pytest
 from cli.across import ACROSS, FORTH, HAND, ROOM, SPACING, row_in, share
-from cli_run import CART, KETTLE_FORD, Done, movload, written
+from cli_run import CART, EXAMPLES, KETTLE_FORD, Done, movload, written
 from numpy.testing import assert_allclose
 
 from movload.files.schema.published import RatingsDocument
@@ -29,6 +29,14 @@ LEVELS = {
     "permitted": {"permitted"}, "lrfr": {"legal"}, "load_factor": {"inventory", "operating"},
     "allowable_stress": {"inventory", "operating"},
 }  # fmt: skip
+
+
+def test_what_no_rule_covers_says_why_when_it_is_asked_about() -> None:
+    """Planks of timber by LRFR: the row is refused with the words of its note."""
+    done = movload("rate", EXAMPLES / "withy_island.toml", "h5", "--method", "lrfr", "--explain", "planks moment")
+    assert done.code == 1
+    assert "has no strength, so it is not rated; not rated in moment" in done.err
+    assert "timber by AASHTO LRFD is not covered" in done.err
 
 
 @pytest.mark.parametrize("bridge", ["across", "kettle ford"])

@@ -117,7 +117,7 @@ def test_steps_say_where_and_where_from() -> None:
     found = strength(made(FLAT, Loss("end end", amount=0.002)))
     assert [each.symbol for each in found.steps[:6]] == ["Ag new", "Ag", "An new", "An", "Fy", "Fu"]
     assert_allclose([each.value for each in found.steps[:4]], [2e-3, 1.8e-3, 1.56e-3, 78 * 18e-6], rtol=EXACT)
-    assert "at the end end" in found.steps[1].equation
+    assert "by its last joint" in found.steps[1].equation
     assert {each.source for each in found.steps[4:6]} == {"mill sheet of 1931"}
     assert "the same all along" in strength(made(FLAT)).steps[1].equation
 
@@ -360,7 +360,7 @@ def test_shear_by_each_standard() -> None:
         share = 1 / math.sqrt(3) if standard == "en_1993" else 0.58
         assert_allclose(found.value, 0.91 * share * 230e6 * 0.468 * 0.008, rtol=EXACT)
         assert_allclose(found.value / found.as_new, 0.8, rtol=EXACT)
-        assert "at the end end" in next(each.equation for each in found.steps if each.symbol == "tw")
+        assert "by its last joint" in next(each.equation for each in found.steps if each.symbol == "tw")
 
 
 def test_beams_go_by_the_worst_place_along() -> None:
