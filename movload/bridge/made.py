@@ -102,8 +102,8 @@ class Joined:
             raise UnknownNameError(f'"{self.axis}" is neither x nor y', place="joined.axis", nearest=near)
         _require_within("joined.spacing", self.spacing, _LONGEST, " m")
         _require_within("joined.apart", self.apart, _LONGEST, " m")
-        laced = self.lacing_area > 0 and self.planes > 0
-        if laced == (self.radius > 0):
+        halves = self.lacing_area > 0, self.planes > 0
+        if halves[0] != halves[1] or halves[0] == (self.radius > 0):
             raise InputError(
                 "lacing says lacing_area and planes, battens and stitches say the radius of one part, got "
                 f"{self.lacing_area:g} m2, {self.planes} and {self.radius:g} m", place="joined",
@@ -145,7 +145,8 @@ class Bent:
         for name in ("moment", "eccentricity", "bow"):
             value = getattr(self, name)
             if not (math.isfinite(value) and value >= 0):
-                raise InputError(f"must be 0 or more, got {value:g}", place=f"bent.{name}")
+                unit = "N m" if name == "moment" else "m"
+                raise InputError(f"must be 0 or more, got {value:g} {unit}", place=f"bent.{name}")
         if not (self.moment or self.eccentricity or self.bow):
             raise InputError("nothing bends it: type moment, eccentricity or bow", place="bent")
         _require_within("bent.evenness", self.evenness, 1.0)

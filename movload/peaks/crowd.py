@@ -22,6 +22,7 @@ from movload.arrays import Floats, Ints, frozen_floats, keep_memory_warm
 from movload.errors import InputError
 from movload.peaks.filling import TIE, Filled, Senses, stretch_loads
 from movload.statics.adverse import above_level, areas, ordinates_of
+from movload.traffic.fill import crowd_density
 
 if TYPE_CHECKING:
     from collections.abc import Callable
@@ -66,12 +67,7 @@ class Density:
         return density
 
 
-def _en_1991_2(length: Floats) -> Floats:
-    """EN 1991-2, 5.3.2.1 (from memory): q = 2.0 + 120 / (L + 30), 2.5 <= q <= 5.0 kN/m2, L in m."""
-    return np.asarray(1e3 * np.clip(2.0 + 120.0 / (length + 30.0), 2.5, 5.0))
-
-
-EN_CROWD: Final = Density(_en_1991_2, kinks=(10.0, 210.0))
+EN_CROWD: Final = Density(crowd_density, kinks=(10.0, 210.0))
 """EN 1991-2, 5.3.2.1, from memory: full up to 10 m, least from 210 m."""
 
 

@@ -107,8 +107,9 @@ class _Found:
 
     @staticmethod
     def key(known: _Known, sense: str, level: Level) -> tuple[object, ...]:
-        """Return what makes two strengths one."""
-        return (id(known.typed), id(known.made), sense, level.title)
+        """Return what makes two strengths one: a level tells only by its factors on strength."""
+        factors = (tuple(level.resistance.items()), tuple(level.timber.items()), level.condition_factors)
+        return (id(known.typed), id(known.made), sense, factors)
 
     def number(self, known: _Known, sense: str, level: Level, effect: Effect) -> int:
         """Return the number of a strength, found once for all rows of one make and words; 0 for none."""

@@ -6,10 +6,14 @@ import math
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING, Final
 
+import numpy as np
+
 from movload.errors import InputError, UnknownNameError, nearest_name
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
+
+    from movload.arrays import Floats
 
 SHAPES: Final = ("uniform", "knife edge")
 ACROSS: Final = ("lane", "full width", "left half", "right half")
@@ -19,7 +23,7 @@ DENSITIES: Final = ("en crowd",)
 """Loads per area that depend on the length they cover (see `crowd_density`)."""
 
 
-def crowd_density(length: float) -> float:
+def crowd_density(length: Floats | float) -> Floats:
     """Return a dense crowd's load [N/m2] by the length it covers [m]: q = 2.0 + 120 / (L + 30) kN/m2, 2.5 to 5.
 
     References
@@ -28,10 +32,10 @@ def crowd_density(length: float) -> float:
 
     Examples
     --------
-    >>> [crowd_density(length) for length in (0.0, 30.0, 400.0)]
+    >>> [float(crowd_density(length)) for length in (0.0, 30.0, 400.0)]
     [5000.0, 4000.0, 2500.0]
     """
-    return min(5000.0, max(2500.0, 2000.0 + 120e3 / (length + 30.0)))
+    return np.clip(2000.0 + 120e3 / (np.asarray(length, dtype=np.float64) + 30.0), 2500.0, 5000.0)
 
 
 @dataclass(frozen=True, slots=True)
@@ -94,7 +98,7 @@ class Fill:
             require_known("density", self.density, DENSITIES)
             object.__setattr__(self, "per_area", True)
             if math.isnan(self.load):
-                object.__setattr__(self, "load", crowd_density(0.0))
+                object.__setattr__(self, "load", float(crowd_density(0.0)))
         _require_number("load", self.load, "a load that fills")
         self._check_knife_edge()
         self._check_width()
@@ -102,7 +106,7 @@ class Fill:
 
     def load_over(self, length: float) -> float:
         """Return the load (as ``load``) where it covers a length [m]: less on a longer one if its density falls."""
-        return min(self.load, crowd_density(length)) if self.density else self.load
+        return min(self.load, float(crowd_density(length))) if self.density else self.load
 
     def _check_knife_edge(self) -> None:
         """Refuse a knife edge per area, and a second load of what is no knife edge."""

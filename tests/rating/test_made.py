@@ -17,14 +17,14 @@ from rating.test_beside import WAGON, two_lanes
 from movload import rate
 from movload.bridge.floor import Floor, Stringers
 from movload.bridge.loss import AsFound, Loss
-from movload.bridge.made import Bent, Held, Made, Sideways
+from movload.bridge.made import Bent, Held, Joined, Made, Sideways
 from movload.bridge.material import Material, Timber
 from movload.bridge.section import Section
 from movload.bridge.section_bars import Eyebar, Flat, SawnTimber
 from movload.bridge.section_piece import Piece
 from movload.bridge.shapes import RectangularTube
 from movload.bridge.strengths import TypedStrength
-from movload.errors import MissingDataError
+from movload.errors import InputError, MissingDataError
 from movload.files.factor_sets import read_factor_set
 from movload.rating.kernel import rating_factors
 from movload.review.hand import explained
@@ -111,6 +111,22 @@ def test_each_step_is_told_and_the_last_is_the_strength() -> None:
     )  # fmt: skip
     assert told.strength.steps[-1].value == told.strength.value == told.rating.strength
     assert all(step.equation and step.source for step in told.strength.steps)
+
+
+def test_levels_with_the_same_factors_on_strength_share_one() -> None:
+    """LRFR's six levels differ in their loads alone: two makes are worked out twice, not twelve times."""
+    solved = rated(chord()).solved
+    assert len(solved.method.levels) == 6
+    assert len(solved.strengths) == 1 + 2  # none at all, the left and the right bar's
+    assert_allclose(solved.strength, np.broadcast_to(solved.strength[:1], solved.strength.shape), rtol=0)
+
+
+@pytest.mark.parametrize(
+    "half", [{"radius": 0.01, "lacing_area": 1e-4}, {"lacing_area": 1e-4}, {"planes": 2, "radius": 0.01}, {}]
+)
+def test_half_of_lacing_and_half_of_battens_is_refused(half: dict[str, float]) -> None:
+    with pytest.raises(InputError, match="lacing says lacing_area and planes"):
+        Joined(axis="y", spacing=0.3, apart=0.2, **half)  # type: ignore[arg-type]  # planes is whole
 
 
 def test_typed_strengths_come_before_the_rules() -> None:
